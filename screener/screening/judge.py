@@ -1,0 +1,74 @@
+"""From numbers to a verdict. No physics here, and no way around the rules.
+
+room     the whole low-high range lies on the good side with the gap asked for
+near     the value lies on the good side, but the range crosses the limit, the
+         gap is smaller than asked, or the limit was not read in its source
+beyond   the value lies on the wrong side or on the limit itself
+unknown  a number is missing: then no good verdict can follow
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+from screener.screening.finding import READ_EVIDENCE, Verdict
+
+
+@dataclass(frozen=True)
+class Judgement:
+    """Verdict with the numbers it rests on, in the unit of the values given."""
+
+    verdict: Verdict
+    reason: str
+    margin: float | None  # positive on the good side
+    margin_at_edge: float | None  # margin of the worse end of the range
+    room_used: float | None
+    room_used_low: float | None
+    room_used_high: float | None
+
+
+def _number(value) -> float | None:
+    if value is None or not math.isfinite(value):
+        return None
+    return float(value)
+
+
+def judge(value, low, high, limit, *, kind, reference, gap, evidence, caps=()) -> Judgement:
+    """Judge one value with its range against one limit.
+
+    kind is 'stay below' or 'stay above'; reference is the point where no room
+    is used; caps are sentences, each of which alone keeps the verdict from
+    being better than near.
+    """
+    value, low, high, limit = (_number(v) for v in (value, low, high, limit))
+    if value is None or limit is None:
+        return Judgement("unknown", "", None, None, None, None, None)
+    sign = 1.0 if kind == "stay below" else -1.0
+    worse = None if low is None or high is None else (high if sign > 0 else low)
+    margin = sign * (limit - value)
+    at_edge = None if worse is None else sign * (limit - worse)
+    span = limit - reference
+
+    def used(v):
+        return (v - reference) / span if v is not None and span else None
+
+    ends = sorted((used(low), used(high))) if used(low) is not None and used(high) is not None else [None, None]
+    verdict, reason = _verdict(margin, at_edge, gap, evidence, tuple(caps))
+    return Judgement(verdict, reason, margin, at_edge, used(value), *ends)
+
+
+def _verdict(margin, at_edge, gap, evidence, caps) -> tuple[Verdict, str]:
+    if margin <= 0.0:
+        return "beyond", "the best value is on the wrong side of the limit"
+    if at_edge is None:
+        return "unknown", "the best value is on the good side, but an end of its range could not be worked out"
+    if at_edge <= 0.0:
+        return "near", "the best value is on the good side, but its range crosses the limit"
+    if at_edge < gap:
+        return "near", "the range stays on the good side, but with less than the gap asked for"
+    if evidence not in READ_EVIDENCE:
+        return "near", "the limit was not read in its source, so it cannot give room"
+    if caps:
+        return "near", caps[0]
+    return "room", "the whole range stays on the good side with the gap asked for"
