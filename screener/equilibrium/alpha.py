@@ -1,0 +1,67 @@
+"""The temperature function of the attraction term, alpha(T) = a(T) / a(Tc)."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+
+@dataclass(frozen=True)
+class Soave:
+    """[1 + m (1 - sqrt(T/Tc))]^2, one m per component. Soave 1972."""
+
+    Tc: np.ndarray
+    m: np.ndarray
+
+    def __call__(self, T):
+        """alpha (n, c) [-] at T (n,) [K]."""
+        return (1.0 + self.m * (1.0 - np.sqrt(T[:, None] / self.Tc))) ** 2
+
+
+@dataclass(frozen=True)
+class Twu:
+    """Tr^(N(M-1)) exp(L(1 - Tr^(N M))), three constants per component.
+
+    Twu, Bluck, Cunningham and Coon, Fluid Phase Equilibria 69 (1991) 33.
+    """
+
+    Tc: np.ndarray
+    L: np.ndarray
+    M: np.ndarray
+    N: np.ndarray
+
+    def __call__(self, T):
+        """alpha (n, c) [-] at T (n,) [K]."""
+        ln_Tr = np.log(T[:, None] / self.Tc)
+        return np.exp(self.N * (self.M - 1.0) * ln_Tr + self.L * (-np.expm1(self.N * self.M * ln_Tr)))
+
+
+def m_of_omega(omega, eos: str):
+    """Slope m of the Soave form from the acentric factor.
+
+    Parameters
+    ----------
+    omega : array, shape (c,)
+        Acentric factor. [-]
+    eos : str
+        "PR", "PR78" or "SRK".
+
+    Returns
+    -------
+    array, shape (c,)
+        m. [-]
+
+    Source
+    ------
+    PR: Peng and Robinson 1976; PR78: Robinson and Peng 1978, its cubic form
+    above omega 0.49; SRK: Soave 1972.
+    """
+    omega = np.asarray(omega, dtype=float)
+    if eos == "SRK":
+        return 0.480 + omega * (1.574 - 0.176 * omega)
+    m = 0.37464 + omega * (1.54226 - 0.26992 * omega)
+    if eos == "PR78":
+        heavy = 0.379642 + omega * (1.48503 + omega * (-0.164423 + 0.016666 * omega))
+        m = np.where(omega > 0.49, heavy, m)
+    return m
