@@ -13,6 +13,7 @@ import math
 from dataclasses import dataclass
 
 from screener.screening.finding import READ_EVIDENCE, Verdict
+from screener.screening.wording import say
 
 
 @dataclass(frozen=True)
@@ -60,15 +61,15 @@ def judge(value, low, high, limit, *, kind, reference, gap, evidence, caps=()) -
 
 def _verdict(margin, at_edge, gap, evidence, caps) -> tuple[Verdict, str]:
     if margin <= 0.0:
-        return "beyond", "the best value is on the wrong side of the limit"
+        return "beyond", say("judge", "beyond")
     if at_edge is None:
-        return "unknown", "the best value is on the good side, but an end of its range could not be worked out"
+        return "unknown", say("judge", "edge-missing")
     if at_edge <= 0.0:
-        return "near", "the best value is on the good side, but its range crosses the limit"
+        return "near", say("judge", "crosses")
     if at_edge < gap:
-        return "near", "the range stays on the good side, but with less than the gap asked for"
+        return "near", say("judge", "thin")
     if evidence not in READ_EVIDENCE:
-        return "near", "the limit was not read in its source, so it cannot give room"
+        return "near", say("judge", "unread")
     if caps:
         return "near", caps[0]
-    return "room", "the whole range stays on the good side with the gap asked for"
+    return "room", say("judge", "room")
