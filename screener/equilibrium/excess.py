@@ -1,0 +1,59 @@
+"""The excess Gibbs energy of a blend: modified UNIFAC plus a pair term for dissolved gases.
+
+    G^E/RT = (UNIFAC) + sum_{i<j} x_i x_j A_ij(T),   A_ij = A0 + A1/T + A2 ln T
+
+so that the pair term adds ln gamma_i = (A x)_i - x A x / 2.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from screener.equilibrium.unifac import Unifac, UnifacAt
+
+
+@dataclass(frozen=True)
+class Excess:
+    """UNIFAC and the pair term; A0 [-], A1 [K], A2 [-] symmetric (c, c), or all None without one."""
+
+    unifac: Unifac
+    A0: np.ndarray | None
+    A1: np.ndarray | None
+    A2: np.ndarray | None
+
+    @classmethod
+    def of(cls, unifac: Unifac, A0, A1, A2) -> Excess:
+        """From coefficient arrays (c, c); an array of zeros is dropped."""
+        return cls(unifac, *(m if np.any(m) else None for m in (A0, A1, A2)))
+
+    def at(self, T) -> ExcessAt:
+        """The temperature-only part for T (n,). [K]"""
+        return ExcessAt(self, self.unifac.at(T), T)
+
+
+@dataclass(frozen=True)
+class ExcessAt:
+    """The same at fixed temperatures T (n,). [K]"""
+
+    model: Excess
+    unifac: UnifacAt
+    T: np.ndarray
+
+    def take(self, lanes) -> ExcessAt:
+        """The same for some of the lanes."""
+        return ExcessAt(self.model, self.unifac.take(lanes), self.T[lanes])
+
+    def ln_gamma(self, x):
+        """ln gamma (n, c) [-] at mole fractions x (n, c)."""
+        ln_gamma = self.unifac.ln_gamma(x)
+        T = self.T[:, None]
+        for matrix, factor in ((self.model.A0, None), (self.model.A1, 1.0 / T), (self.model.A2, np.log(T))):
+            if matrix is None:
+                continue
+            field = x @ matrix
+            half = 0.5 * np.einsum("nc,nc->n", x, field)
+            field -= half[:, None]
+            ln_gamma = ln_gamma + (field if factor is None else factor * field)
+        return ln_gamma
