@@ -10,6 +10,8 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from screener.site import month_number
+
 # name -> (path in the case file, how to read it from a Case). None reads as NaN.
 _READ = {
     "shell_diameter": ("tank.shell_diameter", lambda c: c.tank.shell_diameter),
@@ -67,10 +69,15 @@ _READ = {
 
 @dataclass(frozen=True)
 class Inputs:
-    """Arrays (n,) of the inputs of n cases, NaN where not given."""
+    """Arrays (n,) of the inputs of n cases, NaN where not given.
+
+    months holds mean, mean_high, mean_low [K] and insolation [J/m2], each (n, 12),
+    January first.
+    """
 
     cases: tuple
     arrays: dict
+    months: dict
 
     def __getitem__(self, name: str) -> np.ndarray:
         return self.arrays[name]
@@ -87,7 +94,15 @@ def gather(cases) -> Inputs:
     for name, (_, read) in _READ.items():
         values = (read(case) for case in cases)
         arrays[name] = np.array([np.nan if v is None else float(v) for v in values])
-    return Inputs(cases, arrays)
+    months = {key: np.full((len(cases), 12), np.nan) for key in ("mean", "mean_high", "mean_low", "insolation")}
+    for i, case in enumerate(cases):
+        for month in case.site.months:
+            number = month_number(month.name)
+            for key, table in months.items():
+                value = getattr(month, key)
+                if number and value is not None:
+                    table[i, number - 1] = value
+    return Inputs(cases, arrays, months)
 
 
 def path_of(name: str) -> str:

@@ -1,0 +1,200 @@
+"""Findings that rest on a vapour pressure: boiling, the rule packs, the receipt's flash."""
+
+from __future__ import annotations
+
+import math
+
+from screener.screening.context import MONTHS, Context
+from screener.screening.criteria import criterion
+from screener.screening.draft import Draft, Lane
+from screener.screening.finding import Condition, Fact
+from screener.screening.rules import Rule
+from screener.screening.wording import lines, say
+from screener.states.lanes import BEST, RECEIPT
+
+FLOATING = ("internal-floating-roof", "external-floating-roof", "domed-floating-roof")
+_VAPOUR_SHOWN = 6  # species of a vapour listed beside a finding
+
+
+def _draft(key: str, **fields) -> Draft:
+    return Draft(
+        criterion(key), caution=say("caution", key), not_counted=lines("not-counted", key), **fields
+    )  # fmt: skip
+
+
+def vapour_facts(context: Context, y) -> tuple[Fact, ...]:
+    """The largest shares of a vapour, as facts."""
+    if not math.isfinite(float(y.sum())):
+        return ()
+    names = context.lanes.names
+    order = sorted(range(len(names)), key=lambda j: -y[j])[:_VAPOUR_SHOWN]
+    return tuple(Fact(f"{names[j]} in the vapour", float(y[j]), "mol/mol") for j in order if y[j] > 0.0)
+
+
+def _hot_lane(context: Context, k: int, limit: float, where: str) -> Lane:
+    lanes, i = context.lanes, context.i
+    T = lanes.T_hot[i, k]
+    low, value, high = lanes.P_hot[i, k]
+    facts = (
+        Fact("temperature of that liquid", float(T[BEST]), "K"),
+        Fact("lowest of its range", float(T[0]), "K"),
+        Fact("highest of its range", float(T[2]), "K"),
+    )
+    why = context.why_no_hot_pressure(k)
+    return Lane(
+        context.condition(k, context.hottest_day, where), value, low, high, limit,
+        unknown=say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else "",
+        facts=tuple(f for f in facts if math.isfinite(f.value)) + vapour_facts(context, lanes.y_hot[i, k]), tag=k,
+        caps=_typical_cap(context),
+    )  # fmt: skip
+
+
+def _typical_cap(context: Context) -> tuple[str, ...]:
+    """A range of typical days does not bound the hottest one."""
+    ambient = context.case.site.ambient
+    if ambient is not None and ambient.meaning == "typical" and context.case.site.liquid_temperature is None:
+        return (say("cap", "typical"),)
+    return ()
+
+
+def _barometer_missing(context: Context) -> str:
+    if math.isfinite(context.barometer):
+        return ""
+    return say("unknown", "missing", paths="site.lowest_barometer or site.elevation")
+
+
+def boiling(context: Context) -> Draft:
+    """boiling.surface: bubble pressure at the hottest surface against the lowest barometer."""
+    if context.case.tank.kind == "pressure-vessel":
+        return _draft("boiling.surface", skip=say("skip", "pressure-vessel"))
+    lanes = tuple(
+        _hot_lane(context, k, context.barometer, "liquid surface") for k in context.liquids()
+    )  # fmt: skip
+    return _draft(
+        "boiling.surface",
+        lanes=lanes,
+        unknown=_barometer_missing(context),
+        range_covers=("weather", "inputs", "method"),
+        facts=_surface_facts(context),
+    )
+
+
+def _surface_facts(context: Context) -> tuple[Fact, ...]:
+    """How the hottest surface came about."""
+    weather, i = context.lanes.weather, context.i
+    facts = [
+        Fact("lowest barometer", context.barometer, "Pa"),
+        Fact("hottest surface by the 2006 edition", float(weather.editions[i, 0]), "K"),
+        Fact("hottest surface by the 2020 edition", float(weather.editions[i, 1]), "K"),
+        Fact("solar absorptance of the paint", float(weather.absorptance[i, 1]), "-"),
+        Fact("insolation of the design day", float(weather.insolation[i]), "J/m2"),
+        Fact("air maximum of the design day", float(weather.air_high[i]), "K"),
+        Fact("air minimum of the design day", float(weather.air_low[i]), "K"),
+    ]
+    reading = context.case.site.liquid_temperature
+    if reading is not None:
+        facts.insert(1, Fact(f"gauge reading of {reading.read_on}", reading.value, "K"))
+    return tuple(f for f in facts if math.isfinite(f.value))
+
+
+def legal(context: Context, rule: Rule | None) -> Draft:
+    """vapour-pressure.legal for one rule: highest monthly mean against the roof-type limit."""
+    if rule is None:
+        return _draft("vapour-pressure.legal", unknown=say("unknown", "no-criteria"))
+    fields = _rule_fields("vapour-pressure.legal", rule)
+    if rule.skip:
+        return _draft("vapour-pressure.legal", skip=rule.skip, **fields)
+    lanes, i = context.lanes, context.i
+    month = int(lanes.weather.month_legal[i])
+    when = f"highest monthly mean, {MONTHS[month - 1]}" if month else ""
+    rows = []
+    for k in context.liquids():
+        low, value, high = lanes.P_legal[i, k]
+        unknown = ""
+        if not math.isfinite(value):
+            paths = [p for p in context.own_missing(k) if not p.endswith("temperature")]
+            why = say("unknown", "missing", paths=", ".join(paths)) if paths else say(
+                "unknown", "no-bubble", why=context._status_words(lanes.status_legal[i, k]))  # fmt: skip
+            unknown = say("unknown", "lane", liquid=context.liquid_name(k), why=why)
+        facts = (Fact("highest monthly mean air temperature", float(lanes.T_legal[i]), "K"),)
+        rows.append(Lane(context.condition(k, when, "tank"), value, low, high, rule.limit, unknown=unknown,
+                         facts=facts if month else (), tag=k))  # fmt: skip
+    unknown = rule.unknown or ("" if month else say("unknown", "months"))
+    return _draft("vapour-pressure.legal", lanes=tuple(rows), unknown=unknown, range_covers=("method",),
+                  facts=rule.facts, **fields)  # fmt: skip
+
+
+def hottest(context: Context, rule: Rule | None) -> Draft:
+    """vapour-pressure.hottest for one rule: the hottest surface against the same limit."""
+    if rule is None:
+        return _draft("vapour-pressure.hottest", unknown=say("unknown", "no-criteria"))
+    fields = _rule_fields("vapour-pressure.hottest", rule)
+    if rule.skip:
+        return _draft("vapour-pressure.hottest", skip=rule.skip, **fields)
+    rows = tuple(_hot_lane(context, k, rule.limit, "liquid surface") for k in context.liquids())
+    return _draft("vapour-pressure.hottest", lanes=rows, unknown=rule.unknown,
+                  range_covers=("weather", "inputs", "method"), facts=rule.facts, **fields)  # fmt: skip
+
+
+def _rule_fields(key: str, rule: Rule) -> dict:
+    return dict(
+        id=f"{key}.{rule.pack}",
+        title=f"{criterion(key).title} ({rule.pack})",
+        evidence=rule.evidence,
+        source=rule.source,
+        sources=rule.source_keys,
+    )
+
+
+def receipt(context: Context) -> Draft:
+    """receipt.flash: does the receipt boil at tank pressure as it arrives, and does gas come out."""
+    key = "receipt.flash"
+    line = context.case.line.receipt
+    if line is None:
+        return _draft(key, skip=say("skip", "no-receipt"))
+    if context.case.tank.kind == "pressure-vessel":
+        return _draft(key, skip=say("skip", "pressure-vessel"))
+    lanes, i = context.lanes, context.i
+    low, value, high = lanes.P_receipt[i]
+    unknown, caps = _gas_state(context)
+    if not math.isfinite(value):
+        paths = context.missing("receipt_temperature")
+        unknown = say("unknown", "missing", paths=", ".join(paths)) if paths else say(
+            "unknown", "no-bubble", why=context._status_words(lanes.status_receipt[i]))  # fmt: skip
+    lane = Lane(
+        Condition("receipt", "", "on arrival", "tank inlet"), value, low, high, context.barometer,
+        unknown=unknown, caps=caps, facts=_receipt_facts(context), tag=RECEIPT,
+    )  # fmt: skip
+    return _draft(key, lanes=(lane,), unknown=_barometer_missing(context), range_covers=("method",))
+
+
+def _gas_state(context: Context) -> tuple[str, tuple[str, ...]]:
+    """What the stated gas content does to the verdict: a reason for unknown, or caps."""
+    stated = context.case.line.receipt.dissolved_gas
+    if stated is None:
+        return say("unknown", "dissolved-gas"), ()
+    if stated == "in-blend" and not context.holds_gas():
+        return say("unknown", "gas-blend"), ()
+    if stated == "air-saturated":
+        share = float(context.lanes.beta_gas[context.i])
+        if not math.isfinite(share):
+            return say("unknown", "gas-flash"), ()
+        if share > 0.0:
+            return "", (say("cap", "gas-comes-out", share=f"{100.0 * share:.2g} %"),)
+    return "", ()
+
+
+def _receipt_facts(context: Context) -> tuple[Fact, ...]:
+    lanes, i = context.lanes, context.i
+    facts = [
+        Fact("arrival temperature", context.input("receipt_temperature"), "K"),
+        Fact("tank pressure", context.barometer, "Pa"),
+        Fact("vapour fraction by moles", float(lanes.beta[i, BEST]), "mol/mol", say("note", "isothermal")),
+        Fact("vapour fraction, high end", float(lanes.beta[i, 2]), "mol/mol"),
+    ]
+    if context.case.line.receipt.dissolved_gas == "air-saturated":
+        facts.append(Fact("vapour fraction with the dissolved air", float(lanes.beta_gas[i]), "mol/mol"))
+    facts = [f for f in facts if math.isfinite(f.value)]
+    if lanes.beta[i, BEST] > 0.0:
+        facts += vapour_facts(context, lanes.y_receipt[i])
+    return tuple(facts)

@@ -1,0 +1,174 @@
+"""Temperatures of the liquid and the air pressure that belong to a case.
+
+Rules, in words:
+
+- a gauge reading of the liquid, with its date, beats the estimate; the estimate
+  for the hottest day stays as an end of the range, since one reading does not
+  bound a season;
+- otherwise the hottest surface is the daily maximum of the published method on
+  a design day, both editions worked out, the higher taken, their difference
+  and the uncertainty of the paint part of the range;
+- the design day of a month has that month's mean daily maximum raised by the
+  distance from the hottest month's mean maximum to the site's design high, the
+  month's own daily swing, and a clear sky;
+- the legal temperature is the highest monthly mean of the air, of the whole year;
+- the barometer is the lowest one given, else the standard atmosphere at the
+  elevation less a stated allowance.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from screener.site import clear_sky_insolation, lowest_barometer, middle_day, month_number
+from screener.states.inputs import Inputs
+from screener.tank import absorptance, daily_temperatures_2006, daily_temperatures_2020
+
+# Daily swing of the air on a hot day where no months are given: low, best, high [K].
+# Common practice, no source: listed as a default wherever it is used.
+SWING_UNKNOWN = (6.0, 11.0, 16.0)
+READING_SPREAD = 1.0  # a gauge reading of a tank's liquid is taken to within this [K]; common practice, no source
+
+
+@dataclass(frozen=True)
+class Weather:
+    """Arrays over n cases; edges are low, best, high.
+
+    barometer (n,) [Pa]; T_surface (n, 3) hottest surface [K]; T_estimate (n, 3)
+    the same without the gauge reading [K]; T_bulk (n, 3) bulk in the hottest month
+    [K]; T_legal (n,) highest monthly mean [K]; T_space (n,) hottest vapour space
+    [K]; month (n,) number of the month judged, 0 if none; month_legal (n,) the month of
+    T_legal, 0 if none; editions (n, 2) the surface by each edition [K]; absorptance
+    (n, 3) [-]; air_high, air_low (n,) [K] and insolation (n,) [J/m2] of the design day.
+    """
+
+    barometer: np.ndarray
+    T_surface: np.ndarray
+    T_estimate: np.ndarray
+    T_bulk: np.ndarray
+    T_legal: np.ndarray
+    T_space: np.ndarray
+    month: np.ndarray
+    month_legal: np.ndarray
+    editions: np.ndarray
+    absorptance: np.ndarray
+    air_high: np.ndarray
+    air_low: np.ndarray
+    insolation: np.ndarray
+
+
+def _barometer(inputs: Inputs) -> np.ndarray:
+    given = inputs["lowest_barometer"]
+    return np.where(np.isnan(given), lowest_barometer(inputs["elevation"]), given)
+
+
+def _pick(table: np.ndarray, month: np.ndarray) -> np.ndarray:
+    """Value of the month (1 to 12) of each case; NaN where there is no month."""
+    picked = table[np.arange(len(month)), np.maximum(month, 1) - 1]
+    return np.where(month > 0, picked, np.nan)
+
+
+def _hottest(table: np.ndarray) -> np.ndarray:
+    """Number of the month with the highest value, 0 where a month is missing."""
+    whole = np.isfinite(table).all(axis=1)
+    return np.where(whole, np.argmax(np.where(np.isfinite(table), table, -np.inf), axis=1) + 1, 0)
+
+
+def _design_day(inputs: Inputs, month: np.ndarray, hottest: np.ndarray):
+    """Air maximum and minimum (n, 3) and insolation (n,) of the design day of the month."""
+    highs, lows = inputs.months["mean_high"], inputs.months["mean_low"]
+    rise = inputs["ambient_high"] - _pick(highs, hottest)
+    high = np.where(month > 0, _pick(highs, month) + rise, inputs["ambient_high"])
+    known = (_pick(highs, month) - _pick(lows, month))[:, None]
+    swing = np.where(np.isfinite(known), known, np.array(SWING_UNKNOWN)[None, ::-1])
+    clear = clear_sky_insolation(
+        inputs["latitude"], np.where(np.isnan(inputs["elevation"]), 0.0, inputs["elevation"]), _design_day_number(inputs, month)
+    )
+    insolation = np.where(np.isnan(inputs["design_insolation"]), clear, inputs["design_insolation"])
+    # A small swing keeps the nights warm: it belongs to the hot edge.
+    return high[:, None] * np.ones(3), high[:, None] - swing, insolation
+
+
+def _design_day_number(inputs: Inputs, month: np.ndarray) -> np.ndarray:
+    """Day of the year: the middle of the month, or midsummer of the hemisphere where no month is known."""
+    midsummer = np.where(inputs["latitude"] >= 0.0, 6, 12)
+    return middle_day(np.where(month > 0, month, midsummer))
+
+
+def _tank_columns(inputs: Inputs):
+    """Roof kind, insulation and absorptance (n, 3) as arrays."""
+    kinds = np.array([case.tank.kind for case in inputs.cases])
+    insulation = np.array(["full" if case.tank.insulated else "none" for case in inputs.cases])
+    found = {text: absorptance(text) for text in {case.tank.surface for case in inputs.cases} if text}
+    nothing = (np.nan, np.nan, np.nan)
+    rows = [
+        (found[c.tank.surface].low, found[c.tank.surface].best, found[c.tank.surface].high) if c.tank.surface else nothing
+        for c in inputs.cases
+    ]
+    alpha = np.array(rows)
+    # Paint does not matter where no sun reaches the liquid.
+    shaded = (kinds == "underground") | (insulation == "full")
+    return kinds, insulation, np.where(shaded[:, None], 0.5, alpha)
+
+
+def _edition_temperatures(inputs, kinds, insulation, alpha, high, low, sun):
+    """Surface maxima (n, 3) and vapour maxima (n,) by both editions, bulk (n, 3) by both."""
+    three = (slice(None), None)
+    shared = dict(roof=kinds[three], insulation=insulation[three])
+    buried = (kinds == "underground") & np.isfinite(inputs["reading"])
+    shared["bulk_temperature"] = np.where(buried, inputs["reading"], np.nan)[three]
+    ratio = (inputs["shell_height"] / inputs["shell_diameter"])[three]
+    old = daily_temperatures_2006(high, low, sun[three], alpha, alpha, **shared)
+    new = daily_temperatures_2020(high, low, sun[three], alpha, alpha, height_over_diameter=ratio, **shared)
+    return old, new
+
+
+def _widest(old, new):
+    """low, best, high (n, 3) of two estimates: the higher is best, the lower and the edges span the range.
+
+    An edition that does not hold for the tank drops out; both missing is NaN.
+    """
+    both = np.stack([old, new])
+    best = np.fmax(old[:, 1], new[:, 1])
+    low, high = np.fmin(*both)[:, 0], np.fmax(*both)[:, 2]
+    return np.stack([np.minimum(low, np.fmin(old[:, 1], new[:, 1])), best, high], axis=1)
+
+
+def weather(inputs: Inputs) -> Weather:
+    """Temperatures and air pressure of every case."""
+    n = len(inputs.cases)
+    asked = [case.site.month and month_number(case.site.month) for case in inputs.cases]
+    hottest = _hottest(inputs.months["mean_high"])
+    month = np.array([a or h for a, h in zip(asked, hottest)]) * (hottest > 0)
+    month_legal = _hottest(inputs.months["mean"])
+    high, low, sun = _design_day(inputs, month, hottest)
+    kinds, insulation, alpha = _tank_columns(inputs)
+    old, new = _edition_temperatures(inputs, kinds, insulation, alpha, high, low, sun)
+    estimate = _widest(old.surface_maximum, new.surface_maximum)
+    bulk = _widest(old.bulk, new.bulk)
+    reading = inputs["reading"][:, None] + np.array([-READING_SPREAD, 0.0, READING_SPREAD])
+    read = np.isfinite(reading[:, 1])
+    surface = np.where(read[:, None], reading, estimate)
+    surface[:, 2] = np.where(read, np.fmax(surface[:, 2], estimate[:, 2]), surface[:, 2])
+    space = np.fmax(
+        old.surface_mean[:, 1] + old.vapour_range[:, 1] / 2.0,
+        np.where(np.isnan(new.vapour_mean), new.surface_mean, new.vapour_mean)[:, 1] + new.vapour_range[:, 1] / 2.0,
+    )
+    given = inputs["vapour_space_temperature"]
+    return Weather(
+        barometer=_barometer(inputs),
+        T_surface=surface,
+        T_estimate=estimate,
+        T_bulk=bulk,
+        T_legal=_pick(inputs.months["mean"], month_legal),
+        T_space=np.where(np.isnan(given), space, given),
+        month=month,
+        month_legal=month_legal,
+        editions=np.stack([old.surface_maximum[:, 1], new.surface_maximum[:, 1]], axis=1).reshape(n, 2),
+        absorptance=alpha,
+        air_high=high[:, 1],
+        air_low=low[:, 1],
+        insolation=sun,
+    )
