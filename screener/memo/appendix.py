@@ -1,0 +1,69 @@
+"""Appendix A: the case in full, species and sources, so that the run can be repeated."""
+
+from __future__ import annotations
+
+from screener.ground.files import data_folder, read_toml
+from screener.memo import numbers
+from screener.memo.document import Block, Bullets, Paragraph, Section, Table, Verbatim
+from screener.memo.frame import Frame
+from screener.memo.results import liquids
+from screener.memo.text import plain_lines
+from screener.memo.wording import fill, words
+from screener.species import find
+
+
+def appendix_section(frame: Frame) -> Section:
+    """A: case file, mole shares, sources touched, run."""
+    blocks: list[Block] = []
+    if frame.case_text:
+        blocks += [
+            Paragraph(words("appendix", "case_as_entered") + ":"),
+            Verbatim(plain_lines(frame.case_text)),
+        ]
+    else:
+        blocks.append(Paragraph(words("appendix", "case_listed")))
+    blocks += [composition_table(frame), _sources(frame), *_run(frame)]
+    return Section("A", words("sections", "A"), tuple(blocks))
+
+
+def composition_table(frame: Frame) -> Table:
+    """Mole shares of receipt and heel over all species of either, largest in the receipt first."""
+    shares = [dict(zip(blend.names, map(float, blend.z))) for _, blend in liquids(frame)]
+    names = dict.fromkeys(name for column in shares for name in column)
+    ordered = sorted(names, key=lambda name: (-shares[0].get(name, 0.0), name))
+    rows = tuple(
+        (name, find(name).cas, *(numbers.quantity(column.get(name, 0.0), "-", places=5) for column in shares))
+        for name in ordered
+        if any(column.get(name, 0.0) > 0.0 for column in shares)
+    )
+    columns = tuple(words("appendix", "composition_columns")[: 2 + len(shares)])
+    align = ("left", "left", "right", "right")[: len(columns)]
+    return Table(columns, rows, align, words("appendix", "composition"))
+
+
+def source_title(key: str) -> str:
+    """Bibliographic line of a key in data/sources.toml; the key itself when the list has none."""
+    if not (data_folder() / "sources.toml").is_file():
+        return key
+    entry = read_toml("sources.toml").get(key, key)
+    return entry if isinstance(entry, str) else str(entry.get("title", key))
+
+
+def _sources(frame: Frame) -> Block:
+    keys = dict.fromkeys((*frame.screening.sources, *(key for f in frame.findings for key in f.sources)))
+    if not keys:
+        return Paragraph(words("appendix", "no_sources"))
+    rows = tuple((key, source_title(key)) for key in sorted(keys))
+    return Table(tuple(words("appendix", "source_columns")), rows, (), words("appendix", "sources"))
+
+
+def _run(frame: Frame) -> list[Block]:
+    absent = words("control", "not_given")
+    values = {
+        "version": frame.version,
+        "case_digest": frame.case.digest or absent,
+        "data_digest": frame.data_digest or absent,
+        "system": frame.system,
+    }
+    lines = tuple(line.format(**values) for line in words("appendix", "run_lines"))
+    return [Paragraph(fill("appendix", "run") + ":"), Bullets(lines)]
