@@ -21,20 +21,27 @@ class Soave:
 
 @dataclass(frozen=True)
 class Twu:
-    """Tr^(N(M-1)) exp(L(1 - Tr^(N M))), three constants per component.
+    """Five constants per component, the form of `screener.species.alpha`.
 
-    Twu, Bluck, Cunningham and Coon, Fluid Phase Equilibria 69 (1991) 33.
+    Tr^(N(M-1)) exp(L(1 - Tr^(N M)) + s^3 (C + D s)), s = max(1 - Tr, 0). The
+    first three are those of Twu, Bluck, Cunningham and Coon, Fluid Phase
+    Equilibria 69 (1991) 33; C and D are this project's own.
     """
 
     Tc: np.ndarray
     L: np.ndarray
     M: np.ndarray
     N: np.ndarray
+    C: np.ndarray
+    D: np.ndarray
 
     def __call__(self, T):
         """alpha (n, c) [-] at T (n,) [K]."""
-        ln_Tr = np.log(T[:, None] / self.Tc)
-        return np.exp(self.N * (self.M - 1.0) * ln_Tr + self.L * (-np.expm1(self.N * self.M * ln_Tr)))
+        Tr = T[:, None] / self.Tc
+        ln_Tr = np.log(Tr)
+        s = np.maximum(1.0 - Tr, 0.0)
+        exponent = self.N * (self.M - 1.0) * ln_Tr - self.L * np.expm1(self.N * self.M * ln_Tr)
+        return np.exp(exponent + s**3 * (self.C + self.D * s))
 
 
 def m_of_omega(omega, eos: str):

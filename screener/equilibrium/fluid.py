@@ -17,7 +17,7 @@ import numpy as np
 
 from screener.equilibrium.alpha import Soave, m_of_omega
 from screener.equilibrium.eos import EQUATIONS, Equation, Mixture, attraction_at_critical, covolume
-from screener.equilibrium.mixing import VanDerWaals
+from screener.equilibrium.mixing import VanDerWaals, interaction_matrix
 from screener.ground.constants import R
 from screener.ground.errors import InputError, ShapeError
 
@@ -287,20 +287,6 @@ class AtTemperature:
         """ln gamma (n, c) [-] at composition x (n, c); NaN for a model without an excess Gibbs energy."""
         with np.errstate(all="ignore"):
             return self.mixing.ln_gamma(_rows(x))
-
-
-def interaction_matrix(kij, c: int):
-    """kij as a symmetric (c, c) array with zero diagonal, or None when all are zero."""
-    if kij is None:
-        return None
-    kij = np.asarray(kij, dtype=float)
-    if kij.shape != (c, c):
-        raise ShapeError("kij", kij.shape, f"({c}, {c})")
-    if not np.allclose(kij, kij.T, rtol=0.0, atol=1e-12):
-        raise InputError("kij", None, "kij is not symmetric", "k_ij = k_ji")
-    kij = kij.copy()
-    np.fill_diagonal(kij, 0.0)
-    return kij if kij.any() else None
 
 
 def _lanes(value):

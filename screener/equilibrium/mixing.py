@@ -6,6 +6,8 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from screener.ground.errors import InputError, ShapeError
+
 
 @dataclass(frozen=True)
 class VanDerWaals:
@@ -47,3 +49,17 @@ class VanDerWaalsAt:
     def ln_gamma(self, x):
         """NaN (n, c): this rule carries no excess Gibbs energy model."""
         return np.full_like(x, np.nan)
+
+
+def interaction_matrix(kij, c: int):
+    """kij as a symmetric (c, c) array with zero diagonal, or None when all are zero."""
+    if kij is None:
+        return None
+    kij = np.asarray(kij, dtype=float)
+    if kij.shape != (c, c):
+        raise ShapeError("kij", kij.shape, f"({c}, {c})")
+    if not np.allclose(kij, kij.T, rtol=0.0, atol=1e-12):
+        raise InputError("kij", None, "kij is not symmetric", "k_ij = k_ji")
+    kij = kij.copy()
+    np.fill_diagonal(kij, 0.0)
+    return kij if kij.any() else None

@@ -28,7 +28,7 @@ import numpy as np
 
 from screener.equilibrium.cubic import PENG_ROBINSON
 
-JOINT = 7.6  # [-] where the continuation begins; own choice, below the alpha of any stored liquid at 400 K
+JOINT = 7.6  # [-] where the continuation begins; own choice, about 0.84 Tc, where q still bends little
 SLOPE_BELOW = -0.30  # [-] slope of q far below the joint; own choice
 
 _D1, _D2 = PENG_ROBINSON

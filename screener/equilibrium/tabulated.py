@@ -1,0 +1,103 @@
+"""Fluids of tabulated species: the tables of `screener.species` turned into models."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from screener.equilibrium.alpha import Soave, Twu, m_of_omega
+from screener.equilibrium.cubic import Z_of_phase
+from screener.equilibrium.eos import EQUATIONS, attraction_at_critical, covolume
+from screener.equilibrium.excess import Excess
+from screener.equilibrium.mixing import VanDerWaals, interaction_matrix
+from screener.equilibrium.unifac import Unifac
+from screener.equilibrium.zero_pressure import ZeroPressure
+from screener.ground.constants import ATMOSPHERE, T_15C, R
+
+
+def fluid_of(kind, names, model: str):
+    """A fluid of tabulated species; see `Fluid.of`."""
+    from screener import species
+
+    found = tuple(species.find(name) for name in names)
+    canonical = tuple(one.name for one in found)
+    table = species.columns(canonical)
+    shared = dict(names=canonical, model=model, MW=table.MW, Tc=table.Tc, Pc=table.Pc, omega=table.omega)
+    shared.update(v_15=table.MW / table.rho_15, vapour_pressure=Curves(found))
+    if model in ("PR", "SRK"):
+        return kind(**shared, **_van_der_waals(canonical, model, table))
+    mixing, gaps, missing = _excess(canonical, table)
+    return kind(
+        **shared, equation=EQUATIONS["PR"], alpha=_alpha(table), mixing=mixing, shift_0=table.c0, shift_1=table.c1,
+        gaps=gaps, missing=missing,
+    )
+
+
+@dataclass(frozen=True)
+class Curves:
+    """The reference vapour-pressure curves of several species."""
+
+    species: tuple
+
+    def __call__(self, T):
+        """Vapour pressures (n, c) [Pa] at T (n,) [K]; NaN outside a curve's range."""
+        return np.stack([np.atleast_1d(one.psat(T)) for one in self.species], axis=-1)
+
+
+def _alpha(table) -> Twu:
+    return Twu(table.Tc, table.L, table.M, table.N, table.C, table.D)
+
+
+def _excess(names, table):
+    """The PR-GE mixing rule, what fell back to zero, and the pairs that lack a parameter."""
+    from screener import species
+
+    R_k, Q_k, main, a, b, c = species.group_tables(table.subgroups)
+    unifac = Unifac.of(table.groups, R_k, Q_k, main, a, b, c)
+    A0, A1, A2, lacking = species.pair_terms(names)
+    missing = tuple(tuple(pair) for pair in lacking) + _pairs_without_groups(names, table.groups, a)
+    gaps = tuple(f"no parameter for {one} + {other}; taken as zero" for one, other in missing)
+    return ZeroPressure(Excess.of(unifac, A0, A1, A2)), gaps, missing
+
+
+def _pairs_without_groups(names, counts, a):
+    """Pairs of species that bring together two groups whose interaction is in no table."""
+    unknown = np.isnan(a) | np.isnan(a.T)
+    has = counts > 0
+    touch = (has @ unknown.astype(float) @ has.T) > 0.0
+    c = len(names)
+    return tuple((names[i], names[j]) for i in range(c) for j in range(i, c) if touch[i, j])
+
+
+def _van_der_waals(names, model: str, table) -> dict:
+    """Equation, alpha, mixing rule, translation and gaps of the plain cubic equations."""
+    from screener import species
+
+    kij, fallback = species.interactions(names, model)
+    equation = EQUATIONS[model]
+    gaps = tuple(f"k_ij of {one} + {other} in no table; taken as zero" for one, other in fallback)
+    mixing = VanDerWaals(interaction_matrix(kij, len(names)))
+    if model == "PR":
+        return dict(
+            equation=equation, alpha=_alpha(table), mixing=mixing, shift_0=table.c0, shift_1=table.c1, gaps=gaps
+        )
+    alpha = Soave(table.Tc, m_of_omega(table.omega, "SRK"))
+    shift = _shift_at_15(equation, alpha, table)
+    return dict(
+        equation=equation, alpha=alpha, mixing=mixing, shift_0=shift, shift_1=np.zeros_like(shift), gaps=gaps
+    )
+
+
+def _shift_at_15(equation, alpha, table):
+    """Constant translation (c,) [m3/mol] that gives each species its liquid volume at 15 degC and 1 atm.
+
+    Zero where the species is no liquid there.
+    """
+    b = covolume(equation, table.Tc, table.Pc)
+    RT = R * T_15C
+    attraction = alpha(np.array([T_15C]))[0] * attraction_at_critical(equation, table.Tc, table.Pc) / (b * RT)
+    B = b * ATMOSPHERE / RT
+    Z = Z_of_phase(attraction * B, B, "L", equation.d)
+    shift = Z * RT / ATMOSPHERE - table.MW / table.rho_15
+    return np.where((Z < 4.0 * B) & np.isfinite(shift), shift, 0.0)
