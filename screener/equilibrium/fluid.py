@@ -16,7 +16,8 @@ from dataclasses import dataclass
 import numpy as np
 
 from screener.equilibrium.alpha import Soave, m_of_omega
-from screener.equilibrium.eos import EQUATIONS, Equation, Mixture, attraction_at_critical, covolume
+from screener.equilibrium.at_temperature import AtTemperature, as_lanes, as_rows, distinct
+from screener.equilibrium.eos import EQUATIONS, Equation, attraction_at_critical, covolume
 from screener.equilibrium.mixing import VanDerWaals, interaction_matrix
 from screener.ground.constants import R
 from screener.ground.errors import InputError, ShapeError
@@ -158,7 +159,7 @@ class Fluid:
 
     def at(self, T):
         """Everything that depends on temperature alone, for T scalar or (n,). [K]"""
-        T, lanes = _distinct(T)
+        T, lanes = distinct(T)
         b_i = self.b_i
         with np.errstate(all="ignore"):
             RT = R * T
@@ -198,113 +199,46 @@ class Fluid:
         ------
         The module of the mixing rule in use.
         """
-        return self.at(T).ln_phi(_lanes(P), _rows(x), phase)
+        return self.at(T).ln_phi(as_lanes(P), as_rows(x), phase)
 
     def Z(self, T, P, x, phase: str):
         """Compressibility factor (n,) [-] of the equation of state, untranslated; arguments as `ln_phi`."""
-        return self.at(T).mix(_rows(x)).Z(_lanes(P), phase)
+        return self.at(T).mix(as_rows(x)).Z(as_lanes(P), phase)
 
     def volume(self, T, P, x, phase: str):
         """Translated molar volume (n,) [m3/mol]; arguments as `ln_phi`."""
-        return self.at(T).volume(_lanes(P), _rows(x), phase)
+        return self.at(T).volume(as_lanes(P), as_rows(x), phase)
 
     def ln_gamma(self, T, x):
         """Logarithm of the activity coefficients (n, c) [-] of the excess Gibbs energy model in use.
 
         NaN for a model without one.
         """
-        return self.at(T).ln_gamma(_rows(x))
+        return self.at(T).ln_gamma(as_rows(x))
 
     def molar_mass(self, x):
         """Mean molar mass (n,). [kg/mol]"""
-        return _rows(x) @ self.MW
+        return as_rows(x) @ self.MW
 
     def wilson_K(self, T, P):
         """First estimate of y/x (n, c) [-] at T (n,) [K] and P (n,) [Pa].
 
         Source: Wilson 1968, from memory, unverified; a start of iterations only.
         """
-        T, P = _lanes(T), _lanes(P)
+        T, P = as_lanes(T), as_lanes(P)
         return self.Pc / P[:, None] * np.exp(5.373 * (1.0 + self.omega) * (1.0 - self.Tc / T[:, None]))
 
     def psat(self, T):
         """Reference vapour pressures (n, c) [Pa] of the species; NaN where there is no curve."""
-        T = _lanes(T)
+        T = as_lanes(T)
         if self.vapour_pressure is None:
             return np.full((T.size, self.c), np.nan)
         return self.vapour_pressure(T)
 
     def lacks(self, x):
         """Mask (n,) of the lanes in which both species of a `missing` pair are present."""
-        x = _rows(x)
+        x = as_rows(x)
         lacking = np.zeros(x.shape[0], dtype=bool)
         for one, other in self.missing:
             lacking |= (x[:, self.names.index(one)] > 0.0) & (x[:, self.names.index(other)] > 0.0)
         return lacking
-
-
-@dataclass(frozen=True)
-class AtTemperature:
-    """A fluid at fixed temperatures T (n,), or one T for all lanes.
-
-    alpha_i (n, c) = a_i / (b_i R T) [-]; b_i (c,) and the volume translation
-    shift_i (n, c) [m3/mol]; mixing is the mixing rule at these temperatures.
-    """
-
-    fluid: Fluid
-    T: np.ndarray
-    alpha_i: np.ndarray
-    b_i: np.ndarray
-    mixing: object
-    shift_i: np.ndarray
-
-    def take(self, lanes) -> AtTemperature:
-        """The same for some of the lanes (indices or mask); one T for all lanes stays so."""
-        if self.T.size == 1:
-            return self
-        return AtTemperature(
-            self.fluid, self.T[lanes], self.alpha_i[lanes], self.b_i, self.mixing.take(lanes), self.shift_i[lanes]
-        )
-
-    def mix(self, x) -> Mixture:
-        """Mixtures of compositions x (c,) or (n, c): what pressure does not change."""
-        x = _rows(x)
-        with np.errstate(all="ignore"):
-            b = x @ self.b_i
-            alpha, abar = self.mixing.mix(x, b, self.b_i)
-            shift = np.einsum("nc,nc->n", *np.broadcast_arrays(x, self.shift_i))
-        return Mixture(self.fluid.equation.d, R * self.T, alpha, abar, b, self.b_i, shift)
-
-    def ln_phi(self, P, x, phase: str):
-        """ln phi (n, c) [-] at P (n,) [Pa] and composition x (n, c)."""
-        return self.mix(x).ln_phi(_lanes(P), phase)
-
-    def volume(self, P, x, phase: str):
-        """Translated molar volume (n,) [m3/mol] at P (n,) [Pa] and composition x (n, c)."""
-        return self.mix(x).volume(_lanes(P), phase)
-
-    def ln_gamma(self, x):
-        """ln gamma (n, c) [-] at composition x (n, c); NaN for a model without an excess Gibbs energy."""
-        with np.errstate(all="ignore"):
-            return self.mixing.ln_gamma(_rows(x))
-
-
-def _lanes(value):
-    """A scalar or (n,) array as float (n,)."""
-    return np.atleast_1d(np.asarray(value, dtype=float))
-
-
-def _rows(x):
-    """A composition (c,) or (n, c) as float (n, c)."""
-    return np.atleast_2d(np.asarray(x, dtype=float))
-
-
-def _distinct(T):
-    """Distinct temperatures and the lane index back to them, or all with None when few repeat."""
-    T = _lanes(T)
-    if T.size == 1:
-        return T, None
-    if (T == T[0]).all():
-        return T[:1], None
-    values, lanes = np.unique(T, return_inverse=True)
-    return (values, lanes) if values.size <= T.size // 2 else (T, None)

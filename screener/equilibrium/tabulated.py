@@ -23,14 +23,12 @@ def fluid_of(kind, names, model: str):
     found = tuple(species.find(name) for name in names)
     canonical = tuple(one.name for one in found)
     table = species.columns(canonical)
-    shared = dict(names=canonical, model=model, MW=table.MW, Tc=table.Tc, Pc=table.Pc, omega=table.omega)
-    shared.update(v_15=table.MW / table.rho_15, vapour_pressure=Curves(found))
-    if model in ("PR", "SRK"):
-        return kind(**shared, **_van_der_waals(canonical, model, table))
-    mixing, gaps, missing = _excess(canonical, table)
+    parts = _van_der_waals if model in ("PR", "SRK") else _peng_robinson_excess
+    equation, alpha, mixing, shift, gaps, missing = parts(canonical, model, table)
     return kind(
-        **shared, equation=EQUATIONS["PR"], alpha=_alpha(table), mixing=mixing, shift_0=table.c0, shift_1=table.c1,
-        gaps=gaps, missing=missing,
+        names=canonical, model=model, MW=table.MW, Tc=table.Tc, Pc=table.Pc, omega=table.omega, equation=equation,
+        alpha=alpha, mixing=mixing, shift_0=shift[0], shift_1=shift[1], v_15=table.MW / table.rho_15, gaps=gaps,
+        missing=missing, vapour_pressure=Curves(found),
     )
 
 
@@ -49,8 +47,8 @@ def _alpha(table) -> Twu:
     return Twu(table.Tc, table.L, table.M, table.N, table.C, table.D)
 
 
-def _excess(names, table):
-    """The PR-GE mixing rule, what fell back to zero, and the pairs that lack a parameter."""
+def _peng_robinson_excess(names, model: str, table):
+    """Parts of the PR-GE fluid: equation, alpha, mixing rule, translation, gaps, missing pairs."""
     from screener import species
 
     R_k, Q_k, main, a, b, c = species.group_tables(table.subgroups)
@@ -58,7 +56,8 @@ def _excess(names, table):
     A0, A1, A2, lacking = species.pair_terms(names)
     missing = tuple(tuple(pair) for pair in lacking) + _pairs_without_groups(names, table.groups, a)
     gaps = tuple(f"no parameter for {one} + {other}; taken as zero" for one, other in missing)
-    return ZeroPressure(Excess.of(unifac, A0, A1, A2)), gaps, missing
+    mixing = ZeroPressure(Excess.of(unifac, A0, A1, A2))
+    return EQUATIONS["PR"], _alpha(table), mixing, (table.c0, table.c1), gaps, missing
 
 
 def _pairs_without_groups(names, counts, a):
@@ -70,8 +69,8 @@ def _pairs_without_groups(names, counts, a):
     return tuple((names[i], names[j]) for i in range(c) for j in range(i, c) if touch[i, j])
 
 
-def _van_der_waals(names, model: str, table) -> dict:
-    """Equation, alpha, mixing rule, translation and gaps of the plain cubic equations."""
+def _van_der_waals(names, model: str, table):
+    """Parts of the plain cubic equations: equation, alpha, mixing rule, translation, gaps, nothing missing."""
     from screener import species
 
     kij, fallback = species.interactions(names, model)
@@ -79,14 +78,10 @@ def _van_der_waals(names, model: str, table) -> dict:
     gaps = tuple(f"k_ij of {one} + {other} in no table; taken as zero" for one, other in fallback)
     mixing = VanDerWaals(interaction_matrix(kij, len(names)))
     if model == "PR":
-        return dict(
-            equation=equation, alpha=_alpha(table), mixing=mixing, shift_0=table.c0, shift_1=table.c1, gaps=gaps
-        )
+        return equation, _alpha(table), mixing, (table.c0, table.c1), gaps, ()
     alpha = Soave(table.Tc, m_of_omega(table.omega, "SRK"))
     shift = _shift_at_15(equation, alpha, table)
-    return dict(
-        equation=equation, alpha=alpha, mixing=mixing, shift_0=shift, shift_1=np.zeros_like(shift), gaps=gaps
-    )
+    return equation, alpha, mixing, (shift, np.zeros_like(shift)), gaps, ()
 
 
 def _shift_at_15(equation, alpha, table):
