@@ -1,0 +1,67 @@
+"""A second liquid under or beside the first: found by the tangent plane of the answer.
+
+Group-contribution models predict that dry ethanol and C6 to C8 paraffins split
+near ambient temperature; that is held not to happen (common practice, no
+source). Such a prediction is reported in words and never takes the place of
+the vapour-liquid answer. A split in the presence of water or methanol is real.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+
+from screener.equilibrium.stability import tangent_plane
+
+DEPTH = 1e-8  # [-] tangent-plane distance over RT that counts: a hundred times the residual of the answer
+NOT_TESTED = "not tested for a second liquid"
+TESTED = "tangent plane"
+SPLITS = "tangent plane: a second liquid lowers the energy"
+DOUBTFUL = "tangent plane: the model splits dry ethanol and hydrocarbon, held not to exist"
+UNSETTLED = "tangent plane: a trial did not converge"
+
+
+def full_check(fluid, state, P, z, phase, ln_phi, K):
+    """Tangent plane of an answer against every start.
+
+    Parameters
+    ----------
+    fluid : Fluid
+        For the names of the species.
+    state : AtTemperature
+        The fluid at the temperatures of the lanes.
+    P : array, shape (n,)
+        Pressure. [Pa]
+    z : array, shape (n, c)
+        Feed. [-]
+    phase : array, shape (n, c)
+        One phase of the answer. [-]
+    ln_phi : array, shape (n, c)
+        Of that phase. [-]
+    K : array, shape (n, c)
+        Wilson's K-values. [-]
+
+    Returns
+    -------
+    tuple
+        The smallest distance (n,) [-], the mask (n,) of lanes in which a
+        second liquid is real, and the words (n,) for each lane.
+
+    Source
+    ------
+    Michelsen, Fluid Phase Equilib. 9 (1982) 1.
+    """
+    found = tangent_plane(state, P, phase, z, ln_phi, K, pures=True)
+    below = found.tpd < -DEPTH
+    doubtful = below & dry_ethanol(fluid, z)
+    text = np.where(found.converged, TESTED, UNSETTLED)
+    text = np.where(below, SPLITS, text)
+    return found.tpd, below & ~doubtful, np.where(doubtful, DOUBTFUL, text)
+
+
+def dry_ethanol(fluid, z):
+    """Mask (n,) of lanes that hold ethanol and neither water nor methanol."""
+
+    def holds(name):
+        return z[:, fluid.names.index(name)] > 0.0 if name in fluid.names else np.zeros(z.shape[0], dtype=bool)
+
+    return holds("ethanol") & ~holds("water") & ~holds("methanol")

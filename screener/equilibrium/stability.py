@@ -1,0 +1,234 @@
+"""Is a single phase stable? The tangent-plane test, many lanes and trials at once.
+
+A phase z splits if some composition w has a negative tangent-plane distance
+
+    tpd / RT = sum w [ln w + ln phi(w) - ln z - ln phi(z)].
+
+Its stationary points satisfy ln W = ln z + ln phi(z) - ln phi(w), w = W / sum W,
+and there tpd / RT = -ln sum W. They are sought from a vapour-like and a
+liquid-like start (Wilson's K, and its cube root) and from every pure component; the trials of all
+lanes run as one batch of lanes. The feed is held by its root of lower Gibbs
+energy; a trial keeps to one root, which can miss a negative distance on the
+other root but never invent one, and both roots are tried. Where its root
+vanishes on the way, the trial starts again on the root of lower Gibbs energy.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+
+from screener.equilibrium.fixed_point import solve
+from screener.equilibrium.phase import Feed
+from screener.equilibrium.results import TPD_ZERO, Stability, bad_status
+from screener.ground.shapes import lanes as as_lanes
+from screener.ground.status import Status
+
+TRIVIAL = 1e-5  # largest |ln w - ln z| of a trial that came back to the feed; its tpd is then below 1e-10
+PURE = 0.999  # share of the main component of a pure-component start; the rest is the feed
+REACH = 0.3  # longest accelerated step of a trial in ln W: a longer one can leap over a shallow minimum
+MOST_TRIAL = 80  # substitutions: next to a vanishing minimum they crawl, and Newton cannot help
+MOST_ROWS = 20_000  # trial lanes handled at once: bounds memory
+FEW = 1e-150  # a share below this would leave double precision in products
+
+
+class Trials:
+    """Trial phases of one kind: the fixed-point problem in ln W.
+
+    kind is 'L', 'V', or 'lower' for the root of lower Gibbs energy.
+    """
+
+    def __init__(self, state, P, d, present, kind: str):
+        self.state, self.P, self.d, self.present, self.kind = state, P, d, present, kind
+
+    def take(self, lanes) -> Trials:
+        """Some of the lanes."""
+        return Trials(self.state.take(lanes), self.P[lanes], self.d[lanes], self.present[lanes], self.kind)
+
+    def share(self, ln_W):
+        """w (n, c) [-], and ln sum W (n,) [-]."""
+        top = np.where(self.present, ln_W, -np.inf).max(axis=1)
+        W = np.where(self.present, np.exp(ln_W - top[:, None]), 0.0)
+        total = W.sum(axis=1)
+        return W / total[:, None], top + np.log(total)
+
+    def image(self, ln_W):
+        """ln z + ln phi(z) - ln phi(w)."""
+        w, _ = self.share(ln_W)
+        mixture = self.state.mix(w)
+        if self.kind != "lower":
+            return self.d - mixture.ln_phi(self.P, self.kind)
+        return self.d - np.where(self.liquid(w)[:, None], mixture.ln_phi(self.P, "L"), mixture.ln_phi(self.P, "V"))
+
+    def liquid(self, w):
+        """Mask (n,) of the lanes whose root is the smaller one."""
+        if self.kind != "lower":
+            return np.full(w.shape[0], self.kind == "L")
+        mixture = self.state.mix(w)
+        difference = mixture.ln_phi(self.P, "L") - mixture.ln_phi(self.P, "V")
+        return np.einsum("nc,nc->n", w, difference) <= 0.0
+
+
+def stability(fluid, T, P, z, *, pures=True) -> Stability:
+    """Tangent-plane test of a mixture as one phase.
+
+    Parameters
+    ----------
+    fluid : Fluid
+        Species constants and model parameters of c components.
+    T : float or array, shape (n,)
+        Temperature. [K]
+    P : float or array, shape (n,)
+        Pressure. [Pa]
+    z : array, shape (c,) or (n, c)
+        Mole fractions; each row sums to 1. [-]
+    pures : bool
+        Also start from every pure component present, which finds second
+        liquids; without them only the vapour-liquid pair of starts is tried.
+
+    Returns
+    -------
+    Stability
+        tpd (n,) [-] the smallest distance found, w (n, c) [-] where, kind 'L'
+        or 'V', reference, status. A lane with a trial that did not converge
+        is OUT_OF_STEPS unless another trial proves it unstable.
+
+    Raises
+    ------
+    ShapeError
+        z does not match the fluid, or rows do not broadcast with T and P.
+
+    Source
+    ------
+    Michelsen, Fluid Phase Equilib. 9 (1982) 1; pure-component starts: Li and
+    Firoozabadi, SPE J. 17 (2012) 1096.
+    """
+    z, T, P, good = as_lanes(fluid.c, z, T=T, P=P)
+    n, c = z.shape
+    status = bad_status(good)
+    status[good & fluid.lacks(z)] = Status.NO_PARAMETERS
+    found = Found(n, c)
+    reference = np.full(n, "", dtype="<U1")
+    work = np.flatnonzero(status == Status.OUT_OF_STEPS)
+    for some in np.array_split(work, max(1, -(-work.size * (c + 4) // MOST_ROWS))):
+        if some.size:
+            state = fluid.at(T[some])
+            feed = Feed(state, P[some], z[some])
+            reference[some] = np.where(feed.liquid, "L", "V")
+            part = tangent_plane(state, P[some], z[some], z[some], feed.ln_phi, fluid.wilson_K(T[some], P[some]), pures)
+            found.put(some, part)
+    settled = found.converged | (found.tpd < -TPD_ZERO)
+    status[work] = np.where(settled[work], int(Status.CONVERGED), int(Status.OUT_OF_STEPS))
+    return Stability(
+        T=T, P=P, z=z, tpd=found.tpd, w=found.w, kind=found.kind, reference=reference,
+        trials=4 + (c if pures else 0), status=status, iterations=found.iterations, residual=found.residual,
+    )
+
+
+class Found:
+    """Smallest tangent-plane distance over the trials so far, lane by lane.
+
+    ratio (n, c) [-] is W/z of that trial: the K-values (or their inverse) a
+    split would start from.
+    """
+
+    def __init__(self, n: int, c: int):
+        self.tpd = np.full(n, np.nan)
+        self.w = np.full((n, c), np.nan)
+        self.ln_W = np.full((n, c), np.nan)
+        self.kind = np.full(n, "", dtype="<U1")
+        self.iterations = np.zeros(n, dtype=int)
+        self.residual = np.zeros(n)
+        self.converged = np.ones(n, dtype=bool)
+
+    def put(self, lanes, part: Found) -> None:
+        """Fill some of the lanes from another."""
+        for name, value in vars(part).items():
+            getattr(self, name)[lanes] = value
+
+    def join(self, lanes, tpd, w, ln_W, kind, fixed) -> None:
+        """Take in one trial per lane."""
+        self.iterations[lanes] += fixed.iterations
+        self.residual[lanes] = np.maximum(self.residual[lanes], np.where(np.isfinite(tpd), fixed.residual, np.inf))
+        self.converged[lanes] &= fixed.converged | fixed.stopped
+        with np.errstate(invalid="ignore"):
+            better = np.isfinite(tpd) & ~(self.tpd[lanes] <= tpd)
+        here = lanes[better]
+        self.tpd[here], self.w[here], self.ln_W[here] = tpd[better], w[better], ln_W[better]
+        self.kind[here] = kind[better]
+
+
+def tangent_plane(state, P, z, around, ln_phi, K, pures: bool) -> Found:
+    """Smallest tangent-plane distance of a phase z.
+
+    Parameters
+    ----------
+    state : AtTemperature
+        The fluid at the temperatures of the lanes.
+    P : array, shape (n,)
+        Pressure. [Pa]
+    z : array, shape (n, c)
+        The phase tested. [-]
+    around : array, shape (n, c)
+        Composition the Wilson starts are made from: the feed. [-]
+    ln_phi : array, shape (n, c)
+        Of the phase tested. [-]
+    K : array, shape (n, c)
+        Wilson's K-values. [-]
+    pures : bool
+        Also start from every pure component.
+
+    Returns
+    -------
+    Found
+        The smallest distance, its composition and kind.
+
+    Source
+    ------
+    As `stability`.
+    """
+    n, c = z.shape
+    present = z > 0.0
+    ln_z = np.log(np.where(present, np.maximum(z, FEW), 1.0))
+    d = ln_z + ln_phi
+    ln_a = np.log(np.where(present, np.maximum(around, FEW), 1.0))
+    every = np.arange(n)
+    found = Found(n, c)
+    _try(found, every, Trials(state, P, d, present, "V"), ln_a + np.log(K), ln_z)
+    lanes = np.concatenate([every, every])
+    third = np.log(K) / 3.0
+    starts = np.concatenate([ln_a - np.log(K), ln_a - third])
+    _try(found, every, Trials(state, P, d, present, "V"), ln_a + third, ln_z)
+    if pures:
+        lane, i = np.nonzero(present)
+        main = np.repeat(np.log(np.maximum((1.0 - PURE) * z, FEW)), present.sum(axis=1), axis=0)
+        main[np.arange(lane.size), i] = np.log(PURE)
+        lanes, starts = np.concatenate([lanes, lane]), np.concatenate([starts, main])
+    _try(found, lanes, Trials(state, P, d, present, "L").take(lanes), starts, ln_z)
+    return found
+
+
+def _try(found, lanes, trials, start, ln_z):
+    """Run trials of one kind to their stationary points and take in what they found."""
+    fixed = solve(trials, start, trials.present, plain=MOST_TRIAL, reach=REACH)
+    lost = np.flatnonzero(~fixed.converged)
+    if lost.size:
+        lower = trials.take(lost)
+        lower.kind = "lower"
+        again = solve(lower, start[lost], lower.present, plain=MOST_TRIAL, reach=REACH)
+        for old, new in zip(fixed, again):
+            old[lost] = new
+    w, ln_total = trials.share(fixed.u)
+    liquid = trials.liquid(w)
+    if lost.size:
+        liquid[lost] = lower.liquid(w[lost])
+    away = np.where(trials.present, np.abs(fixed.u - ln_z[lanes]), 0.0).max(axis=1)
+    # A trial that came back to the feed has distance zero by definition, whatever rounding says.
+    tpd = np.where(away < TRIVIAL, 0.0, -ln_total)
+    usable = fixed.converged | (fixed.residual < 1e-6)  # next to a stationary point the distance is second order
+    tpd = np.where(usable, tpd, np.nan)
+    order = np.argsort(lanes, kind="stable")
+    position = np.arange(lanes.size) - np.searchsorted(lanes[order], lanes[order])  # nth trial of its lane
+    for k in range(int(position.max(initial=-1)) + 1):
+        row = order[position == k]
+        part = type(fixed)(*(v[row] for v in fixed))
+        found.join(lanes[row], tpd[row], w[row], fixed.u[row], np.where(liquid[row], "L", "V"), part)
