@@ -32,7 +32,9 @@ class Unifac:
     """Group counts folded into what the equations need.
 
     r, q, r_p (c,) volumes, surfaces and r^p, QN (c, M) surface by main group,
-    a, b, c (M, M) interaction parameters between main groups.
+    a, b, c (M, M) interaction parameters between main groups. Only components
+    with several main groups (their indices in `several`) have a residual part
+    when pure; kinds (k, M) are their distinct rows of QN, kind the row of each.
     """
 
     r: np.ndarray
@@ -42,6 +44,9 @@ class Unifac:
     a: np.ndarray
     b: np.ndarray
     c: np.ndarray
+    several: np.ndarray
+    kinds: np.ndarray
+    kind: np.ndarray
 
     @classmethod
     def of(cls, counts, R, Q, main, a, b=None, c=None, power: float = 0.75) -> Unifac:
@@ -83,18 +88,20 @@ class Unifac:
         fold = np.zeros((R.size, first.size))
         fold[np.arange(R.size), group] = 1.0
         pick = np.ix_(first, first)
-        r = counts @ R
-        return cls(r, counts @ Q, r**power, (counts * Q) @ fold, *(np.nan_to_num(m[pick]) for m in (a, b, c)))
+        r, QN = counts @ R, (counts * Q) @ fold
+        several = np.flatnonzero((QN > 0.0).sum(axis=1) > 1)
+        kinds, kind = np.unique(QN[several], axis=0, return_inverse=True)
+        a, b, c = (np.nan_to_num(m[pick]) for m in (a, b, c))
+        return cls(r, counts @ Q, r**power, QN, a, b, c, several, kinds, kind)
 
     def at(self, T) -> UnifacAt:
         """The temperature-only part for T (n,). [K]"""
         t = T[:, None, None]
         psi = np.exp(-(self.a / t + self.b + self.c * t))
-        has = self.q > 0.0
         pure = np.zeros((T.size, self.q.size))
-        theta = self.QN[has] / self.q[has][:, None]
-        g = _group_terms(theta, psi)
-        pure[:, has] = np.einsum("nim,im->ni", g, self.QN[has])
+        if self.several.size:
+            g = _group_terms(self.kinds / self.kinds.sum(axis=1, keepdims=True), psi)
+            pure[:, self.several] = np.einsum("nkm,km->nk", g, self.kinds)[:, self.kind]
         return UnifacAt(self, psi, pure)
 
 
