@@ -95,7 +95,7 @@ def extraterrestrial_insolation(latitude, day_of_year):
     return np.where(exists, np.maximum(total, 0.0), np.nan)
 
 
-def clear_sky_insolation(latitude, day_of_year, elevation=0.0):
+def clear_sky_insolation(latitude, *, day_of_year, elevation=0.0):
     """Daily sun on a horizontal plane at ground level under a cloudless sky.
 
     Parameters

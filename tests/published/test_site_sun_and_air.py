@@ -31,7 +31,7 @@ def test_ncl_rio_de_janeiro_in_may():
     # doubled because NCL works in single precision.
     assert middle_day(5) == 135
     assert extraterrestrial_insolation(-22.9, 135) == pytest.approx(25.111e6, abs=0.001e6)
-    assert clear_sky_insolation(-22.9, 135, 0.0) == pytest.approx(18.833e6, abs=0.001e6)
+    assert clear_sky_insolation(-22.9, day_of_year=135, elevation=0.0) == pytest.approx(18.833e6, abs=0.001e6)
 
 
 def test_standard_atmosphere_of_five_kilometres():

@@ -51,8 +51,8 @@ def test_hemispheres_mirror_but_for_the_distance_of_the_sun():
 def test_batch_equals_lane_by_lane():
     latitude = np.linspace(-80.0, 80.0, 9)
     day = np.arange(10, 100, 10)
-    batch = clear_sky_insolation(latitude, day, 500.0)
-    single = [float(clear_sky_insolation(a, b, 500.0)) for a, b in zip(latitude, day)]
+    batch = clear_sky_insolation(latitude, day_of_year=day, elevation=500.0)
+    single = [float(clear_sky_insolation(a, day_of_year=b, elevation=500.0)) for a, b in zip(latitude, day)]
     assert batch == pytest.approx(single, rel=1e-14)
     assert standard_pressure([0.0, 1500.0, 0.0])[1] == standard_pressure(1500.0)
 
@@ -60,7 +60,7 @@ def test_batch_equals_lane_by_lane():
 def test_outside_the_range_is_nan_and_the_other_lanes_stand():
     sun = extraterrestrial_insolation(np.array([91.0, 40.0, np.nan]), np.array([100, 0, 100]))
     assert np.isnan(sun).all()
-    assert np.isnan(clear_sky_insolation(40.0, 172, 7000.0))
+    assert np.isnan(clear_sky_insolation(40.0, day_of_year=172, elevation=7000.0))
     pressure = standard_pressure(np.array([9000.0, 100.0, np.nan]))
     assert np.isnan(pressure[[0, 2]]).all() and 1.0e5 < pressure[1] < 1.01325e5
 
