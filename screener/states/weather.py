@@ -24,7 +24,7 @@ import numpy as np
 
 from screener.site import clear_sky_insolation, lowest_barometer, middle_day, month_number
 from screener.states.inputs import Inputs
-from screener.tank import absorptance, daily_temperatures_2006, daily_temperatures_2020
+from screener.tank import absorptance, hottest_bulk, hottest_surface
 
 # Daily swing of the air on a hot day where no months are given: low, best, high [K].
 # Common practice, no source: listed as a default wherever it is used.
@@ -84,7 +84,9 @@ def _design_day(inputs: Inputs, month: np.ndarray, hottest: np.ndarray):
     known = (_pick(highs, month) - _pick(lows, month))[:, None]
     swing = np.where(np.isfinite(known), known, np.array(SWING_UNKNOWN)[None, ::-1])
     clear = clear_sky_insolation(
-        inputs["latitude"], np.where(np.isnan(inputs["elevation"]), 0.0, inputs["elevation"]), _design_day_number(inputs, month)
+        inputs["latitude"],
+        day_of_year=_design_day_number(inputs, month),
+        elevation=np.where(np.isnan(inputs["elevation"]), 0.0, inputs["elevation"]),
     )
     insolation = np.where(np.isnan(inputs["design_insolation"]), clear, inputs["design_insolation"])
     # A small swing keeps the nights warm: it belongs to the hot edge.
@@ -113,60 +115,56 @@ def _tank_columns(inputs: Inputs):
     return kinds, insulation, np.where(shaded[:, None], 0.5, alpha)
 
 
-def _edition_temperatures(inputs, kinds, insulation, alpha, high, low, sun):
-    """Surface maxima (n, 3) and vapour maxima (n,) by both editions, bulk (n, 3) by both."""
-    three = (slice(None), None)
-    shared = dict(roof=kinds[three], insulation=insulation[three])
+def _surface(inputs, kinds, insulation, alpha, high, low, sun):
+    """Hottest surface by both editions, lanes (n, 3) for the low, best and high paint and air."""
     buried = (kinds == "underground") & np.isfinite(inputs["reading"])
-    shared["bulk_temperature"] = np.where(buried, inputs["reading"], np.nan)[three]
-    ratio = (inputs["shell_height"] / inputs["shell_diameter"])[three]
-    old = daily_temperatures_2006(high, low, sun[three], alpha, alpha, **shared)
-    new = daily_temperatures_2020(high, low, sun[three], alpha, alpha, height_over_diameter=ratio, **shared)
-    return old, new
+    return hottest_surface(
+        high, low, sun[:, None], alpha, alpha,
+        height_over_diameter=(inputs["shell_height"] / inputs["shell_diameter"])[:, None],
+        roof=kinds[:, None],
+        insulation=insulation[:, None],
+        bulk_temperature=np.where(buried, inputs["reading"], np.nan)[:, None],
+    )  # fmt: skip
 
 
-def _widest(old, new):
-    """low, best, high (n, 3) of two estimates: the higher is best, the lower and the edges span the range.
+def _vapour_space(hottest) -> np.ndarray:
+    """Hottest vapour space (n,): daily mean plus half the daily range, the higher edition.
 
-    An edition that does not hold for the tank drops out; both missing is NaN.
+    The 2006 edition has no mean vapour temperature; its liquid surface stands in.
     """
-    both = np.stack([old, new])
-    best = np.fmax(old[:, 1], new[:, 1])
-    low, high = np.fmin(*both)[:, 0], np.fmax(*both)[:, 2]
-    return np.stack([np.minimum(low, np.fmin(old[:, 1], new[:, 1])), best, high], axis=1)
+    tops = []
+    for day in hottest.editions:
+        mean = np.where(np.isnan(day.vapour_mean), day.surface_mean, day.vapour_mean)
+        tops.append(np.broadcast_to(mean + day.vapour_range / 2.0, hottest.best.shape)[:, 1])
+    return np.fmax(*tops)
 
 
 def weather(inputs: Inputs) -> Weather:
     """Temperatures and air pressure of every case."""
-    n = len(inputs.cases)
     asked = [case.site.month and month_number(case.site.month) for case in inputs.cases]
     hottest = _hottest(inputs.months["mean_high"])
     month = np.array([a or h for a, h in zip(asked, hottest)]) * (hottest > 0)
     month_legal = _hottest(inputs.months["mean"])
     high, low, sun = _design_day(inputs, month, hottest)
     kinds, insulation, alpha = _tank_columns(inputs)
-    old, new = _edition_temperatures(inputs, kinds, insulation, alpha, high, low, sun)
-    estimate = _widest(old.surface_maximum, new.surface_maximum)
-    bulk = _widest(old.bulk, new.bulk)
+    hot = _surface(inputs, kinds, insulation, alpha, high, low, sun)
+    estimate = np.stack([hot.low[:, 0], hot.best[:, 1], hot.high[:, 2]], axis=1)
+    bulk = hottest_bulk(inputs.months["mean"][:, None, :], alpha, alpha, inputs.months["insolation"][:, None, :])
     reading = inputs["reading"][:, None] + np.array([-READING_SPREAD, 0.0, READING_SPREAD])
     read = np.isfinite(reading[:, 1])
     surface = np.where(read[:, None], reading, estimate)
     surface[:, 2] = np.where(read, np.fmax(surface[:, 2], estimate[:, 2]), surface[:, 2])
-    space = np.fmax(
-        old.surface_mean[:, 1] + old.vapour_range[:, 1] / 2.0,
-        np.where(np.isnan(new.vapour_mean), new.surface_mean, new.vapour_mean)[:, 1] + new.vapour_range[:, 1] / 2.0,
-    )
     given = inputs["vapour_space_temperature"]
     return Weather(
         barometer=_barometer(inputs),
         T_surface=surface,
         T_estimate=estimate,
-        T_bulk=bulk,
+        T_bulk=np.stack([bulk.low[:, 0], bulk.best[:, 1], bulk.high[:, 2]], axis=1),
         T_legal=_pick(inputs.months["mean"], month_legal),
-        T_space=np.where(np.isnan(given), space, given),
+        T_space=np.where(np.isnan(given), _vapour_space(hot), given),
         month=month,
         month_legal=month_legal,
-        editions=np.stack([old.surface_maximum[:, 1], new.surface_maximum[:, 1]], axis=1).reshape(n, 2),
+        editions=np.stack([day.surface_maximum[:, 1] for day in hot.editions], axis=1),
         absorptance=alpha,
         air_high=high[:, 1],
         air_low=low[:, 1],
