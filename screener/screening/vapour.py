@@ -137,13 +137,13 @@ def hottest(context: Context, rule: Rule | None) -> Draft:
 
 
 def _rule_fields(key: str, rule: Rule) -> dict:
-    return dict(
-        id=f"{key}.{rule.pack}",
-        title=f"{criterion(key).title} ({rule.pack})",
-        evidence=rule.evidence,
-        source=rule.source,
-        sources=rule.source_keys,
-    )
+    return {
+        "id": f"{key}.{rule.pack}",
+        "title": f"{criterion(key).title} ({rule.pack})",
+        "evidence": rule.evidence,
+        "source": rule.source,
+        "sources": rule.source_keys,
+    }
 
 
 def receipt(context: Context) -> Draft:

@@ -13,13 +13,14 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.blends import density_at, union
+from screener.blends import mix, union
 from screener.equilibrium import Fluid, bubble_pressure, flash_tp
 from screener.ground.status import Status
 from screener.species import find
 from screener.states.inputs import Inputs
 from screener.states.weather import Weather
-from screener.tank import liquid_volume
+from screener.tank import horizontal_liquid_volume, vertical_liquid_volume
+from screener.volatility import liquid_expansion, standard_density
 
 LIQUIDS = (("receipt", ""), ("heel", ""), ("mixture", "low"), ("mixture", "normal"), ("mixture", "high"))
 RECEIPT, HEEL, LOW, NORMAL, HIGH = range(5)
@@ -37,7 +38,7 @@ SPREAD_COUNTED = 0.03  # disagreement of pure vapour-pressure curves above this 
 class Lanes:
     """The table of lanes of n cases over c species.
 
-    z (n, 5, c) [-]; MW (n, 5) [kg/mol]; rho_15 (n, 5) [kg/m3]; level (n, 5) [m];
+    z (n, 5, c) [-]; level (n, 5) at which each liquid is judged [m];
     present (n, 5); T_own (n, 5) temperature the liquid brings along [K];
     T_hot (n, 5, 3) hottest liquid [K]; P_hot, P_hot_low, P_hot_high (n, 5) its
     bubble pressure with range [Pa]; P_legal (n, 5, 3) [Pa]; P_receipt (n, 3)
@@ -51,8 +52,6 @@ class Lanes:
     fluid: Fluid
     names: tuple[str, ...]
     z: np.ndarray
-    MW: np.ndarray
-    rho_15: np.ndarray
     level: np.ndarray
     present: np.ndarray
     T_own: np.ndarray
@@ -78,49 +77,51 @@ def _any_air(cases) -> bool:
 
 
 def _compositions(cases):
-    """Compositions, molar masses and densities of receipt and heel on one species list."""
+    """names (c,), composition (2, n, c) of receipt and heel, and which cases have a heel (n,)."""
     blends = [case.blend for case in cases]
     heels = [case.tank.contents.blend if case.tank.contents else case.blend for case in cases]
-    names, Z = union(blends + heels, extra=AIR if _any_air(cases) else ())
-    n = len(cases)
+    names, Z = union(blends + heels)
+    extra = [name for name in AIR if name not in names] if _any_air(cases) else []
+    Z = np.pad(Z, ((0, 0), (0, len(extra))))
     has_heel = np.array([case.tank.contents is not None for case in cases])
-    MW = np.array([b.MW for b in blends + heels])
-    rho = np.array([b.density_15 for b in blends + heels])
-    group = np.array([b.volume_group for b in blends + heels])
-    return names, Z[:n], Z[n:], MW.reshape(2, n), rho.reshape(2, n), group.reshape(2, n), has_heel
+    return names + tuple(extra), Z.reshape(2, len(cases), -1), has_heel
 
 
-def _mixtures(inputs, Z, MW, rho, group, has_heel):
-    """Receipt, heel and mixtures at three levels: z, MW, rho_15, T_own, present.
+def _filled(inputs) -> np.ndarray:
+    """Liquid volume (n, 3) with the tank at its low, normal and high level. [m3]"""
+    levels = np.stack([inputs["level_low"], inputs["level_normal"], inputs["level_high"]], axis=1)
+    lying = np.isfinite(inputs["tank_length"])[:, None]
+    D, length = inputs["shell_diameter"][:, None], inputs["tank_length"][:, None]
+    upright = vertical_liquid_volume(D, inputs["shell_height"][:, None], levels)
+    return np.where(lying, horizontal_liquid_volume(D, np.where(lying, length, 1.0), levels), upright)
+
+
+def _mixtures(inputs, fluid, Z, has_heel):
+    """z (n, 5, c), T_own (n, 5) and present (n, 5) of receipt, heel and their mixtures.
 
     The receipt is filled on the heel until the level stands at low, normal and
-    high. Volumes become moles through the density at each liquid's own
-    temperature, so no volume change of mixing is assumed; the mixture's
-    temperature is the mass-weighted mean of the two.
+    high; where the heel alone stands above a level, the lane of that level is
+    heel alone. Volumes at tank temperature become standard volumes by the
+    volume correction of the trade; standard volumes add without shrinkage. The
+    mixture's temperature is the mean weighted by heat capacity taken as equal
+    per mass.
     """
-    n, c = Z[0].shape
+    n = len(has_heel)
     T_r, T_h = inputs["receipt_temperature"], inputs["heel_temperature"]
-    levels = np.stack([inputs["level_low"], inputs["level_normal"], inputs["level_high"]], axis=1)
-    heel_volume = np.where(has_heel, inputs["heel_volume"], 0.0)
-    filled = liquid_volume(inputs["shell_diameter"][:, None], levels)
-    received = np.maximum(filled - heel_volume[:, None], 0.0)
-    mass_r = received * density_at(rho[0], T_r, group[0])[:, None]
-    mass_h = np.minimum(heel_volume[:, None], filled) * np.where(has_heel, density_at(rho[1], T_h, group[1]), 0.0)[:, None]
-    moles_r, moles_h = mass_r / MW[0][:, None], mass_h / MW[1][:, None]
-    share = moles_r / (moles_r + moles_h)
-
-    z = np.empty((n, 5, c))
+    heel_volume = np.where(has_heel, inputs["heel_volume"], np.nan)[:, None]
+    filled = _filled(inputs)
+    received = np.maximum(filled - heel_volume, 0.0) / liquid_expansion(fluid, T_r, Z[0])[:, None]
+    left = np.minimum(heel_volume, filled) / liquid_expansion(fluid, T_h, Z[1])[:, None]
+    z = np.empty((n, 5, fluid.c))
     z[:, RECEIPT], z[:, HEEL] = Z
-    z[:, LOW:] = share[..., None] * Z[0][:, None, :] + (1.0 - share)[..., None] * Z[1][:, None, :]
-    mass_share = mass_r / (mass_r + mass_h)
-    T_own = np.column_stack([T_r, T_h, mass_share * T_r[:, None] + (1.0 - mass_share) * T_h[:, None]])
-    MW5 = np.column_stack([MW[0], MW[1], share * MW[0][:, None] + (1.0 - share) * MW[1][:, None]])
-    # Standard volumes add: the specific volumes at 15 degC are weighted by mass.
-    rho5 = np.column_stack(
-        [rho[0], rho[1], 1.0 / (mass_share / rho[0][:, None] + (1.0 - mass_share) / rho[1][:, None])]
-    )
-    present = np.column_stack([np.ones(n, bool), has_heel, np.repeat(has_heel[:, None], 3, axis=1)])
-    return z, MW5, rho5, T_own, present
+    for k in range(3):
+        z[:, LOW + k] = mix(fluid.names, Z[0], received[:, k], Z[1], left[:, k])
+    mass_r = received * standard_density(fluid, Z[0])[:, None]
+    mass_h = left * standard_density(fluid, Z[1])[:, None]
+    share = mass_r / (mass_r + mass_h)
+    T_own = np.column_stack([T_r, T_h, share * T_r[:, None] + (1.0 - share) * T_h[:, None]])
+    present = np.column_stack([np.ones(n, bool), np.repeat(has_heel[:, None], 4, axis=1)])
+    return z, T_own, present
 
 
 def _bubble(fluid, T, z, mask):
@@ -159,9 +160,9 @@ def _hottest_liquid(weather: Weather, T_own, has_receipt):
 def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     """Work out every liquid of every case: compositions, bubble pressures, the receipt's flash."""
     cases = inputs.cases
-    names, Z_r, Z_h, MW, rho, group, has_heel = _compositions(cases)
+    names, Z, has_heel = _compositions(cases)
     fluid = Fluid.of(names)
-    z, MW5, rho5, T_own, present = _mixtures(inputs, (Z_r, Z_h), MW, rho, group, has_heel)
+    z, T_own, present = _mixtures(inputs, fluid, Z, has_heel)
     has_receipt = np.array([case.line.receipt is not None for case in cases])
     T_hot = _hottest_liquid(weather, T_own, has_receipt)
     known = present & np.isfinite(z).all(axis=-1)
@@ -181,7 +182,7 @@ def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     statuses = np.concatenate([status_hot[asked_hot], status_legal[asked_legal], status_receipt[asked_receipt]])
     level = np.column_stack([inputs[k] for k in ("level_low", "level_low", "level_low", "level_normal", "level_high")])
     return Lanes(
-        inputs, weather, fluid, names, z, MW5, rho5, level, present, T_own, T_hot, P_hot, y[:, :, BEST],
+        inputs, weather, fluid, names, z, level, present, T_own, T_hot, P_hot, y[:, :, BEST],
         status_hot, weather.T_legal, P_legal, status_legal, P_receipt, status_receipt, beta, beta_gas, y_receipt,
         status_flash, float(np.nanmax(residuals, initial=0.0)), int((statuses != Status.CONVERGED).sum()),
     )  # fmt: skip

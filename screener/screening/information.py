@@ -1,0 +1,46 @@
+"""Context printed with a result and judged by nobody: the fuel's own figures and class."""
+
+from __future__ import annotations
+
+import math
+
+from screener.blends import volatility_sheet
+from screener.screening.context import Context
+from screener.screening.finding import Fact, Information
+from screener.screening.wording import say
+from screener.volatility import class_standards
+
+GASOLINE_LIKE = (2.0e4, 1.3e5)  # DVPE between which a class of motor fuel is worth naming; no limit [Pa]
+
+
+def information(context: Context) -> tuple[Information, ...]:
+    """Figures of the receipt and, where there is one, of the heel."""
+    case = context.case
+    rows = [_figures(context.liquid_name(0), case.blend, case.fuel_class)]
+    if case.tank.contents is not None:
+        rows.append(_figures("heel", case.tank.contents.blend, ""))
+    return tuple(rows)
+
+
+def _figures(name: str, blend, claimed: str) -> Information:
+    sheet = volatility_sheet(blend)
+    facts = [
+        Fact("density at 15 degC", sheet.density_15, "kg/m3"),
+        Fact("DVPE (37.8 degC, ASTM D5191)", sheet.DVPE, "Pa"),
+        Fact("true vapour pressure at 37.8 degC", sheet.TVP, "Pa"),
+        Fact("temperature for V/L 20", sheet.T20, "K", say("note", "information")),
+        Fact("evaporated at 70 degC", sheet.E70, "vol/vol"),
+        Fact("evaporated at 100 degC", sheet.E100, "vol/vol"),
+        Fact("T50", sheet.T50, "K"),
+    ]
+    facts = [fact for fact in facts if math.isfinite(fact.value)]
+    if GASOLINE_LIKE[0] < sheet.DVPE < GASOLINE_LIKE[1]:
+        for standard in class_standards():
+            met = [match for match in sheet.classes(standard) if match.met]
+            names = ", ".join(match.name for match in met) or "none"
+            marks = ", ".join(dict.fromkeys(match.evidence for match in met))
+            note = f"class limits {marks}, edition {met[0].edition}" if met else ""
+            facts.append(Fact(f"{standard} classes whose listed limits hold", names, "", note))
+    if claimed:
+        facts.append(Fact("class claimed in the case", claimed))
+    return Information(f"{name}: {blend.title}", tuple(facts), say("note", "information"))

@@ -1,0 +1,60 @@
+"""Assumptions, reservations and sources of one case, as sentences."""
+
+from __future__ import annotations
+
+import math
+
+from screener.screening.context import Context
+from screener.screening.finding import Finding
+from screener.screening.wording import say
+
+
+def assumptions(context: Context) -> tuple[str, ...]:
+    """What was taken for granted: defaults of the case file, and what the states fell back on."""
+    case = context.case
+    rows = [f"{echo.path}: {echo.note}" for echo in case.inputs if echo.quality == "default" and echo.note]
+    if math.isnan(context.input("lowest_barometer")) and math.isfinite(context.barometer):
+        rows.append(say("assumed", "barometer", value=f"{context.barometer / 1000.0:.1f} kPa"))
+    if not case.site.months and not math.isnan(context.input("ambient_high")):
+        rows.append(say("assumed", "swing"))
+    if math.isnan(context.input("design_insolation")) and math.isfinite(context.lanes.weather.insolation[context.i]):
+        rows.append(say("assumed", "insolation"))
+    if case.site.months and case.site.liquid_temperature is None:
+        rows.append(say("assumed", "design-day"))
+    if case.tank.surface:
+        rows.append(say("assumed", "paint", text=case.tank.surface, note=paint_note(case.tank.surface)))
+    rows += list(case.blend.report.assumed)
+    if case.tank.contents is not None:
+        rows += [f"heel: {text}" for text in case.tank.contents.blend.report.assumed]
+    return tuple(dict.fromkeys(rows))
+
+
+def paint_note(text: str) -> str:
+    """What the paint text was taken to mean."""
+    from screener.tank import absorptance
+
+    found = absorptance(text)
+    words = f"{found.row} {found.condition}".strip()
+    return f"{words}, absorptance {found.best:.2f} ({found.low:.2f} to {found.high:.2f})"
+
+
+def reservations(context: Context) -> tuple[str, ...]:
+    """What weakens the result: failed lanes, parameters that fell back, spread of pure data."""
+    lanes = context.lanes
+    rows = []
+    if lanes.failed:
+        rows.append(say("reserved", "failed", count=lanes.failed))
+    if lanes.fluid.gaps:
+        rows.append(say("reserved", "gaps", pairs="; ".join(lanes.fluid.gaps[:12])))
+    rows.append(say("reserved", "second-liquid"))
+    rows.append(say("reserved", "residual", value=f"{lanes.worst_residual:.1e}"))
+    return tuple(rows)
+
+
+def sources(context: Context, findings: tuple[Finding, ...]) -> tuple[str, ...]:
+    """Sources the case touched: of every finding and of the blends."""
+    rows = [key for finding in findings for key in finding.sources]
+    rows += list(context.case.blend.report.sources)
+    if context.case.tank.contents is not None:
+        rows += list(context.case.tank.contents.blend.report.sources)
+    return tuple(dict.fromkeys(rows))

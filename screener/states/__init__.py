@@ -1,0 +1,1 @@
+"""Floor 6: a case becomes one table of lanes; every quantity behind a finding is a function of it."""
