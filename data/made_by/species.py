@@ -1,0 +1,197 @@
+"""Makes the tables of data/species, data/groups and data/pairs/kij.csv, with their passports.
+
+Run from the top folder (needs thermo and chemicals, no network):
+
+    python data/made_by/species.py
+
+To add a species: add a row to data/species/identity.csv (CAS number, canonical name, family,
+synonyms separated by semicolons) and run this. The script stops with the reason when no
+vapour-pressure curve, density, heat capacity or critical point is to be had; then the
+species cannot be used as itself, and a row of data/species/stand_ins.csv may name another
+that stands for it. Hand choices are in `PREFER`, `GROUPS_BY_HAND` and `ISOMER` below, each with its reason.
+"""
+
+from __future__ import annotations
+
+import csv
+import sys
+from pathlib import Path
+
+import numpy as np
+
+DATA = Path(__file__).resolve().parents[1]
+sys.path.insert(0, str(DATA.parent))
+
+import species_passports
+
+from screener.species import build, forms, library
+
+PREFER = {  # CAS -> curve taken against the rule
+    "95-93-2": "ANTOINE_POLING",  # durene: the other curve below 352 K is of the solid
+}
+GROUPS_BY_HAND = {  # CAS -> subgroups, where the assignment table has none; checked by the atom balance
+    "112-63-0": {1: 2, 2: 11, 6: 2, 22: 1},  # methyl linoleate, as methyl oleate with one CH2-CH2 turned CH=CH
+    "301-00-8": {1: 2, 2: 9, 6: 3, 22: 1},  # methyl linolenate, likewise
+}
+ISOMER = {}  # CAS -> straight-chain isomer that lends its density
+FIRE_SOURCES = {"iec-60079-20-1": "IEC 60079-20-1 (2010)", "nfpa-497": "NFPA 497 (2008)"}
+BAD_FIRE = {  # (CAS, source): rows of the open tables that are wrong (see the passport)
+    ("78-83-1", "nfpa-497"),
+    ("1634-04-4", "nfpa-497"),
+    ("109-67-1", "nfpa-497"),
+}
+
+
+def text(value) -> str:
+    """A number with the digits the fit carries, or the word itself."""
+    if value is None:
+        return ""
+    return f"{value:.10g}" if isinstance(value, (float, np.floating)) else str(value)
+
+
+def write(name: str, columns: list[str], rows: list[dict]) -> None:
+    """Write one table."""
+    with (DATA / name).open("w", encoding="utf-8", newline="") as file:
+        out = csv.writer(file, lineterminator="\n")
+        out.writerow(columns)
+        out.writerows([[text(row[column]) for column in columns] for row in rows])
+    print(f"{name}: {len(rows)} rows")
+
+
+def identity() -> list[dict]:
+    """Rows of the table kept by hand."""
+    with (DATA / "species/identity.csv").open(encoding="utf-8", newline="") as file:
+        return list(csv.DictReader(file))
+
+
+def one(row: dict) -> dict[str, dict]:
+    """All table rows of one species."""
+    cas, name = row["cas"], row["name"]
+    _, formula, smiles, inchi_key, MW = library.identity(cas)
+    Tc, Pc, words, Tc_spread = library.critical(cas)
+    Tb = library.boiling_point(cas)
+    curve = build.choose_vapour_pressure(cas, Tc, Pc, Tb, PREFER.get(cas))
+    alpha, mean, worst = build.fit_alpha(curve, Tc, Pc)
+    T, rho, method, source, note = build.choose_density(cas, MW, Tc, Pc)
+    shift, shift_mean, shift_worst, density = build.fit_density(T, rho, MW, Tc, Pc, alpha, curve)
+    rho_15, rho_note = build.density_at_15(cas, MW, Tc, Pc, Tb, density)
+    cp, cp_method, cp_source, cp_miss = build.fit_cp(cas, MW)
+    groups = GROUPS_BY_HAND.get(cas) or library.group_counts(inchi_key)
+    head = {"cas": cas, "name": name}
+    omega = -np.log10(forms.psat(curve.coefficients, 0.7 * Tc) / Pc) - 1.0
+    return {
+        "constants": head | {
+            "formula": formula, "smiles": smiles, "MW": MW, "Tc": Tc, "Pc": Pc, "omega": round(float(omega), 6),
+            "Tb": Tb, "Tc_source": words[0], "Pc_source": words[1], "Tc_spread": round(Tc_spread, 5),
+        },
+        "alpha": head | dict(zip("LMNCD", alpha)) | {"mean_error": round(mean, 6), "worst_error": round(worst, 6)},
+        "vapour_pressure": head | {f"c{i}": repr(float(c)) for i, c in enumerate(curve.coefficients)} | {
+            "T_low": round(curve.T_low, 3), "T_high": round(curve.T_high, 3), "method": curve.method,
+            "source": curve.source, "source_low": round(curve.source_low, 2),
+            "source_high": round(curve.source_high, 2), "fit_error": round(curve.fit_error, 6),
+            "spread": None if curve.spread is None else round(curve.spread, 5),
+            "extension": round(curve.extension, 5), "note": curve.note,
+        },
+        "translation": head | {
+            "c0": shift[0], "c1": shift[1], "mean_error": round(shift_mean, 6),
+            "worst_error": round(shift_worst, 6), "T_low": round(T[0], 2), "T_high": round(T[-1], 2),
+        },
+        "liquid_density": head | {f"d{i}": float(d) for i, d in enumerate(density)} | {
+            "T_low": round(T[0], 2), "T_high": round(T[-1], 2), "rho_15": round(rho_15, 3),
+            "method": method, "source": source, "note": "; ".join(filter(None, (note, rho_note))),
+        },
+        "cp_ideal": head | {f"a{i}": float(a) for i, a in enumerate(cp)} | {
+            "method": cp_method, "source": cp_source, "fit_error": round(cp_miss, 6),
+        },
+        "groups": head | {
+            "groups": " ".join(f"{k}:{n}" for k, n in sorted(groups.items())),
+            "origin": "by hand" if cas in GROUPS_BY_HAND else "library",
+        },
+    }  # fmt: skip
+
+
+def fire(cas: str, name: str) -> dict | None:
+    """Flash point and flammable limits: IEC 60079-20-1 first, NFPA 497 second, nothing else."""
+    import chemicals
+
+    row = {"cas": cas, "name": name}
+    for column, get, listed in (
+        ("flash_point", chemicals.T_flash, chemicals.T_flash_methods),
+        ("LFL", lambda c, method: chemicals.LFL(CASRN=c, method=method), lambda c: chemicals.LFL_methods(CASRN=c)),
+        ("UFL", lambda c, method: chemicals.UFL(CASRN=c, method=method), lambda c: chemicals.UFL_methods(CASRN=c)),
+    ):
+        row[column], row[f"{column}_source"] = None, ""
+        for key, method in FIRE_SOURCES.items():
+            if method in listed(cas) and (column != "flash_point" or (cas, key) not in BAD_FIRE):
+                row[column], row[f"{column}_source"] = float(get(cas, method=method)), key
+                break
+    return row if any(row[c] is not None for c in ("flash_point", "LFL", "UFL")) else None
+
+
+def group_tables(used: set[int]) -> None:
+    """Subgroups and interactions of modified UNIFAC (Dortmund) for the elements C, H, O."""
+    from thermo import unifac
+
+    unifac.load_unifac_ip()
+    atoms = species_passports.ATOMS
+    missing = used - set(atoms)
+    if missing:
+        raise SystemExit(f"subgroups without atoms: {sorted(missing)}")
+    rows = [
+        {
+            "subgroup": k, "formula": unifac.DOUFSG[k].group, "main": unifac.DOUFSG[k].main_group_id,
+            "main_name": unifac.DOUFSG[k].main_group, "R": unifac.DOUFSG[k].R, "Q": unifac.DOUFSG[k].Q,
+            "C": c, "H": h, "O": o,
+        }
+        for k, (c, h, o) in sorted(atoms.items())
+    ]  # fmt: skip
+    write("groups/subgroups.csv", list(rows[0]), rows)
+    mains = sorted({row["main"] for row in rows})
+    table = [
+        {"main_i": i, "main_j": j, "a": abc[0], "b": abc[1], "c": abc[2]}
+        for i in mains
+        for j in mains
+        if i != j and (abc := unifac.DOUFIP2016[i].get(j)) is not None
+    ]
+    write("groups/interactions.csv", list(table[0]), table)
+
+
+def kij(names: dict[str, str]) -> None:
+    """Interaction parameters of plain Peng-Robinson; values out of family kept but not used."""
+    from thermo.interaction_parameters import IPDB
+
+    found = next(table for key, table in IPDB.tables.items() if key.endswith(" PR"))
+    rows = []
+    for key, value in found.items():
+        i, j = sorted(key.split(), key=lambda cas: list(names).index(cas) if cas in names else -1)
+        if i in names and j in names:
+            rows.append({"cas_i": i, "cas_j": j, "name_i": names[i], "name_j": names[j], "kij": float(value["kij"])})
+    for row in rows:
+        family = [r["kij"] for r in rows if r["cas_i"] == row["cas_i"] and r is not row]
+        far = abs(row["kij"] - np.median(family)) > 0.25 if family else abs(row["kij"]) > 0.2
+        row |= {"eos": "PR", "used": 0 if far else 1, "reason": "out of family: more than 0.25 off" if far else ""}
+    rows.sort(key=lambda r: (list(names).index(r["cas_i"]), list(names).index(r["cas_j"])))
+    write("pairs/kij.csv", ["eos", "cas_i", "cas_j", "name_i", "name_j", "kij", "used", "reason"], rows)
+
+
+def main() -> None:
+    """Remake everything."""
+    rows, faults = [], []
+    for row in identity():
+        try:
+            rows.append(one(row))
+        except LookupError as error:
+            faults.append(f"{row['name']}: {error}")
+    if faults:
+        raise SystemExit("not to be had:\n" + "\n".join(faults))
+    for table in rows[0]:
+        write(f"species/{table}.csv", list(rows[0][table]), [row[table] for row in rows if row[table].get("groups") != ""])
+    flames = [f for f in (fire(row["cas"], row["name"]) for row in identity()) if f]
+    write("species/flammability.csv", list(flames[0]), flames)
+    group_tables({int(p.split(":")[0]) for row in rows for p in row["groups"]["groups"].split()})
+    kij({row["cas"]: row["name"] for row in identity()})
+    species_passports.write_all(DATA, rows)
+
+
+if __name__ == "__main__":
+    main()

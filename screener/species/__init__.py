@@ -1,0 +1,34 @@
+"""Floor 1: species records, group tables and interaction parameters, each number with a source.
+
+The only floor that opens the property tables (data/species, data/groups, data/pairs).
+A missing value is an error, never a default.
+"""
+
+from screener.species.catalogue import Columns, columns, find, names, stand_in
+from screener.species.forms import alpha
+from screener.species.groups import group_tables
+from screener.species.pairs import interactions, pair_terms
+from screener.species.record import Curve, Limit, Species
+
+__all__ = [
+    "Columns",
+    "Curve",
+    "Limit",
+    "Species",
+    "alpha",
+    "columns",
+    "find",
+    "find_live",
+    "group_tables",
+    "interactions",
+    "names",
+    "pair_terms",
+    "stand_in",
+]
+
+
+def find_live(text: str) -> Species:
+    """A species outside the table, fitted now from the property libraries; see `screener.species.live`."""
+    from screener.species.live import find_live
+
+    return find_live(text)

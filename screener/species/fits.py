@@ -1,0 +1,86 @@
+"""Fits of the functional forms to chosen curves. Deterministic, NumPy only."""
+
+from __future__ import annotations
+
+import numpy as np
+
+from screener.species import forms, pure
+
+FALLING = np.geomspace(150.0, 2500.0, 60)  # [K] alpha must fall from each of these to the next; our choice
+TWU_ENOUGH = 0.0015  # largest relative error in vapour pressure up to which three constants are kept; our choice
+
+
+def psat_coefficients(T, P, digits=13):
+    """Six coefficients of ln P fitted to points T [K], P [Pa], and the largest relative error [-]."""
+    basis, ln_P = forms.psat_basis(T), np.log(P)
+    size = np.abs(basis).max(axis=0)
+    solution = np.linalg.lstsq(basis / size, ln_P, rcond=1e-13)[0] / size
+    solution = np.array([float(f"{c:.{digits}g}") for c in solution])
+    return solution, float(np.max(np.abs(np.expm1(basis @ solution - ln_P))))
+
+
+def alpha_constants(T, P, Tc, Pc, weight):
+    """Alpha constants L, M, N, C, D [-] that reproduce points T [K], P [Pa] of a vapour-pressure curve.
+
+    The alpha that makes the equation saturate exactly is found at each point; then
+    ln alpha = -h ln Tr + L (1 - Tr^g) [+ C s^3 + D s^4] is linear in all but g, and g is
+    searched on a line among the values that let alpha fall with temperature everywhere.
+    Each point counts by its weight [-] and by what an error of alpha does to the vapour
+    pressure there. C and D stay zero where three constants are enough.
+    """
+    Tr = np.asarray(T) / Tc
+    exact, sensitivity = pure.alpha_at_saturation(Tr, np.asarray(P) / Pc)
+    good = np.isfinite(exact) & np.isfinite(sensitivity)
+    Tr, ln_alpha, sensitivity, weight = Tr[good], np.log(exact[good]), sensitivity[good], weight[good]
+    for terms in (2, 4):
+        _, error, constants = _search(Tr, ln_alpha, sensitivity, weight, FALLING / Tc, terms)
+        if error <= TWU_ENOUGH:
+            break
+    return constants
+
+
+def _alpha_basis(Tr, g, terms):
+    s = np.maximum(1.0 - Tr, 0.0)
+    return np.stack([-np.log(Tr), 1.0 - Tr**g, s**3, s**4][:terms], axis=1)
+
+
+def _search(Tr, ln_alpha, sensitivity, weight, falling, terms):
+    """Best exponent g on successively finer lines: sum of squares, largest error, constants."""
+
+    def solve(g):
+        basis = _alpha_basis(Tr, g, terms)
+        w = weight * sensitivity
+        solution = np.linalg.lstsq(basis * w[:, None], ln_alpha * w, rcond=1e-12)[0]
+        miss = (basis @ solution - ln_alpha) * sensitivity
+        rises = np.any(np.diff(_alpha_basis(falling, g, terms) @ solution) > 0.0)
+        return (np.inf if rises else float(np.sum((miss * weight) ** 2))), float(np.abs(miss).max()), g, solution
+
+    grid = np.geomspace(0.1, 6.0, 60)
+    for _ in range(5):
+        tried = [solve(g) for g in grid]
+        best = int(np.argmin([t[0] for t in tried]))
+        grid = np.linspace(grid[max(best - 1, 0)], grid[min(best + 1, len(grid) - 1)], 20)
+    total, error, g, solution = tried[best]
+    h, L, C, D = (*solution, 0.0, 0.0)[:4]
+    return total, error, tuple(float(f"{value:.12g}") for value in (L, g / (g + h), g + h, C, D))
+
+
+def translation(T, v_pr, v_liquid, linear):
+    """c0 [m3/mol] and c1 [m3/(mol K)] of c0 + c1 (T - 298.15 K) = v_pr - v_liquid at T [K]."""
+    shift = np.asarray(v_pr) - np.asarray(v_liquid)
+    basis = np.stack([np.ones_like(T), np.asarray(T) - 298.15], axis=1) / np.asarray(v_liquid)[:, None]
+    if not linear:
+        basis = basis[:, :1]
+    solution = np.linalg.lstsq(basis, shift / v_liquid, rcond=None)[0]
+    c0, c1 = (float(solution[0]), float(solution[1]) if linear else 0.0)
+    return float(f"{c0:.10g}"), float(f"{c1:.10g}")
+
+
+def polynomial(T, value, degree, digits=12):
+    """Coefficients a0..a_degree of a polynomial in T [K] fitted to values, and the largest relative error [-]."""
+    t = np.asarray(T) / forms.T_SCALE
+    basis = np.stack([t**k for k in range(degree + 1)], axis=1)
+    solution = np.linalg.lstsq(basis / np.asarray(value)[:, None], np.ones_like(t), rcond=None)[0]
+    raw = np.array([float(f"{c / forms.T_SCALE**k:.{digits}g}") for k, c in enumerate(solution)])
+    fitted = sum(c * np.asarray(T) ** k for k, c in enumerate(raw))
+    return raw, float(np.max(np.abs(fitted / value - 1.0)))
