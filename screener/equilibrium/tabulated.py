@@ -73,15 +73,16 @@ def _van_der_waals(names, model: str, table):
     """Parts of the plain cubic equations: equation, alpha, mixing rule, translation, gaps, nothing missing."""
     from screener import species
 
-    kij, fallback = species.interactions(names, model)
     equation = EQUATIONS[model]
+    if model == "SRK":
+        alpha = Soave(table.Tc, m_of_omega(table.omega, "SRK"))
+        shift = _shift_at_15(equation, alpha, table)
+        gaps = ("no table of k_ij for SRK; every pair taken as zero",) if len(names) > 1 else ()
+        return equation, alpha, VanDerWaals(None), (shift, np.zeros_like(shift)), gaps, ()
+    kij, fallback = species.interactions(names, model)
     gaps = tuple(f"k_ij of {one} + {other} in no table; taken as zero" for one, other in fallback)
     mixing = VanDerWaals(interaction_matrix(kij, len(names)))
-    if model == "PR":
-        return equation, _alpha(table), mixing, (table.c0, table.c1), gaps, ()
-    alpha = Soave(table.Tc, m_of_omega(table.omega, "SRK"))
-    shift = _shift_at_15(equation, alpha, table)
-    return equation, alpha, mixing, (shift, np.zeros_like(shift)), gaps, ()
+    return equation, _alpha(table), mixing, (table.c0, table.c1), gaps, ()
 
 
 def _shift_at_15(equation, alpha, table):
