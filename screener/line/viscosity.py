@@ -28,7 +28,7 @@ def kinematic_viscosity_band(density_15):
     Returns
     -------
     tuple of three arrays, shape (n,) or ()
-        Low, best and high; NaN outside 600 to 880 kg/m3. [m2/s]
+        Low, best and high; NaN outside 600 to 900 kg/m3. [m2/s]
 
     Validity
     --------

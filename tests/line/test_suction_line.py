@@ -138,6 +138,6 @@ def test_viscosity_band_holds_pure_liquids():
 
 
 def test_viscosity_band_ends():
-    low, best, high = kinematic_viscosity_band(np.array([590.0, 600.0, 745.0, 880.0, 900.0, np.nan]))
+    low, best, high = kinematic_viscosity_band(np.array([590.0, 600.0, 745.0, 900.0, 901.0, np.nan]))
     assert np.isnan(best[[0, 4, 5]]).all() and np.isfinite(best[1:4]).all()
     assert (low[1:4] < best[1:4]).all() and (best[1:4] < high[1:4]).all()
