@@ -21,6 +21,9 @@ def assumptions(context: Context) -> tuple[str, ...]:
         rows.append(say("assumed", "insolation"))
     if case.site.months and case.site.liquid_temperature is None:
         rows.append(say("assumed", "design-day"))
+    for name in ("fittings", "roughness", "nozzle_height") if case.line.suction is not None else ():
+        if math.isnan(context.input(name)):
+            rows.append(say("assumed", name))
     if case.tank.surface:
         rows.append(say("assumed", "paint", text=case.tank.surface, note=paint_note(case.tank.surface)))
     rows += list(case.blend.report.assumed)

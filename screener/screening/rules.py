@@ -2,9 +2,20 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
+import numpy as np
+
+from screener.ground.errors import UnknownName
+from screener.screening.context import Context
 from screener.screening.finding import Fact
+from screener.screening.wording import say
+from screener.states.breathing import tank_volume
+from screener.tank import rule_packs, rules_for, rules_of
+
+_OWN_BASIS = "highest monthly mean"
+_STAND_IN = ("storage temperature", "not read")  # the monthly mean stands in, so at best near
 
 
 @dataclass(frozen=True)
@@ -12,14 +23,64 @@ class Rule:
     """One pack applied to one case.
 
     limit [Pa] is the true vapour pressure the roof type may not reach; skip or
-    unknown says why there is none.
+    unknown says why there is none; caps keep the finding from being better than near.
     """
 
     pack: str
-    limit: float = float("nan")
+    limit: float = math.nan
     evidence: str = ""
     source: str = ""
     source_keys: tuple[str, ...] = ()
     skip: str = ""
     unknown: str = ""
+    caps: tuple[str, ...] = ()
     facts: tuple[Fact, ...] = ()
+
+
+def packs_of(context: Context) -> tuple[Rule, ...]:
+    """Every rule pack the case chose, applied to its tank."""
+    known = rule_packs()
+    for i, pack in enumerate(context.case.criteria):
+        if pack not in known:
+            raise UnknownName(f"screening.criteria[{i}]", pack, "rule pack", known)
+    return tuple(_apply(context, pack) for pack in context.case.criteria)
+
+
+def _apply(context: Context, pack: str) -> Rule:
+    kind = context.case.tank.kind
+    if kind == "pressure-vessel":
+        return Rule(pack, skip=say("skip", "pressure-vessel"))
+    volume = float(tank_volume(context.lanes.inputs)[context.i])
+    if math.isnan(volume):
+        return _unsized(context, pack)
+    rows = rules_for(pack, kind, volume)
+    limits = [row for row in rows if row.role == "limit" and row.quantity == "true vapour pressure"]
+    fitting = [row for row in limits if row.at == _OWN_BASIS or row.at in _STAND_IN]
+    if not fitting:
+        if rows:
+            return Rule(pack, unknown=say("unknown", "rule-basis", pack=pack, basis=f"{rows[0].quantity} at {rows[0].at}"))
+        smallest = min(row.volume_from for row in rules_of(pack))
+        return Rule(pack, skip=say("skip", "rule-scope", pack=pack, why=f"{volume:.0f} m3, rule from {smallest:.0f} m3"))
+    row = fitting[0]
+    limit = context.barometer if row.limit is None else row.limit
+    caps = () if row.at == _OWN_BASIS else (say("cap", "rule-basis", basis=row.at),)
+    facts = [Fact("tank volume", volume, "m3"), Fact("what the rule says", row.means)]
+    facts += [Fact("the rule begins at", other.limit, "Pa") for other in rows if other.role == "scope"]
+    if context.case.tank.vapour_return and row.roof == "fixed":
+        caps += (say("cap", "vapour-return"),)
+    return Rule(pack, limit, row.evidence, row.where, (row.source_key,), caps=caps, facts=tuple(facts))
+
+
+def _unsized(context: Context, pack: str) -> Rule:
+    horizontal = context.case.tank.kind in ("horizontal", "underground")
+    paths = context.missing("shell_diameter", "tank_length" if horizontal else "shell_height")
+    return Rule(pack, unknown=say("unknown", "rule-volume", pack=pack, paths=", ".join(paths)))
+
+
+def warm_receipt(context: Context) -> tuple[str, ...]:
+    """A liquid that arrives warmer than the monthly mean is not one 'stored at ambient' without doubt."""
+    T = context.input("receipt_temperature")
+    legal = float(np.asarray(context.lanes.T_legal)[context.i])
+    if math.isfinite(T) and math.isfinite(legal) and T > legal:
+        return (say("cap", "warm-receipt"),)
+    return ()

@@ -12,7 +12,7 @@ from screener.screening.flow import npsh, suction
 from screener.screening.headroom import with_headroom
 from screener.screening.information import information
 from screener.screening.notes import assumptions, reservations, sources
-from screener.screening.rules import rules_for
+from screener.screening.rules import packs_of
 from screener.screening.vapour import boiling, hottest, legal, receipt
 from screener.screening.venting import inbreathing, outbreathing, pressure_setting, vacuum_setting
 from screener.states.case import Case
@@ -32,7 +32,7 @@ def evaluate_cases(cases) -> Lanes:
 
 def findings_of(context: Context, stream) -> tuple[Finding, ...]:
     """Every finding of one case, worst first; equals keep the order of the criteria."""
-    rules = rules_for(context) or (None,)
+    rules = packs_of(context) or (None,)
     drafts = [boiling(context)]
     drafts += [legal(context, rule) for rule in rules] + [hottest(context, rule) for rule in rules]
     drafts += [receipt(context), suction(context, stream), npsh(context, stream)]
@@ -61,7 +61,7 @@ def screen_many(cases, *, full: bool = False) -> tuple[Screening, ...]:
         context = Context(lanes, i)
         findings = findings_of(context, stream)
         if full:
-            findings = with_headroom(context, findings)
+            findings = with_headroom(context, stream, findings)
         results.append(
             Screening(
                 case=cases[i],

@@ -8,7 +8,7 @@ from screener.screening.context import MONTHS, Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Condition, Fact
-from screener.screening.rules import Rule
+from screener.screening.rules import Rule, warm_receipt
 from screener.screening.wording import lines, say
 from screener.states.lanes import BEST, RECEIPT
 
@@ -31,7 +31,7 @@ def vapour_facts(context: Context, y) -> tuple[Fact, ...]:
     return tuple(Fact(f"{names[j]} in the vapour", float(y[j]), "mol/mol") for j in order if y[j] > 0.0)
 
 
-def _hot_lane(context: Context, k: int, limit: float, where: str) -> Lane:
+def _hot_lane(context: Context, k: int, limit: float, where: str, caps=()) -> Lane:
     lanes, i = context.lanes, context.i
     T = lanes.T_hot[i, k]
     low, value, high = lanes.P_hot[i, k]
@@ -45,7 +45,7 @@ def _hot_lane(context: Context, k: int, limit: float, where: str) -> Lane:
         context.condition(k, context.hottest_day, where), value, low, high, limit,
         unknown=say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else "",
         facts=tuple(f for f in facts if math.isfinite(f.value)) + vapour_facts(context, lanes.y_hot[i, k]), tag=k,
-        caps=_typical_cap(context),
+        caps=_typical_cap(context) + tuple(caps),
     )  # fmt: skip
 
 
@@ -118,7 +118,7 @@ def legal(context: Context, rule: Rule | None) -> Draft:
             unknown = say("unknown", "lane", liquid=context.liquid_name(k), why=why)
         facts = (Fact("highest monthly mean air temperature", float(lanes.T_legal[i]), "K"),)
         rows.append(Lane(context.condition(k, when, "tank"), value, low, high, rule.limit, unknown=unknown,
-                         facts=facts if month else (), tag=k))  # fmt: skip
+                         caps=rule.caps + warm_receipt(context), facts=facts if month else (), tag=k))  # fmt: skip
     unknown = rule.unknown or ("" if month else say("unknown", "months"))
     return _draft("vapour-pressure.legal", lanes=tuple(rows), unknown=unknown, range_covers=("method",),
                   facts=rule.facts, **fields)  # fmt: skip
@@ -131,7 +131,7 @@ def hottest(context: Context, rule: Rule | None) -> Draft:
     fields = _rule_fields("vapour-pressure.hottest", rule)
     if rule.skip:
         return _draft("vapour-pressure.hottest", skip=rule.skip, **fields)
-    rows = tuple(_hot_lane(context, k, rule.limit, "liquid surface") for k in context.liquids())
+    rows = tuple(_hot_lane(context, k, rule.limit, "liquid surface", rule.caps) for k in context.liquids())
     return _draft("vapour-pressure.hottest", lanes=rows, unknown=rule.unknown,
                   range_covers=("weather", "inputs", "method"), facts=rule.facts, **fields)  # fmt: skip
 

@@ -253,6 +253,11 @@ def _with_air(fluid, z, T, inputs, barometer):
     return beta
 
 
+def method_spread(lanes: Lanes, y) -> np.ndarray:
+    """Relative method spread (n,) of vapour pressures whose vapour is y (n, c). [-]"""
+    return _method_spread(np.asarray(y), psat_spreads(lanes.names))
+
+
 def psat_spreads(names) -> np.ndarray:
     """Disagreement of independent vapour-pressure curves of each species, 0 where only one is known. [-]"""
     return np.array([find(name).psat_spread or 0.0 for name in names])

@@ -1,0 +1,161 @@
+"""What moves a finding most, and which single change would restore its room.
+
+The numbers come from the same bubble points as the findings: knob values are
+lanes. A change is printed only where the calculation reached it.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import replace
+
+import numpy as np
+
+from screener.equilibrium import bubble_pressure, bubble_temperature
+from screener.ground.constants import GRAVITY, ZERO_CELSIUS
+from screener.screening.context import Context
+from screener.screening.finding import Finding, Headroom
+from screener.screening.wording import say
+from screener.states.lanes import LIQUIDS, method_spread
+
+_PRESSURE = ("boiling.surface", "vapour-pressure.legal", "vapour-pressure.hottest", "receipt.flash")
+_SHARE_STEPS = np.linspace(0.0, 1.0, 17)  # of the share the species has now
+
+
+def with_headroom(context: Context, stream, findings: tuple[Finding, ...]) -> tuple[Finding, ...]:
+    """The findings with `moved_by` and `headroom` filled in where they can be worked out."""
+    return tuple(_extend(context, stream, finding) for finding in findings)
+
+
+def _extend(context: Context, stream, finding: Finding) -> Finding:
+    if finding.value is None or finding.verdict == "skipped":
+        return finding
+    family = next((key for key in _PRESSURE if finding.id.startswith(key)), finding.id)
+    if family in _PRESSURE:
+        moved, rooms = _pressure(context, finding, family)
+    elif family in ("vapour-lock.suction", "npsh.pump"):
+        moved, rooms = _suction(context, stream, finding)
+    elif family == "vents.outbreathing":
+        moved, rooms = (), _rate(context, stream, finding)
+    else:
+        return finding
+    if finding.verdict == "room":
+        rooms = ()
+    return replace(finding, moved_by=moved, headroom=rooms)
+
+
+def _liquid(context: Context, finding: Finding) -> int:
+    """Index of the liquid a finding names as worst."""
+    wanted = finding.condition
+    for k, (_, level) in enumerate(LIQUIDS):
+        if context.liquid_name(k) == wanted.liquid and level in ("", wanted.level):
+            return k
+    return 0
+
+
+def _temperature_of(finding: Finding, *labels: str) -> float:
+    found = (fact.value for fact in finding.facts if fact.label in labels)
+    return next((value for value in found if isinstance(value, float)), math.nan)
+
+
+def _lightest(lanes, z, y) -> int:
+    """The species whose share raises the pressure most: largest excess of vapour over liquid share."""
+    return int(np.nanargmax(np.where(z > 0.0, y - z, -np.inf)))
+
+
+def _pressure(context: Context, finding: Finding, family: str):
+    lanes, i, k = context.lanes, context.i, _liquid(context, finding)
+    T = _temperature_of(
+        finding, "highest of its range", "highest monthly mean air temperature", "arrival temperature"
+    )
+    if math.isnan(T):
+        return (), ()
+    z, fluid = lanes.z[i, k], lanes.fluid
+    here = bubble_pressure(fluid, T, z)
+    if not here.ok[0]:
+        return (), ()
+    light = _lightest(lanes, z, here.y[0])
+    spread = float(method_spread(lanes, here.y)[0])
+    target = (finding.limit_high - finding.asked_gap) / (1.0 + spread)
+    more = z.copy()
+    more[light] += 0.01
+    shares = z[light] * _SHARE_STEPS
+    knobs = np.repeat(z[None, :], len(shares), axis=0)
+    knobs[:, light] = shares
+    batch = np.vstack([z, more / more.sum(), knobs / knobs.sum(axis=1, keepdims=True)])
+    answer = bubble_pressure(fluid, np.concatenate([[T + 1.0, T], np.full(len(shares), T)]), batch)
+    name = fluid.names[light]
+    moved = _moved(here.P[0], answer.P[:2], name)
+    rooms = []
+    limit_T = bubble_temperature(fluid, target, z)
+    if limit_T.ok[0]:
+        knob = "receipt-temperature" if family == "receipt.flash" else "surface-temperature"
+        if family == "vapour-pressure.legal":
+            knob = "monthly-temperature"
+        rooms.append(_room(knob, float(limit_T.T[0]), "K", f"{limit_T.T[0] - ZERO_CELSIUS:.1f} degC"))
+    share = _share_for(shares, answer.P[2:], answer.ok[2:], target)
+    if share is not None:
+        sentence = say("headroom", "share", species=name, value=f"{100 * share:.2g} mol%", now=f"{100 * z[light]:.2g} mol%")
+        rooms.append(Headroom(f"share of {name}", share, "mol/mol", sentence))
+    return moved, tuple(rooms)
+
+
+def _moved(P, changed, name) -> tuple[str, ...]:
+    steps = [
+        (abs(changed[0] - P), say("moved", "temperature", change=f"{(changed[0] - P) / 1000:+.2f} kPa")),
+        (abs(changed[1] - P), say("moved", "share", species=name, change=f"{(changed[1] - P) / 1000:+.2f} kPa")),
+    ]
+    return tuple(text for size, text in sorted(steps, reverse=True) if math.isfinite(size))
+
+
+def _share_for(shares, P, ok, target):
+    """Largest share at which the pressure stays at or below the target; None where none does."""
+    good = ok & (P <= target)
+    if not good.any() or good.all():
+        return None
+    last = int(np.flatnonzero(good)[-1])
+    if last + 1 >= len(shares) or not ok[last + 1]:
+        return float(shares[last])
+    part = (target - P[last]) / (P[last + 1] - P[last])
+    return float(shares[last] + part * (shares[last + 1] - shares[last]))
+
+
+def _room(knob: str, value: float, unit: str, shown: str) -> Headroom:
+    return Headroom(knob, value, unit, say("headroom", knob, value=shown))
+
+
+def _suction(context: Context, stream, finding: Finding):
+    """A higher lowest level, or a cooler liquid, gives the line its pressure back."""
+    lanes, i, k = context.lanes, context.i, _liquid(context, finding)
+    s = stream.suction
+    rho, fluid = float(s.density[i, k]), lanes.fluid
+    weight = rho * GRAVITY
+    short = finding.limit_low + finding.asked_gap - (finding.low if finding.low is not None else math.nan)
+    rooms = []
+    metres = short / weight if finding.id == "vapour-lock.suction" else short
+    level = context.input("level_low") + metres
+    if math.isfinite(level) and metres > 0.0 and level <= context.input("level_high"):
+        rooms.append(_room("level", level, "m", f"{level:.2f} m"))
+    spread = float(method_spread(lanes, lanes.y_hot[i, k][None, :])[0])
+    if finding.id == "vapour-lock.suction":
+        target = (float(s.lowest[i, k]) - finding.asked_gap) / (1.0 + spread)
+    else:
+        rest = float(s.npsh[i, k, 1]) * weight + float(lanes.P_hot[i, k, 1])
+        target = (rest - (finding.limit_low + finding.asked_gap) * weight) / (1.0 + spread)
+    if math.isfinite(target) and target > 0.0:
+        answer = bubble_temperature(fluid, target, lanes.z[i, k])
+        if answer.ok[0]:
+            rooms.append(_room("liquid-temperature", float(answer.T[0]), "K", f"{answer.T[0] - ZERO_CELSIUS:.1f} degC"))
+    return (), tuple(rooms)
+
+
+def _rate(context: Context, stream, finding: Finding):
+    """The receipt rate at which out-breathing just has its gap: every part but the thermal one is in proportion."""
+    b, i = stream.breathing, context.i
+    rate = context.input("receipt_rate")
+    moving = (finding.high or math.nan) - float(b.out_thermal[i])
+    left = finding.limit_high - finding.asked_gap - float(b.out_thermal[i]) if finding.limit_high else math.nan
+    if not (math.isfinite(moving) and math.isfinite(left) and moving > 0.0 and left > 0.0 and left < moving):
+        return ()
+    slower = rate * left / moving
+    return (_room("receipt-rate", slower, "m3/s", f"{3600.0 * slower:.0f} m3/h"),)
