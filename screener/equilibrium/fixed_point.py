@@ -118,7 +118,7 @@ class _Walk:
         self.jumped = np.zeros(n, dtype=bool)  # the last move was an accelerated one
         self.damping = np.ones(n)
 
-    def take(self, lanes) -> "_Walk":
+    def take(self, lanes) -> _Walk:
         """Some of the lanes."""
         some = _Walk(self.problem.take(lanes), self.u[lanes], self.present[lanes], self.reach)
         for name in ("g", "r", "moving", "best_u", "best_g", "best_r", "jumped", "damping"):

@@ -17,9 +17,8 @@ from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.phase import DENSE, Feed, reduced_volume
 from screener.equilibrium.rachford_rice import split
 from screener.equilibrium.results import TPD_ZERO, Flash, bad_status
-from screener.equilibrium.second_liquid import NOT_TESTED, full_check
+from screener.equilibrium.second_liquid import NOT_TESTED, full_check, known_check
 from screener.equilibrium.stability import FEW, tangent_plane
-from screener.ground.errors import InputError
 from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
 
@@ -97,8 +96,7 @@ def flash_tp(fluid, T, P, z, *, check="vapour-liquid") -> Flash:
     ------
     Michelsen, Fluid Phase Equilib. 9 (1982) 1 and 21 (method).
     """
-    if check not in ("vapour-liquid", "full"):
-        raise InputError("check", check, f"'{check}' is not a check", "vapour-liquid or full")
+    full = known_check(check)
     z, T, P, good = as_lanes(fluid.c, z, T=T, P=P)
     n, c = z.shape
     status = bad_status(good)
@@ -107,7 +105,7 @@ def flash_tp(fluid, T, P, z, *, check="vapour-liquid") -> Flash:
     work = np.flatnonzero(status == Status.OUT_OF_STEPS)
     for some in np.array_split(work, max(1, -(-work.size * c // MOST_NUMBERS))):
         if some.size:
-            _flash(answer, some, fluid, T[some], P[some], z[some], check == "full")
+            _flash(answer, some, fluid, T[some], P[some], z[some], full)
     return Flash(T=T, P=P, z=z, **vars(answer))
 
 
@@ -235,8 +233,12 @@ def _check(answer, lanes, fluid, state, P, z, wilson):
     ln_phi = np.where(from_x[:, None], mixture.ln_phi(P, "L"), mixture.ln_phi(P, "V"))
     if single.any():
         ln_phi[single] = Feed(held, P, phase).ln_phi[single]
-    tpd, splits, text = full_check(fluid, held, P, z[some], phase, ln_phi, wilson[some])
-    answer.tpd[here], answer.checks[here] = tpd, text
+    found, splits, text = full_check(fluid, held, P, z[some], phase, ln_phi, wilson[some])
+    answer.tpd[here], answer.checks[here] = found.tpd, text
     answer.status[here[splits]] = Status.LIQUID_SPLITS
-    unsettled = ~np.isfinite(tpd)
-    answer.status[here[unsettled]] = Status.OUT_OF_STEPS
+    answer.status[here[~np.isfinite(found.tpd)]] = Status.OUT_OF_STEPS
+    apart = np.flatnonzero(splits & single & from_x & (found.kind == "L"))
+    if apart.size:  # one liquid that is two: show them
+        problem = Split(held.take(apart), P[apart], z[some][apart])
+        ln_K = (found.ln_W - np.log(np.maximum(phase, FEW)))[apart]
+        _again(answer, here[apart], problem, "LL", ln_K)

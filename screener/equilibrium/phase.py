@@ -11,8 +11,8 @@ import numpy as np
 
 from screener.equilibrium.cubic import CRITICAL_VOLUME_RATIO, PENG_ROBINSON
 
-DENSE = 2.0  # v/b below which a phase is a liquid beyond doubt: half the critical volume; common practice, no source
-DILUTE = 20.0  # v/b above which it is a vapour beyond doubt: five times the critical volume; common practice, no source
+DENSE = 1.75  # v/b below which a phase is a liquid beyond doubt: saturated liquids up to 0.88 Tc; own choice
+DILUTE = 20.0  # v/b above which it is a vapour beyond doubt: five times the critical volume; own choice
 
 
 def reduced_volume(mixture, P, Z):

@@ -114,8 +114,12 @@ class Stability(LaneAnswer):
 class Saturation(LaneAnswer):
     """Bubble or dew point.
 
-    T (n,) [K], P (n,) [Pa], x and y (n, c) [-], K = y/x (n, c) [-],
-    residual (n,) [-] the largest |ln f_V - ln f_L| over the species present.
+    T (n,) [K], P (n,) [Pa], x and y (n, c) [-], K = y/x (n, c) [-], NaN for
+    absent species; residual (n,) [-] the largest |ln f_V - ln f_L| over the
+    species present; tpd (n,) [-] the smallest tangent-plane distance of the
+    feed at the point, NaN where no test ran; checks, one line per lane, what
+    was tested. Under LIQUID_SPLITS a bubble point is that of one liquid held
+    together: an upper bound of the pressure.
     """
 
     T: np.ndarray
@@ -126,6 +130,8 @@ class Saturation(LaneAnswer):
     status: np.ndarray
     iterations: np.ndarray
     residual: np.ndarray
+    tpd: np.ndarray
+    checks: np.ndarray
 
 
 @dataclass(frozen=True)

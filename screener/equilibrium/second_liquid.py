@@ -11,6 +11,7 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.stability import tangent_plane
+from screener.ground.errors import InputError
 
 DEPTH = 1e-8  # [-] tangent-plane distance over RT that counts: a hundred times the residual of the answer
 NOT_TESTED = "not tested for a second liquid"
@@ -18,6 +19,13 @@ TESTED = "tangent plane"
 SPLITS = "tangent plane: a second liquid lowers the energy"
 DOUBTFUL = "tangent plane: the model splits dry ethanol and hydrocarbon, held not to exist"
 UNSETTLED = "tangent plane: a trial did not converge"
+
+
+def known_check(check: str) -> bool:
+    """True for "full", False for "vapour-liquid"; anything else is a fault of the caller."""
+    if check not in ("vapour-liquid", "full"):
+        raise InputError("check", check, f"'{check}' is not a check", "vapour-liquid or full")
+    return check == "full"
 
 
 def full_check(fluid, state, P, z, phase, ln_phi, K):
@@ -43,7 +51,7 @@ def full_check(fluid, state, P, z, phase, ln_phi, K):
     Returns
     -------
     tuple
-        The smallest distance (n,) [-], the mask (n,) of lanes in which a
+        What the trials found (`Found`), the mask (n,) of lanes in which a
         second liquid is real, and the words (n,) for each lane.
 
     Source
@@ -55,7 +63,7 @@ def full_check(fluid, state, P, z, phase, ln_phi, K):
     doubtful = below & dry_ethanol(fluid, z)
     text = np.where(found.converged, TESTED, UNSETTLED)
     text = np.where(below, SPLITS, text)
-    return found.tpd, below & ~doubtful, np.where(doubtful, DOUBTFUL, text)
+    return found, below & ~doubtful, np.where(doubtful, DOUBTFUL, text)
 
 
 def dry_ethanol(fluid, z):

@@ -222,8 +222,8 @@ def _try(found, lanes, trials, start, ln_z):
     if lost.size:
         liquid[lost] = lower.liquid(w[lost])
     away = np.where(trials.present, np.abs(fixed.u - ln_z[lanes]), 0.0).max(axis=1)
-    # A trial that came back to the feed has distance zero by definition, whatever rounding says.
-    tpd = np.where(away < TRIVIAL, 0.0, -ln_total)
+    # A trial that came back to the feed, on the feed's own root, has distance zero whatever rounding says.
+    tpd = np.where((away < TRIVIAL) & (np.abs(ln_total) < 100.0 * TPD_ZERO), 0.0, -ln_total)
     usable = fixed.converged | (fixed.residual < 1e-6)  # next to a stationary point the distance is second order
     tpd = np.where(usable, tpd, np.nan)
     order = np.argsort(lanes, kind="stable")

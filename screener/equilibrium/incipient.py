@@ -1,0 +1,172 @@
+"""The first bubble in a liquid, the first drop in a vapour: fixed-point problems for saturation points.
+
+At given T the unknown is u_i = ln(K_i P), at low pressure nearly the constant
+ln(gamma_i Psat_i); pressure and the new phase follow from it alone:
+
+    bubble:  P = sum x_i exp(u_i),       y_i = x_i exp(u_i) / P
+    dew:     1/P = sum y_i exp(-u_i),    x_i = y_i P exp(-u_i).
+
+At given P it is u_i = ln K_i + h_i / T with h_i from Wilson's K, again nearly
+constant; 1/T is the root of a convex function of u. Either way the step is
+u -> ln phi_L - ln phi_V + (the same shift), and the difference of the two
+sides is |ln f_V - ln f_L|.
+"""
+
+from __future__ import annotations
+
+import numpy as np
+
+from screener.equilibrium.phase import DENSE, reduced_volume
+
+LOWEST_P, HIGHEST_P = 1e-9, 1e8  # [Pa] beyond these no answer is given: no use of stored liquids comes near
+LOWEST_T, HIGHEST_T = 50.0, 1500.0  # [K] likewise
+NO_LIQUID = 8.0  # v/b above which a root is no liquid: twice the critical volume; own choice
+NO_VAPOUR = 1.6  # v/b below which a root is no vapour: the density of liquids at 0.85 Tc; own choice
+NUDGE = 0.4  # step of u where the root asked for does not exist
+TRIES = 8  # pressures tried for a liquid root of the feed, each ten times the last
+
+
+class AtTemperature:
+    """Unknown pressure."""
+
+    def __init__(self, state, feed, bubble: bool):
+        self.state, self.feed, self.bubble = state, feed, bubble
+        self.present = feed > 0.0
+        self.mixture = None
+
+    def take(self, lanes) -> AtTemperature:
+        """Some of the lanes."""
+        return AtTemperature(self.state.take(lanes), self.feed[lanes], self.bubble)
+
+    def close(self, u):
+        """Pressure (n,) [Pa] and composition of the new phase (n, c)."""
+        sign = 1.0 if self.bubble else -1.0
+        part, ln_sum = weighted(self.feed, sign * u)
+        return np.exp(np.clip(sign * ln_sum, -300.0, 300.0)), part
+
+    def image(self, u):
+        """ln phi_L - ln phi_V + ln P."""
+        P, other = self.close(u)
+        if self.mixture is None:
+            self.mixture = self.state.mix(self.feed)
+        return step(self.mixture, self.state.mix(other), P, self.bubble, u, np.log(P)[:, None])
+
+
+class AtPressure:
+    """Unknown temperature. h (c,) [K] slopes of ln K in 1/T; tau (n,) [1/K] the last 1/T."""
+
+    def __init__(self, fluid, P, feed, bubble: bool, tau=None):
+        self.fluid, self.P, self.feed, self.bubble = fluid, P, feed, bubble
+        self.present = feed > 0.0
+        self.h = 5.373 * (1.0 + fluid.omega) * fluid.Tc
+        self.tau = np.full(P.shape, 1.0 / 300.0) if tau is None else tau
+
+    def take(self, lanes) -> AtPressure:
+        """Some of the lanes."""
+        return AtPressure(self.fluid, self.P[lanes], self.feed[lanes], self.bubble, self.tau[lanes])
+
+    def close(self, u):
+        """Temperature (n,) [K] and composition of the new phase (n, c)."""
+        sign = 1.0 if self.bubble else -1.0
+        tau = self.tau
+        for _ in range(60):
+            part, ln_sum = weighted(self.feed, sign * (u - self.h * tau[:, None]))
+            slope = -sign * (part @ self.h)
+            new = np.clip(tau - ln_sum / slope, 1.0 / HIGHEST_T, 1.0 / LOWEST_T)
+            small = np.abs(new - tau) <= 1e-13 * tau
+            tau = np.where(np.isfinite(new), new, tau)
+            if small.all():
+                break
+        self.tau = tau
+        return 1.0 / tau, weighted(self.feed, sign * (u - self.h * tau[:, None]))[0]
+
+    def image(self, u):
+        """ln phi_L - ln phi_V + h / T."""
+        T, other = self.close(u)
+        state = self.fluid.at(T)
+        shift = self.h / T[:, None]
+        return step(state.mix(self.feed), state.mix(other), self.P, self.bubble, u, shift)
+
+
+def step(feed, other, P, bubble: bool, u, shift):
+    """The image of u; where a phase is not of its kind, a nudge to where it is.
+
+    A larger u means a higher pressure, or a lower temperature: either way the
+    liquid comes back.
+    """
+    liquid, vapour = (feed, other) if bubble else (other, feed)
+    ln_phi_L, Z_L = liquid.ln_phi_and_Z(P, "L")
+    ln_phi_V, Z_V = vapour.ln_phi_and_Z(P, "V")
+    image = ln_phi_L - ln_phi_V + shift
+    with np.errstate(invalid="ignore"):
+        thin = reduced_volume(liquid, P, Z_L) > NO_LIQUID
+        thick = reduced_volume(vapour, P, Z_V) < NO_VAPOUR
+    wrong = thin | thick
+    if wrong.any():
+        nudge = np.where(thin & ~thick, NUDGE, -NUDGE)
+        image = np.where(wrong[:, None], u + nudge[:, None], image)
+    return image
+
+
+def weighted(share, exponent):
+    """share exp(exponent) scaled to sum 1 (n, c), and ln of its sum (n,); share zero counts for nothing."""
+    top = np.where(share > 0.0, exponent, -np.inf).max(axis=1)
+    part = share * np.exp(np.where(share > 0.0, exponent - top[:, None], 0.0))
+    total = part.sum(axis=1)
+    return part / total[:, None], top + np.log(total)
+
+
+def start(fluid, name: str, value, feed, bubble: bool):
+    """The fixed-point problem of a chunk and its blind start.
+
+    Parameters
+    ----------
+    fluid : Fluid
+        The fluid.
+    name : str
+        "T" or "P": what `value` is.
+    value : array, shape (n,)
+        Temperature [K] or pressure [Pa].
+    feed : array, shape (n, c)
+        Liquid (bubble) or vapour (dew). [-]
+    bubble : bool
+        Which of the two.
+
+    Returns
+    -------
+    tuple
+        Problem and u (n, c).
+
+    Source
+    ------
+    Wilson's K; at given T the bubble starts from the fugacities of the liquid
+    itself, which holds for dissolved gases and non-ideal liquids as well.
+    """
+    if name == "P":
+        problem = AtPressure(fluid, value, feed, bubble)
+        u = np.log(fluid.Pc / value[:, None]) + problem.h / fluid.Tc
+        return problem, np.where(problem.present, u, 0.0)
+    state = fluid.at(value)
+    problem = AtTemperature(state, feed, bubble)
+    u = np.log(fluid.wilson_K(value, 1.0))
+    if bubble:
+        P, _ = problem.close(np.where(problem.present, u, 0.0))
+        u = _liquid_fugacity(problem, np.clip(P, 1.0, 1e7), u)
+    return problem, np.where(problem.present, u, 0.0)
+
+
+def _liquid_fugacity(problem, P, u):
+    """ln(phi_L P) of the feed at the first pressure, counted from P upwards, where it is a liquid."""
+    problem.mixture = mixture = problem.state.mix(problem.feed)
+    u = u.copy()
+    left = np.ones(P.shape, dtype=bool)
+    for _ in range(TRIES):
+        ln_phi, Z = mixture.ln_phi_and_Z(P, "L")
+        with np.errstate(invalid="ignore"):
+            liquid = left & (reduced_volume(mixture, P, Z) < 2.0 * DENSE)
+        u = np.where(liquid[:, None], ln_phi + np.log(P)[:, None], u)
+        left &= ~liquid
+        if not left.any():
+            break
+        P = np.where(left, 10.0 * P, P)
+    return u
