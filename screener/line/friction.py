@@ -33,7 +33,7 @@ def friction_factor(reynolds, relative_roughness):
 
     Source
     ------
-    Churchill, Chem. Eng. J. 91 (1977) 91, as carried by the library fluids.
+    Churchill, Friction-factor equation spans all fluid-flow regimes, 1977, as carried by the library fluids.
     """
     from fluids.vectorized import Churchill_1977
 

@@ -112,41 +112,56 @@ def suction_profile(
     Bernoulli's equation with Darcy friction (Churchill 1977). Entrance 0.57: Rennels and Hudson 2012,
     through the library fluids.
     """
-    given = (surface_pressure, liquid_level, rate, density, kinematic_viscosity, line_length, line_bore,
-             pump_height, nozzle_height, fittings, roughness, entrance_loss, highest_point)  # fmt: skip
+    given = (
+        surface_pressure,
+        liquid_level,
+        rate,
+        density,
+        kinematic_viscosity,
+        line_length,
+        line_bore,
+        pump_height,
+        nozzle_height,
+        fittings,
+        roughness,
+        entrance_loss,
+        highest_point,
+    )
     given = np.broadcast_arrays(*(np.atleast_1d(np.asarray(value, dtype=float)) for value in given))
     P, level, rate, rho, nu, length, bore, pump, nozzle, K, rough, entrance, high = given
     good = np.isfinite(np.stack(given[:-1])).all(axis=0)
-    for positive in (P, rho, nu, bore):
-        good &= positive > 0.0
-    for not_negative in (rate, length, K, rough, entrance, level):
-        good &= not_negative >= 0.0
-    reason = np.where(good, np.where(level >= nozzle, Reason.PROFILE, Reason.NOZZLE_UNCOVERED), Reason.BAD_INPUT)
+    good &= np.stack([P, rho, nu, bore]).min(axis=0) > 0.0
+    good &= np.stack([rate, length, K, rough, entrance, level]).min(axis=0) >= 0.0
     bore, rate, nu = (np.where(good, value, 1.0) for value in (bore, rate, nu))
-
     velocity = rate / (np.pi / 4.0 * bore**2)
     reynolds = velocity * bore / nu
     factor = friction_factor(reynolds, rough / bore)
-    velocity_head = velocity**2 / (2.0 * GRAVITY)
-    still = np.isnan(factor) & (reynolds <= 1e-3)
-    pipe = np.where(still, 0.0, factor * length / bore) * velocity_head
-    friction = pipe + (K + entrance) * velocity_head
-    # A pipe rougher than a twentieth of its bore has no friction factor: no profile.
-    reason = np.where((reason == Reason.PROFILE) & np.isnan(friction), Reason.BAD_INPUT, reason)
+    head = velocity**2 / (2.0 * GRAVITY)
+    pipe = np.where(np.isnan(factor) & (reynolds <= 1e-3), 0.0, factor * length / bore)
+    friction = (pipe + K + entrance) * head
+    heads = np.stack(
+        [
+            level - nozzle - (1.0 + entrance) * head,
+            level - high - head - friction,
+            level - pump - head - friction,
+        ],
+        axis=-1,
+    )
+    # A pipe rougher than a twentieth of its bore has no friction factor, so no profile either.
+    reason = np.where(level >= nozzle, Reason.PROFILE, Reason.NOZZLE_UNCOVERED)
+    reason = np.where(good & np.isfinite(friction), reason, Reason.BAD_INPUT)
+    pressure = P[:, None] + (rho * GRAVITY)[:, None] * heads
+    return _profile(reason, velocity, reynolds, factor, level - pump, friction, head, pressure)
 
-    heads = np.stack([
-        level - nozzle - (1.0 + entrance) * velocity_head,
-        level - high - velocity_head - friction,
-        level - pump - velocity_head - friction,
-    ], axis=-1)  # fmt: skip
+
+def _profile(reason, *columns) -> SuctionProfile:
+    """NaN in the lanes without a profile; the lowest of the places that exist."""
     profile = reason == Reason.PROFILE
-    pressure = np.where(profile[:, None], P[:, None] + (rho * GRAVITY)[:, None] * heads, np.nan)
+    *numbers, pressure = columns
+    pressure = np.where(profile[:, None], pressure, np.nan)
     found = np.where(np.isnan(pressure), np.inf, pressure)
-
-    def kept(values):
-        return np.where(profile, values, np.nan)
-
+    lowest = np.where(profile, found.min(axis=-1), np.nan)
+    place = np.where(profile, found.argmin(axis=-1), -1)
     return SuctionProfile(
-        kept(velocity), kept(reynolds), kept(factor), kept(level - pump), kept(friction), kept(velocity_head),
-        pressure, kept(found.min(axis=-1)), np.where(profile, found.argmin(axis=-1), -1), reason,
-    )  # fmt: skip
+        *(np.where(profile, value, np.nan) for value in numbers), pressure, lowest, place, reason
+    )

@@ -14,7 +14,9 @@ EVIDENCE = "common practice"
 @lru_cache(maxsize=1)
 def _band():
     rows = read_table("line/liquid_viscosity.csv")
-    return {name: np.array([float(row[name]) for row in rows]) for name in ("density_15", "low", "best", "high")}
+    return {
+        name: np.array([float(row[name]) for row in rows]) for name in ("density_15", "low", "best", "high")
+    }
 
 
 def kinematic_viscosity_band(density_15):

@@ -5,14 +5,24 @@ from __future__ import annotations
 import numpy as np
 
 _MONTHS = (
-    "january", "february", "march", "april", "may", "june",
-    "july", "august", "september", "october", "november", "december",
-)  # fmt: skip
+    "january",
+    "february",
+    "march",
+    "april",
+    "may",
+    "june",
+    "july",
+    "august",
+    "september",
+    "october",
+    "november",
+    "december",
+)
 _DAYS = np.array([31, 28, 31, 30, 31, 30, 31, 31, 30, 31, 30, 31])
 
 
 def month_number(name: str) -> int | None:
-    """Number of a month (1 to 12) from its English name, its first three letters or its number; None otherwise."""
+    """Number of a month (1 to 12) from its English name, a start of three letters or its number; else None."""
     text = str(name).strip().lower().rstrip(".")
     if text.isdecimal():
         return int(text) if 1 <= int(text) <= 12 else None

@@ -89,9 +89,13 @@ def extraterrestrial_insolation(latitude, day_of_year):
     distance = 1.0 + 0.033 * np.cos(2.0 * np.pi * day / 365.0)  # equation 23
     # Equation 21 with a day of 24 x 60 minutes.
     total = (
-        24.0 * 60.0 / np.pi * SOLAR_CONSTANT * distance
+        24.0
+        * 60.0
+        / np.pi
+        * SOLAR_CONSTANT
+        * distance
         * (omega * np.sin(phi) * np.sin(delta) + np.cos(phi) * np.cos(delta) * np.sin(omega))
-    )  # fmt: skip
+    )
     return np.where(exists, np.maximum(total, 0.0), np.nan)
 
 

@@ -1,6 +1,7 @@
-"""Floor 5, the tank: temperatures, paint, geometry, vents, roof rules. Arrays in, arrays out, SI, no verdicts."""
+"""Floor 5, the tank: temperatures, paint, geometry, vents, roof rules. Arrays in and out, SI, no verdicts."""
 
 from screener.tank.capacity import accumulation, capacity_at, pressure_while_venting, rated_capacity
+from screener.tank.day import BASIS_WORDS, Basis, DailyTemperatures
 from screener.tank.geometry import (
     cross_section,
     horizontal_level,
@@ -21,9 +22,6 @@ from screener.tank.hottest import HottestBulk, HottestSurface, hottest_bulk, hot
 from screener.tank.paint import Absorptance, PaintRow, absorptance, paint_table
 from screener.tank.roof_rules import RoofRule, roof_rules, rule_packs, rules_for, rules_of
 from screener.tank.temperatures import (
-    BASIS_WORDS,
-    Basis,
-    DailyTemperatures,
     bulk_temperature_2006,
     bulk_temperature_2020,
     daily_temperatures_2006,

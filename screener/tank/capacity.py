@@ -88,12 +88,15 @@ def pressure_while_venting(set_above_barometer, rated_above_barometer):
     ------
     Definition: accumulation is what the pressure rises above the setting at full flow.
     """
-    setting, rated = np.asarray(set_above_barometer, dtype=float), np.asarray(rated_above_barometer, dtype=float)
+    setting, rated = (
+        np.asarray(set_above_barometer, dtype=float),
+        np.asarray(rated_above_barometer, dtype=float),
+    )
     return np.where((setting >= 0.0) & (rated >= setting), rated, np.nan)
 
 
 def accumulation(set_above_barometer, rated_above_barometer):
-    """Rise of the pressure above the setting at rated capacity. Arguments and result [Pa]; NaN where unknown."""
+    """Rise of the pressure above the setting at rated capacity. All in [Pa]; NaN where unknown."""
     return pressure_while_venting(set_above_barometer, rated_above_barometer) - np.asarray(
         set_above_barometer, dtype=float
     )

@@ -129,7 +129,9 @@ def roof_outage(shell_diameter, shape="cone", cone_slope=DEFAULT_CONE_SLOPE, dom
     cone = np.asarray(cone_slope, dtype=float) * radius / 3.0
     dome = rise * (0.5 + (rise / radius) ** 2 / 6.0)
     shape = np.asarray(shape, dtype=str)
-    return np.select([shape == "flat", shape == "cone", shape == "dome"], [np.zeros_like(cone), cone, dome], np.nan)
+    return np.select(
+        [shape == "flat", shape == "cone", shape == "dome"], [np.zeros_like(cone), cone, dome], np.nan
+    )
 
 
 def vertical_vapour_volume(shell_diameter, shell_height, liquid_level, outage=0.0):
@@ -203,7 +205,9 @@ def horizontal_liquid_volume(shell_diameter, length, liquid_level):
 
 def horizontal_vapour_volume(shell_diameter, length, liquid_level):
     """Vapour space of a lying cylinder with flat ends. Arguments [m], returns [m3]."""
-    return horizontal_volume(shell_diameter, length) - horizontal_liquid_volume(shell_diameter, length, liquid_level)
+    return horizontal_volume(shell_diameter, length) - horizontal_liquid_volume(
+        shell_diameter, length, liquid_level
+    )
 
 
 def horizontal_liquid_surface(shell_diameter, length, liquid_level):

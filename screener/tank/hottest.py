@@ -6,9 +6,8 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from screener.tank.day import DailyTemperatures
 from screener.tank.temperatures import (
-    Basis,
-    DailyTemperatures,
     bulk_temperature_2006,
     bulk_temperature_2020,
     daily_temperatures_2006,
@@ -95,9 +94,16 @@ def hottest_surface(
     is a rule of this program.
     """
     weather = (daily_maximum, daily_minimum, insolation, roof_absorptance, shell_absorptance)
-    old = daily_temperatures_2006(*weather, roof=roof, insulation=insulation, bulk_temperature=bulk_temperature)
-    new = daily_temperatures_2020(*weather, height_over_diameter=height_over_diameter, roof=roof,
-                                  insulation=insulation, bulk_temperature=bulk_temperature)  # fmt: skip
+    old = daily_temperatures_2006(
+        *weather, roof=roof, insulation=insulation, bulk_temperature=bulk_temperature
+    )
+    new = daily_temperatures_2020(
+        *weather,
+        height_over_diameter=height_over_diameter,
+        roof=roof,
+        insulation=insulation,
+        bulk_temperature=bulk_temperature,
+    )
     old_top, new_top = np.broadcast_arrays(old.surface_maximum, new.surface_maximum)
     both = np.isfinite(old_top) & np.isfinite(new_top)
     take_new = np.where(both, new_top > old_top, ~np.isfinite(old_top) & np.isfinite(new_top))
@@ -110,10 +116,19 @@ def hottest_surface(
     edition = np.where(found, np.where(take_new, new.edition, old.edition), "")
     evidence = np.where(found, np.where(take_new, new.evidence, old.evidence), "")
     basis = np.where(take_new, new.basis, old.basis)
-    # Where neither holds, the reason of the 2006 edition stands unless the 2020 one names a fault of the input.
+    # Where neither holds, the reason that lies further from an answer is told.
     basis = np.where(found, basis, np.maximum(old.basis, new.basis))
-    return HottestSurface(best - difference, best, best + difference, difference, edition, evidence, basis,
-                          found & ~both, (old, new))  # fmt: skip
+    return HottestSurface(
+        best - difference,
+        best,
+        best + difference,
+        difference,
+        edition,
+        evidence,
+        basis,
+        found & ~both,
+        (old, new),
+    )
 
 
 def _editions_apart(weather, height_over_diameter, bulk_temperature):
@@ -167,7 +182,11 @@ def hottest_bulk(monthly_mean, roof_absorptance, shell_absorptance, monthly_inso
     June 2020 [from memory, unverified].
     """
     air = np.asarray(monthly_mean, dtype=float)
-    sun = np.full_like(air, np.nan) if monthly_insolation is None else np.asarray(monthly_insolation, dtype=float)
+    sun = (
+        np.full_like(air, np.nan)
+        if monthly_insolation is None
+        else np.asarray(monthly_insolation, dtype=float)
+    )
     roof = np.asarray(roof_absorptance, dtype=float)[..., None]
     shell = np.asarray(shell_absorptance, dtype=float)[..., None]
     old, new = np.broadcast_arrays(
@@ -183,6 +202,3 @@ def hottest_bulk(monthly_mean, roof_absorptance, shell_absorptance, monthly_inso
     best, difference = pick(top), np.abs(np.nan_to_num(pick(new) - pick(old), nan=0.0))
     edition = np.where(some, np.where(pick(new) == best, "2020", "2006"), "")
     return HottestBulk(best - difference, best, best + difference, edition, np.where(some, month, -1))
-
-
-__all__ = ["Basis", "HottestBulk", "HottestSurface", "hottest_bulk", "hottest_surface"]

@@ -57,7 +57,10 @@ def paint_table() -> dict[str, PaintRow]:
     rows = {}
     for line, text in enumerate(read_table(TABLE), start=2):
         row = PaintRow(
-            text["row"], *(float(text[name]) for name in CONDITIONS), text["ends_evidence"], text["middle_evidence"]
+            text["row"],
+            *(float(text[name]) for name in CONDITIONS),
+            text["ends_evidence"],
+            text["middle_evidence"],
         )
         if not 0.0 <= row.new <= row.average <= row.aged <= 1.0:
             raise DataError(TABLE, line, f"absorptances of {row.row} do not rise from new to aged")
@@ -110,8 +113,10 @@ def absorptance(text: str | None) -> Absorptance:
 
 
 def _given_number(plain: str) -> float | None:
-    """A number stated as absorptance or reflectance, as absorptance; None if there is none between 0 and 1."""
-    match = re.search(r"\b(absorptance|absorptivity|reflectance|reflectivity)\D{0,4}(\d+(?:\.\d+)?)\s*(%?)", plain)
+    """A stated absorptance, or one less a stated reflectance; None without a number from 0 to 1."""
+    match = re.search(
+        r"\b(absorptance|absorptivity|reflectance|reflectivity)\D{0,4}(\d+(?:\.\d+)?)\s*(%?)", plain
+    )
     if match is None:
         return None
     value = float(match[2]) / (100.0 if match[3] else 1.0)
@@ -154,7 +159,9 @@ def _from_rows(rows: list[str], condition: str) -> Absorptance:
         notes.append(f"the text fits {len(rows)} rows of the table: their mean taken, all of them spanned")
     if not condition:
         notes.append("no condition named: new to aged, average taken")
-    marks = {row.middle_evidence if (condition or "average") == "average" else row.ends_evidence for row in table}
+    marks = {
+        row.middle_evidence if (condition or "average") == "average" else row.ends_evidence for row in table
+    }
     return Absorptance(
         low=min(getattr(row, lowest) for row in table),
         best=sum(getattr(row, condition or "average") for row in table) / len(table),
@@ -169,7 +176,9 @@ def _from_rows(rows: list[str], condition: str) -> Absorptance:
 
 def _whole_table(text: str | None) -> Absorptance:
     table = paint_table().values()
-    said = f"'{text.strip()}' names no surface of the table" if (text or "").strip() else "no surface is named"
+    said = (
+        f"'{text.strip()}' names no surface of the table" if (text or "").strip() else "no surface is named"
+    )
     low, high = min(row.new for row in table), max(row.aged for row in table)
     return Absorptance(
         low=low,

@@ -97,4 +97,8 @@ def rules_for(pack: str, kind: str, volume: float) -> tuple[RoofRule, ...]:
     volume : of the whole tank [m3]
     """
     rows = [rule for rule in rules_of(pack) if rule.covers(kind, volume)]
-    return tuple(sorted(rows, key=lambda rule: (ROLES.index(rule.role), math.inf if rule.limit is None else rule.limit)))
+    return tuple(
+        sorted(
+            rows, key=lambda rule: (ROLES.index(rule.role), math.inf if rule.limit is None else rule.limit)
+        )
+    )

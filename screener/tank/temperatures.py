@@ -11,10 +11,9 @@ with a design day they give the surface after several such days in a row.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
-from enum import IntEnum
-
 import numpy as np
+
+from screener.tank.day import COVERED_FLOATING_ROOFS, Basis, day_lanes, finished
 
 # One Btu/ft2 in J/m2 (1055.05585262 / 0.09290304, exact units) and one degree Rankine in kelvin.
 BTU_PER_SQUARE_FOOT = 1055.05585262 / 0.09290304
@@ -23,65 +22,6 @@ _PER_SUN = RANKINE / BTU_PER_SQUARE_FOOT  # turns a coefficient [R ft2/Btu] into
 
 EVIDENCE_2006 = "law"
 EVIDENCE_2020 = "memory"
-
-FIXED_ROOFS = ("fixed-roof", "horizontal")
-COVERED_FLOATING_ROOFS = ("internal-floating-roof", "domed-floating-roof")
-INSULATION = ("none", "shell", "full")
-
-AIR_TEMPERATURE_RANGE = (200.0, 340.0)  # anything else is a fault of the input [K]
-INSOLATION_MOST = 5.0e7  # more than any place on earth receives in a day [J/m2]
-
-
-class Basis(IntEnum):
-    """Why a lane holds a number, or none."""
-
-    METHOD = 0  # the edition's own equations
-    FLOATING_ROOF_SWING = 1  # daily swing of a fixed roof taken for a floating one: an upper bound
-    NOT_FOR_INSULATED = 2  # this edition does not hold for insulated tanks
-    BULK_NOT_GIVEN = 3  # an underground tank needs the liquid temperature itself
-    NO_EQUATION = 4  # no equation for this kind of tank
-    BAD_INPUT = 5  # an input is missing or impossible
-
-
-BASIS_WORDS = {
-    Basis.METHOD: "by the equations of the edition",
-    Basis.FLOATING_ROOF_SWING: "daily swing of a fixed roof taken for the floating roof, an upper bound",
-    Basis.NOT_FOR_INSULATED: "this edition does not hold for insulated tanks",
-    Basis.BULK_NOT_GIVEN: "an underground tank needs the liquid temperature itself",
-    Basis.NO_EQUATION: "the method has no equation for this kind of tank",
-    Basis.BAD_INPUT: "an input of the surface temperature is missing or impossible",
-}
-
-
-@dataclass(frozen=True)
-class DailyTemperatures:
-    """Temperatures of one day by one edition; every array has the shape of the lanes.
-
-    edition : '2006' or '2020'
-    evidence : mark of the coefficients, 'law' or 'memory'
-    bulk : liquid bulk [K]
-    surface_mean : daily mean of the liquid surface, T_LA [K]
-    vapour_mean : daily mean of the vapour space, T_V; NaN in the 2006 edition, which has none [K]
-    vapour_range : daily range of the vapour temperature, dT_V [K]
-    surface_maximum : T_LA + dT_V/4 [K]
-    surface_minimum : T_LA - dT_V/4 [K]
-    basis : `Basis` per lane; from NOT_FOR_INSULATED on the temperatures are NaN
-    """
-
-    edition: str
-    evidence: str
-    bulk: np.ndarray
-    surface_mean: np.ndarray
-    vapour_mean: np.ndarray
-    vapour_range: np.ndarray
-    surface_maximum: np.ndarray
-    surface_minimum: np.ndarray
-    basis: np.ndarray
-
-    @property
-    def ok(self) -> np.ndarray:
-        """Lanes that hold numbers."""
-        return self.basis <= Basis.FLOATING_ROOF_SWING
 
 
 def bulk_temperature_2006(mean_air_temperature, solar_absorptance):
@@ -182,15 +122,24 @@ def daily_temperatures_2006(
     French arrete of 3 October 2010, annex III [law, read]; coefficients 0.44, 0.56, 0.0079, 0.72, 0.028
     in degrees Rankine and Btu/ft2, equal to the printed SI ones within their digits.
     """
-    d = _day(daily_maximum, daily_minimum, insolation, roof_absorptance, shell_absorptance,
-             roof, insulation, bulk_temperature)  # fmt: skip
+    d = day_lanes(
+        daily_maximum,
+        daily_minimum,
+        insolation,
+        roof_absorptance,
+        shell_absorptance,
+        roof,
+        insulation,
+        bulk_temperature,
+    )
     alpha = 0.5 * (d.roof_alpha + d.shell_alpha)
     bulk = np.where(np.isfinite(d.bulk), d.bulk, bulk_temperature_2006(d.mean, alpha))
     surface = 0.44 * d.mean + 0.56 * bulk + 0.0079 * _PER_SUN * alpha * d.sun
     swing = 0.72 * d.range + 0.028 * _PER_SUN * alpha * d.sun
-    basis = np.where(d.basis == Basis.METHOD, np.where(d.insulation == "none", d.basis, Basis.NOT_FOR_INSULATED),
-                     d.basis)  # fmt: skip
-    return _finish("2006", EVIDENCE_2006, d, basis, bulk, surface, np.full_like(surface, np.nan), swing)
+    basis = np.where(
+        d.basis == Basis.METHOD, np.where(d.insulation == "none", d.basis, Basis.NOT_FOR_INSULATED), d.basis
+    )
+    return finished("2006", EVIDENCE_2006, d, basis, bulk, surface, np.full_like(surface, np.nan), swing)
 
 
 def daily_temperatures_2020(
@@ -238,11 +187,22 @@ def daily_temperatures_2020(
     AP-42 chapter 7.1, June 2020, equations 1-6, 1-27, 1-31, 1-32 and their default, insulated and
     floating-roof forms [from memory, unverified].
     """
-    d = _day(daily_maximum, daily_minimum, insolation, roof_absorptance, shell_absorptance,
-             roof, insulation, bulk_temperature)  # fmt: skip
+    d = day_lanes(
+        daily_maximum,
+        daily_minimum,
+        insolation,
+        roof_absorptance,
+        shell_absorptance,
+        roof,
+        insulation,
+        bulk_temperature,
+    )
     bulk = np.where(np.isfinite(d.bulk), d.bulk, bulk_temperature_2020(d.mean, d.shell_alpha, d.sun))
-    ratio = np.full_like(bulk, np.nan) if height_over_diameter is None else (
-        np.broadcast_to(np.asarray(height_over_diameter, dtype=float), bulk.shape).copy())  # fmt: skip
+    ratio = (
+        np.full_like(bulk, np.nan)
+        if height_over_diameter is None
+        else (np.broadcast_to(np.asarray(height_over_diameter, dtype=float), bulk.shape).copy())
+    )
     ratio[(d.roof == "horizontal") | ~(ratio > 0.0)] = np.nan
     surface, vapour, swing = _default_form(d, bulk)
     for mask, form in (
@@ -251,10 +211,12 @@ def daily_temperatures_2020(
         (d.insulation == "shell", _insulated_shell_form(d, bulk)),
         (d.insulation == "full", (bulk, bulk, np.zeros_like(bulk))),
     ):
-        surface, vapour, swing = (np.where(mask, new, old) for new, old in zip(form, (surface, vapour, swing)))
+        surface, vapour, swing = (
+            np.where(mask, new, old) for new, old in zip(form, (surface, vapour, swing))
+        )
     external = (d.basis == Basis.METHOD) & (d.roof == "external-floating-roof") & (d.insulation != "full")
     basis = np.where(external, Basis.NO_EQUATION, d.basis)
-    return _finish("2020", EVIDENCE_2020, d, basis, bulk, surface, vapour, swing)
+    return finished("2020", EVIDENCE_2020, d, basis, bulk, surface, vapour, swing)
 
 
 def _default_form(d, bulk):
@@ -272,7 +234,9 @@ def _general_form(d, bulk, ratio):
     shell_sun = ratio * d.shell_alpha * d.sun * _PER_SUN
     long, short = 4.4 * ratio + 3.8, 2.2 * ratio + 1.9
     surface = (
-        (0.5 - 0.8 / long) * d.mean + (0.5 + 0.8 / long) * bulk + (0.021 * roof_sun + 0.013 * shell_sun) / long
+        (0.5 - 0.8 / long) * d.mean
+        + (0.5 + 0.8 / long) * bulk
+        + (0.021 * roof_sun + 0.013 * shell_sun) / long
     )
     vapour = ((2.2 * ratio + 1.1) * d.mean + 0.8 * bulk + 0.021 * roof_sun + 0.013 * shell_sun) / short
     swing = (1.0 - 0.8 / short) * d.range + (0.042 * roof_sun + 0.026 * shell_sun) / short
@@ -291,54 +255,3 @@ def _covered_floating_form(d, bulk):
     alpha_sun = 0.5 * (d.roof_alpha + d.shell_alpha) * d.sun * _PER_SUN
     surface = 0.3 * d.mean + 0.7 * bulk + 0.004 * alpha_sun
     return surface, np.full_like(surface, np.nan), _default_form(d, bulk)[2]
-
-
-@dataclass(frozen=True)
-class _Day:
-    """The lanes of one call after broadcasting."""
-
-    mean: np.ndarray
-    range: np.ndarray
-    sun: np.ndarray
-    roof_alpha: np.ndarray
-    shell_alpha: np.ndarray
-    roof: np.ndarray
-    insulation: np.ndarray
-    bulk: np.ndarray
-    basis: np.ndarray
-
-
-def _day(high, low, sun, roof_alpha, shell_alpha, roof, insulation, bulk):
-    bulk = np.nan if bulk is None else bulk
-    numbers = [np.asarray(value, dtype=float) for value in (high, low, sun, roof_alpha, shell_alpha, bulk)]
-    high, low, sun, roof_alpha, shell_alpha, bulk, roof, insulation = np.broadcast_arrays(
-        *numbers, np.asarray(roof, dtype=str), np.asarray(insulation, dtype=str)
-    )
-    coldest, hottest = AIR_TEMPERATURE_RANGE
-    good = (low >= coldest) & (high <= hottest) & (high >= low) & (sun >= 0.0) & (sun <= INSOLATION_MOST)
-    for alpha in (roof_alpha, shell_alpha):
-        good &= (alpha >= 0.0) & (alpha <= 1.0)
-    underground = roof == "underground"
-    known = np.isin(roof, (*FIXED_ROOFS, *COVERED_FLOATING_ROOFS, "external-floating-roof", "underground"))
-    basis = np.full(good.shape, int(Basis.METHOD))
-    basis[underground & ~np.isfinite(bulk)] = Basis.BULK_NOT_GIVEN
-    basis[~known] = Basis.NO_EQUATION
-    # Sun, paint and air do not enter where the bulk of a buried tank is known.
-    basis[~(good | underground) | ~np.isin(insulation, INSULATION)] = Basis.BAD_INPUT
-    return _Day(0.5 * (high + low), high - low, sun, roof_alpha, shell_alpha, roof, insulation, bulk, basis)
-
-
-def _finish(edition, evidence, d, basis, bulk, surface, vapour, swing):
-    """Underground lanes, the floating-roof mark, and NaN where nothing is known."""
-    underground = d.roof == "underground"
-    bulk = np.where(underground, d.bulk, bulk)
-    surface = np.where(underground, bulk, surface)
-    vapour = np.where(underground, bulk, vapour)
-    swing = np.where(underground, 0.0, swing)
-    floating = np.isin(d.roof, (*COVERED_FLOATING_ROOFS, "external-floating-roof")) & (swing > 0.0)
-    basis = np.where((basis == Basis.METHOD) & floating, Basis.FLOATING_ROOF_SWING, basis)
-    none = basis > Basis.FLOATING_ROOF_SWING
-    bulk, surface, vapour, swing = (np.where(none, np.nan, value) for value in (bulk, surface, vapour, swing))
-    return DailyTemperatures(
-        edition, evidence, bulk, surface, vapour, swing, surface + swing / 4.0, surface - swing / 4.0, basis
-    )

@@ -244,7 +244,9 @@ def tables_apply(vapour_space_temperature, insulated=False):
     API Std 2000, 5th edition, 4.3, wording on a reseller's excerpt.
     """
     temperature = np.asarray(vapour_space_temperature, dtype=float)
-    return (temperature <= HOTTEST_VAPOUR_SPACE) | (np.asarray(insulated, dtype=bool) & np.isfinite(temperature))
+    return (temperature <= HOTTEST_VAPOUR_SPACE) | (
+        np.asarray(insulated, dtype=bool) & np.isfinite(temperature)
+    )
 
 
 def flashed_vapour_as_air(molar_flow, molar_mass, temperature):

@@ -17,7 +17,9 @@ from screener.tank.vents import BARREL, HOUR, NORMAL_PER_STANDARD_CUBIC_FOOT
 @lru_cache(maxsize=1)
 def older_rates() -> dict[str, tuple[float, str]]:
     """Rate as printed and its evidence mark, by name."""
-    return {row["key"]: (float(row["value"]), row["evidence"]) for row in read_table("tank/older_venting.csv")}
+    return {
+        row["key"]: (float(row["value"]), row["evidence"]) for row in read_table("tank/older_venting.csv")
+    }
 
 
 def _rate(key: str) -> float:

@@ -17,9 +17,19 @@ from screener.line import (
     suction_profile,
 )
 
-LINE = {"surface_pressure": 97000.0, "liquid_level": 1.2, "rate": 0.125, "density": 720.0, "kinematic_viscosity": 6e-7,
-        "line_length": 180.0, "line_bore": 0.304, "pump_height": 0.4, "nozzle_height": 0.3, "highest_point": 0.9,
-        "fittings": 4.0}  # fmt: skip
+LINE = {
+    "surface_pressure": 97000.0,
+    "liquid_level": 1.2,
+    "rate": 0.125,
+    "density": 720.0,
+    "kinematic_viscosity": 6e-7,
+    "line_length": 180.0,
+    "line_bore": 0.304,
+    "pump_height": 0.4,
+    "nozzle_height": 0.3,
+    "highest_point": 0.9,
+    "fittings": 4.0,
+}
 
 
 def line(**changes):
@@ -33,9 +43,7 @@ def test_against_a_sum_by_hand():
     head = v**2 / (2 * 9.80665)
     loss = (f * 180.0 / 0.304 + 4.5) * head
     assert got.velocity == pytest.approx([v]) and got.friction_head == pytest.approx([loss])
-    expected = 97000.0 + 720.0 * 9.80665 * np.array(
-        [0.9 - 1.5 * head, 0.3 - head - loss, 0.8 - head - loss]
-    )
+    expected = 97000.0 + 720.0 * 9.80665 * np.array([0.9 - 1.5 * head, 0.3 - head - loss, 0.8 - head - loss])
     assert got.pressure[0] == pytest.approx(expected, rel=1e-12)
     assert PLACES[int(got.lowest_place[0])] == "highest point"
     assert got.lowest_pressure == pytest.approx(expected[1:2])
@@ -76,16 +84,10 @@ def test_more_flow_length_bends_and_viscosity_never_raise_the_pressure():
         ("rate", np.linspace(0.0, 0.4, 60)),
         ("line_length", np.linspace(0.0, 900.0, 20)),
         ("fittings", np.linspace(0.0, 30.0, 20)),
-        ("kinematic_viscosity", np.geomspace(2e-7, 2e-3, 200)),
+        # Turbulent throughout: between turbulent and laminar flow friction falls with viscosity.
+        ("kinematic_viscosity", np.geomspace(2e-7, 9e-5, 100)),
         ("roughness", np.linspace(0.0, 1e-3, 20)),
     ):
-        if name == "kinematic_viscosity":
-            # Between laminar and turbulent flow the friction factor falls with viscosity: a property of pipes.
-            reynolds = line(**{name: values}).reynolds
-            values = values[(reynolds < 1500.0) | (reynolds > 5000.0)]
-            turbulent = line(**{name: values}).reynolds > 5000.0
-            assert (np.diff(line(**{name: values[turbulent]}).pressure[:, 2]) < 0.0).all()
-            continue
         assert (np.diff(line(**{name: values}).pressure[:, 2]) < 0.0).all(), name
 
 
@@ -103,8 +105,12 @@ def test_friction_factor_joins_its_two_limits():
 def test_batch_equals_lane_by_lane():
     rng = np.random.default_rng(11)
     n = 25
-    lanes = {"liquid_level": rng.uniform(0.5, 14.0, n), "rate": rng.uniform(0.0, 0.3, n),
-                 "line_bore": rng.uniform(0.15, 0.5, n), "highest_point": np.where(rng.random(n) < 0.5, np.nan, 1.5)}  # fmt: skip
+    lanes = {
+        "liquid_level": rng.uniform(0.5, 14.0, n),
+        "rate": rng.uniform(0.0, 0.3, n),
+        "line_bore": rng.uniform(0.15, 0.5, n),
+        "highest_point": np.where(rng.random(n) < 0.5, np.nan, 1.5),
+    }
     batch = line(**lanes)
     for i in range(n):
         one = line(**{name: value[i] for name, value in lanes.items()})
@@ -117,7 +123,9 @@ def test_margin_rule():
     assert asked_npsh(np.array([3.5, 10.0, 20.0])) == pytest.approx([4.5, 11.0, 22.0])
     required = np.linspace(0.0, 30.0, 13)
     for service in npsh_margins():
-        assert allowed_npsh_required(asked_npsh(required, service), service) == pytest.approx(required, abs=1e-12)
+        assert allowed_npsh_required(asked_npsh(required, service), service) == pytest.approx(
+            required, abs=1e-12
+        )
         assert npsh_margins()[service].evidence == "quoted"
     assert np.isnan(asked_npsh(-1.0))
     with pytest.raises(UnknownName, match="pump service"):
@@ -127,8 +135,19 @@ def test_margin_rule():
 def test_viscosity_band_holds_pure_liquids():
     from CoolProp.CoolProp import PropsSI
 
-    liquids = ("n-Pentane", "n-Hexane", "n-Heptane", "n-Octane", "n-Nonane", "n-Decane", "n-Dodecane", "Toluene",
-               "Benzene", "CycloHexane", "Ethanol")  # fmt: skip
+    liquids = (
+        "n-Pentane",
+        "n-Hexane",
+        "n-Heptane",
+        "n-Octane",
+        "n-Nonane",
+        "n-Decane",
+        "n-Dodecane",
+        "Toluene",
+        "Benzene",
+        "CycloHexane",
+        "Ethanol",
+    )
     for name in liquids:
         density = PropsSI("D", "T", 288.15, "P", 2e5, name)
         low, _, high = kinematic_viscosity_band(density)

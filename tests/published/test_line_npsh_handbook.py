@@ -17,9 +17,20 @@ PSI = 6894.757
 
 
 def sample_line(length, fittings):
-    """The line of the sample; water at 60 degF in the friction table (1.13e-6 m2/s), commercial steel 0.00015 ft."""
-    return suction_profile(101325.0, 10.0, 340 * GPM, 999.0, 1.13e-6, length, BORE, 0.0, fittings=fittings,
-                           roughness=0.00015 * FOOT, entrance_loss=0.0)  # fmt: skip
+    """The line of the sample; water at 60 degF (1.13e-6 m2/s) and commercial steel of 0.00015 ft taken."""
+    return suction_profile(
+        101325.0,
+        10.0,
+        340 * GPM,
+        999.0,
+        1.13e-6,
+        length,
+        BORE,
+        0.0,
+        fittings=fittings,
+        roughness=0.00015 * FOOT,
+        entrance_loss=0.0,
+    )
 
 
 def test_churchill_of_the_library_page():

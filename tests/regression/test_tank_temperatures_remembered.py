@@ -62,7 +62,13 @@ def test_2020_default_is_the_rounded_general_form_at_half_height():
         cold = daily_temperatures_2020(*base, height_over_diameter=ratio, bulk_temperature=295.0)
         warm = daily_temperatures_2020(*base, height_over_diameter=ratio, bulk_temperature=296.0)
         sun = daily_temperatures_2020(
-            300.0, 290.0, 1000.0 * BTU_PER_SQUARE_FOOT, 1.0, 1.0, height_over_diameter=ratio, bulk_temperature=295.0
+            300.0,
+            290.0,
+            1000.0 * BTU_PER_SQUARE_FOOT,
+            1.0,
+            1.0,
+            height_over_diameter=ratio,
+            bulk_temperature=295.0,
         )
         return (
             float(cold.vapour_range) / 10.0,

@@ -1,4 +1,4 @@
-"""Vapour space of W1 (AP-42 chapter 7.1, November 2006, example 1, remembered) and two remembered dome ratios."""
+"""Vapour space of W1 (AP-42 chapter 7.1, November 2006, example 1, remembered) and a remembered dome."""
 
 import pytest
 

@@ -1,4 +1,4 @@
-"""Own check values of the main-body method and conversions; the method itself was read only where it is quoted."""
+"""Own check values of the main-body method and conversions; the method was read only where it is quoted."""
 
 import numpy as np
 import pytest
@@ -53,7 +53,9 @@ def test_insulation_factors():
     assert partly_insulated_factor(0.6, fully_insulated_factor(0.05, 0.04)) == pytest.approx(0.50, abs=5e-5)
 
 
-@pytest.mark.parametrize("mass, kelvin, factor", [(0.065, 288.15, 1.539), (0.058122, 288.15, 1.455), (0.086177, 293.15, 1.787)])
+@pytest.mark.parametrize(
+    "mass, kelvin, factor", [(0.065, 288.15, 1.539), (0.058122, 288.15, 1.455), (0.086177, 293.15, 1.787)]
+)
 def test_air_equivalent_factor(mass, kelvin, factor):
     # Three printed decimals.
     assert flashed_vapour_as_air(1.0, mass, kelvin) / MOLAR_VOLUME_NORMAL == pytest.approx(factor, abs=6e-4)
@@ -62,7 +64,9 @@ def test_air_equivalent_factor(mass, kelvin, factor):
 def test_older_rates_per_cubic_metre():
     # 0.9437, 1.0111, 2.0221 recomputed; half a last digit.
     assert inbreathing_liquid_older(1.0) == pytest.approx(0.9437, abs=6e-5)
-    assert outbreathing_liquid_older(1.0, np.array([False, True])) == pytest.approx([1.0111, 2.0221], abs=6e-5)
+    assert outbreathing_liquid_older(1.0, np.array([False, True])) == pytest.approx(
+        [1.0111, 2.0221], abs=6e-5
+    )
 
 
 def test_us_form_of_the_equations():

@@ -18,7 +18,16 @@ from screener.site import (
 
 @pytest.mark.parametrize(
     "text, number",
-    [("July", 7), ("jul", 7), ("Sept.", 9), ("12", 12), (" may ", 5), ("ma", None), ("13", None), ("summer", None)],
+    [
+        ("July", 7),
+        ("jul", 7),
+        ("Sept.", 9),
+        ("12", 12),
+        (" may ", 5),
+        ("ma", None),
+        ("13", None),
+        ("summer", None),
+    ],
 )
 def test_month_names(text, number):
     assert month_number(text) == number
@@ -66,5 +75,7 @@ def test_outside_the_range_is_nan_and_the_other_lanes_stand():
 
 
 def test_lowest_barometer_takes_the_allowance_off():
-    assert lowest_barometer(35.0) == pytest.approx(float(standard_pressure(35.0)) - LOWEST_BAROMETER_ALLOWANCE)
+    assert lowest_barometer(35.0) == pytest.approx(
+        float(standard_pressure(35.0)) - LOWEST_BAROMETER_ALLOWANCE
+    )
     assert lowest_barometer(35.0, 0.0) == standard_pressure(35.0)

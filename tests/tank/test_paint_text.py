@@ -35,7 +35,9 @@ def test_text(text, row, condition, low, best, high):
     assert bool(got.note) == (not condition or "/" in row)
 
 
-@pytest.mark.parametrize("text", ["", None, "blue", "striped", "light green", "painted some years ago", "standard finish"])
+@pytest.mark.parametrize(
+    "text", ["", None, "blue", "striped", "light green", "painted some years ago", "standard finish"]
+)
 def test_a_text_without_a_colour_spans_the_table_and_says_so(text):
     got = absorptance(text)
     assert not got.known and (got.low, got.high) == (0.10, 0.97) and "whole table" in got.note
@@ -44,7 +46,12 @@ def test_a_text_without_a_colour_spans_the_table_and_says_so(text):
 
 @pytest.mark.parametrize(
     "text, value",
-    [("absorptance 0.3", 0.3), ("solar absorptance: 0.62", 0.62), ("reflectance 70 %", 0.3), ("reflectivity = 0.8", 0.2)],
+    [
+        ("absorptance 0.3", 0.3),
+        ("solar absorptance: 0.62", 0.62),
+        ("reflectance 70 %", 0.3),
+        ("reflectivity = 0.8", 0.2),
+    ],
 )
 def test_a_stated_number_is_taken_as_given(text, value):
     got = absorptance(text)

@@ -7,7 +7,9 @@ from screener.tank.roof_rules import KINDS, roof_rules, rule_packs, rules_for, r
 
 
 def test_packs():
-    assert {"us-40cfr60-kb", "us-40cfr60-kc", "eu-94-63", "fr-2010-10-03", "us-8ccr-5585"} <= set(rule_packs())
+    assert {"us-40cfr60-kb", "us-40cfr60-kc", "eu-94-63", "fr-2010-10-03", "us-8ccr-5585"} <= set(
+        rule_packs()
+    )
     with pytest.raises(UnknownName, match="us-40cfr60-kb"):
         rules_of("us-40cfr60-kx")
 

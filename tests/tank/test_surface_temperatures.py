@@ -16,9 +16,16 @@ from screener.tank import (
 
 DAY = (311.0, 297.0, 27.0e6, 0.25, 0.25)
 KINDS = np.array(
-    ["fixed-roof", "horizontal", "internal-floating-roof", "domed-floating-roof", "external-floating-roof",
-     "underground", "pressure-vessel"]
-)  # fmt: skip
+    [
+        "fixed-roof",
+        "horizontal",
+        "internal-floating-roof",
+        "domed-floating-roof",
+        "external-floating-roof",
+        "underground",
+        "pressure-vessel",
+    ]
+)
 
 
 def test_surface_ends_stand_a_quarter_of_the_range_away():
@@ -30,10 +37,21 @@ def test_surface_ends_stand_a_quarter_of_the_range_away():
 def test_every_kind_of_tank_has_numbers_or_a_reason():
     old = daily_temperatures_2006(*DAY, roof=KINDS)
     new = daily_temperatures_2020(*DAY, roof=KINDS, height_over_diameter=0.6)
-    assert list(old.basis) == [Basis.METHOD, Basis.METHOD, *[Basis.FLOATING_ROOF_SWING] * 3,
-                               Basis.BULK_NOT_GIVEN, Basis.NO_EQUATION]  # fmt: skip
-    assert list(new.basis) == [Basis.METHOD, Basis.METHOD, *[Basis.FLOATING_ROOF_SWING] * 2, Basis.NO_EQUATION,
-                               Basis.BULK_NOT_GIVEN, Basis.NO_EQUATION]  # fmt: skip
+    assert list(old.basis) == [
+        Basis.METHOD,
+        Basis.METHOD,
+        *[Basis.FLOATING_ROOF_SWING] * 3,
+        Basis.BULK_NOT_GIVEN,
+        Basis.NO_EQUATION,
+    ]
+    assert list(new.basis) == [
+        Basis.METHOD,
+        Basis.METHOD,
+        *[Basis.FLOATING_ROOF_SWING] * 2,
+        Basis.NO_EQUATION,
+        Basis.BULK_NOT_GIVEN,
+        Basis.NO_EQUATION,
+    ]
     for day in (old, new):
         assert (np.isfinite(day.surface_maximum) == day.ok).all()
         assert (np.isfinite(day.surface_maximum) == (day.basis <= Basis.FLOATING_ROOF_SWING)).all()
@@ -56,14 +74,22 @@ def test_a_buried_tank_takes_its_liquid_temperature_and_has_no_swing():
     day = hottest_surface(*DAY, roof="underground", bulk_temperature=288.0)
     assert day.best == 288.0 and day.low == 288.0 and day.high == 288.0
     # Weather is not needed below ground.
-    assert hottest_surface(np.nan, np.nan, np.nan, 0.3, 0.3, roof="underground", bulk_temperature=288.0).best == 288.0
+    assert (
+        hottest_surface(np.nan, np.nan, np.nan, 0.3, 0.3, roof="underground", bulk_temperature=288.0).best
+        == 288.0
+    )
 
 
 def test_insulation():
     lanes = np.array(["none", "shell", "full", "wool"])
     old = daily_temperatures_2006(*DAY, insulation=lanes)
     new = daily_temperatures_2020(*DAY, insulation=lanes)
-    assert list(old.basis) == [Basis.METHOD, Basis.NOT_FOR_INSULATED, Basis.NOT_FOR_INSULATED, Basis.BAD_INPUT]
+    assert list(old.basis) == [
+        Basis.METHOD,
+        Basis.NOT_FOR_INSULATED,
+        Basis.NOT_FOR_INSULATED,
+        Basis.BAD_INPUT,
+    ]
     assert list(new.basis) == [Basis.METHOD] * 3 + [Basis.BAD_INPUT]
     assert new.vapour_range[2] == 0.0 and new.surface_maximum[2] == new.bulk[2] == new.vapour_mean[2]
     # The printed weights of the insulated-shell form, by hand: 0.6 x 14 K and 0.02 alpha I in kelvin.
@@ -81,7 +107,9 @@ def test_hottest_surface_is_the_higher_edition_with_the_difference_both_ways():
     alpha = np.array([0.17, 0.9])
     got = hottest_surface(311.0, 297.0, 27.0e6, alpha, alpha, height_over_diameter=0.6)
     old = daily_temperatures_2006(311.0, 297.0, 27.0e6, alpha, alpha).surface_maximum
-    new = daily_temperatures_2020(311.0, 297.0, 27.0e6, alpha, alpha, height_over_diameter=0.6).surface_maximum
+    new = daily_temperatures_2020(
+        311.0, 297.0, 27.0e6, alpha, alpha, height_over_diameter=0.6
+    ).surface_maximum
     assert got.best == pytest.approx(np.maximum(old, new))
     assert got.low == pytest.approx(np.minimum(old, new))
     assert got.high - got.best == pytest.approx(np.abs(old - new))
@@ -130,14 +158,22 @@ def test_hottest_bulk_finds_its_month():
 
 def test_hottest_bulk_without_sun_uses_the_2006_term():
     got = hottest_bulk([295.0, 297.0], 0.25, 0.25)
-    assert got.best == pytest.approx(297.0 + (6 * 0.25 - 1) / 1.8) and got.edition == "2006" and got.month == 1
+    assert (
+        got.best == pytest.approx(297.0 + (6 * 0.25 - 1) / 1.8) and got.edition == "2006" and got.month == 1
+    )
 
 
 def test_batch_equals_lane_by_lane():
     rng = np.random.default_rng(5)
     n = 40
     low = rng.uniform(250.0, 300.0, n)
-    args = (low + rng.uniform(0.0, 20.0, n), low, rng.uniform(0.0, 3e7, n), rng.uniform(0, 1, n), rng.uniform(0, 1, n))
+    args = (
+        low + rng.uniform(0.0, 20.0, n),
+        low,
+        rng.uniform(0.0, 3e7, n),
+        rng.uniform(0, 1, n),
+        rng.uniform(0, 1, n),
+    )
     roof = KINDS[rng.integers(0, len(KINDS), n)]
     ratio = np.where(rng.random(n) < 0.3, np.nan, rng.uniform(0.2, 3.0, n))
     batch = hottest_surface(*args, roof=roof, height_over_diameter=ratio)

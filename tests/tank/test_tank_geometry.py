@@ -38,7 +38,9 @@ def test_horizontal_tank_against_fluids():
     levels = np.linspace(0.0, 3.0, 13)
     expected = np.array([tank.V_from_h(h) for h in levels])
     # fluids integrates some shapes numerically; for flat ends both are closed: rounding.
-    assert geometry.horizontal_liquid_volume(3.0, LENGTH, levels) == pytest.approx(expected, rel=1e-10, abs=1e-10)
+    assert geometry.horizontal_liquid_volume(3.0, LENGTH, levels) == pytest.approx(
+        expected, rel=1e-10, abs=1e-10
+    )
     area = [tank.SA_from_h(h) for h in levels[1:-1]]
     assert geometry.horizontal_wetted_area(3.0, LENGTH, levels[1:-1]) == pytest.approx(area, rel=1e-9)
 

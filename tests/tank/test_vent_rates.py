@@ -91,6 +91,7 @@ def test_batch_equals_lane_by_lane():
     temperature, volatile = rng.uniform(280.0, 310.0, n), rng.random(n) < 0.5
     batch = vents.inbreathing_thermal(volume, latitude, temperature, volatile)
     single = [
-        float(vents.inbreathing_thermal(volume[i], latitude[i], temperature[i], volatile[i])) for i in range(n)
+        float(vents.inbreathing_thermal(volume[i], latitude[i], temperature[i], volatile[i]))
+        for i in range(n)
     ]
     assert batch == pytest.approx(single, rel=1e-14)
