@@ -18,7 +18,7 @@ _WHERE = {
     "write_json": "as_json",
     "data_digest": "digest",
 }
-__all__ = sorted(_WHERE)
+__all__ = ["Document", "build_field_sheet", "build_memo", "data_digest", "write_json", "write_markdown"]
 
 
 def __getattr__(name: str):

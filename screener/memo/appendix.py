@@ -53,8 +53,14 @@ def _sources(frame: Frame) -> Block:
     keys = dict.fromkeys((*frame.screening.sources, *(key for f in frame.findings for key in f.sources)))
     if not keys:
         return Paragraph(words("appendix", "no_sources"))
-    rows = tuple((key, source_title(key)) for key in sorted(keys))
+    rows = tuple(_source_row(key) for key in sorted(keys))
     return Table(tuple(words("appendix", "source_columns")), rows, (), words("appendix", "sources"))
+
+
+def _source_row(key: str) -> tuple[str, str]:
+    """Key and title; a source that a blend names in words has no key."""
+    title = source_title(key)
+    return ("", key) if title == key and " " in key else (key, title)
 
 
 def _run(frame: Frame) -> list[Block]:

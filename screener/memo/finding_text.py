@@ -28,27 +28,31 @@ def _blank(item, verdict: str):
     return replace(item, text=_ABSENT.get(verdict, numbers.NONE))
 
 
-def limit_span(low, high, kind: str, unit: str, system: str, places: int | None = None) -> Span:
+def limit_span(
+    low, high, kind: str, unit: str, system: str, places: int | None = None, *, bare=False
+) -> Span:
     """The limit in words: at most, at least or outside."""
     texts = [numbers.number(v, unit, system, places=places) for v in (low, high) if v is not None]
-    words = _LIMIT_WORDS[kind]
-    text = (
-        f"{words} {' to '.join(texts)} {numbers.unit_text(unit, system)}".rstrip() if texts else numbers.NONE
-    )
+    label = "" if bare else numbers.unit_text(unit, system)
+    text = f"{_LIMIT_WORDS[kind]} {' to '.join(texts)} {label}".rstrip() if texts else numbers.NONE
     return Span(low, high, unit, text)
 
 
-def finding_numbers(finding, system: str = "si") -> FindingNumbers:
-    """All numbers of a finding with one count of decimals, so that they can be compared by eye."""
+def finding_numbers(finding, system: str = "si", *, bare: bool = False) -> FindingNumbers:
+    """All numbers of a finding with one count of decimals, so that they can be compared by eye.
+
+    bare leaves out the unit of the finding, for tables that have a column for
+    it; a margin in another unit (K of temperatures in degC) keeps its own.
+    """
     unit, verdict = finding.unit, finding.verdict
     side_by_side = (finding.value, finding.low, finding.high, finding.limit_low, finding.limit_high)
     places = numbers.decimals(side_by_side, unit, system)
     apart = numbers.difference_unit(unit)
     items = (
-        numbers.quantity(finding.value, unit, system, places=places),
-        numbers.span(finding.low, finding.high, unit, system, places=places),
-        limit_span(finding.limit_low, finding.limit_high, finding.kind, unit, system, places),
-        numbers.quantity(finding.margin, apart, system, places=places, sign=True),
+        numbers.quantity(finding.value, unit, system, places=places, bare=bare),
+        numbers.span(finding.low, finding.high, unit, system, places=places, bare=bare),
+        limit_span(finding.limit_low, finding.limit_high, finding.kind, unit, system, places, bare=bare),
+        numbers.quantity(finding.margin, apart, system, places=places, sign=True, bare=bare and unit != "K"),
         numbers.percent(finding.room_used),
     )
     return FindingNumbers(*(_blank(item, verdict) for item in items))

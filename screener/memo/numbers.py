@@ -76,6 +76,7 @@ _TABLE: dict[str, dict[str, Shown]] = {
         "si": Shown("kPa under barometer", 1e3, decimals=2),
         "us": Shown("psi under barometer", _PSI, decimals=3),
     },
+    "Pa difference": {"si": Shown("kPa", 1e3, decimals=1), "us": Shown("psi", _PSI, decimals=2)},
     "K": {
         "si": Shown("degC", 1.0, 273.15, 1, True),
         "us": Shown("degF", 1 / 1.8, 459.67, 1, True),
@@ -101,6 +102,10 @@ _TABLE: dict[str, dict[str, Shown]] = {
         "si": Shown("MJ/m2 a day", 1e6, decimals=1),
         "us": Shown("Btu/ft2 a day", _BTU / _FOOT**2, decimals=0),
     },
+    "m2/s": _same("mm2/s", 1e-6, 2),
+    "mol/mol": _same("mol %", 1e-2, 1),
+    "vol/vol": _same("vol %", 1e-2, 1),
+    "kg/kg": _same("mass %", 1e-2, 1),
     "deg": _same("deg", 1.0, 1),
     "%": _same("%", 1.0, 1, True),
     "-": _same(""),
@@ -112,14 +117,18 @@ _OTHER_NAMES = {
     "Pa below the barometer": "Pa under barometer",
     "m3/s of normal air": "m3/s air",
     "Nm3/s": "m3/s air",
-    "mol/mol": "-",
     "1": "-",
     "m^3/s": "m3/s",
     "m^3": "m3",
     "kg/m^3": "kg/m3",
     "J/m^2": "J/m2",
 }
-_DIFFERENCE = {"K": "K difference", "Pa over barometer": "Pa", "Pa under barometer": "Pa"}
+_DIFFERENCE = {
+    "K": "K difference",
+    "Pa": "Pa difference",
+    "Pa over barometer": "Pa difference",
+    "Pa under barometer": "Pa difference",
+}
 _MOST_DECIMALS = 6
 _SMALL_LENGTH = 0.01  # [m]; a length standing alone below this is shown in mm or in
 
@@ -186,10 +195,11 @@ def quantity(value, unit: str, system: str = "si", *, places=None, sign=False, b
     return Quantity(_real(value), unit, text)
 
 
-def span(low, high, unit: str, system: str = "si", *, places=None) -> Span:
-    """Low to high with one unit."""
+def span(low, high, unit: str, system: str = "si", *, places=None, bare=False) -> Span:
+    """Low to high with one unit, which `bare` leaves out."""
     texts = [number(value, unit, system, places=places) for value in (low, high)]
-    text = NONE if NONE in texts else f"{texts[0]} to {texts[1]} {unit_text(unit, system)}".rstrip()
+    label = "" if bare else unit_text(unit, system)
+    text = NONE if NONE in texts else f"{texts[0]} to {texts[1]} {label}".rstrip()
     return Span(_real(low), _real(high), unit, text)
 
 

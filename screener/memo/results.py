@@ -185,10 +185,21 @@ def liquids(frame: Frame):
 
 
 def report_lines(blend) -> tuple[str, ...]:
-    """Lines of a blend's report, whatever holds them."""
+    """What was assumed about a composition, what it rests on, and how it fits what was measured."""
     report = blend.report
-    lines = report if isinstance(report, (tuple, list)) else getattr(report, "lines", ())
-    return tuple(str(line) for line in lines)
+    origins = tuple(fill("method", "origin", source=source) for source in report.sources)
+    fits = tuple(
+        fill(
+            "method",
+            "residual",
+            name=name,
+            value=f"{value:.5g}",
+            computed=f"{computed:.5g}",
+            allowed=f"{allowed:.3g}",
+        )
+        for name, value, computed, allowed in report.residuals
+    )
+    return report.assumed + origins + fits
 
 
 def _model_lines(frame: Frame) -> list[str]:

@@ -25,7 +25,9 @@ def worked_section(frame: Frame) -> Section:
 
 def _worked(finding, system: str) -> list[Block]:
     blocks: list[Block] = []
-    governing = words("worked", "equations").get(finding.id.split("@")[0], "")
+    governing = next(
+        (text for key, text in words("worked", "equations").items() if finding.id.startswith(key)), ""
+    )
     if governing:
         blocks.append(Paragraph(fill("worked", "governing", title=finding.title, text=governing)))
     if finding.facts:

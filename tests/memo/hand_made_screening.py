@@ -5,6 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from types import SimpleNamespace
 
+from screener.blends import Report
 from screener.screening.finding import Condition, Fact, Finding, Headroom, Information, Screening
 from screener.states.case import (
     Ambient,
@@ -28,17 +29,28 @@ class MadeBlend:
 
     title: str
     names: tuple[str, ...]
-    z: tuple[float, ...]
-    report: tuple[str, ...] = ()
+    moles: tuple[float, ...]
+    report: Report = field(default_factory=Report)
     MW: float = 0.08
+    parts: tuple = ()
     density_15: float = 742.0
     fluid: SimpleNamespace = field(default_factory=lambda: SimpleNamespace(model="PR-GE", gaps=()))
+
+    @property
+    def z(self) -> tuple[float, ...]:
+        """Mole fractions."""
+        return self.moles
 
 
 RECEIPT = MadeBlend(
     "90 % made-up base + 10 % ethanol", ("toluene", "isopentane", "ethanol"), (0.55, 0.25, 0.20)
 )
-HEEL = MadeBlend("made-up base", ("toluene", "isopentane"), (0.7, 0.3), ("density fitted within 0.4 %",))
+HEEL = MadeBlend(
+    "made-up base",
+    ("toluene", "isopentane"),
+    (0.7, 0.3),
+    Report(("shares by volume at 15 degC",), ("made up",), (("density", 742.0, 741.6, 0.5),)),
+)
 
 
 def finding(**changes) -> Finding:
