@@ -22,7 +22,7 @@ _DAYS = np.array([31, 28, 31, 30, 31, 30, 31, 31, 30, 31, 30, 31])
 
 
 def month_number(name: str) -> int | None:
-    """Number of a month (1 to 12) from its English name, a start of three letters or its number; else None."""
+    """Number of a month (1 to 12) from its English name, its first three letters or its number, else None."""
     text = str(name).strip().lower().rstrip(".")
     if text.isdecimal():
         return int(text) if 1 <= int(text) <= 12 else None

@@ -69,7 +69,7 @@ class DailyTemperatures:
 
 @dataclass(frozen=True)
 class Day:
-    """Lanes of a day: air mean and range [K], sun [J/m2], paint [-], roof, insulation, known bulk [K], basis."""
+    """Lanes of a day: air mean, range [K], sun [J/m2], paint [-], roof, insulation, known bulk [K], basis."""
 
     mean: np.ndarray
     range: np.ndarray
