@@ -7,7 +7,7 @@ from screener.cli.layout import bullets, paragraph, table
 from screener.cli.wording import columns, say
 from screener.ground.errors import CaseErrors, InputError
 from screener.memo import numbers
-from screener.memo.finding_text import finding_numbers, verdict_counts, worst_first
+from screener.memo.finding_text import finding_numbers, step_text, verdict_counts, worst_first
 from screener.memo.front import tank_words
 
 _WORST_FIRST_CODES = (1, 2, 4, 0)
@@ -77,7 +77,7 @@ def page(screening, system: str, width: int) -> list[str]:
         say("check", "counts", counts=verdict_counts(findings)),
         "",
     ]
-    lines += [say("check", "why"), *_why(findings, width)]
+    lines += [say("check", "why"), *_why(findings, system, width)]
     for block in (_information(screening, system, width), _notes(screening, system, width)):
         lines += ["", *block] if block else []
     notes = say("check", "pressures_us" if system == "us" else "pressures")
@@ -109,14 +109,14 @@ def findings_table(findings, system: str, width: int) -> list[str]:
     return table(columns("check", "columns"), rows, width, _ALIGN)
 
 
-def _why(findings, width: int) -> list[str]:
+def _why(findings, system: str, width: int) -> list[str]:
     lines = []
     for finding in findings:
         texts = [finding.reason]
         condition = finding.condition.sentence()
         if condition:
             texts.append(say("check", "worst_case", condition=condition))
-        steps = " or ".join(step.sentence for step in finding.headroom)
+        steps = " or ".join(step_text(step, system) for step in finding.headroom)
         if steps:
             texts.append(say("check", "room_by", steps=steps))
         text = f"{finding.title}: {'; '.join(text.rstrip('.') for text in texts if text)}."
@@ -145,7 +145,9 @@ def _notes(screening, system: str, width: int) -> list[str]:
         for echo in screening.case.inputs
         if echo.quality == "default"
     ]
+    known = {f"{echo.path}: {echo.note}" for echo in screening.case.inputs if echo.quality == "default"}
     assumed = [*screening.assumptions, *(text for f in findings for text in f.inputs_assumed)]
+    assumed = [text for text in assumed if text not in known]
     groups = {
         "defaults": defaults,
         "assumptions": assumed,

@@ -33,7 +33,7 @@ def table(head, rows, width: int, align=()) -> list[str]:
     align = tuple(align) or ("left",) * len(head)
     widths = _widths(cells, width, align)
     if widths is None:
-        return _blocks(cells, width)
+        return blocks(cells[0], cells[1:], width)
     lines = [*_wrapped(cells[0], widths, align), _GAP.join("-" * w for w in widths)]
     for row in cells[1:]:
         lines += _wrapped(row, widths, align)
@@ -73,12 +73,12 @@ def _padded(text: str, width: int, side: str) -> str:
     return space + text if side == "right" else text + space
 
 
-def _blocks(cells, width: int) -> list[str]:
+def blocks(head, rows, width: int) -> list[str]:
     """'head: cell' lines, one block a row."""
     lines: list[str] = []
-    for row in cells[1:]:
-        for head, cell in zip(cells[0], row):
+    for row in rows:
+        for label, cell in zip(head, row):
             if cell:
-                lines += paragraph(f"{head}: {cell}" if head else cell, width, "", "  ")
+                lines += paragraph(f"{label}: {cell}" if label else cell, width, "", "  ")
         lines.append("")
     return lines[:-1]

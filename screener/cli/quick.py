@@ -12,7 +12,7 @@ from screener.cli import streams
 from screener.cli.layout import bullets, paragraph, table
 from screener.cli.result import as_text, without_nan
 from screener.cli.wording import columns, say
-from screener.ground.constants import ATMOSPHERE
+from screener.ground.constants import ATMOSPHERE, T_100F
 from screener.ground.errors import CaseErrors, InputError
 from screener.ground.status import words
 from screener.memo import numbers
@@ -39,9 +39,10 @@ def quick(arguments) -> int:
     from screener.blends import Blend
     from screener.casefile import quantity
 
-    parts = read_parts(arguments.blend)
-    T = quantity(arguments.at, "temperature", "--at")
-    blend = Blend.of(parts, basis="volume", at="15 degC")
+    blend, T = gathered(
+        lambda: Blend.of(read_parts(arguments.blend), basis="volume", at="15 degC"),
+        lambda: quantity(arguments.at, "temperature", "--at"),
+    )
     answers, vapour = answer(blend, T, arguments.units)
     code = 2 if any(item.value is None for item in answers) else 0
     if arguments.json:
@@ -50,6 +51,19 @@ def quick(arguments) -> int:
         width = arguments.width or streams.terminal_width()
         streams.result("\n".join(_page(blend, T, answers, vapour, arguments.units, width)))
     return code
+
+
+def gathered(*readers) -> list:
+    """What each reader gives; the faults of all of them together."""
+    values, faults = [], []
+    for read in readers:
+        try:
+            values.append(read())
+        except InputError as fault:
+            faults.append(fault)
+    if faults:
+        raise CaseErrors(faults)
+    return values
 
 
 def read_parts(text: str) -> dict[str, float]:
@@ -107,7 +121,12 @@ def answer(blend, T: float, system: str = "si") -> tuple[list[Answer], list[tupl
     sheet = volatility_sheet(blend)
     rows = [
         ("bubble_pressure", say("quick", "bubble", temperature=at), _lane(bubble, bubble.P), "Pa"),
-        ("DVPE", say("quick", "dvpe"), (sheet.DVPE, ""), "Pa"),
+        (
+            "DVPE",
+            say("quick", "dvpe", temperature=numbers.quantity(T_100F, "K", system).text),
+            (sheet.DVPE, ""),
+            "Pa",
+        ),
         ("density_15_degC", say("quick", "density"), (blend.density_15, ""), "kg/m3"),
         ("T10", say("quick", "temperature_10"), (sheet.T10, ""), "K"),
         ("T50", say("quick", "temperature_50"), (sheet.T50, ""), "K"),

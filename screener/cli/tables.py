@@ -6,11 +6,13 @@ from dataclasses import asdict
 
 from screener import __version__
 from screener.cli import streams
-from screener.cli.layout import bullets, paragraph, table
+from screener.cli.layout import blocks, bullets, paragraph, table
 from screener.cli.result import as_text, without_nan
 from screener.cli.wording import columns, say
 from screener.ground.files import data_folder, read_toml
 from screener.memo import numbers
+
+_WIDE = 130  # columns from which seven columns of prose are easier to read than blocks
 
 
 def species(arguments) -> int:
@@ -74,7 +76,10 @@ def _species_pairs(item, system: str):
         f"{curve.source}; fitted {inside}, largest miss {100 * curve.fit_error:.2f} %",
     )
     yield "note on vapour pressure", item.psat_note
-    yield "error bar of vapour pressure", f"{100 * item.psat_error:.2f} % within -23 to 77 degC"
+    yield (
+        "error bar of vapour pressure",
+        f"{100 * item.psat_error:.2f} % within {numbers.span(250.0, 350.0, 'K', system)}",
+    )
     yield "groups", ", ".join(f"{count} x {number}" for number, count in item.groups.items())
     yield from _hazards(item, system)
 
@@ -175,16 +180,20 @@ def criteria(arguments) -> int:
         return _json("criteria", [asdict(item) for item in chosen])
     width = _width(arguments)
     cells = [
-        (c.id, c.title, c.kind, c.limit, _gap(c), c.evidence or "by rule pack", c.source) for c in chosen
+        (c.id, c.title, c.kind, c.limit, _gap(c, arguments.units), c.evidence or "by rule pack", c.source)
+        for c in chosen
     ]
-    streams.result("\n".join(table(columns("tables", "criteria_columns"), cells, width)))
+    head = columns("tables", "criteria_columns")
+    streams.result("\n".join(table(head, cells, width) if width >= _WIDE else blocks(head, cells, width)))
     return 0
 
 
-def _gap(item) -> str:
+def _gap(item, system: str) -> str:
     share = f"{item.asked_gap:g} K" if item.scale == "kelvin" else f"{100 * item.asked_gap:g} %"
-    least = f", at least {item.asked_gap_least:g} {item.unit}" if item.asked_gap_least else ""
-    return share + least
+    if not item.asked_gap_least:
+        return share
+    least = numbers.quantity(item.asked_gap_least, numbers.difference_unit(item.unit), system).text
+    return f"{share}, at least {least}" if item.asked_gap else least
 
 
 def _json(what: str, rows) -> int:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from screener.memo import numbers
 from screener.memo.document import Block, Bullets, Paragraph, Section, Table
+from screener.memo.finding_text import step_text
 from screener.memo.frame import Frame
 from screener.memo.front import month_words
 from screener.memo.wording import fill, words
@@ -71,7 +72,7 @@ def change_section(frame: Frame) -> Section:
     weighed = [
         f"{f.title} ({f.verdict})" for f in frame.findings if f.verdict in ("beyond", "unknown", "near")
     ]
-    steps = [h.sentence for f in frame.findings for h in f.headroom]
+    steps = [step_text(h, frame.system) for f in frame.findings for h in f.headroom]
     named = "; ".join(weighed) or words("change", "impact_none")
     procedures = (
         fill("change", "procedures_text", headroom="; ".join(steps))

@@ -48,14 +48,23 @@ def finding_numbers(finding, system: str = "si", *, bare: bool = False) -> Findi
     side_by_side = (finding.value, finding.low, finding.high, finding.limit_low, finding.limit_high)
     places = numbers.decimals(side_by_side, unit, system)
     apart = numbers.difference_unit(unit)
+    # What cannot be told has no margin to show, even where value and limit exist.
+    margin, used = (None, None) if verdict == "unknown" else (finding.margin, finding.room_used)
     items = (
         numbers.quantity(finding.value, unit, system, places=places, bare=bare),
         numbers.span(finding.low, finding.high, unit, system, places=places, bare=bare),
         limit_span(finding.limit_low, finding.limit_high, finding.kind, unit, system, places, bare=bare),
-        numbers.quantity(finding.margin, apart, system, places=places, sign=True, bare=bare and unit != "K"),
-        numbers.percent(finding.room_used),
+        numbers.quantity(margin, apart, system, places=places, sign=True, bare=bare and unit != "K"),
+        numbers.percent(used),
     )
     return FindingNumbers(*(_blank(item, verdict) for item in items))
+
+
+def step_text(step, system: str = "si") -> str:
+    """A change that would restore room, in words; beside it the value where the words hold another unit."""
+    if system == "si" or step.value is None:
+        return step.sentence
+    return f"{step.sentence} ({numbers.anything(step.value, step.unit, system)})"
 
 
 def worst_first(findings) -> tuple:

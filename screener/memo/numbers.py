@@ -209,6 +209,8 @@ def anything(value, unit: str = "", system: str = "si") -> Quantity | str:
         return NONE
     if isinstance(value, bool):
         return "yes" if value else "no"
+    if isinstance(value, int) and unit_text(unit, system) == "":
+        return Quantity(float(value), unit, str(value))
     if isinstance(value, (int, float)):
         shown = quantity(
             value, "m small" if unit == "m" and 0.0 < abs(value) < _SMALL_LENGTH else unit, system

@@ -66,12 +66,8 @@ def information_table(item, system: str) -> Table:
 def curve_figure(frame: Frame) -> Figure | None:
     """Bubble pressure against temperature, as data; None when the screening holds no curve."""
     curve = frame.screening.curve
-    T = tuple(curve.get("T", ()))
-    lines = tuple(
-        Series(str(name), tuple(map(_known, T)), tuple(map(_known, P)))
-        for name, P in curve.items()
-        if name != "T" and hasattr(P, "__len__") and not isinstance(P, str) and len(P) == len(T)
-    )
+    T = tuple(map(_known, curve.get("T", ())))
+    lines = tuple(Series(name, T, tuple(map(_known, P))) for name, P in curve.get("P", {}).items())
     if not T or not lines:
         return None
     return Figure(
@@ -147,7 +143,7 @@ def moves_section(frame: Frame) -> Section:
     """8: sensitivities and back-off values of each finding."""
     moved = tuple((f.title, text) for f in frame.findings for text in f.moved_by[:5])
     steps = tuple(
-        (f.title, h.knob, numbers.anything(h.value, h.unit, frame.system), h.sentence)
+        (f.title, h.knob.replace("-", " "), numbers.anything(h.value, h.unit, frame.system), h.sentence)
         for f in frame.findings
         for h in f.headroom
     )

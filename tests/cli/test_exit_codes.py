@@ -11,10 +11,10 @@ from dataclasses import replace
 from pathlib import Path
 
 import pytest
-from hand_made_screening import BEYOND, NEAR, ROOM, SKIPPED, UNKNOWN, made_case, made_screening
 
 from screener.cli import main
 from screener.ground.errors import CaseErrors, DataError, InputError, UnknownName
+from tests.memo.hand_made_screening import BEYOND, NEAR, ROOM, SKIPPED, UNKNOWN, made_case, made_screening
 
 ROOT = Path(__file__).resolve().parents[2]
 

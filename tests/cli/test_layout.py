@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 import pytest
-from hand_made_screening import made_screening
 
 from screener.cli.check import page
 from screener.cli.layout import paragraph, table
 from screener.memo.text import columns_of
+from tests.memo.hand_made_screening import made_screening
 
 HEAD = ("verdict", "finding", "value")
 ROWS = [
@@ -66,7 +66,7 @@ def test_page_says_everything_worst_first():
         "at least 66.1",
         "-1.8",
         "106 %",
-        "worst for mixture at low level, hottest day, Jul, liquid surface",
+        "worst: mixture at low level, hottest day, Jul, liquid surface",
         "room again with draw slower than 360 m3/h",
         "no rule pack chosen under screening.criteria",
         "Information (judged by nobody)",

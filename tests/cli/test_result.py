@@ -8,13 +8,13 @@ import math
 from dataclasses import replace
 
 import pytest
-from hand_made_screening import NEAR, ROOM, UNKNOWN, made_case, made_screening
-from small_schema import faults
 
 from screener.cli import main
 from screener.cli.result import as_text, check_object, without_nan
 from screener.ground.files import data_folder
 from screener.screening.finding import Fact
+from tests.cli.small_schema import faults
+from tests.memo.hand_made_screening import NEAR, ROOM, UNKNOWN, made_case, made_screening
 
 SCHEMA = json.loads((data_folder() / "schemas" / "check-1.json").read_text(encoding="utf-8"))
 
@@ -53,11 +53,11 @@ def test_the_schema_can_refuse(change, said):
 
 def test_nan_never_reaches_json():
     broken = replace(ROOM, low=math.nan, facts=(Fact("broken", math.inf, "Pa"),))
-    body = result(made_screening(broken, curve={"T": [300.0], "receipt": [math.nan]}))
+    body = result(made_screening(broken, curve={"T": [300.0], "P": {"receipt": [math.nan]}}))
     (finding,) = body["cases"][0]["findings"]
     assert finding["low"] is None
     assert finding["facts"][0]["value"] is None
-    assert body["cases"][0]["curve"]["receipt"] == [None]
+    assert body["cases"][0]["curve"]["P"]["receipt"] == [None]
     assert without_nan({"a": (math.nan, 1.0, [math.inf])}) == {"a": [None, 1.0, [None]]}
 
 

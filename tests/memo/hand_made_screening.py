@@ -166,7 +166,10 @@ def made_screening(*findings: Finding, **changes) -> Screening:
         "information": (Information("Fuel class", (Fact("T(V/L = 20)", 329.15, "K"), Fact("DVPE", 59800.0, "Pa")), "never a judge"),),
         "assumptions": ("no volume change of mixing",),
         "reservations": ("1 of 40 states did not converge",),
-        "curve": {"T": [283.15, 293.15, 303.15], "receipt": [30000.0, 43000.0, 60500.0], "heel": [26000.0, None, 54000.0]},
+        "curve": {
+            "T": [283.15, 293.15, 303.15],
+            "P": {"receipt": [30000.0, 43000.0, 60500.0], "heel": [26000.0, None, 54000.0]},
+        },
         "sources": ("peng-robinson-1976",),
     }  # fmt: skip
     return Screening(**{**values, **changes})

@@ -6,7 +6,14 @@ import re
 from dataclasses import fields, is_dataclass, replace
 
 import pytest
-from hand_made_screening import (
+
+from screener.ground.errors import InputError
+from screener.memo import build_field_sheet, build_memo, write_json, write_markdown
+from screener.memo.document import Bullets, Figure, Table, Verbatim, Verdicts
+from screener.memo.numbers import Quantity, Span
+from screener.screening.finding import Fact
+from screener.states.case import InputEcho
+from tests.memo.hand_made_screening import (
     BEYOND,
     NEAR,
     ROOM,
@@ -16,11 +23,6 @@ from hand_made_screening import (
     made_screening,
     memo_arguments,
 )
-
-from screener.ground.errors import InputError
-from screener.memo import build_field_sheet, build_memo, write_json, write_markdown
-from screener.memo.document import Bullets, Figure, Table, Verbatim, Verdicts
-from screener.memo.numbers import Quantity, Span
 
 
 def memo(screening=None, **changes):
@@ -93,7 +95,7 @@ def test_outcome_is_worst_first_with_a_sentence_each():
     assert [row.verdict for row in rows] == ["beyond", "unknown", "near", "room", "skipped"]
     assert [row.mark for row in rows] == ["!", "?", "~", ".", "-"]
     assert all(row.sentence.endswith(".") and row.sentence[0].isupper() for row in rows)
-    assert rows[0].sentence.endswith("Worst for mixture at low level, hottest day, Jul, liquid surface.")
+    assert rows[0].sentence.endswith("Worst: mixture at low level, hottest day, Jul, liquid surface.")
 
 
 def test_among_equals_the_least_room_comes_first():
@@ -195,6 +197,23 @@ def test_worked_numbers_put_the_margin_in():
     assert "margin = value - limit\n    = 64.3 kPa - 66.1 kPa\n    = -1.8 kPa" in text
 
 
+def test_worked_numbers_put_facts_and_inputs_in():
+    """NPSH: (97 500 - 63 800)/(706 x 9.80665) + 1.50 - 0.30 - 2.40 = 3.67 m by hand."""
+    facts = (
+        Fact("surface pressure", 97500.0, "Pa"),
+        Fact("bubble pressure of the hottest liquid", 63800.0, "Pa"),
+        Fact("density", 706.0, "kg/m3"),
+        Fact("liquid level", 1.5, "m"),
+        Fact("friction head", 2.4, "m"),
+    )
+    npsh = finding(id="npsh.pump", unit="m", kind="stay above", value=3.667, facts=facts)
+    pump = InputEcho("line.suction.pump_above_tank_bottom", "0.3 m", 0.3, "m")
+    with_pump = write_markdown(memo(made_screening(npsh, case=made_case(inputs=(pump,)))))
+    line = "(97.5 kPa - 63.8 kPa)/(706.0 kg/m3 x 9.80665 m/s2) + 1.50 m - 0.300 m - 2.40 m"
+    assert f"    = {line}\n    = 3.67 m\n" in with_pump
+    assert "9.80665" not in write_markdown(memo(made_screening(npsh, case=made_case(inputs=()))))
+
+
 def test_every_criterion_has_its_governing_equation():
     from screener.memo.wording import words
     from screener.screening.criteria import criteria
@@ -236,7 +255,9 @@ def test_us_units_throughout():
     text = write_markdown(memo(system="us"))
     assert "9.59 psi" in text
     assert "psi over barometer" in text
-    cells = [cell.text for cell in cells_of(memo(system="us"))]
+    # Section 14 is in SI, so that a calculator needs no conversion factors.
+    shown = [part for part in memo(system="us").sections if part.number != "14"]
+    cells = [cell.text for cell in cells_of(tuple(shown))]
     assert any("psi" in cell for cell in cells)
     assert not [cell for cell in cells if re.search(r"kPa|degC|Nm3|\d m\b", cell)]
     with pytest.raises(InputError, match="units are si or us"):

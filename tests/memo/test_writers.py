@@ -7,12 +7,12 @@ import random
 from pathlib import Path
 
 import pytest
-from hand_made_screening import made_case, made_screening, memo_arguments
 from markdown_it import MarkdownIt
 
 from screener.memo import build_memo, write_json, write_markdown
 from screener.memo.document import Bullets, Document, Paragraph, Section, Table
 from screener.memo.markdown import escaped
+from tests.memo.hand_made_screening import made_case, made_screening, memo_arguments
 
 HOSTILE = [
     "**bold** and _slanted_ and ~~struck~~",
