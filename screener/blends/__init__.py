@@ -1,0 +1,24 @@
+"""Floor 4: stocks, blending by volume, mass or mole, and the volumes of the trade."""
+
+from screener.blends.blend import Blend, Report
+from screener.blends.lanes import density, density_at, mix, union
+from screener.blends.parts import Part
+from screener.blends.properties import VolatilitySheet, volatility_sheet, volatility_sheets
+from screener.blends.stocks import Stock, stock, stock_names, stocks
+
+__all__ = [
+    "Blend",
+    "Part",
+    "Report",
+    "Stock",
+    "VolatilitySheet",
+    "density",
+    "density_at",
+    "mix",
+    "stock",
+    "stock_names",
+    "stocks",
+    "union",
+    "volatility_sheet",
+    "volatility_sheets",
+]
