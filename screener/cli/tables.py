@@ -164,7 +164,7 @@ def _stock_pairs(item, sheet, system: str):
         ("meant to be", item.claims),
         ("source", item.source),
         ("unidentified share", item.unidentified),
-        ("left out of the analysis", f"{100 * item.left_out:.2f} % of the mass"),
+        ("mass the analysis could not name", f"{100 * item.unnamed:.2f} %"),
         ("rows with a stand-in species", str(len(item.stand_ins))),
         ("note", item.note),
     )
