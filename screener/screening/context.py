@@ -70,7 +70,7 @@ class Context:
         kind = self.case.tank.kind
         if np.isnan(self.lanes.weather.insolation[self.i]):
             paths += ["site.latitude or site.design_insolation"]
-        if not self.case.tank.surface and kind != "underground" and not self.case.tank.insulated:
+        if not self.case.tank.surface and kind != "underground":
             paths += ["tank.surface"]
         if kind == "underground":
             paths = ["site.liquid_temperature"]

@@ -62,7 +62,9 @@ def _judge_lane(draft: Draft, lane: Lane) -> Judgement:
     )  # fmt: skip
     if judged.verdict == "beyond" or not (lane.unknown or judged.verdict == "unknown"):
         return judged
-    return replace(judged, verdict="unknown", reason=lane.unknown or judged.reason or say("judge", "number-missing"))
+    return replace(
+        judged, verdict="unknown", reason=lane.unknown or judged.reason or say("judge", "number-missing")
+    )
 
 
 def worst_lane(draft: Draft) -> tuple[Lane, Judgement] | None:

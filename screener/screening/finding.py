@@ -13,7 +13,9 @@ from typing import Literal
 Verdict = Literal["room", "near", "beyond", "unknown", "skipped"]
 Kind = Literal["stay below", "stay above", "keep out of"]
 Scale = Literal["percent", "kelvin", "from-atmosphere"]
-Evidence = Literal["law", "standard", "handbook", "quoted", "physics", "user", "common practice", "memory", ""]
+Evidence = Literal[
+    "law", "standard", "handbook", "quoted", "physics", "user", "common practice", "memory", ""
+]
 
 WORST_FIRST: tuple[Verdict, ...] = ("beyond", "unknown", "near", "room", "skipped")
 MARKS: dict[Verdict, str] = {"room": ".", "near": "~", "beyond": "!", "unknown": "?", "skipped": "-"}

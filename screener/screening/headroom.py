@@ -28,7 +28,7 @@ def with_headroom(context: Context, stream, findings: tuple[Finding, ...]) -> tu
 
 
 def _extend(context: Context, stream, finding: Finding) -> Finding:
-    if finding.value is None or finding.verdict == "skipped":
+    if finding.value is None or finding.asked_gap is None or finding.verdict == "skipped":
         return finding
     family = next((key for key in _PRESSURE if finding.id.startswith(key)), finding.id)
     if family in _PRESSURE:
@@ -95,7 +95,13 @@ def _pressure(context: Context, finding: Finding, family: str):
         rooms.append(_room(knob, float(limit_T.T[0]), "K", f"{limit_T.T[0] - ZERO_CELSIUS:.1f} degC"))
     share = _share_for(shares, answer.P[2:], answer.ok[2:], target)
     if share is not None:
-        sentence = say("headroom", "share", species=name, value=f"{100 * share:.2g} mol%", now=f"{100 * z[light]:.2g} mol%")
+        sentence = say(
+            "headroom",
+            "share",
+            species=name,
+            value=f"{100 * share:.2g} mol%",
+            now=f"{100 * z[light]:.2g} mol%",
+        )
         rooms.append(Headroom(f"share of {name}", share, "mol/mol", sentence))
     return moved, tuple(rooms)
 
@@ -103,7 +109,10 @@ def _pressure(context: Context, finding: Finding, family: str):
 def _moved(P, changed, name) -> tuple[str, ...]:
     steps = [
         (abs(changed[0] - P), say("moved", "temperature", change=f"{(changed[0] - P) / 1000:+.2f} kPa")),
-        (abs(changed[1] - P), say("moved", "share", species=name, change=f"{(changed[1] - P) / 1000:+.2f} kPa")),
+        (
+            abs(changed[1] - P),
+            say("moved", "share", species=name, change=f"{(changed[1] - P) / 1000:+.2f} kPa"),
+        ),
     ]
     return tuple(text for size, text in sorted(steps, reverse=True) if math.isfinite(size))
 
@@ -145,7 +154,9 @@ def _suction(context: Context, stream, finding: Finding):
     if math.isfinite(target) and target > 0.0:
         answer = bubble_temperature(fluid, target, lanes.z[i, k])
         if answer.ok[0]:
-            rooms.append(_room("liquid-temperature", float(answer.T[0]), "K", f"{answer.T[0] - ZERO_CELSIUS:.1f} degC"))
+            rooms.append(
+                _room("liquid-temperature", float(answer.T[0]), "K", f"{answer.T[0] - ZERO_CELSIUS:.1f} degC")
+            )
     return (), tuple(rooms)
 
 
@@ -154,7 +165,9 @@ def _rate(context: Context, stream, finding: Finding):
     b, i = stream.breathing, context.i
     rate = context.input("receipt_rate")
     moving = (finding.high or math.nan) - float(b.out_thermal[i])
-    left = finding.limit_high - finding.asked_gap - float(b.out_thermal[i]) if finding.limit_high else math.nan
+    left = (
+        finding.limit_high - finding.asked_gap - float(b.out_thermal[i]) if finding.limit_high else math.nan
+    )
     if not (math.isfinite(moving) and math.isfinite(left) and moving > 0.0 and left > 0.0 and left < moving):
         return ()
     slower = rate * left / moving

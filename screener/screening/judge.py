@@ -54,7 +54,9 @@ def judge(value, low, high, limit, *, kind, reference, gap, evidence, caps=()) -
     def used(v):
         return (v - reference) / span if v is not None and span else None
 
-    ends = sorted((used(low), used(high))) if used(low) is not None and used(high) is not None else [None, None]
+    ends = (
+        sorted((used(low), used(high))) if used(low) is not None and used(high) is not None else [None, None]
+    )
     verdict, reason = _verdict(margin, at_edge, gap, evidence, tuple(caps))
     return Judgement(verdict, reason, margin, at_edge, used(value), *ends)
 

@@ -17,10 +17,14 @@ def assumptions(context: Context) -> tuple[str, ...]:
         rows.append(say("assumed", "barometer", value=f"{context.barometer / 1000.0:.1f} kPa"))
     if not case.site.months and not math.isnan(context.input("ambient_high")):
         rows.append(say("assumed", "swing"))
-    if math.isnan(context.input("design_insolation")) and math.isfinite(context.lanes.weather.insolation[context.i]):
+    if math.isnan(context.input("design_insolation")) and math.isfinite(
+        context.lanes.weather.insolation[context.i]
+    ):
         rows.append(say("assumed", "insolation"))
     if case.site.months and case.site.liquid_temperature is None:
         rows.append(say("assumed", "design-day"))
+    if case.tank.insulated:
+        rows.append(say("assumed", "insulated"))
     for name in ("fittings", "roughness", "nozzle_height") if case.line.suction is not None else ():
         if math.isnan(context.input(name)):
             rows.append(say("assumed", name))

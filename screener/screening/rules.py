@@ -11,7 +11,6 @@ from screener.ground.errors import UnknownName
 from screener.screening.context import Context
 from screener.screening.finding import Fact
 from screener.screening.wording import say
-from screener.states.breathing import tank_volume
 from screener.tank import rule_packs, rules_for, rules_of
 
 _OWN_BASIS = "highest monthly mean"
@@ -37,20 +36,20 @@ class Rule:
     facts: tuple[Fact, ...] = ()
 
 
-def packs_of(context: Context) -> tuple[Rule, ...]:
+def packs_of(context: Context, stream) -> tuple[Rule, ...]:
     """Every rule pack the case chose, applied to its tank."""
     known = rule_packs()
     for i, pack in enumerate(context.case.criteria):
         if pack not in known:
             raise UnknownName(f"screening.criteria[{i}]", pack, "rule pack", known)
-    return tuple(_apply(context, pack) for pack in context.case.criteria)
+    volume = float(stream.breathing.volume[context.i])
+    return tuple(_apply(context, pack, volume) for pack in context.case.criteria)
 
 
-def _apply(context: Context, pack: str) -> Rule:
+def _apply(context: Context, pack: str, volume: float) -> Rule:
     kind = context.case.tank.kind
     if kind == "pressure-vessel":
         return Rule(pack, skip=say("skip", "pressure-vessel"))
-    volume = float(tank_volume(context.lanes.inputs)[context.i])
     if math.isnan(volume):
         return _unsized(context, pack)
     rows = rules_for(pack, kind, volume)
@@ -58,9 +57,15 @@ def _apply(context: Context, pack: str) -> Rule:
     fitting = [row for row in limits if row.at == _OWN_BASIS or row.at in _STAND_IN]
     if not fitting:
         if rows:
-            return Rule(pack, unknown=say("unknown", "rule-basis", pack=pack, basis=f"{rows[0].quantity} at {rows[0].at}"))
+            return Rule(
+                pack,
+                unknown=say("unknown", "rule-basis", pack=pack, basis=f"{rows[0].quantity} at {rows[0].at}"),
+            )
         smallest = min(row.volume_from for row in rules_of(pack))
-        return Rule(pack, skip=say("skip", "rule-scope", pack=pack, why=f"{volume:.0f} m3, rule from {smallest:.0f} m3"))
+        return Rule(
+            pack,
+            skip=say("skip", "rule-scope", pack=pack, why=f"{volume:.0f} m3, rule from {smallest:.0f} m3"),
+        )
     row = fitting[0]
     limit = context.barometer if row.limit is None else row.limit
     caps = () if row.at == _OWN_BASIS else (say("cap", "rule-basis", basis=row.at),)

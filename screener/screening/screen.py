@@ -32,7 +32,7 @@ def evaluate_cases(cases) -> Lanes:
 
 def findings_of(context: Context, stream) -> tuple[Finding, ...]:
     """Every finding of one case, worst first; equals keep the order of the criteria."""
-    rules = packs_of(context) or (None,)
+    rules = packs_of(context, stream) or (None,)
     drafts = [boiling(context)]
     drafts += [legal(context, rule) for rule in rules] + [hottest(context, rule) for rule in rules]
     drafts += [receipt(context), suction(context, stream), npsh(context, stream)]

@@ -90,7 +90,7 @@ def _out_lane(context: Context, b, k: int) -> Lane:
     )
     low, value, high = b.out[i, k]
     return Lane(
-        context.condition(k, context.hottest_day, "vents", ""), value, low, high, float(b.vents.out[i]),
+        context.condition(k, context.hottest_day, "vents", ""), value, low, high, _capacity(b.vents, i, "out"),
         unknown=unknown, caps=caps, facts=_finite(facts), tag=k,
     )  # fmt: skip
 
@@ -106,7 +106,8 @@ def inbreathing(context: Context, stream) -> Draft:
         why = context.why_no_hot_pressure(k)
         value = float(b.into[i, k])
         rows.append(Lane(
-            context.condition(k, context.hottest_day, "vents", ""), value, value, value, float(b.vents.into[i]),
+            context.condition(k, context.hottest_day, "vents", ""), value, value, value,
+            _capacity(b.vents, i, "in"),
             unknown=say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else "", tag=k,
             facts=_finite((Fact("thermal", float(b.into_thermal[i, k]), "m3/s air"),)),
         ))  # fmt: skip
@@ -114,7 +115,9 @@ def inbreathing(context: Context, stream) -> Draft:
     if context.case.line.draw_rate is None:
         needs.append("draw_rate")
     unknown = (
-        _capacity_unknown(b.vents, i, "in") or _missing(context, *needs) or _hot_space(context, bool(b.applies[i]))
+        _capacity_unknown(b.vents, i, "in")
+        or _missing(context, *needs)
+        or _hot_space(context, bool(b.applies[i]))
     )
     facts = (
         Fact("liquid movement", float(b.into_liquid[i]), "m3/s air"),
@@ -128,10 +131,19 @@ def _capacity_unknown(vents, i: int, way: str) -> str:
     """Why the installed capacity cannot be judged, '' if it can."""
     if not vents.given[i]:
         return say("unknown", "no-vents")
-    capacity, known = (vents.out, vents.rated_out_known) if way == "out" else (vents.into, vents.rated_in_known)
+    capacity, known = (
+        (vents.out, vents.rated_out_known) if way == "out" else (vents.into, vents.rated_in_known)
+    )
     if math.isnan(capacity[i]):
         return say("unknown", f"capacity-{way}")
     return "" if known[i] else say("unknown", f"capacity-{way}-pressure")
+
+
+def _capacity(vents, i: int, way: str) -> float:
+    """Installed capacity to judge by; NaN where it cannot be told, so that no lane is judged against it."""
+    if _capacity_unknown(vents, i, way):
+        return math.nan
+    return float((vents.out if way == "out" else vents.into)[i])
 
 
 def pressure_setting(context: Context, stream) -> Draft:
@@ -157,11 +169,17 @@ def _setting(context: Context, key: str, design: str, reached, setting, given, n
         unknown = say("unknown", no_rating)
     unknown = unknown or _missing(context, design)
     value = float(reached[i])
-    lane = Lane(Condition("", "", "at rated capacity", "vapour space"), value, value, value, context.input(design))
+    lane = Lane(
+        Condition("", "", "at rated capacity", "vapour space"), value, value, value, context.input(design)
+    )
     if unknown and float(setting[i]) >= context.input(design):
         # The setting alone already reaches the design figure: no accumulation is needed to tell.
-        lane = Lane(Condition("", "", "as it opens", "vapour space"), *[float(setting[i])] * 3, context.input(design))
-    facts = _finite((Fact("setting", float(setting[i]), "Pa"), Fact("setting plus accumulation", value, "Pa")))
+        lane = Lane(
+            Condition("", "", "as it opens", "vapour space"), *[float(setting[i])] * 3, context.input(design)
+        )
+    facts = _finite(
+        (Fact("setting", float(setting[i]), "Pa"), Fact("setting plus accumulation", value, "Pa"))
+    )
     return _draft(key, lanes=(lane,), unknown=unknown, range_covers=(), facts=facts)
 
 

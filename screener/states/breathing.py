@@ -10,6 +10,7 @@ from screener.ground.constants import T_15C
 from screener.species import find
 from screener.states.lanes import BEST, RECEIPT, Lanes
 from screener.states.vents import VentSums, vent_sums
+from screener.states.volumes import molar_volume
 from screener.tank import (
     flashed_vapour_as_air,
     growth_factor,
@@ -21,7 +22,6 @@ from screener.tank import (
     tables_apply,
     vertical_volume,
 )
-from screener.volatility import liquid_molar_volume
 
 
 @dataclass(frozen=True)
@@ -77,7 +77,7 @@ def breathing(lanes: Lanes) -> Breathing:
     volatile = ~(P[:, :, BEST] <= hexane)
     into_thermal = inbreathing_thermal(volume[:, None], inputs["latitude"][:, None], T, volatile)
     into_liquid = inbreathing_liquid(draw)
-    insulated = np.array([case.tank.insulated or case.tank.kind == "underground" for case in cases])
+    insulated = np.array([case.tank.kind == "underground" for case in cases])
     return Breathing(
         out=liquid + thermal[:, None, None] + flash[:, None, :],
         out_liquid=liquid[:, :, BEST],
@@ -97,12 +97,9 @@ def _flash(lanes: Lanes, fill, filling) -> np.ndarray:
     """Flashed vapour as air (n, 3): the receipt's vapour fraction times its molar flow."""
     inputs = lanes.inputs
     T, z = inputs["receipt_temperature"], lanes.z[:, RECEIPT]
-    v = np.full(len(T), np.nan)
-    known = np.isfinite(T)
-    if known.any():
-        v[known] = liquid_molar_volume(lanes.fluid, T[known], z[known])
+    v = molar_volume(lanes.fluid, T, z)
     y = np.where(np.isfinite(lanes.y_receipt), lanes.y_receipt, 0.0)
     M = np.where(lanes.beta[:, BEST] > 0.0, y @ lanes.fluid.MW, z @ lanes.fluid.MW)
     flow = lanes.beta * (fill / v)[:, None]
-    flash = flashed_vapour_as_air(flow, M[:, None], np.where(known, T, T_15C)[:, None])
+    flash = flashed_vapour_as_air(flow, M[:, None], np.where(np.isfinite(T), T, T_15C)[:, None])
     return np.where(filling[:, None], flash, 0.0)

@@ -63,7 +63,10 @@ _READ = {
         "line.suction.pump_above_tank_bottom",
         lambda c: c.line.suction and c.line.suction.pump_above_tank_bottom,
     ),
-    "npsh_required": ("line.suction.npsh_required", lambda c: c.line.suction and c.line.suction.npsh_required),
+    "npsh_required": (
+        "line.suction.npsh_required",
+        lambda c: c.line.suction and c.line.suction.npsh_required,
+    ),
 }
 
 
@@ -94,7 +97,9 @@ def gather(cases) -> Inputs:
     for name, (_, read) in _READ.items():
         values = (read(case) for case in cases)
         arrays[name] = np.array([np.nan if v is None else float(v) for v in values])
-    months = {key: np.full((len(cases), 12), np.nan) for key in ("mean", "mean_high", "mean_low", "insolation")}
+    months = {
+        key: np.full((len(cases), 12), np.nan) for key in ("mean", "mean_high", "mean_low", "insolation")
+    }
     for i, case in enumerate(cases):
         for month in case.site.months:
             number = month_number(month.name)

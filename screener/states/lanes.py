@@ -18,9 +18,9 @@ from screener.equilibrium import Fluid, bubble_pressure, flash_tp
 from screener.ground.status import Status
 from screener.species import find
 from screener.states.inputs import Inputs
+from screener.states.volumes import density_15, expansion
 from screener.states.weather import Weather
 from screener.tank import horizontal_liquid_volume, vertical_liquid_volume
-from screener.volatility import liquid_expansion, standard_density
 
 LIQUIDS = (("receipt", ""), ("heel", ""), ("mixture", "low"), ("mixture", "normal"), ("mixture", "high"))
 RECEIPT, HEEL, LOW, NORMAL, HIGH = range(5)
@@ -28,10 +28,14 @@ EDGES = ("low", "best", "high")
 BEST = 1
 
 AIR = ("nitrogen", "oxygen")
-AIR_SHARES = np.array([0.79, 0.21])  # dry air with its argon counted as nitrogen, by moles; common practice, no source
+AIR_SHARES = np.array(
+    [0.79, 0.21]
+)  # dry air with its argon counted as nitrogen, by moles; common practice, no source
 
 METHOD_SPREAD = 0.05  # least relative spread of any computed vapour pressure; rule of this project
-SPREAD_COUNTED = 0.03  # disagreement of pure vapour-pressure curves above this is carried; rule of this project
+SPREAD_COUNTED = (
+    0.03  # disagreement of pure vapour-pressure curves above this is carried; rule of this project
+)
 
 
 @dataclass(frozen=True)
@@ -110,14 +114,14 @@ def _mixtures(inputs, fluid, Z, has_heel):
     T_r, T_h = inputs["receipt_temperature"], inputs["heel_temperature"]
     heel_volume = np.where(has_heel, inputs["heel_volume"], np.nan)[:, None]
     filled = _filled(inputs)
-    received = np.maximum(filled - heel_volume, 0.0) / liquid_expansion(fluid, T_r, Z[0])[:, None]
-    left = np.minimum(heel_volume, filled) / liquid_expansion(fluid, T_h, Z[1])[:, None]
+    received = np.maximum(filled - heel_volume, 0.0) / expansion(fluid, T_r, Z[0])[:, None]
+    left = np.minimum(heel_volume, filled) / expansion(fluid, T_h, Z[1])[:, None]
     z = np.empty((n, 5, fluid.c))
     z[:, RECEIPT], z[:, HEEL] = Z
     for k in range(3):
         z[:, LOW + k] = mix(fluid.names, Z[0], received[:, k], Z[1], left[:, k])
-    mass_r = received * standard_density(fluid, Z[0])[:, None]
-    mass_h = left * standard_density(fluid, Z[1])[:, None]
+    mass_r = received * density_15(fluid, Z[0])[:, None]
+    mass_h = left * density_15(fluid, Z[1])[:, None]
     share = mass_r / (mass_r + mass_h)
     T_own = np.column_stack([T_r, T_h, share * T_r[:, None] + (1.0 - share) * T_h[:, None]])
     present = np.column_stack([np.ones(n, bool), np.repeat(has_heel[:, None], 4, axis=1)])
@@ -179,8 +183,12 @@ def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     P_receipt, status_receipt, beta, y_receipt, status_flash, res_receipt, asked_receipt = flash
     beta_gas = _with_air(fluid, z[:, RECEIPT], T_own[:, RECEIPT], inputs, weather.barometer)
     residuals = np.concatenate([res_hot[asked_hot], res_legal[asked_legal], res_receipt[asked_receipt]])
-    statuses = np.concatenate([status_hot[asked_hot], status_legal[asked_legal], status_receipt[asked_receipt]])
-    level = np.column_stack([inputs[k] for k in ("level_low", "level_low", "level_low", "level_normal", "level_high")])
+    statuses = np.concatenate(
+        [status_hot[asked_hot], status_legal[asked_legal], status_receipt[asked_receipt]]
+    )
+    level = np.column_stack(
+        [inputs[k] for k in ("level_low", "level_low", "level_low", "level_normal", "level_high")]
+    )
     return Lanes(
         inputs, weather, fluid, names, z, level, present, T_own, T_hot, P_hot, y[:, :, BEST],
         status_hot, weather.T_legal, P_legal, status_legal, P_receipt, status_receipt, beta, beta_gas, y_receipt,

@@ -9,7 +9,7 @@ import numpy as np
 from screener.equilibrium import bubble_temperature
 from screener.line import DEFAULT_ROUGHNESS, kinematic_viscosity_band, npsh_available, suction_profile
 from screener.states.lanes import BEST, Lanes
-from screener.volatility import liquid_expansion, standard_density
+from screener.states.volumes import density_15, expansion
 
 # Taken where the case does not say; each is listed among the assumptions of the result.
 DEFAULT_FITTINGS = 10.0  # valves, strainer and bends of a short suction [-]; common practice, no source
@@ -52,8 +52,8 @@ def suction_lanes(lanes: Lanes, set_under) -> SuctionLanes:
     i, shape = lanes.inputs, lanes.level.shape
     T = lanes.T_hot[:, :, BEST]
     z = lanes.z.reshape(-1, lanes.fluid.c)
-    rho_15 = np.where(np.isfinite(z).all(axis=1), standard_density(lanes.fluid, z), np.nan)
-    rho = (rho_15 / liquid_expansion(lanes.fluid, T.ravel(), z)).reshape(shape)
+    rho_15 = density_15(lanes.fluid, z)
+    rho = (rho_15 / expansion(lanes.fluid, T.ravel(), z)).reshape(shape)
     band = [nu.reshape(shape) for nu in kinematic_viscosity_band(rho_15)]
     surface = surface_pressure(lanes, set_under)
 

@@ -29,7 +29,9 @@ from screener.tank import absorptance, hottest_bulk, hottest_surface
 # Daily swing of the air on a hot day where no months are given: low, best, high [K].
 # Common practice, no source: listed as a default wherever it is used.
 SWING_UNKNOWN = (6.0, 11.0, 16.0)
-READING_SPREAD = 1.0  # a gauge reading of a tank's liquid is taken to within this [K]; common practice, no source
+READING_SPREAD = (
+    1.0  # a gauge reading of a tank's liquid is taken to within this [K]; common practice, no source
+)
 
 
 @dataclass(frozen=True)
@@ -102,16 +104,19 @@ def _design_day_number(inputs: Inputs, month: np.ndarray) -> np.ndarray:
 def _tank_columns(inputs: Inputs):
     """Roof kind, insulation and absorptance (n, 3) as arrays."""
     kinds = np.array([case.tank.kind for case in inputs.cases])
-    insulation = np.array(["full" if case.tank.insulated else "none" for case in inputs.cases])
+    # The case says that a tank is insulated, not how: a bare roof over an insulated shell is the hotter form.
+    insulation = np.array(["shell" if case.tank.insulated else "none" for case in inputs.cases])
     found = {text: absorptance(text) for text in {case.tank.surface for case in inputs.cases} if text}
     nothing = (np.nan, np.nan, np.nan)
     rows = [
-        (found[c.tank.surface].low, found[c.tank.surface].best, found[c.tank.surface].high) if c.tank.surface else nothing
+        (found[c.tank.surface].low, found[c.tank.surface].best, found[c.tank.surface].high)
+        if c.tank.surface
+        else nothing
         for c in inputs.cases
     ]
     alpha = np.array(rows)
     # Paint does not matter where no sun reaches the liquid.
-    shaded = (kinds == "underground") | (insulation == "full")
+    shaded = kinds == "underground"
     return kinds, insulation, np.where(shaded[:, None], 0.5, alpha)
 
 
@@ -149,7 +154,9 @@ def weather(inputs: Inputs) -> Weather:
     kinds, insulation, alpha = _tank_columns(inputs)
     hot = _surface(inputs, kinds, insulation, alpha, high, low, sun)
     estimate = np.stack([hot.low[:, 0], hot.best[:, 1], hot.high[:, 2]], axis=1)
-    bulk = hottest_bulk(inputs.months["mean"][:, None, :], alpha, alpha, inputs.months["insolation"][:, None, :])
+    bulk = hottest_bulk(
+        inputs.months["mean"][:, None, :], alpha, alpha, inputs.months["insolation"][:, None, :]
+    )
     reading = inputs["reading"][:, None] + np.array([-READING_SPREAD, 0.0, READING_SPREAD])
     read = np.isfinite(reading[:, 1])
     surface = np.where(read[:, None], reading, estimate)
