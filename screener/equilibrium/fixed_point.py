@@ -6,16 +6,16 @@ follow from u. The loop here is theirs in common and knows no chemistry:
 
 - acceleration by the last two differences (Anderson 1965; for one remembered
   difference it is the dominant-eigenvalue jump of Crowe and Nishio 1975);
-- a jump after which the residual is larger is undone and replaced by plain
-  substitution, which for a flash or a tangent plane lowers the energy even
-  while the residual grows;
+- a jump that made things worse is undone and replaced by plain substitution;
 - lanes that are done stop moving, and are dropped from the work once enough of
   them are done;
 - the stubborn rest is finished by Newton with a Jacobian by differences.
 
-A problem offers `image(u)` for the lanes it holds, `take(lanes)` for some of
-them, and may offer `stop(u, image)`, a mask of lanes whose question is already
-answered.
+A problem offers `image(u)` for the lanes it holds and `take(lanes)` for some
+of them. Where substitution is a descent on some function it may offer
+`descent(u, image)`: the function (n,) and the positive weights (n, c) w with
+which its gradient is -w (image - u). A jump is then judged by that function,
+not by the residual, and never leads uphill, towards a saddle.
 """
 
 from __future__ import annotations
@@ -29,17 +29,18 @@ MOST_PLAIN = 30  # accelerated substitutions before Newton takes over
 MOST_NEWTON = 15
 LONGEST = 4.0  # longest change of any ln K in one step
 TRUSTED = 20.0  # longest accelerated step in plain steps: an eigenvalue of 0.95 (a guard in common use, no source)
+FASTER = 4.0  # plain steps taken at once away from a saddle, doubled while that goes well; own choice
+FASTEST = 128.0
 KEEP = 0.6  # drop finished lanes once fewer than this share is active
 
 
 class Fixed(NamedTuple):
-    """u (n, c), residual (n,), iterations (n,), the masks converged and stopped (n,)."""
+    """u (n, c), residual (n,), iterations (n,) and the mask converged (n,)."""
 
     u: np.ndarray
     residual: np.ndarray
     iterations: np.ndarray
     converged: np.ndarray
-    stopped: np.ndarray
 
 
 def solve(
@@ -75,21 +76,17 @@ def solve(
     Anderson, J. ACM 12 (1965) 547; Crowe and Nishio, AIChE J. 21 (1975) 528.
     """
     n = u.shape[0]
-    out = Fixed(
-        np.array(u, dtype=float), np.full(n, np.inf), np.zeros(n, dtype=int),
-        np.zeros(n, dtype=bool), np.zeros(n, dtype=bool),
-    )
+    out = Fixed(np.array(u, dtype=float), np.full(n, np.inf), np.zeros(n, dtype=int), np.zeros(n, dtype=bool))
     lanes = np.arange(n)
     walk = _Walk(problem, out.u.copy(), present, reach)
     for _ in range(plain):
-        finished, stopped = walk.look(tolerance)
+        finished = walk.look(tolerance)
         moving = walk.moving
         here = lanes[moving]
         out.u[here], out.residual[here] = walk.u[moving], walk.r[moving]
         out.iterations[here] += 1
         out.converged[lanes[finished]] = True
-        out.stopped[lanes[stopped]] = True
-        walk.moving = moving = moving & ~finished & ~stopped
+        walk.moving = moving = moving & ~finished
         if not moving.any():
             return out
         if moving.mean() < KEEP:
@@ -114,29 +111,31 @@ class _Walk:
         self.moving = np.ones(n, dtype=bool)
         self.best_u, self.best_g, self.best_r = u.copy(), np.zeros_like(u), np.full(n, np.inf)
         self.past: list[tuple[np.ndarray, np.ndarray]] = []  # (difference of u, difference of g), newest first
-        self.last: tuple[np.ndarray, np.ndarray, np.ndarray] | None = None  # u, g, r of the step before
+        self.last: tuple | None = None  # u, g, r and value at the step before
         self.jumped = np.zeros(n, dtype=bool)  # the last move was an accelerated one
         self.damping = np.ones(n)
+        self.downhill = hasattr(problem, "descent")
+        self.value, self.weight = np.zeros(n), present.astype(float)
+        self.boost = np.full(n, FASTER)
 
     def take(self, lanes) -> _Walk:
         """Some of the lanes."""
         some = _Walk(self.problem.take(lanes), self.u[lanes], self.present[lanes], self.reach)
-        for name in ("g", "r", "moving", "best_u", "best_g", "best_r", "jumped", "damping"):
+        for name in ("g", "r", "moving", "best_u", "best_g", "best_r", "jumped", "damping", "value", "weight", "boost"):
             setattr(some, name, getattr(self, name)[lanes])
         some.past = [(du[lanes], dg[lanes]) for du, dg in self.past]
         some.last = None if self.last is None else tuple(v[lanes] for v in self.last)
         return some
 
     def look(self, tolerance):
-        """Evaluate the image; masks of lanes that are done and that were stopped."""
+        """Evaluate the image; mask of lanes that are done."""
         image = self.problem.image(self.u)
         with np.errstate(invalid="ignore"):
             self.g = np.where(self.present, image - self.u, 0.0)
             self.r = np.abs(self.g).max(axis=1)
-        finished = self.moving & (self.r <= tolerance)
-        stop = getattr(self.problem, "stop", None)
-        stopped = self.moving & stop(self.u, image) & ~finished if stop else np.zeros_like(finished)
-        return finished, stopped
+            if self.downhill:
+                self.value, self.weight = self.problem.descent(self.u, image)
+        return self.moving & (self.r <= tolerance)
 
     def step(self):
         """Move every moving lane by an accelerated step; undo a jump that made things worse."""
@@ -145,23 +144,28 @@ class _Walk:
         lost = ~np.isfinite(r)
         undo = lost.copy()
         if self.last is not None:
-            undo |= self.jumped & (r > 1.5 * self.last[2])
+            worse = r > 1.5 * self.last[2]
+            if self.downhill:
+                worse = (self.value > self.last[3] + 1e-12 * (1.0 + np.abs(self.last[3]))) & (r > 0.5 * self.last[2])
+            undo |= self.jumped & worse
             self.past = [(u - self.last[0], g - self.last[1])] + self.past[:1]
         self.damping = np.where(lost, 0.5 * self.damping, 1.0)
+        self.boost = np.where(undo, FASTER, np.minimum(2.0 * self.boost, FASTEST))
         if undo.any():
             # back to the point before the jump (the best one where numbers were lost), and on by plain substitution
-            before = self.last if self.last is not None else (self.best_u, self.best_g, self.best_r)
+            before = self.last if self.last is not None else (self.best_u, self.best_g, self.best_r, self.value)
             row, hole = undo[:, None], lost[:, None]
             u = np.where(hole, self.best_u, np.where(row, before[0], u))
             g = np.where(hole, self.best_g, np.where(row, before[1], g))
             r = np.where(lost, self.best_r, np.where(undo, before[2], r))
+            self.value = np.where(undo & ~lost, before[3], self.value)
             self.past = [(np.where(row, 0.0, du), np.where(row, 0.0, dg)) for du, dg in self.past]
         with np.errstate(all="ignore"):
             move = self._accelerated(g) * self.damping[:, None]
             longest = np.abs(move).max(axis=1)
             move *= np.minimum(1.0, LONGEST / np.maximum(longest, LONGEST))[:, None]
             self.jumped = np.abs(move - g).max(axis=1) > 0.0
-        self.last = (u, g, r)
+        self.last = (u, g, r, self.value)
         usable = self.moving & np.isfinite(longest)
         self.u = np.where(usable[:, None], u + move, self.u)
 
@@ -192,9 +196,19 @@ class _Walk:
         move = g - s1[:, None] * (du1 + dg1)
         if len(self.past) == 2:
             move -= np.where(np.isfinite(s2), s2, 0.0)[:, None] * (du2 + dg2)
-        trusted = np.minimum(TRUSTED * np.abs(g).max(axis=1), self.reach)
-        wild = ~(np.abs(move).max(axis=1) <= trusted)
-        return np.where(wild[:, None], g, move)
+        plain = np.abs(g).max(axis=1)
+        trusted = np.minimum(TRUSTED * plain, self.reach)
+        size = np.abs(move).max(axis=1)
+        if not self.downhill:
+            return np.where((size <= trusted)[:, None], move, g)
+        uphill = ~(np.einsum("nc,nc,nc->n", self.weight, g, move) > 0.0)
+        # against g lies a saddle: leave it faster along g (undone if that overshoots)
+        faster = np.where(uphill & (a11 > 0.0), self.boost, 1.0)
+        move = np.where(uphill[:, None], faster[:, None] * g, move)
+        size = np.abs(move).max(axis=1)
+        trusted = np.where(uphill, self.reach, trusted)
+        move = np.where((size > trusted)[:, None], move * (trusted / size)[:, None], move)
+        return np.where((plain > trusted)[:, None], g, move)
 
 
 def _dot(a, b):

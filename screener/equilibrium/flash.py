@@ -25,6 +25,7 @@ from screener.ground.status import Status
 TRIVIAL = 1e-4  # largest |ln K| of two phases that are one; critical splits shown apart start near 1e-2
 LARGEST = 300.0  # bound of |ln K|: keeps squares of exp in double precision
 REACH = 1.0  # longest accelerated step in ln K
+MOST_AGAIN = 100  # substitutions of a lane that lost its way
 MOST_NUMBERS = 40_000  # lanes times components handled at once: keeps the working arrays in cache
 
 
@@ -59,6 +60,34 @@ class Split:
         """ln phi(x) - ln phi(y)."""
         self.beta, x, y = self.phases(ln_K)
         return self.state.mix(x).ln_phi(self.P, self.kinds[0]) - self.state.mix(y).ln_phi(self.P, self.kinds[1])
+
+
+class DescendingSplit(Split):
+    """The same, watched over by the Gibbs energy: slower, for lanes that lost their way."""
+
+    energy: np.ndarray
+    weight: np.ndarray
+
+    def take(self, lanes) -> DescendingSplit:
+        """Some of the lanes."""
+        return DescendingSplit(self.state.take(lanes), self.P[lanes], self.z[lanes], self.beta[lanes], self.kinds)
+
+    def image(self, ln_K):
+        """ln phi(x) - ln phi(y); keeps the Gibbs energy over RT on the way."""
+        self.beta, x, y = self.phases(ln_K)
+        ln_phi_x = self.state.mix(x).ln_phi(self.P, self.kinds[0])
+        ln_phi_y = self.state.mix(y).ln_phi(self.P, self.kinds[1])
+        self.energy = (1.0 - self.beta) * _energy(x, ln_phi_x) + self.beta * _energy(y, ln_phi_y)
+        self.weight = x * y / np.where(self.z > 0.0, self.z, 1.0)
+        return ln_phi_x - ln_phi_y
+
+    def descent(self, ln_K, image):
+        """Gibbs energy and, up to a factor and smaller terms, the weights of its gradient in ln K."""
+        return self.energy, self.weight
+
+
+def _energy(x, ln_phi):
+    return np.einsum("nc,nc->n", x, np.log(np.maximum(x, FEW)) + ln_phi)
 
 
 def flash_tp(fluid, T, P, z, *, check="vapour-liquid") -> Flash:
@@ -208,10 +237,9 @@ def _judge(answer, lanes, open_, problem, feed, wilson):
 
 def _again(answer, lanes, problem, kinds, start):
     """Split unstable feeds from the trial phase that proved them unstable."""
-    problem.kinds = kinds
-    problem.beta = np.full(problem.beta.shape, 0.5)
+    problem = DescendingSplit(problem.state, problem.P, problem.z, None, kinds)
     present = problem.z > 0.0
-    fixed = solve(problem, np.where(present, start, 0.0), present, reach=REACH)
+    fixed = solve(problem, np.where(present, start, 0.0), present, plain=MOST_AGAIN, reach=REACH)
     answer.iterations[lanes] += fixed.iterations
     beta, x, y = problem.phases(fixed.u)
     apart = np.abs(np.where(present, fixed.u, 0.0)).max(axis=1) > TRIVIAL

@@ -16,9 +16,10 @@ from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T
 from screener.equilibrium.phase import critical_ratio, reduced_volume
 from screener.equilibrium.results import TPD_ZERO
-from screener.equilibrium.stability import FEW, REACH, Trials
+from screener.equilibrium.stability import FEW, PURE, REACH, Trials
 
 RUNGS = 48
+FINER, FINE_RUNGS = 2, 9  # a crossing is narrowed twice, eightfold each time
 PRESSURES = (1.0, 2.0 * HIGHEST_P)  # [Pa] ends of the ladder; stored liquids lie far inside
 TEMPERATURES = (90.0, 0.8 * HIGHEST_T)  # [K]
 MOST_ROWS = 20_000
@@ -52,7 +53,17 @@ def seek(fluid, name: str, value, feed, bubble: bool):
     n, c = feed.shape
     exists, u = np.zeros(n, dtype=bool), np.zeros((n, c))
     for some in np.array_split(np.arange(n), max(1, -(-n * RUNGS // MOST_ROWS))):
-        exists[some], u[some] = _seek(fluid, name, value[some], feed[some], bubble)
+        rungs = np.tile(_rungs(name, bubble), (some.size, 1))
+        crossed, ends, start = _climb(fluid, name, value[some], feed[some], bubble, rungs)
+        exists[some], u[some] = crossed, start
+        for _ in range(FINER):
+            if not crossed.any():
+                break
+            some, ends = some[crossed], ends[crossed]
+            share = np.linspace(0.0, 1.0, FINE_RUNGS)
+            rungs = ends[:, :1] + (ends[:, 1:] - ends[:, :1]) * share
+            crossed, ends, start = _climb(fluid, name, value[some], feed[some], bubble, rungs)
+            u[some[crossed]] = start[crossed]
     return exists, u
 
 
@@ -63,12 +74,13 @@ def _rungs(name: str, bubble: bool):
     return ladder if bubble else ladder[::-1]
 
 
-def _seek(fluid, name, value, feed, bubble):
-    n = feed.shape[0]
-    rungs = _rungs(name, bubble)
-    given, other = np.repeat(value, RUNGS), np.tile(np.exp(rungs) if name == "T" else 1.0 / rungs, n)
+def _climb(fluid, name, value, feed, bubble, rungs):
+    """One ladder (n, m) per lane: whether it crosses, the two rungs of the crossing, u on its unstable side."""
+    n, m = rungs.shape
+    given = np.repeat(value, m)
+    other = np.exp(rungs).ravel() if name == "T" else (1.0 / rungs).ravel()
     T, P = (given, other) if name == "T" else (other, given)
-    z = np.repeat(feed, RUNGS, axis=0)
+    z = np.repeat(feed, m, axis=0)
     present = z > 0.0
     state = fluid.at(T)
     kind, trial_kind = ("L", "V") if bubble else ("V", "L")
@@ -77,22 +89,46 @@ def _seek(fluid, name, value, feed, bubble):
     ratio = reduced_volume(mixture, P, Z)
     of_kind = (ratio < 1.5 * critical_ratio(mixture)) if bubble else (ratio > 0.5 * critical_ratio(mixture))
     ln_z = np.log(np.where(present, np.maximum(z, FEW), 1.0))
-    ln_K = np.log(fluid.wilson_K(T, P))
     trials = Trials(state, P, ln_z + ln_phi, present, trial_kind)
-    # a bubble starts as what the liquid would give to an ideal vapour
-    fixed = solve(trials, np.where(present, ln_z + (ln_phi if bubble else -ln_K), 0.0), present, newton=0, reach=REACH)
-    _, ln_sum = trials.share(fixed.u)
-    usable = of_kind & (fixed.residual < 1e-3) & np.isfinite(ln_sum)
-    away = np.where(present, np.abs(fixed.u - ln_z), 0.0).max(axis=1) > 1e-3
-    unstable = (usable & away & (ln_sum > TPD_ZERO)).reshape(n, RUNGS)
-    stable = (usable & (ln_sum <= TPD_ZERO)).reshape(n, RUNGS)
+    ln_sum, ln_W, settled = _deepest(trials, _starts(fluid, T, P, ln_z, ln_phi, present, bubble), ln_z)
+    usable = of_kind & settled & np.isfinite(ln_sum)
+    unstable = (usable & (ln_sum > TPD_ZERO)).reshape(n, m)
+    stable = (usable & (ln_sum <= TPD_ZERO)).reshape(n, m)
     crossing = stable[:, :-1] & unstable[:, 1:]
-    exists = crossing.any(axis=1)
-    rung = np.where(exists, crossing.argmax(axis=1) + 1, 0)
-    row = np.arange(n) * RUNGS + rung
-    ln_ratio = (fixed.u - ln_z)[row] * (1.0 if bubble else -1.0)
-    if name == "T":
-        shift = np.log(P[row])[:, None]
-    else:
-        shift = 5.373 * (1.0 + fluid.omega) * fluid.Tc / T[row][:, None]
-    return exists, np.where(feed > 0.0, ln_ratio + shift, 0.0)
+    exists, rung = crossing.any(axis=1), crossing.argmax(axis=1)
+    row = np.arange(n) * m + rung + 1
+    ln_ratio = (ln_W - ln_z)[row] * (1.0 if bubble else -1.0)
+    shift = np.log(P[row])[:, None] if name == "T" else 5.373 * (1.0 + fluid.omega) * fluid.Tc / T[row][:, None]
+    ends = np.stack([rungs[np.arange(n), rung], rungs[np.arange(n), rung + 1]], axis=1)
+    return exists, ends, np.where(feed > 0.0, ln_ratio + shift, 0.0)
+
+
+def _starts(fluid, T, P, ln_z, ln_phi, present, bubble: bool):
+    """Trial starts: what the liquid would give to an ideal vapour; for a vapour Wilson's liquid and every pure one."""
+    if bubble:
+        return [ln_z + ln_phi]
+    starts = [ln_z - np.log(fluid.wilson_K(T, P))]
+    for i in np.flatnonzero(present.any(axis=0)):
+        pure = np.log(1.0 - PURE) + ln_z
+        pure[:, i] = np.where(present[:, i], np.log(PURE), 0.0)
+        starts.append(pure)
+    return starts
+
+
+def _deepest(trials, starts, ln_z):
+    """Largest ln sum W (n,) over the starts, its ln W (n, c), and whether all of them settled (n,).
+
+    A trial that came back to the feed says nothing and counts as stable.
+    """
+    n = ln_z.shape[0]
+    ln_sum, ln_W, settled = np.full(n, -np.inf), np.zeros_like(ln_z), np.zeros(n, dtype=bool)
+    for start in starts:
+        fixed = solve(trials, np.where(trials.present, start, 0.0), trials.present, newton=0, reach=REACH)
+        ok = fixed.residual < 1e-3
+        away = np.where(trials.present, np.abs(fixed.u - ln_z), 0.0).max(axis=1) > 1e-3
+        found = np.where(away, trials.share(fixed.u)[1], 0.0)
+        better = ok & (found > ln_sum)
+        ln_sum = np.where(better, found, ln_sum)
+        ln_W = np.where(better[:, None], fixed.u, ln_W)
+        settled |= ok
+    return ln_sum, ln_W, settled

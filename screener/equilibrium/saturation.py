@@ -22,8 +22,9 @@ from screener.equilibrium.incipient import (
 from screener.equilibrium.ladder import seek
 from screener.equilibrium.phase import DENSE, reduced_volume
 from screener.equilibrium.results import Saturation, bad_status
-from screener.equilibrium.second_liquid import NOT_TESTED, full_check, known_check
+from screener.equilibrium.second_liquid import NOT_TESTED, full_check, known_check, splits_anyway
 from screener.equilibrium.stability import FEW
+from screener.ground.constants import T_15C
 from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
 
@@ -216,11 +217,16 @@ def _solve(out, lanes, fluid, name: str, value, feed, bubble: bool):
     if again.size == 0:
         return
     exists, u = seek(fluid, name, value[again], feed[again], bubble)
-    out.status[lanes[again[~exists]]] = Status.NO_SOLUTION
+    none = again[~exists]
+    out.status[lanes[none]] = Status.NO_SOLUTION
+    if bubble and none.size:
+        T = value[none] if name == "T" else np.full(none.size, T_15C)
+        split = splits_anyway(fluid, T, feed[none])
+        out.status[lanes[none[split]]] = Status.LIQUID_SPLITS
     again, u = again[exists], u[exists]
     if again.size:
         problem = problem.take(again)
-        fixed = solve(problem, u, problem.present, reach=REACH)
+        fixed = solve(problem, u, problem.present, plain=2, newton=30)  # next to the answer: straight to Newton
         _take_in(out, lanes[again], fluid, name, value[again], problem, fixed)
 
 

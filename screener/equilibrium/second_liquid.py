@@ -10,10 +10,12 @@ from __future__ import annotations
 
 import numpy as np
 
+from screener.equilibrium.phase import DENSE, reduced_volume
 from screener.equilibrium.stability import tangent_plane
 from screener.ground.errors import InputError
 
 DEPTH = 1e-8  # [-] tangent-plane distance over RT that counts: a hundred times the residual of the answer
+NO_VAPOUR_LEFT = 1e7  # [Pa] above the bubble pressure of any liquid stored near ambient temperature; own choice
 NOT_TESTED = "not tested for a second liquid"
 TESTED = "tangent plane"
 SPLITS = "tangent plane: a second liquid lowers the energy"
@@ -64,6 +66,20 @@ def full_check(fluid, state, P, z, phase, ln_phi, K):
     text = np.where(found.converged, TESTED, UNSETTLED)
     text = np.where(below, SPLITS, text)
     return found, below & ~doubtful, np.where(doubtful, DOUBTFUL, text)
+
+
+def splits_anyway(fluid, T, z):
+    """Mask (n,) of liquids that are two at T (n,) [K] under a pressure that leaves no vapour.
+
+    Asked where one liquid has no bubble point, to say why; z (n, c) [-].
+    """
+    P = np.full(T.shape, NO_VAPOUR_LEFT)
+    state = fluid.at(T)
+    found, splits, _ = full_check(fluid, state, P, z, z, state.ln_phi(P, z, "L"), fluid.wilson_K(T, P))
+    for x in (z, np.where(splits[:, None], found.w, z)):
+        mixture = state.mix(x)
+        splits = splits & (reduced_volume(mixture, P, mixture.Z(P, "L")) < DENSE)
+    return splits
 
 
 def dry_ethanol(fluid, z):

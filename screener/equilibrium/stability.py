@@ -59,6 +59,11 @@ class Trials:
             return self.d - mixture.ln_phi(self.P, self.kind)
         return self.d - np.where(self.liquid(w)[:, None], mixture.ln_phi(self.P, "L"), mixture.ln_phi(self.P, "V"))
 
+    def descent(self, ln_W, image):
+        """Michelsen's modified distance 1 + sum W (ln W + ln phi - d - 1), and W."""
+        W = np.where(self.present, np.exp(np.minimum(ln_W, 300.0)), 0.0)
+        return 1.0 - np.einsum("nc,nc->n", W, image - ln_W + 1.0), W
+
     def liquid(self, w):
         """Mask (n,) of the lanes whose root is the smaller one."""
         if self.kind != "lower":
@@ -149,7 +154,7 @@ class Found:
         """Take in one trial per lane."""
         self.iterations[lanes] += fixed.iterations
         self.residual[lanes] = np.maximum(self.residual[lanes], np.where(np.isfinite(tpd), fixed.residual, np.inf))
-        self.converged[lanes] &= fixed.converged | fixed.stopped
+        self.converged[lanes] &= fixed.converged
         with np.errstate(invalid="ignore"):
             better = np.isfinite(tpd) & ~(self.tpd[lanes] <= tpd)
         here = lanes[better]
@@ -214,7 +219,7 @@ def _try(found, lanes, trials, start, ln_z):
     if lost.size:
         lower = trials.take(lost)
         lower.kind = "lower"
-        again = solve(lower, start[lost], lower.present, plain=MOST_TRIAL, reach=REACH)
+        again = solve(lower, start[lost], lower.present, plain=4 * MOST_TRIAL, reach=REACH)
         for old, new in zip(fixed, again):
             old[lost] = new
     w, ln_total = trials.share(fixed.u)
