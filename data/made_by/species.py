@@ -8,12 +8,13 @@ To add a species: add a row to data/species/identity.csv (CAS number, canonical 
 synonyms separated by semicolons) and run this. The script stops with the reason when no
 vapour-pressure curve, density, heat capacity or critical point is to be had; then the
 species cannot be used as itself, and a row of data/species/stand_ins.csv may name another
-that stands for it. Hand choices are in `PREFER`, `GROUPS_BY_HAND` and `ISOMER` below, each with its reason.
+that stands for it. Hand choices are in `PREFER` and `GROUPS_BY_HAND` below, each with its reason.
 """
 
 from __future__ import annotations
 
 import csv
+import re
 import sys
 from pathlib import Path
 
@@ -25,15 +26,19 @@ sys.path.insert(0, str(DATA.parent))
 import species_passports
 
 from screener.species import build, forms, library
+from screener.species.vapour_pressure import choose_vapour_pressure
 
 PREFER = {  # CAS -> curve taken against the rule
     "95-93-2": "ANTOINE_POLING",  # durene: the other curve below 352 K is of the solid
+    # n-C14 and n-C18: of the curves for C13-C20, the set that makes ln P at 312-350 K smoothest along
+    # n-C10 to n-C20 (sum of squared second differences) has these two
+    "629-59-4": "DIPPR_PERRY_8E",
+    "593-45-3": "DIPPR_PERRY_8E",
 }
 GROUPS_BY_HAND = {  # CAS -> subgroups, where the assignment table has none; checked by the atom balance
     "112-63-0": {1: 2, 2: 11, 6: 2, 22: 1},  # methyl linoleate, as methyl oleate with one CH2-CH2 turned CH=CH
     "301-00-8": {1: 2, 2: 9, 6: 3, 22: 1},  # methyl linolenate, likewise
 }
-ISOMER = {}  # CAS -> straight-chain isomer that lends its density
 FIRE_SOURCES = {"iec-60079-20-1": "IEC 60079-20-1 (2010)", "nfpa-497": "NFPA 497 (2008)"}
 BAD_FIRE = {  # (CAS, source): rows of the open tables that are wrong (see the passport)
     ("78-83-1", "nfpa-497"),
@@ -70,7 +75,7 @@ def one(row: dict) -> dict[str, dict]:
     _, formula, smiles, inchi_key, MW = library.identity(cas)
     Tc, Pc, words, Tc_spread = library.critical(cas)
     Tb = library.boiling_point(cas)
-    curve = build.choose_vapour_pressure(cas, Tc, Pc, Tb, PREFER.get(cas))
+    curve = choose_vapour_pressure(cas, Tc, Pc, Tb, PREFER.get(cas))
     alpha, mean, worst = build.fit_alpha(curve, Tc, Pc)
     T, rho, method, source, note = build.choose_density(cas, MW, Tc, Pc)
     shift, shift_mean, shift_worst, density = build.fit_density(T, rho, MW, Tc, Pc, alpha, curve)
@@ -126,6 +131,45 @@ def fire(cas: str, name: str) -> dict | None:
                 row[column], row[f"{column}_source"] = float(get(cas, method=method)), key
                 break
     return row if any(row[c] is not None for c in ("flash_point", "LFL", "UFL")) else None
+
+
+def stand_ins(rows: list[dict]) -> list[dict]:
+    """Nearest species for those kept outside the table (data/species/outside.csv).
+
+    Same formula and family within 20 K of the boiling point; else same family, at most two
+    carbon atoms apart, within 12 K. Paraffins and isoparaffins count as one family here.
+    """
+
+    def family(word):
+        return word.replace("isoparaffin", "paraffin")
+
+    def carbons(one, other):
+        if one == other:
+            return 0
+        count = [int(re.match(r"C(\d*)", f)[1] or 1) for f in (one, other)]
+        return 0.5 + abs(count[0] - count[1])  # another formula comes after the same one
+
+    inside = [(r["constants"], family(i["family"])) for r, i in zip(rows, identity())]
+    found = []
+    with (DATA / "species/outside.csv").open(encoding="utf-8", newline="") as file:
+        for out in csv.DictReader(file):
+            formula, Tb = library.identity(out["cas"])[1], library.boiling_point(out["cas"])
+            near = [
+                (carbons(c["formula"], formula), abs(c["Tb"] - Tb), c)
+                for c, kind in inside
+                if kind == family(out["family"])
+                and carbons(c["formula"], formula) <= 2
+                and abs(c["Tb"] - Tb) <= (20.0 if c["formula"] == formula else 12.0)
+            ]
+            if not near:
+                raise SystemExit(f"{out['name']}: nothing near enough to stand for it")
+            other, apart, best = min(near, key=lambda n: n[:2])
+            words = "same formula and family" if other == 0 else f"same family, {best['formula']} for {formula}"
+            found.append({
+                "cas": out["cas"], "name": out["name"], "stands_in": best["cas"], "stands_in_name": best["name"],
+                "reason": f"{words}, boils {apart:.1f} K apart",
+            })  # fmt: skip
+    return found
 
 
 def group_tables(used: set[int]) -> None:
@@ -188,6 +232,8 @@ def main() -> None:
         write(f"species/{table}.csv", list(rows[0][table]), [row[table] for row in rows if row[table].get("groups") != ""])
     flames = [f for f in (fire(row["cas"], row["name"]) for row in identity()) if f]
     write("species/flammability.csv", list(flames[0]), flames)
+    others = stand_ins(rows)
+    write("species/stand_ins.csv", list(others[0]), others)
     group_tables({int(p.split(":")[0]) for row in rows for p in row["groups"]["groups"].split()})
     kij({row["cas"]: row["name"] for row in identity()})
     species_passports.write_all(DATA, rows)

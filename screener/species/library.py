@@ -66,7 +66,7 @@ def _candidates(prop, sources):
     return [
         Candidate(method, key, *map(float, prop.T_limits[method]), lambda t, m=method: prop.calculate(t, m))
         for method, key in sources.items()
-        if method in prop.T_limits and prop.T_limits[method][1] - prop.T_limits[method][0] > 5.0
+        if method in prop.T_limits and prop.T_limits[method][1] - prop.T_limits[method][0] > 15.0
     ]
 
 
@@ -169,6 +169,16 @@ def density_at_a_point(cas):
     return None if T is None else (float(decimals.ljust(4, "0")) / 10.0, T + 273.15)
 
 
+def volume_of_unknown_temperature(cas):
+    """Liquid molar volume [m3/mol] of the CAS Common Chemistry table, or None.
+
+    The library carries no temperature with it. Read as at 20 degC it agrees with the other
+    densities of 202 species within 0.3 % for half of them and 1 to 2.5 % for nine in ten.
+    """
+    text = _common_chemistry().get(cas.replace("-", ""), "")
+    return float(text) if text else None
+
+
 @lru_cache(maxsize=1)
 def _crc_densities():
     import chemicals
@@ -176,6 +186,15 @@ def _crc_densities():
     path = Path(chemicals.__file__).parent / "Misc" / "Physical Constants of Organic Compounds.csv"
     with path.open(encoding="utf-8") as file:
         return {row["CAS"]: row["rho"] for row in csv.DictReader(file, delimiter="\t")}
+
+
+@lru_cache(maxsize=1)
+def _common_chemistry():
+    import chemicals
+
+    path = Path(chemicals.__file__).parent / "Misc" / "common_chemistry_data.tsv"
+    with path.open(encoding="utf-8") as file:
+        return {row["CAS"]: row["Vml"] for row in csv.DictReader(file, delimiter="\t")}
 
 
 def cp_ideal(cas, MW):
