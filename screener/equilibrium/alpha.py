@@ -44,6 +44,19 @@ class Twu:
         return np.exp(exponent + s**3 * (self.C + self.D * s))
 
 
+@dataclass(frozen=True)
+class ByComponent:
+    """One alpha function for the components of a mask (c,), another for the rest."""
+
+    mask: np.ndarray
+    chosen: object
+    rest: object
+
+    def __call__(self, T):
+        """alpha (n, c) [-] at T (n,) [K]."""
+        return np.where(self.mask, self.chosen(T), self.rest(T))
+
+
 def m_of_omega(omega, eos: str):
     """Slope m of the Soave form from the acentric factor.
 

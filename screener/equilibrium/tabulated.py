@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.equilibrium.alpha import Soave, Twu, m_of_omega
+from screener.equilibrium.alpha import ByComponent, Soave, Twu, m_of_omega
 from screener.equilibrium.cubic import Z_of_phase
 from screener.equilibrium.eos import EQUATIONS, attraction_at_critical, covolume
 from screener.equilibrium.excess import Excess
@@ -82,7 +82,10 @@ def _van_der_waals(names, model: str, table):
     kij, fallback = species.interactions(names, model)
     gaps = tuple(f"k_ij of {one} + {other} in no table; taken as zero" for one, other in fallback)
     mixing = VanDerWaals(interaction_matrix(kij, len(names)))
-    return equation, _alpha(table), mixing, (table.c0, table.c1), gaps, ()
+    # library k_ij of gases far above their critical point were fitted with Soave's alpha and go wrong with another
+    gas = table.groups.sum(axis=1) == 0.0
+    alpha = ByComponent(gas, Soave(table.Tc, m_of_omega(table.omega, "PR")), _alpha(table)) if gas.any() else _alpha(table)
+    return equation, alpha, mixing, (table.c0, table.c1), gaps, ()
 
 
 def _shift_at_15(equation, alpha, table):
