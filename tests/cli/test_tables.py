@@ -37,7 +37,13 @@ def test_every_species_has_a_row(capsys):
 
 def test_one_species_in_full(capsys):
     text = " ".join(printed(capsys, "species", "EtOH").split())
-    for said in ("name ethanol", "64-17-5", "46.07 g/mol", "normal boiling point 78.", "error bar of vapour pressure"):
+    for said in (
+        "name ethanol",
+        "64-17-5",
+        "46.07 g/mol",
+        "normal boiling point 78.",
+        "error bar of vapour pressure",
+    ):
         assert said in text
     (row,) = objects(capsys, "species", "64-17-5")["species"]
     assert row["MW"] == find("ethanol").MW
