@@ -14,7 +14,9 @@ import numpy as np
 from screener.equilibrium import bubble_pressure, bubble_temperature
 from screener.ground.constants import GRAVITY, ZERO_CELSIUS
 from screener.screening.context import Context
+from screener.screening.criteria import criterion
 from screener.screening.finding import Finding, Headroom
+from screener.screening.vapour import OTHER_ROOF
 from screener.screening.wording import say
 from screener.states.lanes import LIQUIDS, method_spread
 
@@ -53,7 +55,8 @@ def _liquid(context: Context, finding: Finding) -> int:
     return 0
 
 
-def _temperature_of(finding: Finding, *labels: str) -> float:
+def _fact(finding: Finding, *labels: str) -> float:
+    """Value of the first fact with one of the labels, NaN if there is none."""
     found = (fact.value for fact in finding.facts if fact.label in labels)
     return next((value for value in found if isinstance(value, float)), math.nan)
 
@@ -65,9 +68,7 @@ def _lightest(lanes, z, y) -> int:
 
 def _pressure(context: Context, finding: Finding, family: str):
     lanes, i, k = context.lanes, context.i, _liquid(context, finding)
-    T = _temperature_of(
-        finding, "highest of its range", "highest monthly mean air temperature", "arrival temperature"
-    )
+    T = _fact(finding, "highest of its range", "highest monthly mean air temperature", "arrival temperature")
     if math.isnan(T):
         return (), ()
     z, fluid = lanes.z[i, k], lanes.fluid
@@ -86,9 +87,9 @@ def _pressure(context: Context, finding: Finding, family: str):
     answer = bubble_pressure(fluid, np.concatenate([[T + 1.0, T], np.full(len(shares), T)]), batch)
     name = fluid.names[light]
     moved = _moved(here.P[0], answer.P[:2], name)
-    rooms = []
+    rooms = _other_roof(finding, family)
     limit_T = bubble_temperature(fluid, target, z)
-    if limit_T.ok[0]:
+    if limit_T.ok[0] and not limit_T.T[0] < _coldest_useful(context):
         knob = "receipt-temperature" if family == "receipt.flash" else "surface-temperature"
         if family == "vapour-pressure.legal":
             knob = "monthly-temperature"
@@ -104,6 +105,19 @@ def _pressure(context: Context, finding: Finding, family: str):
         )
         rooms.append(Headroom(f"share of {name}", share, "mol/mol", sentence))
     return moved, tuple(rooms)
+
+
+def _other_roof(finding: Finding, family: str) -> list[Headroom]:
+    """An internal floating roof, where the rule's limit for it leaves the gap asked for."""
+    other = _fact(finding, OTHER_ROOF)
+    if math.isnan(other) or finding.high + criterion(family).gap(other) > other:
+        return []
+    return [_room("floating-roof", other, "Pa", f"{other / 1000.0:.1f} kPa")]
+
+
+def _coldest_useful(context: Context) -> float:
+    """A temperature below the site's own range is no advice; NaN where the range is not given. [K]"""
+    return context.input("ambient_low")
 
 
 def _moved(P, changed, name) -> tuple[str, ...]:

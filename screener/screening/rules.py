@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -23,6 +23,7 @@ class Rule:
 
     limit [Pa] is the true vapour pressure the roof type may not reach; skip or
     unknown says why there is none; caps keep the finding from being better than near.
+    other_roof [Pa] is the limit the same pack puts on a floating roof, NaN if none.
     """
 
     pack: str
@@ -32,8 +33,10 @@ class Rule:
     source_keys: tuple[str, ...] = ()
     skip: str = ""
     unknown: str = ""
+    other_roof: float = math.nan
     caps: tuple[str, ...] = ()
     facts: tuple[Fact, ...] = ()
+    only: bool = True  # the case chose no other pack
 
 
 def packs_of(context: Context, stream) -> tuple[Rule, ...]:
@@ -43,7 +46,8 @@ def packs_of(context: Context, stream) -> tuple[Rule, ...]:
         if pack not in known:
             raise UnknownName(f"screening.criteria[{i}]", pack, "rule pack", known)
     volume = float(stream.breathing.volume[context.i])
-    return tuple(_apply(context, pack, volume) for pack in context.case.criteria)
+    only = len(context.case.criteria) == 1
+    return tuple(replace(_apply(context, pack, volume), only=only) for pack in context.case.criteria)
 
 
 def _apply(context: Context, pack: str, volume: float) -> Rule:
@@ -73,7 +77,25 @@ def _apply(context: Context, pack: str, volume: float) -> Rule:
     facts += [Fact("the rule begins at", other.limit, "Pa") for other in rows if other.role == "scope"]
     if context.case.tank.vapour_return and row.roof == "fixed":
         caps += (say("cap", "vapour-return"),)
-    return Rule(pack, limit, row.evidence, row.where, (row.source_key,), caps=caps, facts=tuple(facts))
+    return Rule(
+        pack,
+        limit,
+        row.evidence,
+        row.where,
+        (row.source_key,),
+        caps=caps,
+        facts=tuple(facts),
+        other_roof=_other_roof(pack, kind, volume),
+    )
+
+
+def _other_roof(pack: str, kind: str, volume: float) -> float:
+    """Limit of the same pack for an internal floating roof, NaN where there is none or the roof floats already."""
+    if "floating" in kind:
+        return math.nan
+    rows = rules_for(pack, "internal-floating-roof", volume)
+    limits = [row.limit for row in rows if row.role == "limit" and row.at == _OWN_BASIS and row.limit]
+    return min(limits, default=math.nan)
 
 
 def _unsized(context: Context, pack: str) -> Rule:

@@ -13,6 +13,7 @@ from screener.screening.wording import lines, say
 from screener.states.lanes import BEST, RECEIPT
 
 FLOATING = ("internal-floating-roof", "external-floating-roof", "domed-floating-roof")
+OTHER_ROOF = "limit of the same rule under an internal floating roof"
 _VAPOUR_SHOWN = 6  # species of a vapour listed beside a finding
 
 
@@ -136,10 +137,14 @@ def hottest(context: Context, rule: Rule | None) -> Draft:
                   range_covers=("weather", "inputs", "method"), facts=rule.facts, **fields)  # fmt: skip
 
 
+def _other_roof_fact(rule: Rule) -> tuple[Fact, ...]:
+    return (Fact(OTHER_ROOF, rule.other_roof, "Pa"),) if math.isfinite(rule.other_roof) else ()
+
+
 def _rule_fields(key: str, rule: Rule) -> dict:
     return {
         "id": f"{key}.{rule.pack}",
-        "title": f"{criterion(key).title} ({rule.pack})",
+        "title": criterion(key).title if rule.only else f"{criterion(key).title} ({rule.pack})",
         "evidence": rule.evidence,
         "source": rule.source,
         "sources": rule.source_keys,
