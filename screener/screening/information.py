@@ -37,10 +37,11 @@ def _figures(name: str, blend, claimed: str) -> Information:
     if GASOLINE_LIKE[0] < sheet.DVPE < GASOLINE_LIKE[1]:
         for standard in class_standards():
             met = [match for match in sheet.classes(standard) if match.met]
-            names = ", ".join(match.name for match in met) or "none"
-            marks = ", ".join(dict.fromkeys(match.evidence for match in met))
-            note = f"class limits {marks}, edition {met[0].edition}" if met else ""
-            facts.append(Fact(f"{standard} classes whose listed limits hold", names, "", note))
+            if met:
+                marks = ", ".join(dict.fromkeys(match.evidence for match in met))
+                facts.append(
+                    Fact(f"{standard} classes met", ", ".join(m.name for m in met), "", f"limits: {marks}")
+                )
     if claimed:
         facts.append(Fact("class claimed in the case", claimed))
     return Information(f"{name}: {blend.title}", tuple(facts), say("note", "information"))
