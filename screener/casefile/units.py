@@ -11,7 +11,7 @@ import re
 from dataclasses import dataclass
 from functools import lru_cache
 
-from screener.casefile.quantities import KINDS, Kind
+from screener.casefile.quantities import KINDS, Kind, Shown
 from screener.casefile.spellings import API, GAUGE, SOUTH, Spelling, fold
 from screener.ground.errors import UnitError
 from screener.ground.files import data_folder
@@ -28,6 +28,7 @@ _NUMBER = re.compile(
     r"(?P<whole>[0-9]{1,3}(?:(?P<gap>[ _'\u2019])[0-9]{3})(?:(?P=gap)[0-9]{3})*(?![0-9])|[0-9]*)"
     r"(?:(?P<mark>[.,])(?P<part>[0-9]*))?(?P<power>[eE][+-]?[0-9]+)?"
 )
+_SHORT_LENGTH = 0.01  # [m]
 _REFUSED = {
     "ton": "a ton may be 907, 1000 or 1016 kg, so it is not read",
     "tons": "a ton may be 907, 1000 or 1016 kg, so it is not read",
@@ -76,14 +77,14 @@ def quantity(text: str, kind: str, path: str = ""):
 def measure(text: str, kind: str, path: str = "") -> Measured:
     """As `quantity`, with the mark of the spelling."""
     if not isinstance(text, str):
-        raise UnitError(path, text, f"{_short(text)} has no unit", expected(kind))
+        raise UnitError(path, text, f"{short(text)} has no unit", expected(kind))
     number, unit = _split(text, kind, path)
     meaning = _meaning(unit, kind, text, path)
     value = _convert(number, meaning, kind)
     if kind == "temperature" and value < 0.0:
-        raise UnitError(path, text, f"'{_short(text)}' lies below absolute zero", expected(kind))
+        raise UnitError(path, text, f"'{short(text)}' lies below absolute zero", expected(kind))
     if not math.isfinite(value):
-        raise UnitError(path, text, f"'{_short(text)}' is too large to be a quantity", expected(kind))
+        raise UnitError(path, text, f"'{short(text)}' is too large to be a quantity", expected(kind))
     return Measured(value, meaning.mark)
 
 
@@ -97,27 +98,43 @@ def _convert(number: float, meaning: Spelling, kind: str) -> float:
 
 def _split(text: str, kind: str, path: str) -> tuple[float, str]:
     """Number and unit text; faults for what is no number, ambiguous, or has no unit."""
+
+    def refuse(problem: str) -> UnitError:
+        return UnitError(path, text, f"'{short(text)}' {problem}", expected(kind))
+
     plain = text.translate(_SPACES).strip()
     found = _NUMBER.match(plain)
     unit = plain[found.end() :].strip()
     if not (found["whole"] or found["part"]) or unit[:1] in tuple(".,0123456789"):
-        raise UnitError(path, text, f"'{_short(text)}' does not begin with one plain number", expected(kind))
+        raise refuse("does not begin with one plain number")
     if unit[:1] in tuple("'\u2019\""):
-        raise UnitError(
-            path, text, f"'{_short(text)}': write ft or in for the marks ' and \"", expected(kind)
-        )
-    whole = re.sub(r"[^0-9]", "", found["whole"])
+        raise refuse("is not read: write ft or in for the marks ' and \"")
+    whole = _digits(found)
     if found["mark"] == "," and len(found["part"]) == 3 and 1 <= len(found["whole"]) <= 3 and int(whole):
-        problem = (
-            f"'{_short(text)}' is ambiguous: '{whole},{found['part']}' may be {whole}{found['part']} or "
+        part = found["part"]
+        raise refuse(
+            f"is ambiguous: '{whole},{part}' may be {whole}{part} or {whole}.{part}; write one of these"
         )
-        raise UnitError(path, text, f"{problem}{whole}.{found['part']}; write one of these", expected(kind))
-    number = float(f"{found['sign']}{whole or 0}.{found['part'] or 0}{found['power'] or ''}")
+    number = _value(found)
     if not math.isfinite(number):
-        raise UnitError(path, text, f"'{_short(text)}' is too large to be a quantity", expected(kind))
+        raise refuse("is too large to be a quantity")
     if not unit:
-        raise UnitError(path, text, f"'{_short(text)}' has no unit", expected(kind))
+        raise refuse("has no unit")
     return number, unit
+
+
+def number_text(text: str) -> float | None:
+    """A plain number without a unit, decimal point or comma; None where the text is none."""
+    found = _NUMBER.fullmatch(text.translate(_SPACES).strip())
+    return _value(found) if found and (found["whole"] or found["part"]) else None
+
+
+def _digits(found: re.Match) -> str:
+    return re.sub(r"[^0-9]", "", found["whole"])
+
+
+def _value(found: re.Match) -> float:
+    return float(f"{found['sign']}{_digits(found) or 0}.{found['part'] or 0}{found['power'] or ''}")
 
 
 def _meaning(unit: str, kind: str, text: str, path: str) -> Spelling:
@@ -126,7 +143,7 @@ def _meaning(unit: str, kind: str, text: str, path: str) -> Spelling:
     meaning = _look_up(key, KINDS[kind])
     if meaning is not None:
         return meaning
-    raise UnitError(path, text, _refusal(unit, key, kind), expected(kind))
+    raise UnitError(path, text, f"'{short(text)}': {_refusal(unit, key, kind)}", expected(kind))
 
 
 def _look_up(key: str, kind: Kind) -> Spelling | None:
@@ -160,7 +177,7 @@ def _refusal(unit: str, key: str, kind: str) -> str:
     others = [name for name, other in KINDS.items() if _look_up(key, other)]
     if others:
         return f"'{unit}' is a unit of {others[0]}, not of {kind}"
-    return f"'{_short(unit)}' is not a unit of {kind} that is read here"
+    return f"'{short(unit)}' is not a unit of {kind} that is read here"
 
 
 def show(value: float | None, kind: str, system: str = "si", *, digits: int = 4, plain: bool = True) -> str:
@@ -172,7 +189,7 @@ def show(value: float | None, kind: str, system: str = "si", *, digits: int = 4,
     number, unit = shown(value, kind, system)
     if number is None:
         return "not known"
-    fixed = (KINDS[kind].si_shown if system == "si" else KINDS[kind].us_shown).decimals
+    fixed = _form(value, kind, system).decimals
     text = f"{_decimal(number, digits, fixed)} {unit}"
     if plain:
         return text
@@ -186,11 +203,17 @@ def show(value: float | None, kind: str, system: str = "si", *, digits: int = 4,
 
 def shown(value: float | None, kind: str, system: str = "si") -> tuple[float | None, str]:
     """Number and unit text as shown; the number is None where there is none."""
-    known = KINDS[kind]
-    form = {"si": known.si_shown, "us": known.us_shown}[system]
+    form = _form(value, kind, system)
     if value is None or not math.isfinite(value):
         return None, form.text
-    return float(registry().Quantity(float(value), known.si).to(form.unit).magnitude), form.text
+    return float(registry().Quantity(float(value), KINDS[kind].si).to(form.unit).magnitude), form.text
+
+
+def _form(value: float | None, kind: str, system: str) -> Shown:
+    """How a value is printed; short lengths (roughness of a pipe) in mm or in."""
+    if kind == "length" and value is not None and 0.0 < abs(value) < _SHORT_LENGTH:
+        return Shown("millimeter", "mm") if system == "si" else Shown("inch", "in")
+    return {"si": KINDS[kind].si_shown, "us": KINDS[kind].us_shown}[system]
 
 
 def _decimal(number: float, digits: int, fixed: int | None) -> str:
@@ -204,7 +227,7 @@ def _decimal(number: float, digits: int, fixed: int | None) -> str:
     return "0" if text in ("-0", "") else text
 
 
-def _short(text: object) -> str:
+def short(text: object) -> str:
     """A value for a message, cut when someone pasted a page."""
     full = str(text)
     return full if len(full) <= 60 else full[:57] + "..."
