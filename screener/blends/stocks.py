@@ -79,7 +79,17 @@ def stocks() -> tuple[Stock, ...]:
 
 
 def stock_names() -> tuple[str, ...]:
-    """Names of the stocks on file."""
+    """Names of the stocks on file.
+
+    Returns
+    -------
+    tuple of str
+        In alphabetical order.
+
+    Source
+    ------
+    data/stocks, one passport per stock.
+    """
     return tuple(item.name for item in stocks())
 
 

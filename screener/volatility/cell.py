@@ -10,6 +10,8 @@ from __future__ import annotations
 
 import numpy as np
 
+from screener.equilibrium import bubble_pressure
+from screener.ground.constants import ATMOSPHERE
 from screener.ground.shapes import lanes
 from screener.ground.status import Status
 from screener.volatility.air import cell_air_pressure
@@ -41,7 +43,8 @@ def vapour_pressure_at_ratio(
     air : bool
         Add the pressure of the air dissolved at T_fill.
     P_air_0 : float or array, shape (n,), optional
-        Partial pressure of air the charge was saturated with at T_fill; required with air. [Pa]
+        Partial pressure of air the charge was saturated with at T_fill; when absent, one
+        atmosphere less the bubble pressure there. [Pa]
     product : str, optional
         "crude" for crude and condensate; otherwise the density chooses the volume correction.
 
@@ -82,6 +85,8 @@ def _add_air(fluid, result, z, T_fill, P_air_0):
     ok = result.ok
     if not ok.any():
         return
+    if P_air_0 is None:
+        P_air_0 = np.maximum(ATMOSPHERE - bubble_pressure(fluid, T_fill, z).P, 0.0)
     P_air_0 = np.broadcast_to(np.asarray(P_air_0, dtype=float), ok.shape)
     space = 1.0 + result.ratio[ok] - result.expansion[ok]
     result.P_air[ok] = cell_air_pressure(

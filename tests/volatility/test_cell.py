@@ -89,6 +89,15 @@ def test_nothing_left_is_refused():
     assert list(cell.status) == [Status.CONVERGED, Status.NO_SOLUTION]
 
 
+def test_air_is_that_of_one_atmosphere_unless_given(fluid, z):
+    own = vapour_pressure_at_ratio(fluid, T_100F, z, 4.0, air=True).require()
+    given = ATMOSPHERE - bubble_pressure(fluid, 273.65, z).P
+    same = vapour_pressure_at_ratio(fluid, T_100F, z, 4.0, air=True, P_air_0=given).require()
+    assert own.P_air == pytest.approx(same.P_air, rel=1e-12) and own.P_air[0] > 3e3
+    assert own.P_total == pytest.approx(own.P + own.P_air, rel=1e-15)
+    assert vapour_pressure_at_ratio(fluid, T_100F, z, 4.0).P_air[0] == 0.0
+
+
 def test_bad_lanes_leave_the_others_alone(fluid, z):
     Z = np.array([z, np.r_[0.5, z[1:]], z])
     cell = vapour_pressure_at_ratio(fluid, [310.0, 310.0, np.nan], Z, 4.0)
