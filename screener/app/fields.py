@@ -1,0 +1,243 @@
+"""Which rows a step shows: made from the declared keys of the case file. Plain Python.
+
+A key added to the case file appears here without further work; its group is
+the table it stands in.
+"""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+from screener.app.rows import Column
+from screener.app.sheet import Cell, Record, Section
+from screener.app.words import say, table
+from screener.casefile import keys as schema
+
+PREFIX = {"blend": "blend", "tank": "tank", "site": "site", "line": "line"}
+PART_COLUMNS = ("share", "quality")
+_VALUE_COLUMNS = (
+    Column("", least=18),
+    Column("value", least=12),
+    Column("taken as", least=14),
+)
+
+
+@dataclass(frozen=True)
+class Echo:
+    """What a value was taken as."""
+
+    text: str
+    quality: str = ""
+    note: str = ""
+    default: bool = False
+
+
+@dataclass(frozen=True)
+class Known:
+    """What is known about a case beside its text: echoes and faults by path."""
+
+    echoes: dict[str, Echo]
+    faults: dict[str, str]
+    missing: frozenset[str] = frozenset()  # paths that findings ask for
+
+
+NOTHING = Known({}, {})
+
+
+def sections(step: str, text, known: Known) -> list[Section]:
+    """All sections of an input step."""
+    if step == "blend":
+        return [part_section("blend", text, known), *_groups("blend", text, known)]
+    prefix = PREFIX[step]
+    made = _groups(prefix, text, known)
+    if step == "site":
+        made += _groups("screening", text, known)
+    return made
+
+
+def label(key) -> str:
+    """Name of a key in words; the wording file may give a better one."""
+    return table("labels").get(key.path, key.label)
+
+
+def _groups(prefix: str, text, known: Known) -> list[Section]:
+    """Sections of every table below a prefix, in the order of the keys."""
+    order: dict[str, list] = {}
+    for key in schema.all_keys().values():
+        if key.path.split(".")[0] != prefix or key.kind in (schema.TABLE, schema.LATER):
+            continue
+        parent = key.path if key.kind == schema.ROWS else key.parent
+        if parent.endswith("parts[]") and key.kind != schema.ROWS:
+            continue
+        order.setdefault(parent, [])
+        if key.kind != schema.ROWS and "[]" not in key.parent and key.name != "scale":
+            order[parent].append(key)
+    made = []
+    for parent, group in order.items():
+        if parent.endswith("parts[]"):
+            if prefix != "blend":
+                made.append(part_section(parent.removesuffix(".parts[]"), text, known))
+        elif parent == "site.months[]":
+            made.append(_months(text, known))
+        elif parent.endswith("[]"):
+            made += _row_groups(parent, text, known)
+        elif group:
+            made.append(_values(parent, group, text, known))
+    return made
+
+
+def heading(parent: str) -> str:
+    """Heading of a group."""
+    return table("groups").get(parent) or parent.rpartition(".")[2].replace("_", " ")
+
+
+def _values(parent: str, group: Iterable, text, known: Known, at: str = "", title: str = "") -> Section:
+    """Label, value, echo and quality, one key a line."""
+    kind = text.get("tank.kind")
+    records = []
+    for key in group:
+        path = f"{at}.{key.name}" if at else key.path
+        if _applies(key, kind) or text.get(path) is not None:
+            records.append(value_record(path, key, text, known))
+    name = title or heading(parent)
+    return Section((Column(name, least=18), *_VALUE_COLUMNS[1:]), tuple(records))
+
+
+def value_record(path: str, key, text, known: Known) -> Record:
+    """One key as a line."""
+    value = text.get(path) or ""
+    echo = known.echoes.get(path)
+    fault = known.faults.get(path, "")
+    taken, tone = "", ""
+    if echo and not fault:
+        taken = "" if same_text(value, echo.text) else echo.text
+        if echo.quality not in ("given", ""):
+            taken = f"{taken} ({echo.quality})" if taken else echo.quality
+    shown = value
+    if not value:
+        shown, tone = (say("sheet", "needed"), "unknown") if path in known.missing else (say("sheet", "blank"), "dim")
+        if fault:
+            shown, tone = say("sheet", "needed"), "bad"
+        elif echo and echo.default:
+            shown, tone = say("sheet", "default"), "dim"
+    elif fault:
+        tone = "bad"
+    name = label(key)
+    cells = (Cell(name), Cell(shown, path, tone), Cell(taken, tone="dim"))
+    return Record(path, cells, note=fault, name=name)
+
+
+def same_text(entered: str, taken: str) -> bool:
+    """Whether an echo only repeats what was entered: '2.0 m' and '2 m'."""
+
+    def bare(text: str) -> str:
+        return re.sub(r"(\d)[.,]0+(?!\d)", r"\1", text.replace(" ", "").replace("^", "").lower())
+
+    return bare(entered) == bare(taken)
+
+
+def _applies(key, kind: object) -> bool:
+    """Whether a key says something about this kind of tank."""
+    if kind is None or key.path not in _ONLY_FOR:
+        return True
+    return bool(re.search(_ONLY_FOR[key.path], str(kind)))
+
+
+_ONLY_FOR = {
+    "tank.length": "horizontal|underground|pressure-vessel",
+    "tank.shell_height": "roof",
+    "tank.roof_leg_height": "floating",
+    "tank.surface": "roof|horizontal|pressure-vessel",
+}
+
+
+def _row_groups(parent: str, text, known: Known) -> list[Section]:
+    """A list of tables such as the vents: one section for each, and a line that adds one."""
+    base = parent.removesuffix("[]")
+    count = text.rows(base)
+    group = list(schema.children(parent).values())
+    made = []
+    for i in range(count):
+        title = f"{heading(parent)} {i + 1}"
+        made.append(_values(parent, group, text, known, at=f"{base}[{i}]", title=title))
+    made.append(_adder(f"{base}[+]", say("sheet", "add_row"), heading(parent) if not count else "", known.faults.get(base)))
+    return made
+
+
+def _adder(key: str, words: str, title: str, fault: str | None = None) -> Section:
+    return Section((Column(title, least=18),), (Record(key, (Cell(words, key, "dim"),), note=fault or "", name=words),))
+
+
+def part_section(base: str, text, known: Known) -> Section:
+    """Parts of a blend: name, share, quality; the last line adds a part."""
+    records = []
+    for i in range(text.rows(f"{base}.parts")):
+        at = f"{base}.parts[{i}]"
+        kind = "species" if text.has(f"{at}.species") else "stock"
+        name, share, quality = (text.get(f"{at}.{key}") for key in (kind, *PART_COLUMNS))
+        faults = _faults(known, at, kind, *PART_COLUMNS)
+        tone = "bad" if faults else ""
+        cells = (
+            Cell(name or say("sheet", "needed"), f"{at}.{kind}", tone),
+            Cell(share or say("sheet", "needed"), f"{at}.share", tone),
+            Cell(kind, tone="dim"),
+            Cell(quality or say("sheet", "blank"), f"{at}.quality", "" if quality else "dim"),
+        )
+        records.append(Record(at, cells, note=faults, name=name or ""))
+    words = say("sheet", "add_part")
+    fault = known.faults.get(f"{base}.parts", "") or known.faults.get(base, "")
+    records.append(Record(f"{base}.parts[+]", (Cell(words, f"{base}.parts[+]", "dim"), *(Cell(""),) * 3), note=fault, name=words))
+    columns = (
+        Column(heading(f"{base}.parts[]"), least=16),
+        Column("share", "right", least=6),
+        Column("kind", least=5),
+        Column("quality", least=8),
+    )
+    return Section(columns, tuple(records))
+
+
+def told(title: str, note: str, lines) -> Section:
+    """Lines that are only told: label, value and note; the cursor passes them by."""
+    records = tuple(Record("", (Cell(name), Cell(value), Cell(remark, tone="dim"))) for name, value, remark in lines)
+    return Section((Column(title, least=18), Column("", least=12), Column("", least=14)), records, note)
+
+
+def _faults(known: Known, at: str, *names: str) -> str:
+    """Faults of a row and of its cells in one text."""
+    paths = (at, *(f"{at}.{name}" for name in names))
+    return "; ".join(known.faults[path] for path in paths if path in known.faults)
+
+
+def _months(text, known: Known) -> Section:
+    """The twelve months as a table of their own shape."""
+    group = [key for key in schema.children("site.months[]").values() if key.kind != schema.MONTH]
+    records = []
+    for i in range(text.rows("site.months")):
+        at = f"site.months[{i}]"
+        month = text.get(f"{at}.month")
+        cells = [Cell(month or say("sheet", "needed"), f"{at}.month")]
+        for key in group:
+            value = text.get(f"{at}.{key.name}")
+            cells.append(Cell(value or say("sheet", "blank"), f"{at}.{key.name}", "" if value else "dim"))
+        faults = _faults(known, at, "month", *(key.name for key in group))
+        records.append(Record(at, tuple(cells), note=faults, name=month or ""))
+    blank = (Cell(""),) * len(group)
+    words = say("sheet", "add_month") if len(records) < 12 else ""
+    if words:
+        records.append(Record("site.months[+]", (Cell(words, "site.months[+]", "dim"), *blank), name=words))
+    columns = (Column(heading("site.months[]"), least=5), *(Column(label(key), least=6) for key in group))
+    return Section(columns, tuple(records))
+
+
+def share_total(base: str, text) -> float | None:
+    """Sum of the shares in percent; None when one of them is no plain percentage."""
+    total, count = 0.0, text.rows(f"{base}.parts")
+    for i in range(count):
+        share = text.get(f"{base}.parts[{i}].share") or ""
+        found = re.fullmatch(r"\s*([0-9]+(?:[.,][0-9]+)?)\s*(?:vol|mol|mass|wt)?\s*%\s*", share)
+        if not found:
+            return None
+        total += float(found[1].replace(",", "."))
+    return total if count else None

@@ -1,0 +1,315 @@
+"""Steps 1 to 4: a sheet, the edit strip under it, and on wide screens the help of the chosen value."""
+
+from __future__ import annotations
+
+from typing import ClassVar
+
+from textual.app import ComposeResult
+from textual.binding import Binding
+from textual.containers import Container, Vertical
+from textual.message import Message
+
+from screener.app import edits, fields
+from screener.app.chrome import SumRow
+from screener.app.desk import Desk
+from screener.app.glyphs import Glyphs
+from screener.app.lines import Block, Lines
+from screener.app.rows import Row, Span, labelled, one_line, paragraph
+from screener.app.searching import Searching
+from screener.app.sheet import Sheet
+from screener.app.strip import EditRequested, EditStrip
+from screener.app.words import say
+from screener.casefile import keys as schema
+from screener.ground.errors import InputError
+
+
+class InputPane(Searching, Container):
+    """One input step."""
+
+    BINDINGS: ClassVar = [
+        Binding("a", "add", "Add", id="inputs.add"),
+        Binding("d", "remove", "Remove", id="inputs.remove"),
+        Binding("delete", "clear", "Clear", id="inputs.clear"),
+        Binding("s", "scale", "Scale to 100", id="inputs.scale"),
+    ]
+    DEFAULT_CSS = """
+    InputPane { layout: horizontal; }
+    InputPane .left { width: 1fr; height: 1fr; }
+    InputPane .matches { height: auto; max-height: 9; display: none; margin: 1 0 0 0; }
+    InputPane.-searching .matches { display: block; }
+    InputPane .field-help { display: none; width: 38; margin: 0 0 0 2; }
+    """
+
+    class Changed(Message):
+        """The case was changed."""
+
+    class Pointed(Message):
+        """Words for the hint row."""
+
+        def __init__(self, text: str, tone: str = ""):
+            super().__init__()
+            self.text, self.tone = text, tone
+
+    def __init__(self, step: str, desk: Desk, marks: Glyphs, **kwargs):
+        super().__init__(id=step, **kwargs)
+        self.step, self.desk, self.marks = step, desk, marks
+        self._found: list = []
+
+    def compose(self) -> ComposeResult:
+        with Vertical(classes="left"):
+            yield Sheet(self.marks, classes="sheet")
+            yield Lines(gutter=self.marks.cursor, classes="matches")
+            yield EditStrip()
+            yield SumRow()
+        yield Lines(classes="field-help")
+
+    @property
+    def sheet(self) -> Sheet:
+        return self.query_one(Sheet)
+
+    @property
+    def strip(self) -> EditStrip:
+        return self.query_one(EditStrip)
+
+    # showing
+
+    def update_case(self) -> None:
+        """Show the case as it now is; a value being typed stays."""
+        self.sheet.fill(self.desk.sections(self.step), say("intro", self.step))
+        self._tell_sum()
+        if not self.strip.editing:
+            self._read()
+
+    def _tell_sum(self) -> None:
+        bases = {"blend": "blend", "tank": "tank.contents"}
+        base = bases.get(self.step)
+        if base is None or not self.desk.text.rows(f"{base}.parts"):
+            self.query_one(SumRow).tell("")
+            return
+        total = fields.share_total(base, self.desk.text)
+        scaled = self.desk.text.get(f"{base}.scale") == "true"
+        if total is None:
+            self.query_one(SumRow).tell(say("sum", "untold"), "dim")
+        elif abs(total - 100.0) <= 0.05:
+            self.query_one(SumRow).tell(say("sum", "whole", base=say("sum", base), total=f"{total:g}"), "dim")
+        else:
+            words = say("sum", "scaled" if scaled else "off", base=say("sum", base), total=f"{total:g}")
+            self.query_one(SumRow).tell(words, "" if scaled else "bad")
+
+    def _read(self) -> None:
+        """Strip, hint and help card follow the cell under the cursor."""
+        cell, record = self.sheet.cell, self.sheet.record
+        if cell is None or record is None:
+            self.strip.read("", "")
+            return
+        self.strip.read(self.marks.plain(self.label), self.marks.plain(self._value(cell.path)))
+        self.post_message(self.Pointed(self.hint))
+        self.query_one(".field-help", Lines).show(self._help)
+        self.refresh_bindings()
+
+    @property
+    def label(self) -> str:
+        """What the cell under the cursor is, in words."""
+        record = self.sheet.record
+        column = self.sheet.column_name
+        name = record.name if record else ""
+        if self._is_adder:
+            return name
+        return f"{name}, {column}" if column and self._row_at else name
+
+    def _value(self, path: str) -> str:
+        return "" if path.endswith("[+]") else self.desk.text.get(path) or say("sheet", "blank")
+
+    @property
+    def hint(self) -> str:
+        """Meaning and range of the value under the cursor, or its fault."""
+        cell = self.sheet.cell
+        if cell is None:
+            return ""
+        if self._is_adder:
+            return say("hint", "parts_add" if cell.path.endswith("parts[+]") else "row_add")
+        if fault := self.desk.known.faults.get(cell.path):
+            return fault
+        key = schema.key_at(cell.path)
+        if key is None:
+            return ""
+        echo = self.desk.known.echoes.get(cell.path)
+        taken = say("hint", "taken", text=echo.text) if echo and not echo.default else ""
+        note = echo.note if echo else ""
+        parts = [key.meaning, taken, note, "" if key.choices else key.allowed]
+        return one_line([part for part in parts if part], self.screen.size.width - 2)
+
+    def _help(self, width: int):
+        cell = self.sheet.cell
+        rows: list[Row] = []
+        lines = self.desk.help_of(cell.path) if cell and not self._is_adder else []
+        if lines:
+            rows += paragraph(self.marks.plain(self.label), width, "head") + [(Span(""),)]
+        for name, text in lines:
+            rows += labelled(name, self.marks.plain(text), width, 10)
+        if cell and (echo := self.desk.known.echoes.get(cell.path)):
+            rows += labelled(say("help", "taken"), self.marks.plain(echo.text), width, 10)
+        return (), [Block((row,)) for row in rows]
+
+    # what can be done here
+
+    @property
+    def _is_adder(self) -> bool:
+        return self.sheet.key.endswith("[+]")
+
+    @property
+    def _row_at(self) -> str:
+        """Path of the row of a list that the cursor stands in; '' outside lists."""
+        key = self.sheet.key
+        return "" if self._is_adder or "]" not in key else key[: key.rindex("]") + 1]
+
+    @property
+    def _list_here(self) -> str:
+        """Path of the list the cursor stands in or at the end of; '' elsewhere."""
+        key = self.sheet.key
+        return key[: key.rindex("[")] if "[" in key else ""
+
+    @property
+    def _part_base(self) -> str:
+        return self._list_here.removesuffix(".parts") if self._list_here.endswith("parts") else ""
+
+    def check_action(self, action: str, parameters: tuple) -> bool | None:
+        """Keys that would do nothing here are not keys here."""
+        if action in ("add", "remove", "clear", "scale") and self.strip.editing:
+            return False
+        if action == "add":
+            return bool(self._list_here) and not (
+                self._list_here == "site.months" and self.desk.text.rows("site.months") >= 12
+            )
+        if action == "remove":
+            return bool(self._row_at)
+        if action == "clear":
+            cell = self.sheet.cell
+            return bool(cell and not self._is_adder and self.desk.text.has(cell.path))
+        if action == "scale":
+            total = fields.share_total(self._part_base, self.desk.text) if self._part_base else None
+            scaled = self.desk.text.get(f"{self._part_base}.scale") if self._part_base else None
+            return scaled == "true" or (total is not None and abs(total - 100.0) > 0.05)
+        return True
+
+    def action_add(self) -> None:
+        here = self._list_here
+        if here.endswith("parts"):
+            self._search(f"{here}[+]", say("strip", "add_part"), "")
+        else:
+            self._change(say("change", "add"), lambda text: edits.add_row(text, here))
+            self.sheet.go_to(f"{here}[{self.desk.text.rows(here) - 1}]")
+            self._read()
+
+    def action_remove(self) -> None:
+        at = self._row_at
+        self._change(say("change", "remove"), lambda text: edits.remove_row(text, at))
+
+    def action_clear(self) -> None:
+        path = self.sheet.cell.path
+        self._change(path, lambda text: edits.enter(text, path, ""))
+
+    def action_scale(self) -> None:
+        base = self._part_base
+        on = self.desk.text.get(f"{base}.scale") != "true"
+        self._change(say("change", "scale"), lambda text: edits.scale(text, base, on))
+
+    def _change(self, label: str, act) -> None:
+        """Make a change and show it; one that is refused is told in the hint row."""
+        try:
+            self.desk.session.change(label, act)
+        except InputError as error:
+            self.post_message(self.Pointed(str(error), "bad"))
+            return
+        self.update_case()
+        self.post_message(self.Changed())
+
+    # editing
+
+    def on_lines_moved(self, event: Lines.Moved) -> None:
+        event.stop()
+        if event.lines is self.sheet and not self.strip.editing:
+            self._read()
+
+    def on_lines_chosen(self, event: Lines.Chosen) -> None:
+        event.stop()
+        if event.lines is self.sheet:
+            self.edit()
+        elif self.strip.editing:
+            self._take_match()
+
+    def on_edit_requested(self, event: EditRequested) -> None:
+        event.stop()
+        self.edit()
+
+    def edit(self) -> None:
+        """Edit the cell under the cursor."""
+        cell = self.sheet.cell
+        if cell is None:
+            return
+        if self._is_adder:
+            self.action_add()
+        elif schema.pattern(cell.path).endswith(("parts[].stock", "parts[].species")):
+            self._search(cell.path, self.label, self.desk.text.get(cell.path) or "")
+        else:
+            self.strip.edit(cell.path, self.label, self.desk.text.get(cell.path) or "", self.desk.choices(cell.path))
+            self.post_message(self.Pointed(self._while_editing(cell.path)))
+        self.refresh_bindings()
+
+    @property
+    def unfinished(self) -> bool:
+        """Whether a part was just added whose share is being typed: not a moment to work things out."""
+        strip = self.strip
+        return strip.editing and strip.purpose.endswith("].share") and not self.desk.text.has(strip.purpose)
+
+    def _while_editing(self, path: str) -> str:
+        key = schema.key_at(path)
+        if self.desk.choices(path):
+            return say("hint", "choices", choices=", ".join(self.desk.choices(path)))
+        usual = say("hint", "usual", text=key.usual) if key.usual else ""
+        parts = [key.meaning, say("hint", "example", text=key.example), usual]
+        return one_line([part for part in parts if part], self.screen.size.width - 2)
+
+    def on_edit_strip_typed(self, event: EditStrip.Typed) -> None:
+        event.stop()
+        if self.has_class("-searching"):
+            self._show_matches(event.value)
+            return
+        if not self.desk.ready:
+            return
+        checked = self.desk.check(event.purpose, event.value)
+        if checked.problem:
+            self.post_message(self.Pointed(checked.problem, "dim"))
+        elif checked.echo:
+            self.post_message(self.Pointed(say("hint", "taken", text=checked.echo.text)))
+        else:
+            self.post_message(self.Pointed(say("hint", "emptied")))
+
+    def on_edit_strip_taken(self, event: EditStrip.Taken) -> None:
+        event.stop()
+        if self.has_class("-searching"):
+            self._take_match()
+            return
+        checked = self.desk.take(event.purpose, event.value)
+        if checked.problem:
+            self.post_message(self.Pointed(checked.problem, "bad"))
+            return
+        self._leave()
+        self.post_message(self.Changed())
+        self.update_case()
+        self.sheet.action_step(1)
+        self._read()
+        if checked.echo:
+            self.post_message(self.Pointed(say("hint", "entered", value=event.value.strip(), text=checked.echo.text)))
+
+    def on_edit_strip_left(self, event: EditStrip.Left) -> None:
+        event.stop()
+        self._leave()
+        self._read()
+
+    def _leave(self) -> None:
+        """Out of the strip, back to the sheet."""
+        self.remove_class("-searching")
+        self.strip.read("", "")
+        self.sheet.focus()
+        self.refresh_bindings()

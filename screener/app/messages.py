@@ -1,0 +1,40 @@
+"""What the workers say when they are done. They never touch a widget."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from textual.message import Message
+
+
+@dataclass
+class Warmed(Message):
+    """The libraries behind the screening are loaded."""
+
+
+@dataclass
+class WorkDone(Message):
+    """A case was worked out."""
+
+    token: int
+    revision: int
+    worked: object  # Worked
+    seconds: float
+
+
+@dataclass
+class MemoBuilt(Message):
+    """The memo of a revision stands ready."""
+
+    revision: int
+    document: object
+    markdown: str
+
+
+@dataclass
+class Broke(Message):
+    """A worker came upon a bug of ours."""
+
+    what: str  # 'work', 'memo' or 'warm'
+    token: int
+    sentence: str

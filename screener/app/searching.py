@@ -1,0 +1,56 @@
+"""Finding a stock or a species by name: the search half of an input step."""
+
+from __future__ import annotations
+
+from screener.app import edits
+from screener.app.lines import Block, Lines
+from screener.app.rows import paragraph
+from screener.app.strip import EditStrip
+from screener.app.words import say
+
+
+class Searching:
+    """Search of an input pane: the strip takes the text, the list above it shows what fits."""
+
+    def _search(self, purpose: str, label: str, value: str) -> None:
+        self.add_class("-searching")
+        self.strip.edit(purpose, label, value)
+        self._show_matches("" if purpose.endswith("[+]") else value)
+        self.post_message(self.Pointed(say("hint", "search")))
+
+    def _show_matches(self, typed: str) -> None:
+        self._found = self.desk.matches(typed)
+        self.query_one(".matches", Lines).show(self._match_list)
+
+    def _match_list(self, width: int):
+        if not self._found:
+            return (), [Block(tuple(paragraph(say("hint", "no_match"), width, "bad")))]
+        blocks = []
+        for name in self._found:
+            also = ", ".join((name.detail, *name.also[:2])) if name.also or name.detail else ""
+            text = f"{name.name}  ({name.kind}{', ' + also if also else ''})"
+            blocks.append(Block(tuple(paragraph(self.marks.plain(text), width)), f"{name.kind}:{name.name}"))
+        return (), blocks
+
+    def on_edit_strip_stepped(self, event: EditStrip.Stepped) -> None:
+        event.stop()
+        if self.has_class("-searching"):
+            self.query_one(".matches", Lines).action_step(event.by)
+
+    def _take_match(self) -> None:
+        kind, _, name = self.query_one(".matches", Lines).key.partition(":")
+        if not name or not self._found:
+            self.post_message(self.Pointed(say("hint", "no_match"), "bad"))
+            return
+        purpose = self.strip.purpose
+        self._leave()
+        if not purpose.endswith("[+]"):
+            at = purpose.rpartition(".")[0]
+            self._change(name, lambda text: edits.rename_part(text, at, kind, name))
+            self.sheet.go_to(at)
+            return
+        base = purpose.removesuffix(".parts[+]")
+        self._change(name, lambda text: edits.add_part(text, base, kind, name))
+        at = f"{base}.parts[{self.desk.text.rows(base + '.parts') - 1}].share"
+        if self.sheet.go_to(at):
+            self.edit()

@@ -1,0 +1,195 @@
+"""A sheet: sections of records, each record a line of cells, some of them editable.
+
+The plain half (`Cell`, `Record`, `Section`, `sheet_blocks`) lays out; the
+widget adds the cursor. Sections of different shape stand in one sheet: label
+and value, parts of a blend, months.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from typing import ClassVar
+
+from textual import events
+from textual.binding import Binding
+
+from screener.app.glyphs import Glyphs
+from screener.app.lines import Block, Lines
+from screener.app.rows import Column, Row, Span, column_widths, columns_of, paragraph, record_rows
+from screener.app.words import say
+
+GAP = 2
+
+
+@dataclass(frozen=True)
+class Cell:
+    """One cell; a path makes it editable."""
+
+    text: str
+    path: str = ""
+    tone: str = ""
+
+
+@dataclass(frozen=True)
+class Record:
+    """One line of a section. `note` is printed below it, whole."""
+
+    key: str
+    cells: tuple[Cell, ...]
+    note: str = ""
+    note_tone: str = "bad"
+    name: str = ""  # what the record is about, for the edit strip
+
+    @property
+    def editable(self) -> list[int]:
+        """Places of the cells that can be edited."""
+        return [i for i, cell in enumerate(self.cells) if cell.path]
+
+
+@dataclass(frozen=True)
+class Section:
+    """Records of one shape under one heading."""
+
+    columns: tuple[Column, ...]  # the heading of the first is the name of the section
+    records: tuple[Record, ...]
+    note: str = ""
+
+
+def sheet_blocks(sections: Sequence[Section], width: int, marks: Glyphs, at: tuple[str, int]) -> list[Block]:
+    """Blocks of a sheet; `at` is the key of the record and the place of the cell under the cursor."""
+    blocks: list[Block] = []
+    for number, section in enumerate(sections):
+        cells = [[Span(marks.plain(cell.text)) for cell in record.cells] for record in section.records]
+        widths = column_widths(section.columns, cells, width, GAP)
+        heads = [
+            Span(marks.plain(column.heading), "head" if i == 0 else "dim") for i, column in enumerate(section.columns)
+        ]
+        rows: list[Row] = [(Span(""),)] if number else []
+        rows += record_rows(heads, widths, section.columns, GAP)
+        if section.note:
+            rows += paragraph(marks.plain(section.note), width, "dim")
+        blocks.append(Block(tuple(rows)))
+        for record in section.records:
+            blocks.append(_record_block(record, section, widths, width, marks, at))
+    return blocks
+
+
+def _record_block(record: Record, section: Section, widths, width: int, marks: Glyphs, at) -> Block:
+    spans = []
+    for i, cell in enumerate(record.cells):
+        tone = f"{cell.tone} cell" if (record.key, i) == at and cell.path else cell.tone
+        spans.append(Span(marks.plain(cell.text), tone))
+    rows = record_rows(spans, widths, section.columns, GAP)
+    if record.note:
+        rows += paragraph(marks.plain(record.note), width, record.note_tone, indent=2)
+    return Block(tuple(rows), record.key)
+
+
+class Sheet(Lines):
+    """Sections with a cursor on a cell."""
+
+    HELP = say("widgets", "sheet")
+    BINDINGS: ClassVar = [
+        Binding("enter", "choose", "Edit", id="sheet.edit"),
+        Binding("left", "side(-1)", "Cell left", show=False, id="sheet.left"),
+        Binding("right", "side(1)", "Cell right", show=False, id="sheet.right"),
+    ]
+
+    def __init__(self, marks: Glyphs, **kwargs):
+        super().__init__(gutter=marks.cursor, **kwargs)
+        self.marks = marks
+        self.sections: tuple[Section, ...] = ()
+        self.intro = ""
+        self._side = 0  # among the editable cells of the record
+
+    def fill(self, sections: Sequence[Section], intro: str = "") -> None:
+        """New content; the cursor stays on its cell."""
+        self.sections = tuple(sections)
+        self.intro = intro
+        self.show(self._build)
+
+    def _build(self, width: int):
+        head = paragraph(self.marks.plain(self.intro), width, "dim") if self.intro else []
+        return head, sheet_blocks(self.sections, width, self.marks, self.at)
+
+    def cursor_changed(self) -> None:
+        self.lay_out_again()
+
+    @property
+    def record(self) -> Record | None:
+        """The record under the cursor."""
+        found = (record for section in self.sections for record in section.records)
+        return next((record for record in found if record.key and record.key == self.key), None)
+
+    @property
+    def at(self) -> tuple[str, int]:
+        """Record key and cell place under the cursor."""
+        record = self.record
+        if record is None or not record.editable:
+            return (self.key, -1)
+        return (self.key, record.editable[min(self._side, len(record.editable) - 1)])
+
+    @property
+    def cell(self) -> Cell | None:
+        """The editable cell under the cursor."""
+        record, place = self.record, self.at[1]
+        return record.cells[place] if record and place >= 0 else None
+
+    @property
+    def column_name(self) -> str:
+        """Heading of the column under the cursor."""
+        place = self.at[1]
+        for section in self.sections:
+            if self.record in section.records and place > 0:
+                return section.columns[place].heading
+        return ""
+
+    def go_to(self, path: str) -> bool:
+        """Put the cursor on the cell of a path, or on the first cell below it."""
+        for exact in (True, False):
+            for section in self.sections:
+                for record in section.records:
+                    for side, place in enumerate(record.editable):
+                        known = record.cells[place].path
+                        if known == path if exact else known.startswith(path) or path.startswith(known + "."):
+                            self._side = side
+                            self.move_to(record.key)
+                            self.lay_out_again()
+                            return True
+        return False
+
+    def action_side(self, by: int) -> None:
+        record = self.record
+        if record and record.editable:
+            last = len(record.editable) - 1
+            self._side = min(last, max(0, min(self._side, last) + by))
+            self.lay_out_again()
+            self.post_message(self.Moved(self, self.key))
+
+    def on_click(self, event: events.Click) -> None:
+        before, record = self.key, None
+        at = event.y - len(self._head) + self._top
+        if event.y >= len(self._head) and 0 <= at < len(self._flat):
+            key = self._blocks[self._flat[at][0]].key
+            record = next((r for s in self.sections for r in s.records if r.key == key), None)
+        if record is None:
+            return
+        side = self._side_at(record, event.x - columns_of(self.marks.cursor))
+        same = record.key == before and side == self._side
+        self._side = side
+        if same:
+            self.action_choose()
+        else:
+            self.move_to(record.key)
+            self.lay_out_again()
+            self.post_message(self.Moved(self, self.key))
+
+    def _side_at(self, record: Record, x: int) -> int:
+        """Which editable cell of a record lies nearest to a column of the screen."""
+        section = next(s for s in self.sections if record in s.records)
+        cells = [[Span(self.marks.plain(c.text)) for c in r.cells] for r in section.records]
+        widths = column_widths(section.columns, cells, max(1, self.size.width - 1), GAP)
+        starts = [sum(widths[:i]) + GAP * i for i in range(len(widths))]
+        places = record.editable
+        return max((side for side, place in enumerate(places) if starts[place] <= x), default=0)
