@@ -36,7 +36,7 @@ def test_docstring_matches_signature(function):
     sections = _sections(function.__doc__ or "")
     assert sections.get("summary", "").strip(), "no summary line"
     assert "Source" in sections, "no Source section"
-    described = re.findall(r"^([\w*, ]+?) :", sections.get("Parameters", ""), re.M)
+    described = re.findall(r"^([\w*, ]+?) :", sections.get("Parameters", ""), re.MULTILINE)
     described = {name.strip(" *") for names in described for name in names.split(",")}
     wanted = {name for name in inspect.signature(function).parameters if not name.startswith("_")}
     assert described == wanted, f"described {sorted(described)}, signature {sorted(wanted)}"
@@ -46,7 +46,7 @@ def test_docstring_matches_signature(function):
 def test_numbers_have_units(function):
     """Every parameter described as float or array carries a [unit]."""
     text = _sections(function.__doc__ or "").get("Parameters", "")
-    entries = re.split(r"^(?=[\w*, ]+? :)", text, flags=re.M)
+    entries = re.split(r"^(?=[\w*, ]+? :)", text, flags=re.MULTILINE)
     for entry in entries:
         head = entry.split("\n", 1)[0]
         if re.search(r":.*\b(float|array)\b(?! of str)", head):

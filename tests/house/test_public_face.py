@@ -22,10 +22,24 @@ def test_the_names_outside_checks_call():
     from screener import screen
     from screener.blends import Blend
     from screener.casefile import read_case, write_case
-    from screener.equilibrium import Fluid, bubble_pressure, bubble_temperature, dew_pressure, dew_temperature
-    from screener.equilibrium import flash_tp, rachford_rice, stability
-    from screener.volatility import distillation, dvpe, ratio_temperature, reid_vapour_pressure
-    from screener.volatility import true_vapour_pressure, vapour_pressure_at_ratio
+    from screener.equilibrium import (
+        Fluid,
+        bubble_pressure,
+        bubble_temperature,
+        dew_pressure,
+        dew_temperature,
+        flash_tp,
+        rachford_rice,
+        stability,
+    )
+    from screener.volatility import (
+        distillation,
+        dvpe,
+        ratio_temperature,
+        reid_vapour_pressure,
+        true_vapour_pressure,
+        vapour_pressure_at_ratio,
+    )
 
     names = (screen, Blend, read_case, write_case, Fluid, bubble_pressure, bubble_temperature, dew_pressure,
              dew_temperature, flash_tp, rachford_rice, stability, distillation, dvpe, ratio_temperature,
