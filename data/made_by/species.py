@@ -30,6 +30,7 @@ from screener.species.vapour_pressure import choose_vapour_pressure
 
 PREFER = {  # CAS -> curve taken against the rule
     "95-93-2": "ANTOINE_POLING",  # durene: the other curve below 352 K is of the solid
+    "291-64-5": "ANTOINE_POLING",  # cycloheptane: the wide correlation is no smooth curve (1.4 % off any six-term form)
     # n-C14 and n-C18: of the curves for C13-C20, the set that makes ln P at 312-350 K smoothest along
     # n-C10 to n-C20 (sum of squared second differences) has these two
     "629-59-4": "DIPPR_PERRY_8E",
@@ -40,10 +41,14 @@ GROUPS_BY_HAND = {  # CAS -> subgroups, where the assignment table has none; che
     "301-00-8": {1: 2, 2: 9, 6: 3, 22: 1},  # methyl linolenate, likewise
 }
 FIRE_SOURCES = {"iec-60079-20-1": "IEC 60079-20-1 (2010)", "nfpa-497": "NFPA 497 (2008)"}
-BAD_FIRE = {  # (CAS, source): rows of the open tables that are wrong (see the passport)
-    ("78-83-1", "nfpa-497"),
-    ("1634-04-4", "nfpa-497"),
-    ("109-67-1", "nfpa-497"),
+BAD_FLASH = {  # (CAS, source): flash points of the open tables that are wrong or contradict their own limit
+    ("78-83-1", "nfpa-497"): "isobutanol -40 degC",
+    ("1634-04-4", "nfpa-497"): "MTBE -80 degC",
+    ("109-67-1", "nfpa-497"): "1-pentene -18 degC",
+    ("74-84-0", "nfpa-497"): "ethane -29 degC: vapour pressure there is 450 times the lower limit",
+    ("79-29-8", "iec-60079-20-1"): "2,3-dimethylbutane -20 degC: vapour pressure there is 3.4 times the lower limit",
+    ("96-37-7", "iec-60079-20-1"): "methylcyclopentane -10 degC: vapour pressure there is 3.2 times the lower limit",
+    ("142-29-0", "iec-60079-20-1"): "cyclopentene -22 degC: vapour pressure there is 3.7 times the lower limit",
 }
 
 
@@ -127,7 +132,7 @@ def fire(cas: str, name: str) -> dict | None:
     ):
         row[column], row[f"{column}_source"] = None, ""
         for key, method in FIRE_SOURCES.items():
-            if method in listed(cas) and (column != "flash_point" or (cas, key) not in BAD_FIRE):
+            if method in listed(cas) and (column != "flash_point" or (cas, key) not in BAD_FLASH):
                 row[column], row[f"{column}_source"] = float(get(cas, method=method)), key
                 break
     return row if any(row[c] is not None for c in ("flash_point", "LFL", "UFL")) else None
@@ -236,7 +241,7 @@ def main() -> None:
     write("species/stand_ins.csv", list(others[0]), others)
     group_tables({int(p.split(":")[0]) for row in rows for p in row["groups"]["groups"].split()})
     kij({row["cas"]: row["name"] for row in identity()})
-    species_passports.write_all(DATA, rows)
+    species_passports.write_all(DATA, rows, BAD_FLASH)
 
 
 if __name__ == "__main__":

@@ -16,16 +16,19 @@ from screener.species.vapour_pressure import LIGHT, NoData
 def fit_alpha(curve, Tc, Pc):
     """Alpha constants, and mean and worst relative miss of the vapour pressure of the equation [-].
 
-    Fitted over 230-400 K clipped to 0.9 Tc (light species: up to 0.98 Tc), with a fifth of
-    the weight from 400 K to 0.75 Tc for heavy ones. The misses are found by solving the
-    equation for its vapour pressure between 250 and 350 K (light: over the fitted range).
+    Fitted over 230-400 K clipped to 0.9 Tc (light species: their saturation range up to
+    0.98 Tc), with a fifth of the weight below 230 K, and above 400 K to 0.75 Tc for heavy
+    ones. The misses are found by solving the equation for its vapour pressure between 250
+    and 350 K, below 0.9 Tc (light: over the fitted range).
     """
     light = Tc <= LIGHT
     top = 0.98 * Tc if light else min(400.0, 0.9 * Tc)
-    T = np.linspace(curve.T_low, top, 70)
+    T = np.linspace(curve.T_low if light else max(230.0, curve.T_low), top, 70)
     weight = np.ones_like(T)
+    aside = [np.linspace(curve.T_low, T[0], 6)[:-1]] if curve.T_low < T[0] else []
     if not light and 0.75 * Tc > top:
-        more = np.linspace(top, min(0.75 * Tc, curve.T_high), 12)[1:]
+        aside.append(np.linspace(top, min(0.75 * Tc, curve.T_high), 12)[1:])
+    for more in aside:
         T, weight = np.concatenate([T, more]), np.concatenate([weight, np.full(len(more), 0.2)])
     P = forms.psat(curve.coefficients, T)
     constants = fits.alpha_constants(T, P, Tc, Pc, weight)

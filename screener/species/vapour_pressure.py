@@ -13,8 +13,8 @@ Rule, in this order:
    three curves to form a median, the first in the list.
 
 Where the chosen curve is not valid, it is continued by the geometric mean of two Wagner
-forms through the critical point and the last valid point; half their distance is the
-extension band. tests/species/test_continuation.py measures both on species whose curve is known.
+forms through the critical point and the last valid point (upwards also through 1 atm at the
+boiling point); half their distance is the extension band. tests/species/test_continuation.py measures both on species whose curve is known.
 """
 
 from __future__ import annotations
@@ -34,6 +34,7 @@ NEAR_MEDIAN = 0.03  # [-] rule 5; our choice
 REACH, CLOSE = 60.0, 0.005  # [K], [-] rule 6; our choice
 WINDOW = 120.0  # [K] stretch of a curve that its continuation is fitted to; our choice
 LIGHT = 340.0  # [K] species with Tc below this are fitted on their own saturation range; our choice
+LOWEST = 200.0  # [K] curves are continued down to here (flash points of light species lie near 215 K); our choice
 ATMOSPHERE = 101325.0  # [Pa] the boiling points of the library are at 1 atm
 REFERENCE = ("iapws-2007", "helmholtz")
 
@@ -136,11 +137,12 @@ def choose_vapour_pressure(cas, Tc, Pc, Tb=None, prefer=None):
     return _fit(chosen, others, rejected, Tc, Pc, Tb, prefer is not None)
 
 
-def continuations(T, P, Tc, Pc, at):
+def continuations(T, P, Tc, Pc, at, Tb=None):
     """Two continuations [Pa] of points T [K], P [Pa] to temperatures `at` [K], below or above all points.
 
     Wagner forms of three and four terms through the critical point Tc [K], Pc [Pa], shifted
-    to meet the last point.
+    to meet the last point. With a boiling point Tb [K] above the points they also bend to 1 atm
+    there: it counts as much as half the points, and the shift fades out towards it.
     """
 
     def terms(x, count):
@@ -148,37 +150,40 @@ def continuations(T, P, Tc, Pc, at):
         return np.stack([s, s**1.5, s**2.5, s**5.0][:count], axis=1) * (Tc / np.asarray(x))[:, None]
 
     seam = 0 if np.max(at) <= T[0] else len(T) - 1
+    fade, fit_T, fit_P = np.ones_like(at), T, P
+    if Tb is not None and seam and T[-1] < Tb - 5.0:
+        fade = np.clip((Tb - at) / (Tb - T[-1]), 0.0, 1.0)
+        fit_T = np.concatenate([T, np.full(len(T) // 2, Tb)])
+        fit_P = np.concatenate([P, np.full(len(T) // 2, ATMOSPHERE)])
     lines = []
     for count in (3, 4):
-        solution = np.linalg.lstsq(terms(T, count), np.log(P / Pc), rcond=None)[0]
+        solution = np.linalg.lstsq(terms(fit_T, count), np.log(fit_P / Pc), rcond=None)[0]
         miss = np.log(P[seam] / Pc) - (terms(T[[seam]], count) @ solution)[0]
-        lines.append(Pc * np.exp(terms(at, count) @ solution + miss))
+        lines.append(Pc * np.exp(terms(at, count) @ solution + miss * fade))
     return lines
 
 
 def _points(chosen, Tc, Pc, Tb):
     """Points T [K], P [Pa] of the chosen curve with its continuations, its first valid T, the band [-]."""
-    low = max(230.0, 0.35 * Tc) if Tc > LIGHT else max(0.5 * Tc, chosen.low)
+    low = max(LOWEST, 0.35 * Tc) if Tc > LIGHT else max(0.5 * Tc, chosen.low)
     high = min(0.98 * Tc, max(450.0, (Tb or 0.0) + 30.0, 0.75 * Tc))
     T = np.linspace(max(low, chosen.low), min(high, chosen.high), 120)
     P = chosen.at(T)
     T, P = T[np.isfinite(P)], P[np.isfinite(P)]
     if len(T) < 20:
         raise NoData(f"{chosen.method}: too little of the curve lies in the range")
-    first, extension, all_T, all_P = float(T[0]), 0.0, [T], [P]
+    first, extension = float(T[0]), 0.0
+    if T[-1] < high - 0.5:
+        at = np.linspace(T[-1] + 1.0, high, 60)
+        lines = continuations(T[T >= T[-1] - WINDOW], P[T >= T[-1] - WINDOW], Tc, Pc, at, Tb)
+        T, P = np.concatenate([T, at]), np.concatenate([P, np.sqrt(lines[0] * lines[1])])
     if first > low + 0.5:
         at = np.arange(low, first, 2.0)
         lines = continuations(T[T <= first + WINDOW], P[T <= first + WINDOW], Tc, Pc, at)
         band = 0.5 * np.abs(lines[0] / lines[1] - 1.0)
         extension = float(np.max(band[at >= STORAGE[0]], initial=0.0))
-        all_T.insert(0, at)
-        all_P.insert(0, np.sqrt(lines[0] * lines[1]))
-    if T[-1] < high - 0.5:
-        at = np.linspace(T[-1] + 1.0, high, 60)
-        lines = continuations(T[T >= T[-1] - WINDOW], P[T >= T[-1] - WINDOW], Tc, Pc, at)
-        all_T.append(at)
-        all_P.append(np.sqrt(lines[0] * lines[1]))
-    return np.concatenate(all_T), np.concatenate(all_P), first, extension
+        T, P = np.concatenate([at, T]), np.concatenate([np.sqrt(lines[0] * lines[1]), P])
+    return T, P, first, extension
 
 
 def _fit(chosen, others, rejected, Tc, Pc, Tb, by_hand):
