@@ -123,6 +123,8 @@ class UnifacAt:
         has = m.q > 0.0
         if has.all():
             return self._of_groups(x)
+        if not has.any():
+            return np.zeros((max(x.shape[0], self.psi.shape[0]), has.size))
         share = x @ has.astype(float)
         # a phase of gas only: the others are seen in an even mixture of themselves
         x = np.where((share > 0.0)[:, None], x, has)
