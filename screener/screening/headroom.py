@@ -19,6 +19,7 @@ from screener.screening.finding import Finding, Headroom
 from screener.screening.vapour import OTHER_ROOF
 from screener.screening.wording import say
 from screener.states.lanes import LIQUIDS, method_spread
+from screener.states.quantities import flows, table
 
 _PRESSURE = ("boiling.surface", "vapour-pressure.legal", "vapour-pressure.hottest", "receipt.flash")
 _SHARE_STEPS = np.linspace(0.0, 1.0, 17)  # of the share the species has now
@@ -26,24 +27,38 @@ _SHARE_STEPS = np.linspace(0.0, 1.0, 17)  # of the share the species has now
 
 def with_headroom(context: Context, stream, findings: tuple[Finding, ...]) -> tuple[Finding, ...]:
     """The findings with `moved_by` and `headroom` filled in where they can be worked out."""
-    return tuple(_extend(context, stream, finding) for finding in findings)
+    knobs = _draw_knobs(context)
+    return tuple(_extend(context, stream, finding, knobs) for finding in findings)
 
 
-def _extend(context: Context, stream, finding: Finding) -> Finding:
+def _extend(context: Context, stream, finding: Finding, knobs) -> Finding:
     if finding.value is None or finding.asked_gap is None or finding.verdict == "skipped":
         return finding
     family = next((key for key in _PRESSURE if finding.id.startswith(key)), finding.id)
     if family in _PRESSURE:
         moved, rooms = _pressure(context, finding, family)
     elif family in ("vapour-lock.suction", "npsh.pump"):
-        moved, rooms = _suction(context, stream, finding)
-    elif family == "vents.outbreathing":
-        moved, rooms = (), _rate(context, stream, finding)
+        moved, rooms = _suction(context, stream, finding, knobs)
+    elif family in ("vents.outbreathing", "vents.inbreathing"):
+        moved, rooms = _breathing(context, stream, finding)
     else:
         return finding
-    if finding.verdict == "room":
+    if not _short_of_room(finding):
         rooms = ()
     return replace(finding, moved_by=moved, headroom=rooms)
+
+
+def _short_of_room(finding: Finding) -> bool:
+    """Whether the numbers themselves lack room: a change of a knob does not lift a cap or tell an unknown."""
+    if finding.verdict not in ("beyond", "near"):
+        return False
+    worse = finding.high if finding.kind == "stay below" else finding.low
+    limit = finding.limit_high if finding.kind == "stay below" else finding.limit_low
+    return (
+        worse is None
+        or abs(limit - worse) < finding.asked_gap
+        or (worse > limit) == (finding.kind == "stay below")
+    )
 
 
 def _liquid(context: Context, finding: Finding) -> int:
@@ -147,42 +162,99 @@ def _room(knob: str, value: float, unit: str, shown: str) -> Headroom:
     return Headroom(knob, value, unit, say("headroom", knob, value=shown))
 
 
-def _suction(context: Context, stream, finding: Finding):
-    """A higher lowest level, or a cooler liquid, gives the line its pressure back."""
+def _suction(context: Context, stream, finding: Finding, knobs):
+    """A higher lowest level, a cooler liquid or a slower draw gives the line its pressure back."""
     lanes, i, k = context.lanes, context.i, _liquid(context, finding)
-    s = stream.suction
-    rho, fluid = float(s.density[i, k]), lanes.fluid
-    weight = rho * GRAVITY
-    short = finding.limit_low + finding.asked_gap - (finding.low if finding.low is not None else math.nan)
-    rooms = []
-    metres = short / weight if finding.id == "vapour-lock.suction" else short
-    level = context.input("level_low") + metres
-    if math.isfinite(level) and metres > 0.0 and level <= context.input("level_high"):
-        rooms.append(_room("level", level, "m", f"{level:.2f} m"))
+    s, lock = stream.suction, finding.id == "vapour-lock.suction"
+    weight = float(s.density[i, k]) * GRAVITY
+    wanted = finding.limit_low + finding.asked_gap
     spread = float(method_spread(lanes, lanes.y_hot[i, k][None, :])[0])
-    if finding.id == "vapour-lock.suction":
-        target = (float(s.lowest[i, k]) - finding.asked_gap) / (1.0 + spread)
-    else:
-        rest = float(s.npsh[i, k, 1]) * weight + float(lanes.P_hot[i, k, 1])
-        target = (rest - (finding.limit_low + finding.asked_gap) * weight) / (1.0 + spread)
+    rooms = []
+    metres = (wanted - _number(finding.low)) / (weight if lock else 1.0)
+    level = context.input("level_low") + metres
+    if metres > 0.0 and level <= context.input("level_high"):
+        rooms.append(_room("level", level, "m", f"{level:.2f} m"))
+    lowest = float(s.lowest[i, k]) if lock else float(s.npsh[i, k, 1]) * weight + float(lanes.P_hot[i, k, 1])
+    target = (lowest - wanted * (1.0 if lock else weight)) / (1.0 + spread)
     if math.isfinite(target) and target > 0.0:
-        answer = bubble_temperature(fluid, target, lanes.z[i, k])
+        answer = bubble_temperature(lanes.fluid, target, lanes.z[i, k])
         if answer.ok[0]:
             rooms.append(
                 _room("liquid-temperature", float(answer.T[0]), "K", f"{answer.T[0] - ZERO_CELSIUS:.1f} degC")
             )
-    return (), tuple(rooms)
+    rates, reached = _draw_rates(context, knobs, k, lock)
+    rooms += _slower_draw(rates, reached, wanted)
+    return _suction_moved(context, reached, weight, k, lock), tuple(rooms)
 
 
-def _rate(context: Context, stream, finding: Finding):
-    """The receipt rate at which out-breathing just has its gap: every part but the thermal one is in proportion."""
-    b, i = stream.breathing, context.i
-    rate = context.input("receipt_rate")
-    moving = (finding.high or math.nan) - float(b.out_thermal[i])
-    left = (
-        finding.limit_high - finding.asked_gap - float(b.out_thermal[i]) if finding.limit_high else math.nan
+# Draw rates tried, as shares of the rate of the case: one above it for the sensitivity, the rest for the way back.
+_DRAW_STEPS = np.array([1.1, 1.0, 0.9, 0.8, 0.7, 0.6, 0.5, 0.4, 0.3, 0.2, 0.1])
+
+
+def _draw_knobs(context: Context):
+    """The case at each of the draw rates tried, as one more batch of lanes; None where nothing is drawn."""
+    rate = context.input("draw_rate")
+    if context.case.line.suction is None or math.isnan(rate):
+        return None
+    case = context.case
+    tried = [replace(case, line=replace(case.line, draw_rate=rate * share)) for share in _DRAW_STEPS]
+    return flows(table(tried))
+
+
+def _draw_rates(context: Context, knobs, k: int, lock: bool):
+    """Draw rates (m,) [m3/s] and the low end of the finding at each (m,)."""
+    rates = context.input("draw_rate") * _DRAW_STEPS
+    reached = (knobs.suction.room if lock else knobs.suction.npsh)[:, k, 0]
+    return rates, reached
+
+
+def _slower_draw(rates, reached, wanted) -> list[Headroom]:
+    """The fastest draw at which the low end keeps the gap, between the rates tried."""
+    good = np.isfinite(reached) & (reached >= wanted)
+    if not good.any() or good[1]:
+        return []
+    first = int(np.flatnonzero(good)[0])
+    part = (wanted - reached[first]) / (reached[first - 1] - reached[first])
+    rate = (
+        float(rates[first] + part * (rates[first - 1] - rates[first]))
+        if math.isfinite(part)
+        else float(rates[first])
     )
-    if not (math.isfinite(moving) and math.isfinite(left) and moving > 0.0 and left > 0.0 and left < moving):
-        return ()
+    return [_room("draw-rate", rate, "m3/s", f"{3600.0 * rate:.0f} m3/h")]
+
+
+def _suction_moved(context: Context, reached, weight: float, k: int, lock: bool) -> tuple[str, ...]:
+    """Sensitivities of a suction finding, largest first: warmer liquid, lower level, faster draw."""
+    lanes, i = context.lanes, context.i
+    T = float(lanes.T_hot[i, k, 1])
+    warmer = bubble_pressure(lanes.fluid, np.array([T, T + 1.0]), lanes.z[i, k])
+    per = 1.0e-3 if lock else 1.0 / weight
+    unit = "kPa" if lock else "m"
+    steps = (
+        ("temperature", -(warmer.P[1] - warmer.P[0]) * per),
+        ("level", -weight * per),
+        ("draw", (reached[0] - reached[1]) * (1.0e-3 if lock else 1.0)),
+    )
+    steps = sorted((step for step in steps if math.isfinite(step[1])), key=lambda step: -abs(step[1]))
+    return tuple(say("moved", name, change=f"{change:+.2f} {unit}") for name, change in steps)
+
+
+def _breathing(context: Context, stream, finding: Finding):
+    """Out- and in-breathing follow the rate in proportion, the thermal part apart."""
+    b, i = stream.breathing, context.i
+    out = finding.id == "vents.outbreathing"
+    name, key = ("receipt_rate", "receipt-rate") if out else ("draw_rate", "draw-rate")
+    rate, k = context.input(name), _liquid(context, finding)
+    thermal = float(b.out_thermal[i] if out else b.into_thermal[i, k])
+    moving = _number(finding.high) - thermal
+    left = _number(finding.limit_high) - _number(finding.asked_gap) - thermal
+    moved = (say("moved", key, change=f"{0.1 * moving * 3600.0:+.0f} Nm3/h air"),) if moving > 0.0 else ()
+    if not (moving > 0.0 and 0.0 < left < moving):
+        return moved, ()
     slower = rate * left / moving
-    return (_room("receipt-rate", slower, "m3/s", f"{3600.0 * slower:.0f} m3/h"),)
+    return moved, (_room(key, slower, "m3/s", f"{3600.0 * slower:.0f} m3/h"),)
+
+
+def _number(value) -> float:
+    """NaN for a number that does not exist."""
+    return math.nan if value is None else float(value)

@@ -16,18 +16,9 @@ from screener.screening.rules import packs_of
 from screener.screening.vapour import boiling, hottest, legal, receipt
 from screener.screening.venting import inbreathing, outbreathing, pressure_setting, vacuum_setting
 from screener.states.case import Case
-from screener.states.inputs import gather
-from screener.states.lanes import Lanes, evaluate
-from screener.states.quantities import bubble_curve, flows
-from screener.states.weather import weather
+from screener.states.quantities import bubble_curve, flows, table
 
 CURVE = np.arange(-10.0, 61.0, 2.5) + ZERO_CELSIUS  # temperatures of the picture [K]
-
-
-def evaluate_cases(cases) -> Lanes:
-    """The table of lanes of many cases."""
-    inputs = gather(cases)
-    return evaluate(inputs, weather(inputs))
 
 
 def findings_of(context: Context, stream) -> tuple[Finding, ...]:
@@ -54,7 +45,7 @@ def screen_many(cases, *, full: bool = False) -> tuple[Screening, ...]:
     left out: they cost more than the findings themselves.
     """
     cases = tuple(cases)
-    lanes = evaluate_cases(cases)
+    lanes = table(cases)
     stream = flows(lanes)
     results = []
     for i in range(len(cases)):

@@ -8,8 +8,16 @@ import numpy as np
 
 from screener.equilibrium import bubble_pressure
 from screener.states.breathing import Breathing, breathing
-from screener.states.lanes import Lanes
+from screener.states.inputs import gather
+from screener.states.lanes import Lanes, evaluate
 from screener.states.suction import SuctionLanes, suction_lanes
+from screener.states.weather import weather
+
+
+def table(cases) -> Lanes:
+    """The table of lanes of many cases."""
+    inputs = gather(cases)
+    return evaluate(inputs, weather(inputs))
 
 
 @dataclass(frozen=True)
