@@ -17,7 +17,7 @@ from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.phase import DENSE, Feed, reduced_volume
 from screener.equilibrium.rachford_rice import split
 from screener.equilibrium.results import TPD_ZERO, Flash, bad_status
-from screener.equilibrium.second_liquid import NOT_TESTED, full_check, known_check
+from screener.equilibrium.second_liquid import NOT_TESTED, TWO_LIQUIDS, full_check, known_check
 from screener.equilibrium.stability import FEW, tangent_plane
 from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
@@ -162,6 +162,7 @@ class _Answer:
     def two_phases(self, lanes, z, beta, x, y, ln_K, residual, both_liquid):
         """Lanes that are two phases, the second a vapour or a liquid."""
         self.status[lanes] = np.where(both_liquid, int(Status.LIQUID_SPLITS), int(Status.CONVERGED))
+        self.checks[lanes] = np.where(both_liquid, TWO_LIQUIDS, NOT_TESTED)
         self.phases[lanes], self.x[lanes], self.residual[lanes] = 2, x, residual
         self.beta[lanes] = np.where(both_liquid, 0.0, beta)
         self.beta_W[lanes] = np.where(both_liquid, beta, np.nan)

@@ -13,19 +13,20 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.fixed_point import solve
-from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T
+from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_T
 from screener.equilibrium.phase import critical_ratio, reduced_volume
 from screener.equilibrium.results import TPD_ZERO
 from screener.equilibrium.stability import FEW, PURE, REACH, Trials
+from screener.ground.status import Status
 
 RUNGS = 48
-FINER, FINE_RUNGS = 2, 9  # a crossing is narrowed twice, eightfold each time
+FINE_RUNGS = 9  # a crossing is narrowed eightfold each time
 PRESSURES = (1.0, 2.0 * HIGHEST_P)  # [Pa] ends of the ladder; stored liquids lie far inside
-TEMPERATURES = (90.0, 0.8 * HIGHEST_T)  # [K]
+TEMPERATURES = (LOWEST_T, 0.8 * HIGHEST_T)  # [K]
 MOST_ROWS = 20_000
 
 
-def seek(fluid, name: str, value, feed, bubble: bool):
+def seek(fluid, name: str, value, feed, bubble: bool, finer: int):
     """Look for the saturation point of each lane.
 
     Parameters
@@ -40,45 +41,50 @@ def seek(fluid, name: str, value, feed, bubble: bool):
         Liquid (bubble) or vapour (dew). [-]
     bubble : bool
         Which of the two.
+    finer : int
+        How often the crossing found is narrowed.
 
     Returns
     -------
     tuple
-        Mask (n,) of the lanes in which it exists, and u (n, c) to start from.
+        Status (n,): CONVERGED where it exists, NO_SOLUTION where it does not,
+        OUT_OF_RANGE where it lies beyond the ladder, OUT_OF_STEPS where that
+        cannot be told; and u (n, c) to start from.
 
     Source
     ------
     Michelsen, Fluid Phase Equilib. 9 (1982) 1 (tangent plane).
     """
     n, c = feed.shape
-    exists, u = np.zeros(n, dtype=bool), np.zeros((n, c))
+    status, u = np.zeros(n, dtype=int), np.zeros((n, c))
     for some in np.array_split(np.arange(n), max(1, -(-n * RUNGS // MOST_ROWS))):
         rungs = np.tile(_rungs(name, bubble), (some.size, 1))
-        crossed, ends, start = _climb(fluid, name, value[some], feed[some], bubble, rungs)
-        exists[some], u[some] = crossed, start
-        for _ in range(FINER):
+        status[some], ends, u[some] = _climb(fluid, name, value[some], feed[some], bubble, rungs)
+        crossed = status[some] == Status.CONVERGED
+        for _ in range(finer):
             if not crossed.any():
                 break
             some, ends = some[crossed], ends[crossed]
             share = np.linspace(0.0, 1.0, FINE_RUNGS)
             rungs = ends[:, :1] + (ends[:, 1:] - ends[:, :1]) * share
-            crossed, ends, start = _climb(fluid, name, value[some], feed[some], bubble, rungs)
+            inner, ends, start = _climb(fluid, name, value[some], feed[some], bubble, rungs)
+            crossed = inner == Status.CONVERGED
             u[some[crossed]] = start[crossed]
-    return exists, u
+    return status, u
 
 
 def _rungs(name: str, bubble: bool):
     """States from the stable side on: high pressure or low temperature for a liquid, the opposite for a vapour."""
-    low, high = np.log(PRESSURES) if name == "T" else (1.0 / TEMPERATURES[1], 1.0 / TEMPERATURES[0])
-    ladder = np.linspace(high, low, RUNGS)  # falling ln P, or falling 1/T
+    low, high = np.log(PRESSURES) if name == "T" else -np.log(TEMPERATURES[::-1])
+    ladder = np.linspace(high, low, RUNGS)  # falling ln P, or falling -ln T
     return ladder if bubble else ladder[::-1]
 
 
 def _climb(fluid, name, value, feed, bubble, rungs):
-    """One ladder (n, m) per lane: whether it crosses, the two rungs of the crossing, u on its unstable side."""
+    """One ladder (n, m) per lane: its status, the two rungs of the crossing, u on the unstable side."""
     n, m = rungs.shape
     given = np.repeat(value, m)
-    other = np.exp(rungs).ravel() if name == "T" else (1.0 / rungs).ravel()
+    other = np.exp(rungs if name == "T" else -rungs).ravel()
     T, P = (given, other) if name == "T" else (other, given)
     z = np.repeat(feed, m, axis=0)
     present = z > 0.0
@@ -95,12 +101,16 @@ def _climb(fluid, name, value, feed, bubble, rungs):
     unstable = (usable & (ln_sum > TPD_ZERO)).reshape(n, m)
     stable = (usable & (ln_sum <= TPD_ZERO)).reshape(n, m)
     crossing = stable[:, :-1] & unstable[:, 1:]
-    exists, rung = crossing.any(axis=1), crossing.argmax(axis=1)
+    rung = crossing.argmax(axis=1)
+    first = np.take_along_axis(unstable, usable.reshape(n, m).argmax(axis=1)[:, None], axis=1)[:, 0]
+    status = np.where(unstable.any(axis=1), int(Status.OUT_OF_STEPS), int(Status.NO_SOLUTION))
+    status = np.where(first, int(Status.OUT_OF_RANGE), status)
+    status = np.where(crossing.any(axis=1), int(Status.CONVERGED), status)
     row = np.arange(n) * m + rung + 1
     ln_ratio = (ln_W - ln_z)[row] * (1.0 if bubble else -1.0)
     shift = np.log(P[row])[:, None] if name == "T" else 5.373 * (1.0 + fluid.omega) * fluid.Tc / T[row][:, None]
     ends = np.stack([rungs[np.arange(n), rung], rungs[np.arange(n), rung + 1]], axis=1)
-    return exists, ends, np.where(feed > 0.0, ln_ratio + shift, 0.0)
+    return status, ends, np.where(feed > 0.0, ln_ratio + shift, 0.0)
 
 
 def _starts(fluid, T, P, ln_z, ln_phi, present, bubble: bool):

@@ -19,6 +19,7 @@ NO_VAPOUR_LEFT = 1e7  # [Pa] above the bubble pressure of any liquid stored near
 NOT_TESTED = "not tested for a second liquid"
 TESTED = "tangent plane"
 SPLITS = "tangent plane: a second liquid lowers the energy"
+TWO_LIQUIDS = "two liquids found"
 DOUBTFUL = "tangent plane: the model splits dry ethanol and hydrocarbon, held not to exist"
 UNSETTLED = "tangent plane: a trial did not converge"
 
