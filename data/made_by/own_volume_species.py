@@ -11,7 +11,11 @@ import CoolProp.CoolProp as CP
 import numpy as np
 
 FLUIDS = {
-    "ethanol": ("Ethanol", 223.15, "Schroeder, Penoncello and Schroeder, J. Phys. Chem. Ref. Data 43 (2014) 043102"),
+    "ethanol": (
+        "Ethanol",
+        223.15,
+        "Schroeder, Penoncello and Schroeder, J. Phys. Chem. Ref. Data 43 (2014) 043102",
+    ),
     "methanol": ("Methanol", 223.15, "de Reuck and Craven, IUPAC Tables of the Fluid State 12 (1993)"),
     "water": ("Water", 273.16, "Wagner and Pruss, J. Phys. Chem. Ref. Data 31 (2002) 387"),
 }
@@ -32,8 +36,10 @@ def fit(fluid: str, T_low: float):
 def main() -> None:
     """Write the table."""
     target = Path(__file__).parents[1] / "volatility" / "own_volume_species.csv"
-    lines = ["# ln(V/V15) = b1 t + b2 t^2 + b3 t^3 + b4 t^4, t = T - 288.15 K; saturated liquid",
-             "species,b1,b2,b3,b4,T_low,T_high,largest_error,source"]
+    lines = [
+        "# ln(V/V15) = b1 t + b2 t^2 + b3 t^3 + b4 t^4, t = T - 288.15 K; saturated liquid",
+        "species,b1,b2,b3,b4,T_low,T_high,largest_error,source",
+    ]
     for species, (fluid, T_low, source) in FLUIDS.items():
         b, error = fit(fluid, T_low)
         numbers = ",".join(f"{v:.8e}" for v in b)

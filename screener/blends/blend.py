@@ -50,7 +50,9 @@ class Blend:
     report: Report = field(default_factory=Report)
 
     @classmethod
-    def of(cls, parts: Mapping[str, float], basis: str = "volume", at: str = "15 degC", title: str = "") -> Blend:
+    def of(
+        cls, parts: Mapping[str, float], basis: str = "volume", at: str = "15 degC", title: str = ""
+    ) -> Blend:
         """A blend from shares of species and stocks.
 
         Parameters
@@ -85,7 +87,10 @@ class Blend:
         basis, T_at = read_basis(basis, at)
         shares = _checked(parts)
         total = sum(shares.values())
-        read = [component(key, share / total, basis, at, f"parts[{i}]") for i, (key, share) in enumerate(shares.items())]
+        read = [
+            component(key, share / total, basis, at, f"parts[{i}]")
+            for i, (key, share) in enumerate(shares.items())
+        ]
         moles: dict[str, float] = {}
         volume: dict[str, float] = {}
         for part in read:
@@ -96,7 +101,9 @@ class Blend:
         names, z = _normalised(moles)
         product = "crude" if volume.get("crude", 0.0) > 0.5 * sum(volume.values()) else ""
         text = title or " + ".join(f"{100.0 * part.share:.4g} % {part.name}" for part in read)
-        return cls(names, z, tuple(part.part for part in read), text, product, _report(read, basis, at, total))
+        return cls(
+            names, z, tuple(part.part for part in read), text, product, _report(read, basis, at, total)
+        )
 
     @property
     def z(self) -> np.ndarray:
@@ -205,16 +212,22 @@ class Blend:
 
 def _checked(parts) -> dict[str, float]:
     if not isinstance(parts, Mapping) or not parts:
-        raise InputError("parts", parts, "a blend needs at least one part", "a share for each species or stock")
+        raise InputError(
+            "parts", parts, "a blend needs at least one part", "a share for each species or stock"
+        )
     shares = {}
     for i, (key, value) in enumerate(parts.items()):
         share = float(value)
         if not (math.isfinite(share) and 0.0 <= share):
-            raise InputError(f"parts[{i}]", value, f"{key}: {value} is no share", "a share lies between 0 and 1")
+            raise InputError(
+                f"parts[{i}]", value, f"{key}: {value} is no share", "a share lies between 0 and 1"
+            )
         shares[key] = share
     total = sum(shares.values())
     if abs(total - 1.0) > SUM_TOLERANCE:
-        raise InputError("parts", total, f"the shares sum to {100 * total:.4g} %", "they must sum to 100 % within 0.05 %")
+        raise InputError(
+            "parts", total, f"the shares sum to {100 * total:.4g} %", "they must sum to 100 % within 0.05 %"
+        )
     return shares
 
 
@@ -230,7 +243,12 @@ def _amount(part, basis: str, T_at: float) -> tuple[float, float]:
         return part.share / v, v
     swollen = liquid_expansion(_fluid(part.names), T_60F, z, product=part.product or None)[0]
     if not math.isfinite(swollen):
-        raise InputError(part.name, None, f"no liquid volume of {part.name} at 60 degF", "shares by mass or mole, or at 15 degC")
+        raise InputError(
+            part.name,
+            None,
+            f"no liquid volume of {part.name} at 60 degF",
+            "shares by mass or mole, or at 15 degC",
+        )
     return part.share / (v * swollen), v
 
 

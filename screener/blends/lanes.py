@@ -35,7 +35,11 @@ def union(blends, *, extra=()) -> tuple[tuple[str, ...], np.ndarray]:
     Bookkeeping; nothing is computed.
     """
     blends = tuple(blends)
-    names = tuple(dict.fromkeys([name for blend in blends for name in blend.names] + [find(name).name for name in extra]))
+    names = tuple(
+        dict.fromkeys(
+            [name for blend in blends for name in blend.names] + [find(name).name for name in extra]
+        )
+    )
     place = {name: j for j, name in enumerate(names)}
     Z = np.zeros((len(blends), len(names)))
     for i, blend in enumerate(blends):

@@ -81,7 +81,9 @@ def component(key: str, share: float, basis: str, at: str, path: str) -> Compone
     MW = columns(names).MW
     moles = [mass / m for (_, mass), m in zip(item.masses, MW, strict=True)]
     total = sum(moles)
-    return Component(part, names, tuple(n / total for n in moles), item.product, _source(item), _assumed(item))
+    return Component(
+        part, names, tuple(n / total for n in moles), item.product, _source(item), _assumed(item)
+    )
 
 
 def _find(key: str):
@@ -116,7 +118,9 @@ def _assumed(item: Stock) -> tuple[str, ...]:
     if item.obtained == "invented":
         lines.append(f"{item.name} is an invented composition")
     if item.unnamed > 0.0:
-        lines.append(f"{item.name}: {100 * item.unnamed:.1f} % of the mass is unidentified; {item.unidentified}")
+        lines.append(
+            f"{item.name}: {100 * item.unnamed:.1f} % of the mass is unidentified; {item.unidentified}"
+        )
     elif item.unidentified:
         lines.append(f"{item.name}: {item.unidentified}")
     if item.stand_ins:

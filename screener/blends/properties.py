@@ -126,8 +126,8 @@ def _sheets(blends, product):
     line = np.where(dry, ratio_20_temperature_d4814(test.P, curve.T10, curve.T50), np.nan)
     lock = vapour_lock_index(test.P, curve.E70)
     drive = driveability_index(curve.T10, curve.T50, curve.T90, ethanol)
-    columns = (true.P, test.P, test.P_total, curve.T10, curve.T50, curve.T90, curve.E70, curve.E100, curve.E150,
-               T20.T, line, lock, drive, ethanol)  # fmt: skip
+    points = (curve.T10, curve.T50, curve.T90, curve.E70, curve.E100, curve.E150)
+    columns = (true.P, test.P, test.P_total, *points, T20.T, line, lock, drive, ethanol)
     return [
         VolatilitySheet(blend.title, blend.density_15, *(float(column[i]) for column in columns))
         for i, blend in enumerate(blends)

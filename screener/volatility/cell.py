@@ -104,7 +104,9 @@ class _Cell:
 
     def liquid(self, i, x):
         """Molar volume of liquid x at the cell temperature of lanes i. [m3/mol]"""
-        return standard_molar_volume(self.fluid, x) * liquid_expansion(self.fluid, self.T[i], x, product=self.product)
+        return standard_molar_volume(self.fluid, x) * liquid_expansion(
+            self.fluid, self.T[i], x, product=self.product
+        )
 
     def full(self, i):
         """Mask of the lanes i in which the warmed charge leaves no vapour space."""
@@ -151,7 +153,7 @@ class _Cell:
 
 
 def _first_k(fluid, state, T, z):
-    """ln k, pressure and molar volume of vapour near the bubble point: three rounds from Wilson's estimate."""
+    """ln k, pressure and vapour molar volume near the bubble point: three rounds from Wilson's estimate."""
     K = fluid.wilson_K(T, np.full(T.shape, 1e5))
     ln_k = np.log(K) + np.log(1e5)
     for _ in range(3):

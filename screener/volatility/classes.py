@@ -73,8 +73,15 @@ def class_limits() -> tuple[ClassLimit, ...]:
 
     return tuple(
         ClassLimit(
-            r["standard"], r["class"], r["quantity"], number(r["low"]), number(r["high"]),
-            r["unit"], r["evidence"], r["source"], r["edition"],
+            r["standard"],
+            r["class"],
+            r["quantity"],
+            number(r["low"]),
+            number(r["high"]),
+            r["unit"],
+            r["evidence"],
+            r["source"],
+            r["edition"],
         )
         for r in read_table("volatility/classes.csv")
     )
@@ -132,20 +139,22 @@ def volatility_classes(standard: str, values: dict[str, float]) -> tuple[ClassMa
 
 def _match(limits: list[ClassLimit], values: dict[str, float]) -> ClassMatch:
     used = [limit for limit in limits if limit.quantity in values]
-    missed = []
-    for limit in used:
-        if not limit.holds(values[limit.quantity]):
-            span = f"{'' if limit.low is None else f'{limit.low:g}'} to {'' if limit.high is None else f'{limit.high:g}'}"
-            missed.append(f"{limit.quantity} {limit.shown(values[limit.quantity]):.1f}, class {span.strip()} {limit.unit}")
+    missed = tuple(_sentence(limit, values) for limit in used if not limit.holds(values[limit.quantity]))
     return ClassMatch(
         standard=limits[0].standard,
         name=limits[0].name,
         met=bool(used) and not missed,
-        missed=tuple(missed),
+        missed=missed,
         missing=tuple(limit.quantity for limit in limits if limit.quantity not in values),
         evidence="memory" if any(limit.evidence == "memory" for limit in used) else "quoted",
         edition=limits[0].edition,
     )
+
+
+def _sentence(limit: ClassLimit, values: dict[str, float]) -> str:
+    low, high = ("" if edge is None else f"{edge:g}" for edge in (limit.low, limit.high))
+    span = f"{low} to {high}".strip()
+    return f"{limit.quantity} {limit.shown(values[limit.quantity]):.1f}, class {span} {limit.unit}"
 
 
 def ethanol_allowance(ethanol) -> np.ndarray:
@@ -192,6 +201,11 @@ def vapour_lock_classes(T_20: float) -> tuple[tuple[str, float, bool, str], ...]
     data/volatility/vapour_lock_classes.csv, a source and an evidence mark per row.
     """
     return tuple(
-        (r["class"], float(r["low"]) + ZERO_CELSIUS, bool(T_20 >= float(r["low"]) + ZERO_CELSIUS), r["evidence"])
+        (
+            r["class"],
+            float(r["low"]) + ZERO_CELSIUS,
+            bool(T_20 >= float(r["low"]) + ZERO_CELSIUS),
+            r["evidence"],
+        )
         for r in read_table("volatility/vapour_lock_classes.csv")
     )

@@ -2,9 +2,9 @@
 
 At fixed pressure the still obeys dn_i = -K_i n_i ds with K at the bubble point of what
 is left. Steps in s are exponential in each species (no negative amounts), take ln K at their
-middle by extrapolation from the two points before, and are sized so that about the same volume leaves in each. Volumes are standard
-liquid volumes at 15 degC. There is no reflux, no hold-up and no loss: a measured D86
-curve starts some degrees higher and runs flatter at the light end.
+middle by extrapolation from the two points before, and are sized so that the same volume
+leaves in each. Volumes are standard liquid volumes at 15 degC. There is no reflux, no
+hold-up and no loss: a measured D86 curve differs by some degrees, most at its ends.
 """
 
 from __future__ import annotations
@@ -158,7 +158,7 @@ class _Still:
         self.before = None if self.before is None else self.before[mask]
 
     def step(self):
-        """One step of volume `drop`, ln K at its middle: extrapolated from two points, at first by a half step."""
+        """One step of volume `drop`, ln K at its middle: by extrapolation, the first by a half step."""
         if self.before is None:
             point = self._bubble(self._leave(np.exp(self.ln_K), 0.5 * self.drop))
             middle = np.where(point.ok[:, None], self._log(point.K), self.ln_K)

@@ -48,8 +48,12 @@ def dvpe_equations() -> dict[str, DvpeEquation]:
     rows = read_table("volatility/dvpe_equations.csv")
     return {
         row["equation"]: DvpeEquation(
-            row["equation"], float(row["slope"]), 1000.0 * float(row["offset_kPa"]),
-            row["method"], row["evidence"], row["source"],
+            row["equation"],
+            float(row["slope"]),
+            1000.0 * float(row["offset_kPa"]),
+            row["method"],
+            row["evidence"],
+            row["source"],
         )
         for row in rows
     }
@@ -141,7 +145,9 @@ def dvpe(fluid, x, *, equation: str = "ASTM D5191", product: str | None = None) 
     rule = dvpe_equation(equation)
     z, T, good = lanes(fluid.c, x, T=T_100F)
     air = ATMOSPHERE - bubble_pressure(fluid, T_CHILLED, z).P
-    cell = vapour_pressure_at_ratio(fluid, T, z, RATIO, air=True, P_air_0=np.maximum(air, 0.0), product=product)
+    cell = vapour_pressure_at_ratio(
+        fluid, T, z, RATIO, air=True, P_air_0=np.maximum(air, 0.0), product=product
+    )
     status = np.where(good & (air < 0.0), Status.OUT_OF_RANGE, cell.status)
     status = np.where(cell.ok & ~np.isfinite(air), Status.NO_SOLUTION, status)
     ok = status == Status.CONVERGED
@@ -149,8 +155,12 @@ def dvpe(fluid, x, *, equation: str = "ASTM D5191", product: str | None = None) 
     outside = ok & ((X < SCOPE[0]) | (X > SCOPE[1]))
     status = np.where(outside, Status.OUT_OF_RANGE, status)
     return TestPressure(
-        status=status, P=np.where(outside, np.nan, rule.dvpe(X)), P_total=X, P_vapour=cell.P,
-        P_air=np.where(ok, cell.P_air, np.nan), method=f"{rule.method}, {rule.slope:g} X - {rule.offset / 1000.0:g} kPa",
+        status=status,
+        P=np.where(outside, np.nan, rule.dvpe(X)),
+        P_total=X,
+        P_vapour=cell.P,
+        P_air=np.where(ok, cell.P_air, np.nan),
+        method=f"{rule.method}, {rule.slope:g} X - {rule.offset / 1000.0:g} kPa",
     )
 
 
@@ -193,11 +203,15 @@ def reid_vapour_pressure(fluid, x, *, product: str | None = None) -> TestPressur
     rho_15 = standard_density(fluid, z)
     space = 1.0 + RATIO - cell.expansion
     brought = cell_air_pressure(rho_15, np.maximum(air, 0.0), T_CHILLED, T, space, cell.expansion)
-    # The chamber's own air, at 37.8 degC from the start, is squeezed by the swollen liquid and dissolves in it.
+    # The chamber's own air, at 37.8 degC from the start, is squeezed by the liquid and dissolves in it.
     chamber = ATMOSPHERE * RATIO / (space + ostwald_air(rho_15, T) * cell.expansion)
     P_air = brought + chamber
     total = np.where(ok, cell.P + P_air, np.nan)
     return TestPressure(
-        status=status, P=total - ATMOSPHERE, P_total=total, P_vapour=cell.P,
-        P_air=np.where(ok, P_air, np.nan), method="ASTM D4953 (dry Reid), gauge",
+        status=status,
+        P=total - ATMOSPHERE,
+        P_total=total,
+        P_vapour=cell.P,
+        P_air=np.where(ok, P_air, np.nan),
+        method="ASTM D4953 (dry Reid), gauge",
     )

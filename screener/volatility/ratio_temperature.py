@@ -53,7 +53,9 @@ def ratio_temperature(
     """
     z, P, ratio, T_fill, good = lanes(fluid.c, x, P=P, ratio=ratio, T_fill=T_fill)
     n = P.size
-    result = empty(RatioTemperature, n, fluid.c, np.where(good, Status.OUT_OF_STEPS, Status.BAD_INPUT), ratio=ratio, P=P)
+    result = empty(
+        RatioTemperature, n, fluid.c, np.where(good, Status.OUT_OF_STEPS, Status.BAD_INPUT), ratio=ratio, P=P
+    )
     P_air_0 = np.zeros(n)
     if air:
         P_air_0 = np.maximum(ATMOSPHERE - bubble_pressure(fluid, T_fill, z).P, 0.0)

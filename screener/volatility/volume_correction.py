@@ -126,7 +126,9 @@ def petroleum_expansion(rho_15, T, product: str | None = None) -> np.ndarray:
     ------
     API MPMS 11.1 (2004), constants from memory, unverified (data/volatility/volume_correction.toml).
     """
-    rho_15, T = np.broadcast_arrays(np.atleast_1d(np.asarray(rho_15, float)), np.atleast_1d(np.asarray(T, float)))
+    rho_15, T = np.broadcast_arrays(
+        np.atleast_1d(np.asarray(rho_15, float)), np.atleast_1d(np.asarray(T, float))
+    )
     rho60 = density_60F(rho_15, product)
     alpha = _alpha60(rho60, product)
     ratio = _to_60F(np.float64(T_15C), alpha) / _to_60F(T, alpha)

@@ -22,7 +22,13 @@ WANTED = {
 @pytest.fixture(scope="module")
 def sheets():
     chosen = stocks()
-    return dict(zip((s.name for s in chosen), volatility_sheets([Blend.of({f"stock:{s.name}": 1.0}) for s in chosen]), strict=True))
+    return dict(
+        zip(
+            (s.name for s in chosen),
+            volatility_sheets([Blend.of({f"stock:{s.name}": 1.0}) for s in chosen]),
+            strict=True,
+        )
+    )
 
 
 def test_the_stocks_asked_for_exist():
@@ -99,13 +105,15 @@ def test_gasolines_lie_in_the_class_they_claim(name, sheets):
      ("condensate", 720.0, 760.0)],
 )  # fmt: skip
 def test_densities_of_the_cuts(name, low, high, sheets):
-    """Kerosene 775 to 840 (Jet A-1), diesel 820 to 845 (EN 590): from memory, unverified; the rest common practice."""
+    """Kerosene 775 to 840 (Jet A-1), diesel 820 to 845 (EN 590) from memory; the rest common practice."""
     assert low < sheets[name].density_15 < high
 
 
 def test_boiling_ranges_of_the_cuts(sheets):
     celsius = {name: (s.T10 - ZERO_CELSIUS, s.T90 - ZERO_CELSIUS) for name, s in sheets.items()}
-    assert celsius["light naphtha"][1] < 95.0 < celsius["heavy naphtha"][0] < celsius["heavy naphtha"][1] < 180.0
+    assert (
+        celsius["light naphtha"][1] < 95.0 < celsius["heavy naphtha"][0] < celsius["heavy naphtha"][1] < 180.0
+    )
     assert 150.0 < celsius["jet kerosene"][0] and celsius["jet kerosene"][1] < 260.0
     assert 200.0 < celsius["diesel"][0] and celsius["diesel"][1] < 345.0
 
@@ -125,6 +133,6 @@ def test_sheet_says_what_has_no_answer(sheets):
 
 
 def test_straight_line_lies_above_the_flash(sheets):
-    """T(V/L=20) by the remembered straight line less the flash: 0 to 5 K for gasolines without ethanol (calculated)."""
+    """T(V/L=20) by the remembered straight line less the flash: 0 to 5 K without ethanol (calculated)."""
     for name in GASOLINES:
         assert 0.0 <= sheets[name].T20_line - sheets[name].T20 <= 5.0

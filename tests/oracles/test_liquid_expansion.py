@@ -34,7 +34,9 @@ def test_water():
     assert own_expansion("water", warm) == pytest.approx(reference("Water", warm), rel=3e-4)
 
 
-@pytest.mark.parametrize(("fluid", "sign"), [("n-Hexane", 1), ("n-Octane", 1), ("n-Decane", 1), ("Toluene", -1)])
+@pytest.mark.parametrize(
+    ("fluid", "sign"), [("n-Hexane", 1), ("n-Octane", 1), ("n-Decane", 1), ("Toluene", -1)]
+)
 def test_petroleum_correction_on_pure_hydrocarbons(fluid, sign):
     """A correlation by density for mixed stocks, tried on pure paraffins and on toluene.
 

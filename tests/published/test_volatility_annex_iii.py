@@ -105,7 +105,9 @@ def base_gasoline(name):
     return Blend.of({f"stock:{name}": 1.0})
 
 
-@pytest.mark.parametrize("name", ["thirteen species", "summer gasoline base", "average gasoline", "summer gasoline 1985"])
+@pytest.mark.parametrize(
+    "name", ["thirteen species", "summer gasoline base", "average gasoline", "summer gasoline 1985"]
+)
 def test_rise_follows_the_annex(name):
     rises = Curve(base_gasoline(name), "auto").rises()
     assert np.abs(rises - ANNEX_III).max() <= ALLOWED, np.round(rises, 2)

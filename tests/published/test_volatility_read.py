@@ -52,17 +52,27 @@ def test_vapour_pressure_series_of_d4814():
      ("C", 50.0, 80.0, "Bulgarian product sheet quoting EN 228")],
 )  # fmt: skip
 def test_vapour_pressure_ranges_of_en_228(name, low, high, source):
-    row = next(c for c in class_limits() if (c.standard, c.name, c.quantity) == ("EN 228 E5", name, "vapour pressure"))
+    row = next(
+        c
+        for c in class_limits()
+        if (c.standard, c.name, c.quantity) == ("EN 228 E5", name, "vapour pressure")
+    )
     assert (row.low, row.high, row.evidence) == (low, high, "quoted")
 
 
 def test_en_228_class_d1_index():
     """VLI at most 1150 in class D1: French order of 26 January 2009, annex II (juriblio.fr)."""
-    row = next(c for c in class_limits() if (c.standard, c.name, c.quantity) == ("EN 228 E5", "D1", "vapour lock index"))
+    row = next(
+        c
+        for c in class_limits()
+        if (c.standard, c.name, c.quantity) == ("EN 228 E5", "D1", "vapour lock index")
+    )
     assert (row.high, row.evidence) == (1150.0, "quoted")
 
 
 def test_vapour_lock_protection_classes():
     """60, 56, 51, 47, 41 degC: automotive gasoline FAQ 4.10.2 (stason.org), quoting ASTM D4814."""
-    lowest = [round(T - ZERO_CELSIUS, 9) for _, T, _, evidence in vapour_lock_classes(330.0) if evidence == "quoted"]
+    lowest = [
+        round(T - ZERO_CELSIUS, 9) for _, T, _, evidence in vapour_lock_classes(330.0) if evidence == "quoted"
+    ]
     assert lowest == [60.0, 56.0, 51.0, 47.0, 41.0]

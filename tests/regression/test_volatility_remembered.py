@@ -58,7 +58,7 @@ def test_unknown_equation():
     ("name", "total"), [("n-pentane", 112.8), ("2,2-dimethylbutane", 74.1), ("2,3-dimethylbutane", 57.1)]
 )
 def test_reference_fluids_of_d5191(name, total):
-    """Accepted totals of the method's verification fluids, remembered; air model and vapour pressure together."""
+    """Remembered totals of the method's verification fluids: air model and vapour pressure together."""
     test = dvpe(Fluid.of([name]), [1.0]).require()
     # 0.7 kPa is about the method's own repeatability band for a verification fluid.
     assert test.P_total[0] / 1e3 == pytest.approx(total, abs=0.7)
@@ -66,17 +66,19 @@ def test_reference_fluids_of_d5191(name, total):
 
 def test_air_solubility_at_0C():
     """The formula gives back its own anchor for the reference oil."""
-    assert ostwald_air(850.0, ZERO_CELSIUS)[0] == pytest.approx(AIR_AT_0C * 7.70 * 0.130, rel=2e-3)  # 0.300 x 3.333 is 0.9999
+    assert ostwald_air(850.0, ZERO_CELSIUS)[0] == pytest.approx(
+        AIR_AT_0C * 7.70 * 0.130, rel=2e-3
+    )  # 0.300 x 3.333 is 0.9999
 
 
 def test_air_solubility_table():
-    """Calculated with the same remembered formula elsewhere; densities 700, 740, 800, 850 kg/m3 at 25 degC."""
+    """Calculated elsewhere with the same remembered formula; 700, 740, 800, 850 kg/m3 at 25 degC."""
     L = ostwald_air(np.array([700.0, 740.0, 800.0, 850.0]), ZERO_CELSIUS + 25.0)
     assert pytest.approx([0.247, 0.211, 0.159, 0.115], abs=6e-4) == L  # three decimals printed
 
 
 def test_straight_line_for_ratio_20():
-    """42 USC 7581(4) base gasoline (8.7 psi, T10 126 degF, T50 219 degF): 141.4 degF by the degF form 114.6 - 4.1 VP ..."""
+    """Base gasoline of 42 USC 7581(4), 8.7 psi, T10 126 and T50 219 degF, by the degF form."""
     T20 = ratio_20_temperature_d4814(8.7 * 6894.757, kelvin(126.0), kelvin(219.0))
     degF = 114.6 - 4.1 * 8.7 + 0.20 * 126.0 + 0.17 * 219.0
     # Rounded coefficients of the two forms: 0.006 + 8.7 x 0.0045 = 0.05 degF.
@@ -106,7 +108,7 @@ def gasoline():
 
 
 def test_gasoline_of_thirteen_species(gasoline):
-    """Against a calculation with original UNIFAC and ideal gas: density 730, TVP 63.2, VP4 61.7, DVPE 60.0, T20 58.0."""
+    """Against a calculation with original UNIFAC and ideal gas: VP4 61.7 kPa, DVPE 60.0, T20 58.0 degC."""
     test = dvpe(gasoline.fluid, gasoline.z).require()
     assert gasoline.density_15 == pytest.approx(730.5, abs=2.0)  # 730 at 15.6 degC
     # Two activity models and two sets of vapour pressures: 2 kPa.

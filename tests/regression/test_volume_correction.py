@@ -35,13 +35,18 @@ def test_constants_are_one_set_in_two_units(product):
         assert 1.8 * float(row[key]) == pytest.approx(per_degc, abs=1e-4 if key != "K2" else 1e-8)
 
 
-@pytest.mark.parametrize(("lighter", "heavier"), [("gasoline", "transition"), ("transition", "jet"), ("jet", "fuel-oil")])
+@pytest.mark.parametrize(
+    ("lighter", "heavier"), [("gasoline", "transition"), ("transition", "jet"), ("jet", "fuel-oil")]
+)
 def test_groups_meet(lighter, heavier):
-    """Where two refined groups meet they must give one coefficient: a slip in a constant would open a step."""
+    """Where two refined groups meet they must give one coefficient: a slip would open a step."""
     rows = {r["product"]: r for r in read_table("volatility/volume_correction.csv")}
     edge = float(rows[lighter]["rho60_high"])
     assert edge == float(rows[heavier]["rho60_low"])
-    alpha = [sum(float(rows[p][k]) / edge**n for k, n in (("K0", 2), ("K1", 1), ("K2", 0))) for p in (lighter, heavier)]
+    alpha = [
+        sum(float(rows[p][k]) / edge**n for k, n in (("K0", 2), ("K1", 1), ("K2", 0)))
+        for p in (lighter, heavier)
+    ]
     # The edges are printed to 4 decimals; a last digit of K0 or K1 is worth up to 1.3e-7 of alpha.
     assert alpha[0] == pytest.approx(alpha[1], abs=1.5e-7)
 
@@ -53,7 +58,8 @@ def older_15C(rho_15, t, K0, K1, K2):
 
 
 @pytest.mark.parametrize(
-    ("product", "rho_15"), [("gasoline", 740.0), ("transition", 778.0), ("jet", 800.0), ("fuel-oil", 845.0), ("crude", 860.0)]
+    ("product", "rho_15"),
+    [("gasoline", 740.0), ("transition", 778.0), ("jet", 800.0), ("fuel-oil", 845.0), ("crude", 860.0)],
 )
 @pytest.mark.parametrize("t", [-20.0, 15.0, 38.0, 60.0])
 def test_agrees_with_the_older_15C_form(product, rho_15, t):
@@ -67,9 +73,14 @@ def test_agrees_with_the_older_15C_form(product, rho_15, t):
 
 
 def test_regression_values():
-    """Values of this code, kept: VCF to 15 degC of a gasoline, a jet fuel, a diesel and a crude at 35 degC."""
+    """Values of this code, kept: factors to 15 degC of gasoline, jet fuel, diesel and crude at 35 degC."""
     rho = np.array([740.0, 800.0, 845.0, 860.0])
-    vcf = np.array([1.0 / petroleum_expansion(r, 308.15, p)[0] for r, p in zip(rho, (None, None, None, "crude"), strict=True)])
+    vcf = np.array(
+        [
+            1.0 / petroleum_expansion(r, 308.15, p)[0]
+            for r, p in zip(rho, (None, None, None, "crude"), strict=True)
+        ]
+    )
     assert vcf == pytest.approx(REGRESSION, abs=5e-6)
 
 

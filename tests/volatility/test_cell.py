@@ -131,7 +131,7 @@ def test_ratio_temperature_of_a_pure_liquid_is_its_boiling_point(name):
 
 
 def test_ratio_temperature_of_a_hand_worked_pair():
-    """Pentane and hexane as an ideal liquid under an ideal gas, solved here by bisection from the same vapour pressures.
+    """Pentane and hexane as an ideal liquid under an ideal gas, by bisection from the same vapour pressures.
 
     What separates the two: vapour non-ideality (about 3 % in the pressure of each) and
     the small excess of the pair. 3 % of one atmosphere is 0.9 K.

@@ -13,7 +13,8 @@ from screener.volatility import class_standards, volatility_classes
 from screener.volatility.classes import class_limits
 
 SUMMER = {
-    "vapour pressure": 58e3, "T10": 60.0 + ZERO_CELSIUS, "T50": 97.0 + ZERO_CELSIUS, "T90": 160.0 + ZERO_CELSIUS,
+    "vapour pressure": 58e3,
+    "T10": 60.0 + ZERO_CELSIUS, "T50": 97.0 + ZERO_CELSIUS, "T90": 160.0 + ZERO_CELSIUS,
     "E70": 0.25, "E100": 0.53, "E150": 0.86, "vapour lock index": 755.0, "driveability index": 541.0,
 }  # fmt: skip
 

@@ -17,7 +17,9 @@ def test_petroleum_liquid_goes_by_its_density():
     fluid = Fluid.of(GASOLINE)
     x = [0.2, 0.15, 0.25, 0.2, 0.2, 0.0]
     T = np.array([260.0, 288.15, 310.0, 330.0])
-    assert liquid_expansion(fluid, T, x) == pytest.approx(petroleum_expansion(standard_density(fluid, x), T), rel=1e-14)
+    assert liquid_expansion(fluid, T, x) == pytest.approx(
+        petroleum_expansion(standard_density(fluid, x), T), rel=1e-14
+    )
 
 
 def test_ethanol_keeps_its_own_expansion():
@@ -27,14 +29,16 @@ def test_ethanol_keeps_its_own_expansion():
     volume = x * fluid.v_15
     rest = np.r_[x[:5], 0.0]
     share = volume[5] / volume.sum()
-    expected = (1 - share) * petroleum_expansion(standard_density(fluid, rest / rest.sum()), 310.0) + share * own_expansion(
-        "ethanol", 310.0
-    )
+    expected = (1 - share) * petroleum_expansion(
+        standard_density(fluid, rest / rest.sum()), 310.0
+    ) + share * own_expansion("ethanol", 310.0)
     assert liquid_expansion(fluid, 310.0, x) == pytest.approx(expected, rel=1e-14)
 
 
 def test_pure_ethanol():
-    assert liquid_expansion(Fluid.of(["ethanol"]), 310.0, [1.0]) == pytest.approx(own_expansion("ethanol", 310.0))
+    assert liquid_expansion(Fluid.of(["ethanol"]), 310.0, [1.0]) == pytest.approx(
+        own_expansion("ethanol", 310.0)
+    )
 
 
 def test_light_liquids_go_species_by_species():
@@ -47,7 +51,9 @@ def test_light_liquids_go_species_by_species():
 
 def test_a_trace_of_gas_in_butane_does_not_spoil_it():
     fluid = Fluid.of(["n-butane", "methane"])
-    assert liquid_expansion(fluid, 310.0, [0.999, 0.001]) == pytest.approx(liquid_expansion(fluid, 310.0, [1.0, 0.0]), rel=1e-3)
+    assert liquid_expansion(fluid, 310.0, [0.999, 0.001]) == pytest.approx(
+        liquid_expansion(fluid, 310.0, [1.0, 0.0]), rel=1e-3
+    )
     assert np.isnan(liquid_expansion(fluid, 310.0, [0.5, 0.5])).all()
 
 
@@ -64,7 +70,7 @@ def test_constants_without_volumes_give_no_number():
 
 
 def test_step_where_the_rule_changes_is_small():
-    """Light naphtha into butane: where one rule takes over from the other they differ by half a percent at 40 degC.
+    """Light naphtha into butane: where one rule takes over they differ by half a percent at 40 degC.
 
     The petroleum correction ends at 610.6 kg/m3, and at its end it expands less than the
     butanes and pentanes it was not made for.

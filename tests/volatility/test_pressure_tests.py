@@ -36,7 +36,9 @@ def test_order_of_the_pressures(fluid, Z):
     true = true_vapour_pressure(fluid, T_100F, Z).P
     assert (true > test.P_vapour).all()
     assert (test.P < test.P_total).all()
-    assert ((test.P_air > 2.5e3) & (test.P_air < 6.5e3)).all()  # 3 to 6 kPa calculated for gasolines elsewhere
+    assert (
+        (test.P_air > 2.5e3) & (test.P_air < 6.5e3)
+    ).all()  # 3 to 6 kPa calculated for gasolines elsewhere
     assert test.P_total == pytest.approx(test.P_vapour + test.P_air, rel=1e-12)
 
 
@@ -60,7 +62,7 @@ def test_equation_is_named_and_applied(fluid, Z):
 
 
 def test_reid_pressure_is_near_the_dvpe(fluid, Z):
-    """The dry Reid gauge pressure holds the chamber's squeezed air as well: some kPa above the DVPE, never below."""
+    """The dry Reid gauge pressure holds the chamber's squeezed air too: some kPa above the DVPE."""
     reid, test = reid_vapour_pressure(fluid, Z).require(), dvpe(fluid, Z)
     assert ((reid.P - test.P > 0.0) & (reid.P - test.P < 6e3)).all()
     assert reid.P == pytest.approx(reid.P_total - ATMOSPHERE, rel=1e-12)

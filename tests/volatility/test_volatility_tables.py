@@ -7,7 +7,8 @@ import pytest
 from screener.ground.files import data_folder, read_table, read_toml
 
 VOLATILITY = (
-    "volume_correction", "own_volume_species", "dvpe_equations", "classes", "vapour_lock_classes", "ethanol_allowance",
+    "volume_correction", "own_volume_species", "dvpe_equations",
+    "classes", "vapour_lock_classes", "ethanol_allowance",
 )  # fmt: skip
 TABLES = (
     *(f"volatility/{name}" for name in VOLATILITY),
