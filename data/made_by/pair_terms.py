@@ -69,14 +69,9 @@ ANALOGY = {
 }
 KIJ_FAMILIES = {("methane", "aromatic"), ("methane", "naphthene")}
 KIJ_SOLVENTS = {"benzene", "toluene", "m-xylene", "cyclohexane"}  # the others of these families have none of use
-SOURCES = {
-    "pr-kij": "Peng-Robinson with the k_ij of data/pairs/kij.csv",
-    "psrk": "PSRK (Holderbaum and Gmehling 1991), group parameters in thermo 0.6.1",
-    "iapws-g7-04": "IAPWS G7-04 (2004)",
-    "analogy": "departure of the family from isoparaffins as for another gas",
+EVIDENCE = {  # key in data/sources.toml -> evidence mark
+    "psrk": "library thermo 0.6.1", "pr-kij": "library thermo 0.6.1", "iapws-g7-04": "published",
 }
-EVIDENCE = {"pr-kij": "library thermo 0.6.1", "psrk": "library thermo 0.6.1", "iapws-g7-04": "published",
-            "analogy": "common practice, no source"}
 
 # ln(kH/p1) = A/Tr + B tau^0.355/Tr + C Tr^-0.41 exp(tau), and the lowest temperature [K]; IAPWS G7-04,
 # as listed in github.com/MilanSkocic/iapws src/iapws.c commit 05ed1a6, with the guideline's check values
@@ -258,14 +253,14 @@ def by_analogy(terms):
     rows = []
     for (gas, family), like in ANALOGY.items():
         value = A[gas, "isoparaffin"] + A[like, family] - A[like, "isoparaffin"]
-        rows.append((gas, family, *(f"{a:.6g}" for a in value), "255", "373.15", EVIDENCE["analogy"],
-                     f"{SOURCES['analogy']} ({like})"))
+        rows.append((gas, family, *(f"{a:.6g}" for a in value), "255", "373.15", "common practice, no source", "",
+                     f"isoparaffins, and the departure of the family from them as for {like}"))
     return rows
 
 
 def main() -> None:
     """Write the three tables."""
-    header = ["gas", "solvent", "A0", "A1", "A2", "T_low", "T_high", "evidence", "source"]
+    header = ["gas", "solvent", "A0", "A1", "A2", "T_low", "T_high", "evidence", "source", "note"]
     remark = "G^E/RT += x_i x_j (A0 + A1/T + A2 ln T), T in K; solvent: a species, or else a family of species"
     rows = targets()
     write("henry_constants.csv", ["gas", "solvent", "T", "H", "source"],
@@ -280,7 +275,7 @@ def main() -> None:
         A, miss = fit(some, wanted[lanes])
         T, source = [row[3] for row in some], some[0][5]
         terms.append((gas, partner, *(f"{a:.6g}" for a in A), f"{min(T):g}", f"{max(T):g}", EVIDENCE[source],
-                      SOURCES[source]))
+                      source, ""))
         misses.append((gas, partner, sorted({row[1] for row in some}), source, np.abs(np.expm1(miss))))
     write("pair_terms.csv", header, terms + by_analogy(terms), remark)
     pairs._terms.cache_clear()
