@@ -61,7 +61,9 @@ class Fluid:
         names : sequence of str
             Species names, synonyms or CAS numbers.
         model : str
-            "auto" (= "PR-GE"), "PR-GE", "PR", "SRK" or "gamma-phi".
+            "auto" (= "PR-GE"), "PR-GE", "PR", "SRK" or "gamma-phi". "PR" takes
+            the same alpha with k_ij, but Soave's for gases without groups;
+            "SRK" takes alpha from omega and no k_ij.
 
         Returns
         -------
