@@ -239,7 +239,7 @@ class KeyRow(Toned):
             spans += [Span(" " * (start - at)), Span(key_name(last[0]), "bold"), Span(f" {last[1]} ", "dim")]
             self._places.append((start, width, last[0]))
         return Strip([Segment(s.text, self.tone_style(s.tone)) for s in spans]).adjust_cell_length(
-            width, self.rich_style
+            width, self.tone_style("")
         )
 
     def _text(self, key: str, words: str) -> str:

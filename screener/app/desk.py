@@ -34,6 +34,11 @@ def fault_sentence(fault: InputError) -> str:
     return "; ".join(part for part in (fault.problem, fault.hint if given else "") if part)
 
 
+def paths_named(sentence: str) -> list[str]:
+    """Paths of the case that a sentence names."""
+    return [path for path in _PATH.findall(sentence) if schema.key_at(path)]
+
+
 class Desk:
     """A session and the engine that works it out."""
 
@@ -112,12 +117,8 @@ class Desk:
         found: set[str] = set()
         for finding in screening.findings if screening else ():
             if finding.verdict == "unknown":
-                found |= {path for path in _PATH.findall(finding.reason) if schema.key_at(path)}
+                found |= set(paths_named(finding.reason))
         return found
-
-    def paths_named(self, sentence: str) -> list[str]:
-        """Paths of the case that a sentence names."""
-        return [path for path in _PATH.findall(sentence) if schema.key_at(path)]
 
     def sections(self, step: str) -> list[fields.Section]:
         """Sections of an input step; below the inputs of a liquid what the liquid amounts to."""
@@ -155,8 +156,10 @@ class Desk:
         needed = [path for path in self.known.missing if self.step_of(path) == step]
         if needed:
             return "?", say("state", "needs" if len(needed) > 1 else "needs_one", count=len(needed)), "unknown"
-        if self.session.result is None:
+        if self.session.screening is None:
             return "", say("state", "not_read"), ""
+        if not self.text.has(step):
+            return "-", say("state", "blank"), "dim"
         return "+", say("state", "done"), ""
 
     def _findings_state(self) -> tuple[str, str, str]:

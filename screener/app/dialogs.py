@@ -24,7 +24,7 @@ class Box(ModalScreen):
     """A framed box in the middle of the screen."""
 
     DEFAULT_CSS = """
-    Box { align: center middle; background: $ground 60%; }
+    Box { align: center middle; background: $ground; }
     Box > Vertical { width: 76; max-width: 96%; height: auto; max-height: 90%; background: $ground; border: round $foreground; padding: 0 1; }
     Box.-ascii > Vertical { border: ascii $foreground; }
     Box Lines { height: auto; max-height: 70vh; }

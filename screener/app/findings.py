@@ -12,6 +12,7 @@ from textual.strip import Strip
 
 from screener.app import judged as view
 from screener.app.curve import draw
+from screener.app.desk import paths_named
 from screener.app.glyphs import Glyphs
 from screener.app.lines import Block, Lines, Toned
 from screener.app.pictures import gap_bars
@@ -54,17 +55,24 @@ class Bars(Lines):
     BINDINGS: ClassVar = [
         Binding("enter", "choose", "Why", id="findings.why"),
         Binding("enter", "correct", "Go to it", id="findings.go_to"),
+        Binding("g", "missing", "Go to input", id="findings.missing"),
         Binding("pageup", "card(-1)", "Card up", show=False, id="findings.card_up"),
         Binding("pagedown", "card(1)", "Card down", show=False, id="findings.card_down"),
     ]
 
+    missing = ""  # an input that the check under the cursor asks for
     faulty = False  # whether the rows are faults instead of checks
 
     def check_action(self, action: str, parameters: tuple) -> bool | None:
         """Enter explains a check or goes to the input a fault names."""
         if action in ("choose", "correct"):
             return bool(self.key) and (action == "correct") == self.faulty
+        if action == "missing":
+            return bool(self.missing) and not self.faulty
         return not (action == "card" and self.faulty)
+
+    def action_missing(self) -> None:
+        self.post_message(FindingsPane.GoTo(self.missing))
 
     def action_correct(self) -> None:
         self.action_choose()
@@ -178,8 +186,15 @@ class FindingsPane(Container):
         card = self.query_one("#why", Lines)
         card.action_end(-1)
         card.show(self._card)
-        if item := self.items.get(bars.key):
-            self.post_message(self.Pointed(view.hint(item)))
+        item = self.items.get(bars.key)
+        named = paths_named(item.finding.reason) if item and item.finding.verdict == "unknown" else []
+        bars.missing = named[0] if named else ""
+        bars.refresh_bindings()
+        if item:
+            self.post_message(self.Pointed(self._hint_of(item)))
+
+    def _hint_of(self, item: view.Judged) -> str:
+        return view.hint(item, self.screen.size.width - 2)
 
     @property
     def hint(self) -> str:
@@ -188,7 +203,7 @@ class FindingsPane(Container):
         if self.faults:
             return say("findings", "fault_hint")
         item = self.items.get(bars.key)
-        return view.hint(item) if item and self.screening else say("findings", "none_yet")
+        return self._hint_of(item) if item and self.screening else say("findings", "none_yet")
 
     # what the person does
 

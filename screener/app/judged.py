@@ -12,7 +12,7 @@ from dataclasses import dataclass
 from screener.app.curve import Line, Plot
 from screener.app.glyphs import Glyphs
 from screener.app.pictures import Gap
-from screener.app.rows import Row, Span, labelled, paragraph
+from screener.app.rows import Row, Span, columns_of, labelled, one_line, paragraph
 from screener.app.words import say
 
 _PATTERN_OF = ("solid", "dashed", "dotted")
@@ -59,13 +59,14 @@ def judged(screening, system: str = "si") -> tuple[Judged, ...]:
     return tuple(rows)
 
 
-def hint(item: Judged, system: str = "si") -> str:
-    """One sentence for the hint row."""
+def hint(item: Judged, width: int, system: str = "si") -> str:
+    """One line for the hint row; a reason that does not fit whole is left to the card."""
     from screener.memo.finding_text import finding_numbers
 
     finding = item.finding
     if finding.verdict in ("unknown", "skipped"):
-        return f"{finding.title}: {finding.reason}"
+        full = f"{finding.title}: {finding.reason}"
+        return full if columns_of(full) <= width else one_line([finding.title, say("findings", "why")], width)
     shown = finding_numbers(finding, system)
     return f"{finding.title}: {shown.value.text}, limit {shown.limit.text} ({item.register})"
 

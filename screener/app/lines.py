@@ -57,17 +57,28 @@ class Toned(Widget):
     }
     """
 
+    _tones: dict[str, Style] | None = None  # styles by tone, until the style of the widget changes
+
+    def notify_style_update(self) -> None:
+        """Forget the styles worked out so far: the theme or a class has changed."""
+        super().notify_style_update()
+        self._tones = None
+
     def tone_style(self, tone: str) -> Style:
         """Style of a set of tone words on this widget's ground."""
-        style = self.rich_style
-        for word in tone.split():
-            style += self.get_component_rich_style(f"tone-{word}", partial=True)
-        return style
+        if self._tones is None:
+            self._tones = {"": self.rich_style}
+        if tone not in self._tones:
+            style = self._tones[""]
+            for word in tone.split():
+                style += self.get_component_rich_style(f"tone-{word}", partial=True)
+            self._tones[tone] = style
+        return self._tones[tone]
 
     def paint(self, row: Row, width: int) -> Strip:
         """A row as a strip exactly `width` columns wide."""
         segments = [Segment(span.text, self.tone_style(span.tone)) for span in row]
-        return Strip(segments, row_width(row)).adjust_cell_length(width, self.rich_style)
+        return Strip(segments, row_width(row)).adjust_cell_length(width, self.tone_style(""))
 
 
 class Lines(Toned, can_focus=True):
@@ -221,8 +232,14 @@ class Lines(Toned, can_focus=True):
                 first -= 1  # the heading above the first block of a group comes into sight with it
             self._top = min(self._top, first)
             if rows[-1] >= self._top + self._room:
-                self._top = rows[-1] - self._room + 1
+                self._top = self._block_start(rows[-1] - self._room + 1)
         self._top = min(max(0, self._top), max(0, len(self._flat) - self._room))
+
+    def _block_start(self, at: int) -> int:
+        """The first row from here on that begins a block, so that no record shows half."""
+        while 0 < at < len(self._flat) and self._flat[at - 1][0] == self._flat[at][0]:
+            at += 1
+        return at
 
     def on_mouse_scroll_down(self, event: events.MouseScrollDown) -> None:
         event.stop()
@@ -253,7 +270,7 @@ class Lines(Toned, can_focus=True):
             return self.paint((Span(pad("", lead) + self._counted(), "dim"),), width)
         at = y - len(self._head) + self._top
         if at >= len(self._flat):
-            return Strip.blank(width, self.rich_style)
+            return Strip.blank(width, self.tone_style(""))
         i, row = self._flat[at]
         if lead and self._key and self._blocks[i].key == self._key:
             first = at == 0 or self._flat[at - 1][0] != i

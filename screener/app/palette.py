@@ -4,7 +4,9 @@ from __future__ import annotations
 
 from typing import NamedTuple
 
-from textual.command import DiscoveryHit, Hit, Hits, Provider
+from textual.command import CommandPalette, DiscoveryHit, Hit, Hits, Provider
+
+from screener.app.words import say
 
 
 class Command(NamedTuple):
@@ -42,3 +44,21 @@ class Commands(Provider):
             await screen.run_action(command.action)
 
         return run
+
+
+class Palette(CommandPalette):
+    """The list of sentences, drawn with nothing a plain terminal lacks."""
+
+    DEFAULT_CSS = """
+    Palette { background: $ground; }
+    Palette SearchIcon { display: none; }
+    Palette > Vertical { margin-top: 1; background: $ground; }
+    Palette #--input { border: none; padding: 0 1; background: $field; }
+    Palette #--input.--list-visible { border: none; }
+    Palette #--results { border: none; background: $ground; }
+    Palette CommandList { border: none; }
+    Palette LoadingIndicator { border: none; display: none; }
+    """
+
+    def __init__(self):
+        super().__init__(placeholder=say("palette", "placeholder"), id="--command-palette")

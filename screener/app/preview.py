@@ -25,7 +25,9 @@ _BLANK: Row = (Span(""),)
 def document_rows(document, width: int, marks: Glyphs) -> list[Row]:
     """The whole document: title, control block, numbered sections."""
     rows = paragraph(marks.plain(document.title), width, "head") + [_BLANK]
-    pairs = [(marks.plain(str(name)), marks.plain(str(value))) for name, value in document.control]
+    # Section 0 repeats the control block; it is printed once.
+    shown = () if document.sections and document.sections[0].number == "0" else document.control
+    pairs = [(marks.plain(str(name)), marks.plain(str(value))) for name, value in shown]
     column = min(max([columns_of(name) for name, _ in pairs], default=0) + 2, width // 2)
     for name, value in pairs:
         rows += _pair(name, value, width, column)
@@ -87,8 +89,8 @@ def _table(block, width: int, marks: Glyphs) -> list[Row]:
     if least + 2 * (len(columns) - 1) > width or (len(columns) > 4 and narrowest > width):
         return rows + _records(columns, records, width) + _note(block, width, marks)
     widths = column_widths(columns, records, width, 2)
-    heads = [Span(column.heading, "dim") for column in columns]
-    rows += record_rows(heads, widths, columns)
+    if any(column.heading for column in columns):
+        rows += record_rows([Span(column.heading, "dim") for column in columns], widths, columns)
     for record in records:
         rows += record_rows(record, widths, columns)
     return rows + _note(block, width, marks)

@@ -14,7 +14,7 @@ from screener.app.desk import Desk
 from screener.app.dialogs import Question
 from screener.app.engine import Engine
 from screener.app.glyphs import Glyphs
-from screener.app.palette import Commands
+from screener.app.palette import Command, Commands, Palette
 from screener.app.session import Session, left_behind
 from screener.app.start import StartScreen
 from screener.app.theme import DARK, LIGHT, PLAIN, THEMES
@@ -123,7 +123,17 @@ class ScreenerApp(App):
         elif self.screen is walk:
             walk.leave(lambda: self.exit(0))
 
+    def action_command_palette(self) -> None:
+        """Show the sentences of what can be done now."""
+        if not Palette.is_open(self):
+            self.push_screen(Palette())
+
+    @property
+    def commands_everywhere(self) -> list[Command]:
+        """Sentences that hold on every screen."""
+        ground = [] if self.theme == PLAIN.name else [Command(say("palette", "theme"), "app.ground")]
+        return [*ground, Command(say("palette", "quit"), "app.quit")]
+
     def action_ground(self) -> None:
         """Change between dark and light ground."""
-        if self.theme != PLAIN.name:
-            self.theme = LIGHT.name if self.theme == DARK.name else DARK.name
+        self.theme = LIGHT.name if self.theme == DARK.name else DARK.name

@@ -112,6 +112,5 @@ class StartScreen(Screen):
         return [
             Command(say("palette", "new"), "screen.new"),
             Command(say("palette", "open"), "screen.open"),
-            Command(say("palette", "theme"), "app.ground"),
-            Command(say("palette", "quit"), "app.quit"),
+            *self.app.commands_everywhere,
         ]

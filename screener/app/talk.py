@@ -58,8 +58,8 @@ class Talk:
         ]
         if self.current == "memo" and self.query_one(MemoPane).document is not None:
             made.append(Command(say("palette", "write"), "screen.write_memo"))
-        made += [Command(say("palette", "other"), "app.start"), Command(say("palette", "theme"), "app.ground")]
-        return [*made, Command(say("palette", "quit"), "app.quit")]
+        made.append(Command(say("palette", "other"), "app.start"))
+        return made + self.app.commands_everywhere
 
     def action_write_memo(self) -> None:
         """Write the memo from the palette."""

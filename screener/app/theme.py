@@ -11,7 +11,17 @@ from textual.theme import Theme
 
 _DARK = {"near": "#EAB426", "beyond": "#ED4A71", "unknown": "#03A2E5", "ground": "#101214", "band": "#22303A", "field": "#2A2F33"}
 _LIGHT = {"near": "#462B01", "beyond": "#893543", "unknown": "#085178", "ground": "#F6F4EF", "band": "#DDE6EA", "field": "#E4E0D6"}
-_PLAIN = dict.fromkeys(("near", "beyond", "unknown", "ground", "band", "field"), "ansi_default")
+# Without colour only reverse, bold and dim are left to tell things apart.
+_PLAIN = {
+    **dict.fromkeys(("near", "beyond", "unknown", "ground", "band", "field"), "ansi_default"),
+    **dict.fromkeys(("ansi-background", "ansi-foreground", "border-blurred"), "ansi_default"),
+    **dict.fromkeys(("input-cursor-background", "input-cursor-foreground"), "ansi_default"),
+    **dict.fromkeys(("input-selection-background", "input-selection-foreground"), "ansi_default"),
+    **dict.fromkeys(("block-cursor-background", "block-cursor-foreground"), "ansi_default"),
+    **dict.fromkeys(("screen-selection-background", "screen-selection-foreground"), "ansi_default"),
+    "input-cursor-text-style": "reverse",
+    "block-cursor-text-style": "reverse",
+}
 
 
 def _theme(name: str, colours: dict[str, str], foreground: str, *, dark: bool, ansi: bool = False) -> Theme:

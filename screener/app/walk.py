@@ -25,7 +25,7 @@ from screener.app.talk import Talk
 from screener.app.words import say
 from screener.app.workers import Workers
 
-WAIT_BEFORE_WORK = 0.15  # seconds of calm after an edit before it is worked out
+WAIT_BEFORE_WORK = 0.03  # seconds of calm after an edit before it is worked out
 WAIT_BEFORE_AUTOSAVE = 1.0
 
 
@@ -72,7 +72,6 @@ class WalkScreen(Talk, Saving, Workers, Screen):
 
     def on_mount(self) -> None:
         self.query_one(Hint).marks = self.marks
-        self.refresh_case()
         self.action_go(STEPS.index(self.current) + 1)
         self.call_after_refresh(self.painted)
 
@@ -83,10 +82,9 @@ class WalkScreen(Talk, Saving, Workers, Screen):
     # showing
 
     def refresh_case(self) -> None:
-        """Show the case as it now is in every part of the screen."""
-        for pane in self.query(InputPane):
-            pane.update_case()
-        self.query_one(MemoPane).update_case()
+        """Show the case as it now is in the step in front; the others follow when they come to the front."""
+        if self.current != "findings":
+            self.query_one(f"#{self.current}").update_case()
         self.refresh_frame()
 
     def refresh_frame(self) -> None:
@@ -134,6 +132,8 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         self.current = STEPS[number - 1]
         self.query_one(ContentSwitcher).current = self.current
         pane = self.query_one(f"#{self.current}")
+        if self.current != "findings":
+            pane.update_case()
         main = pane.query_one("#bars" if self.current == "findings" else ".sheet", Lines)
         main.focus()
         self.query_one(Hint).tell(pane.hint)
