@@ -63,7 +63,7 @@ def passports(rows, bad_flash) -> dict[str, dict]:
         "species/constants": {
             "title": "Molar mass, critical point, acentric factor, normal boiling point",
             "source_keys": ["thermo", "helmholtz", "crc-handbook"], "how": "library thermo 0.6.1, chemicals 1.5.2",
-            "where": "Tc and Pc: reference equation if there is one, else the median of the published values in chemicals (IUPAC reviews, CRC, PSRK appendix, Passut and Danner, WebBook, DIPPR, Yaws); single tables hold slips: methylcyclopentane's Tc is 21 K off in one. omega: from the chosen vapour-pressure curve at 0.7 Tc",
+            "where": "Tc and Pc: reference equation if there is one, else the median of the published values in chemicals, those more than 10 % off a first median left out (IUPAC reviews, CRC, PSRK appendix, Passut and Danner, WebBook, DIPPR, Yaws); single tables hold slips: methylcyclopentane's Tc is 21 K off in one. omega: from the chosen vapour-pressure curve at 0.7 Tc",
             "note": "published Tc more than 1 % apart: " + _names(rows, "constants", lambda c: c["Tc_spread"] > 0.01),
             "columns": HEAD | {
                 "formula": ("molecular formula", "-"), "smiles": ("structure as SMILES", "-"),
@@ -71,7 +71,7 @@ def passports(rows, bad_flash) -> dict[str, dict]:
                 "Pc": ("critical pressure", "Pa", 8e5, 2.3e7), "omega": ("acentric factor", "-", -0.25, 1.3),
                 "Tb": ("normal boiling point", "K", 20.0, 700.0),
                 "Tc_source": ("how Tc is known", "-"), "Pc_source": ("how Pc is known", "-"),
-                "Tc_spread": ("largest less smallest published Tc, over the median; 0 for a reference equation", "-", 0.0, 0.25),
+                "Tc_spread": ("largest less smallest published Tc kept, over the median; 0 for a reference equation", "-", 0.0, 0.2),
             },
         },
         "species/alpha": {
@@ -98,7 +98,7 @@ def passports(rows, bad_flash) -> dict[str, dict]:
                 "method": METHOD, "source": SOURCE,
                 "source_low": ("lowest temperature at which the source is valid", "K", 10.0, 500.0),
                 "source_high": ("highest temperature at which the source is valid", "K", 20.0, 800.0),
-                "fit_error": ("largest relative miss of the fit against the source and its continuation", "-", 0.0, 0.02),
+                "fit_error": ("largest relative miss of the fit against the source and its continuation", "-", 0.0, 0.03),
                 "spread": ("largest relative disagreement of other curves within 250-350 K; empty with a single curve", "-", 0.0, 1.0),
                 "extension": ("half the distance of the two continuations within 250-350 K; 0 where none was needed", "-", 0.0, 2.0),
                 "note": NOTE,
@@ -113,7 +113,7 @@ def passports(rows, bad_flash) -> dict[str, dict]:
                 "c0": ("shift at 298.15 K", "m3/mol", -1.5e-4, 1.5e-4), "c1": ("its slope", "m3/(mol K)", -5e-7, 5e-7),
                 "mean_error": ("mean relative density miss over the fit", "-", 0.0, 0.03),
                 "worst_error": ("worst relative density miss over the fit", "-", 0.0, 0.06),
-                "T_low": ("lowest temperature of the fit", "K", 10.0, 260.0),
+                "T_low": ("lowest temperature of the fit", "K", 10.0, 320.0),
                 "T_high": ("highest temperature of the fit", "K", 25.0, 351.0),
             },
         },
@@ -121,8 +121,8 @@ def passports(rows, bad_flash) -> dict[str, dict]:
             "title": "Saturated liquid density", "source_keys": sorted({r["liquid_density"]["source"] for r in rows}),
             "how": "fitted here",
             "where": "rho = d0 + d1 t + d2 t^2 + d3 t^3, t = T/300 K, over T_low to T_high. Which source: screener/species/build.py, choose_density",
-            "columns": HEAD | _coefficients("d", 4, "of the density", "kg/m3", 1e5) | {
-                "T_low": ("lowest temperature of the fit", "K", 10.0, 260.0),
+            "columns": HEAD | _coefficients("d", 4, "of the density", "kg/m3", 2e5) | {
+                "T_low": ("lowest temperature of the fit", "K", 10.0, 320.0),
                 "T_high": ("highest temperature of the fit", "K", 25.0, 351.0),
                 "rho_15": ("density at 15 degC; for a gas an effective one (note)", "kg/m3", 60.0, 1200.0),
                 "method": METHOD, "source": SOURCE, "note": NOTE,
@@ -132,7 +132,7 @@ def passports(rows, bad_flash) -> dict[str, dict]:
             "title": "Ideal-gas heat capacity", "source_keys": sorted({r["cp_ideal"]["source"] for r in rows}),
             "how": "fitted here", "where": "a0 + a1 T + a2 T^2 + a3 T^3 + a4 T^4 over 200-500 K, quadratic where the source starts above 260 K; JOBACK rows are a group estimate",
             "columns": HEAD | {
-                f"a{i}": (f"coefficient of T^{i}", f"J/(mol K^{i + 1})", -(10.0 ** (3 - 3 * i)), 10.0 ** (3 - 3 * i)) for i in range(5)
+                f"a{i}": (f"coefficient of T^{i}", f"J/(mol K^{i + 1})", -bound, bound) for i, bound in enumerate((1000.0, 15.0, 0.1, 2e-4, 1e-7))
             } | {"method": METHOD, "source": SOURCE, "fit_error": ("largest relative miss of the fit", "-", 0.0, 0.05)},
         },
         "species/groups": {
@@ -199,6 +199,8 @@ def _quoted(text: str) -> str:
 
 def _toml(passport: dict) -> str:
     lines = [f"title = {_quoted(passport['title'])}"]
+    words = "; ".join(passport["source_keys"]) or "this project"
+    lines.append(f"source = {_quoted(words)}")
     lines.append("source_keys = [" + ", ".join(map(_quoted, passport["source_keys"])) + "]")
     lines += [f"{key} = {_quoted(passport[key])}" for key in ("where", "how", "note") if key in passport]
     lines.append(f"made_by = {_quoted(passport.get('made_by', MADE))}")

@@ -95,25 +95,29 @@ def critical(cas):
     """Tc [K], Pc [Pa], their source words, and the spread of published Tc [-].
 
     The reference equation's value if there is one, else the median of the published
-    values: single tables hold slips (methylcyclopentane's Tc is 21 K off in one).
+    values. Values more than 10 % off a first median are slips and left out (one table has
+    1-methylnaphthalene 159 K too low); the rest still holds some (methylcyclopentane's Tc
+    is 21 K off in one), which is why no single table is trusted.
     """
     import chemicals
 
-    values, words = [], []
-    spread = 0.0
+    values, words, spread = [], [], 0.0
     for get, methods in ((chemicals.Tc, chemicals.Tc_methods), (chemicals.Pc, chemicals.Pc_methods)):
         known = methods(cas)
         if "HEOS" in known:
             values.append(float(get(cas, method="HEOS")))
             words.append("helmholtz")
             continue
-        listed = [float(get(cas, method=m)) for m in CRITICAL_SOURCES if m in known]
-        if not listed:
+        listed = np.array([float(get(cas, method=m)) for m in CRITICAL_SOURCES if m in known])
+        if not len(listed):
             raise LookupError(f"{cas}: no published critical point")
-        values.append(float(np.median(listed)))
-        words.append(f"median of {len(listed)} published")
+        kept = listed[np.abs(listed / np.median(listed) - 1.0) <= 0.1]
+        kept = kept if len(kept) else listed
+        slips = f", {len(listed) - len(kept)} left out" if len(kept) < len(listed) else ""
+        values.append(float(np.median(kept)))
+        words.append(f"median of {len(kept)} published{slips}")
         if get is chemicals.Tc:
-            spread = float((max(listed) - min(listed)) / values[-1])
+            spread = float((kept.max() - kept.min()) / values[-1])
     return values[0], values[1], words, spread
 
 

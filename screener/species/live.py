@@ -7,6 +7,7 @@ import numpy as np
 from screener.ground.errors import InputError, UnknownName
 from screener.species import build, forms, library
 from screener.species.catalogue import names
+from screener.species.groups import subgroup_table
 from screener.species.record import Curve, Species
 from screener.species.vapour_pressure import NoData, choose_vapour_pressure
 
@@ -61,7 +62,7 @@ def _build(text, cas) -> Species:
         alpha=alpha,
         translation=shift,
         cp_ideal=cp,
-        groups=library.group_counts(inchi_key),
+        groups=_groups(inchi_key),
         rho_15=rho_15,
         rho_note="; ".join(filter(None, (note, rho_note))),
         curve=Curve(
@@ -73,3 +74,9 @@ def _build(text, cas) -> Species:
         psat_note=curve.note,
         live=True,
     )  # fmt: skip
+
+
+def _groups(inchi_key) -> dict[int, int]:
+    """Subgroups, or none when the tables of data/groups lack one of them: then the species is like a gas."""
+    counts = library.group_counts(inchi_key)
+    return counts if set(counts) <= set(subgroup_table()) else {}
