@@ -13,7 +13,7 @@ from dataclasses import dataclass, field
 from itertools import pairwise
 
 from screener.app.glyphs import Glyphs
-from screener.app.rows import Row, Span, columns_of, pad
+from screener.app.rows import Row, Span, columns_of, pad, paragraph
 
 _BRAILLE = ((0x01, 0x08), (0x02, 0x10), (0x04, 0x20), (0x40, 0x80))  # dot bits by row and column of a cell
 _HALF = {1: "▀", 2: "▄", 3: "█"}
@@ -116,17 +116,18 @@ def _between(points, x: float) -> float | None:
 
 def draw(plot: Plot, width: int, height: int, marks: Glyphs) -> list[Row]:
     """The picture as `height` rows of `width` columns: title, plot, axis, numbers."""
-    y_ticks = ticks(*plot.y_range, most=max(1, (height - 3) // 3))
+    rows = paragraph(marks.plain(plot.title), width, "dim")
+    tall = height - len(rows) - 2
+    y_ticks = ticks(*plot.y_range, most=max(1, tall // 3))
     numbers = [f"{value:g}" for value in y_ticks]
     left = max(map(len, numbers)) + 1
-    inner, tall = width - left - 1, height - 3
+    inner = width - left - 1
     if inner < 20 or tall < 3:
         return [(Span(marks.plain("too little room for the curve"), "dim"),)]
     cells = [[[" ", ""] for _ in range(inner)] for _ in range(tall)]
     ends = _paint(cells, plot, inner, tall, marks)
     for (column, row), label in ends:
         _label(cells, marks.plain(label), column, row)
-    rows = [(Span(marks.plain(plot.title), "dim"),)]
     places = {_row_of(value, plot, tall): number for value, number in zip(y_ticks, numbers)}
     for row in range(tall):
         number = places.get(row)
