@@ -14,7 +14,7 @@ from screener.cli.result import as_text, without_nan
 from screener.cli.wording import columns, say
 from screener.ground.constants import ATMOSPHERE, T_100F
 from screener.ground.errors import CaseErrors, InputError
-from screener.ground.status import words
+from screener.ground.status import Status, words
 from screener.memo import numbers
 
 SCHEMA = "screener.quick/1"
@@ -112,38 +112,33 @@ def _part(text: str, path: str, *, alone: bool) -> tuple[str, float]:
 def answer(blend, T: float, system: str = "si") -> tuple[list[Answer], list[tuple[str, float, float]]]:
     """Everything printed: the answers, and the first vapour as (species, y, x), largest first."""
     from screener.blends import volatility_sheet
-    from screener.equilibrium import flash_tp
-    from screener.volatility import true_vapour_pressure
+    from screener.equilibrium import bubble_pressure, flash_tp
 
-    at = numbers.quantity(T, "K", system).text
-    bubble = true_vapour_pressure(blend.fluid, T, blend.z)
-    flash = flash_tp(blend.fluid, T, ATMOSPHERE, blend.z)
+    at, test = (numbers.quantity(value, "K", system).text for value in (T, T_100F))
+    bubble = bubble_pressure(blend.fluid, T, blend.z, check="full")
+    flash = flash_tp(blend.fluid, T, ATMOSPHERE, blend.z, check="full")
     sheet = volatility_sheet(blend)
-    rows = [
-        ("bubble_pressure", say("quick", "bubble", temperature=at), _lane(bubble, bubble.P), "Pa"),
-        (
-            "DVPE",
-            say("quick", "dvpe", temperature=numbers.quantity(T_100F, "K", system).text),
-            (sheet.DVPE, ""),
-            "Pa",
-        ),
-        ("density_15_degC", say("quick", "density"), (blend.density_15, ""), "kg/m3"),
-        ("T10", say("quick", "temperature_10"), (sheet.T10, ""), "K"),
-        ("T50", say("quick", "temperature_50"), (sheet.T50, ""), "K"),
-        ("E70", say("quick", "evaporated_70"), (sheet.E70, ""), "-"),
-        ("E100", say("quick", "evaporated_100"), (sheet.E100, ""), "-"),
-        ("T_ratio_20", say("quick", "ratio_20"), (sheet.T20, ""), "K"),
-        ("vapour_fraction", say("quick", "fraction", temperature=at), _lane(flash, flash.beta), "-"),
-    ]
-    answers = [_answer(key, label, *value, unit) for key, label, value, unit in rows]
-    return answers, _vapour(blend, bubble)
+    # The standard tests take one liquid; where it splits, none of them has an answer.
+    split = words(Status.LIQUID_SPLITS) if bubble.status[0] == Status.LIQUID_SPLITS else ""
+    return [
+        _answer("bubble_pressure", bubble.P[0], "Pa", _why(bubble), temperature=at),
+        _answer("DVPE", sheet.DVPE, "Pa", split, temperature=test),
+        _answer("density_15_degC", blend.density_15, "kg/m3"),
+        _answer("T10", sheet.T10, "K", split),
+        _answer("T50", sheet.T50, "K", split),
+        _answer("E70", sheet.E70, "-", split),
+        _answer("E100", sheet.E100, "-", split),
+        _answer("T_ratio_20", sheet.T20, "K", split),
+        _answer("vapour_fraction", flash.beta[0], "-", _why(flash), temperature=at),
+    ], _vapour(blend, bubble)
 
 
-def _lane(result, array) -> tuple[float, str]:
-    return float(array[0]), "" if result.ok[0] else words(result.status[0])
+def _why(result) -> str:
+    return "" if result.ok[0] else words(result.status[0])
 
 
-def _answer(key: str, label: str, value: float, why: str, unit: str) -> Answer:
+def _answer(key: str, value: float, unit: str, why: str = "", **fields: str) -> Answer:
+    label = say("quick", key, **fields)
     if why or not math.isfinite(value):
         return Answer(key, label, None, unit, why or say("quick", "no_answer"))
     return Answer(key, label, float(value), unit)

@@ -39,6 +39,11 @@ def watched() -> bool:
     return sys.stderr.isatty()
 
 
+def interactive() -> bool:
+    """Whether a person sits at both ends: keys come in, the screens are drawn on stderr."""
+    return sys.stdin is not None and sys.stdin.isatty() and sys.stderr.isatty()
+
+
 def progress(text: str) -> None:
     """One line that the next one overwrites; nothing unless somebody watches."""
     if watched():

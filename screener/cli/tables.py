@@ -9,7 +9,6 @@ from screener.cli import streams
 from screener.cli.layout import blocks, bullets, paragraph, table
 from screener.cli.result import as_text, without_nan
 from screener.cli.wording import columns, say
-from screener.ground.files import data_folder, read_toml
 from screener.memo import numbers
 
 _WIDE = 130  # columns from which seven columns of prose are easier to read than blocks
@@ -33,7 +32,7 @@ def species(arguments) -> int:
             width,
             ("left", "left", "left", "right", "right", "right"),
         )
-    lines += ["", say("tables", "sources"), *bullets(_passports("species"), width)]
+    lines += ["", say("tables", "sources"), *bullets(_species_sources(chosen), width)]
     streams.result("\n".join(lines))
     return 0
 
@@ -76,10 +75,8 @@ def _species_pairs(item, system: str):
         f"{curve.source}; fitted {inside}, largest miss {100 * curve.fit_error:.2f} %",
     )
     yield "note on vapour pressure", item.psat_note
-    yield (
-        "error bar of vapour pressure",
-        f"{100 * item.psat_error:.2f} % within {numbers.span(250.0, 350.0, 'K', system)}",
-    )
+    bar = f"{100 * item.psat_error:.2f} % within {numbers.span(250.0, 350.0, 'K', system)}"
+    yield "error bar of vapour pressure", bar if item.psat_error > 0.0 else say("tables", "one_curve")
     yield "groups", ", ".join(f"{count} x {number}" for number, count in item.groups.items())
     yield from _hazards(item, system)
 
@@ -216,11 +213,13 @@ def _pairs(pairs, width: int) -> list[str]:
     return [line for label, text in shown for line in paragraph(text, width, f"{label:<{size}}  ")]
 
 
-def _passports(folder: str) -> list[str]:
-    """Title and origin of every table below a data folder."""
-    found = []
-    for path in sorted((data_folder() / folder).glob("*.toml")):
-        passport = read_toml(f"{folder}/{path.name}")
-        parts = (passport.get("title", path.stem), passport.get("source", ""), passport.get("obtained", ""))
-        found.append(f"{path.stem}: " + "; ".join(str(part) for part in parts if part))
-    return found
+def _species_sources(chosen) -> list[str]:
+    """Bibliographic line of every source the records shown rest on."""
+    from screener.memo.appendix import source_title
+
+    keys = {
+        key
+        for item in chosen
+        for key in (item.curve.source, item.flash_point_source, item.LFL_source, item.UFL_source)
+    }
+    return [f"{key}: {source_title(key)}" for key in sorted(keys) if key]

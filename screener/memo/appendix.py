@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from functools import lru_cache
+
 from screener.ground.files import data_folder, read_toml
 from screener.memo import numbers
 from screener.memo.document import Block, Bullets, Paragraph, Section, Table, Verbatim
@@ -28,31 +30,52 @@ def appendix_section(frame: Frame) -> Section:
 
 def composition_table(frame: Frame) -> Table:
     """Mole shares of receipt and heel over all species of either, largest in the receipt first."""
-    shares = [dict(zip(blend.names, map(float, blend.z))) for _, blend in liquids(frame)]
+    shares = _shares(frame)
     names = dict.fromkeys(name for column in shares for name in column)
     ordered = sorted(names, key=lambda name: (-shares[0].get(name, 0.0), name))
     rows = tuple(
-        (name, find(name).cas, *(numbers.quantity(column.get(name, 0.0), "-", places=5) for column in shares))
+        (
+            name,
+            find(name).cas,
+            find(name).curve.source,
+            *(numbers.quantity(column.get(name, 0.0), "-", places=5) for column in shares),
+        )
         for name in ordered
-        if any(column.get(name, 0.0) > 0.0 for column in shares)
     )
-    columns = tuple(words("appendix", "composition_columns")[: 2 + len(shares)])
-    align = ("left", "left", "right", "right")[: len(columns)]
+    columns = tuple(words("appendix", "composition_columns")[: 3 + len(shares)])
+    align = ("left", "left", "left", "right", "right")[: len(columns)]
     return Table(columns, rows, align, words("appendix", "composition"))
 
 
+def _shares(frame: Frame) -> list[dict[str, float]]:
+    """Mole shares above zero of receipt and heel."""
+    columns = [dict(zip(blend.names, map(float, blend.z))) for _, blend in liquids(frame)]
+    return [{name: share for name, share in column.items() if share > 0.0} for column in columns]
+
+
+@lru_cache(maxsize=1)
+def _source_list() -> dict[str, dict]:
+    """All entries of the source lists below the data folder."""
+    folder = data_folder()
+    entries: dict[str, dict] = {}
+    for path in sorted(folder.rglob("sources.toml")):
+        entries |= read_toml(path.relative_to(folder).as_posix())
+    return entries
+
+
 def source_title(key: str) -> str:
-    """Bibliographic line of a key in data/sources.toml; the key itself when the list has none."""
-    if not (data_folder() / "sources.toml").is_file():
+    """Bibliographic line of a key in the source lists; the key itself when no list has it."""
+    entry = _source_list().get(key)
+    if entry is None:
         return key
-    entry = read_toml("sources.toml").get(key, key)
-    return entry if isinstance(entry, str) else str(entry.get("title", key))
+    parts = (entry.get("authors"), entry.get("title"), entry.get("edition"), entry.get("year"))
+    return ". ".join(str(part).rstrip(".") for part in parts if part)
 
 
 def _sources(frame: Frame) -> Block:
-    keys = dict.fromkeys((*frame.screening.sources, *(key for f in frame.findings for key in f.sources)))
-    if not keys:
-        return Paragraph(words("appendix", "no_sources"))
+    species = (find(name).curve.source for column in _shares(frame) for name in column)
+    findings = (key for f in frame.findings for key in f.sources)
+    keys = dict.fromkeys((*frame.screening.sources, *findings, *species))
     rows = tuple(_source_row(key) for key in sorted(keys))
     return Table(tuple(words("appendix", "source_columns")), rows, (), words("appendix", "sources"))
 

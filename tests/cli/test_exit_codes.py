@@ -196,12 +196,19 @@ def test_help_and_version_are_results(capsys):
 
 def test_without_a_command_the_screens_open(monkeypatch):
     opened = []
+    monkeypatch.setattr("screener.cli.streams.interactive", lambda: True)
     monkeypatch.setitem(sys.modules, "screener.app", type(sys)("screener.app"))
     monkeypatch.setattr(sys.modules["screener.app"], "run", lambda path: opened.append(path), raising=False)
     assert main([]) == 0
     assert main(["open"]) == 0
     assert main(["open", "a.toml"]) == 0
     assert opened == [None, None, "a.toml"]
+
+
+def test_without_a_terminal_no_screens(capsys, monkeypatch):
+    monkeypatch.setattr("screener.cli.streams.interactive", lambda: False)
+    assert main(["open", "examples/a.toml"]) == 3
+    assert "the screens need a terminal; screener check" in capsys.readouterr().err
 
 
 def test_help_loads_only_the_standard_library():
