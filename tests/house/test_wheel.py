@@ -54,6 +54,6 @@ def test_the_wheel_screens_an_example_without_any_extra(unpacked, tmp_path):
     )
     done = _run(code, unpacked, tmp_path)
     assert done.returncode == 0, done.stderr
-    assert "Boiling at the liquid surface" in done.stdout
+    assert "Boiling at the surface" in done.stdout
     assert "@@ 4" in done.stdout, done.stdout[-300:]
     assert "Not covered" in (tmp_path / "memo.md").read_text(encoding="utf-8")
