@@ -200,7 +200,8 @@ class _Walk:
         trusted = np.minimum(TRUSTED * plain, self.reach)
         size = np.abs(move).max(axis=1)
         if not self.downhill:
-            return np.where((size <= trusted)[:, None], move, g)
+            move = np.where((size > trusted)[:, None], move * (trusted / size)[:, None], move)
+            return np.where(((plain > trusted) | ~np.isfinite(size))[:, None], g, move)
         uphill = ~(np.einsum("nc,nc,nc->n", self.weight, g, move) > 0.0)
         # against g lies a saddle: leave it faster along g (undone if that overshoots)
         faster = np.where(uphill & (a11 > 0.0), self.boost, 1.0)

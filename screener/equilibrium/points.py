@@ -48,19 +48,27 @@ def solve_points(out, lanes, fluid, name: str, value, feed, bubble: bool):
     for finer in FINER:
         again = np.flatnonzero((status != Status.CONVERGED) & (status != Status.OUT_OF_RANGE))
         if again.size == 0:
-            return
+            break
         sought, u = seek(fluid, name, value[again], feed[again], bubble, finer)
         exists = sought == Status.CONVERGED
         status[again[~exists]] = Status.OUT_OF_RANGE  # nothing more to seek there
         out.status[lanes[again[~exists]]] = sought[~exists]
-        none, again, u = again[~exists], again[exists], u[exists]
-        if bubble and none.size:
-            split = splits_anyway(fluid, value[none] if name == "T" else np.full(none.size, T_15C), feed[none])
-            out.status[lanes[none[split]]], out.checks[lanes[none[split]]] = Status.LIQUID_SPLITS, SPLITS
+        again, u = again[exists], u[exists]
         if again.size:
             held = problem.take(again)
             fixed = solve(held, u, held.present, plain=2, newton=30)  # next to the answer: straight to Newton
             status[again] = _take_in(out, lanes[again], fluid, name, value[again], held, fixed)
+    if bubble:
+        _say_where_it_splits(out, lanes, fluid, name, value, feed)
+
+
+def _say_where_it_splits(out, lanes, fluid, name: str, value, feed):
+    """A liquid without bubble point, or with one out of range, may be two liquids: that is the better answer."""
+    none = np.flatnonzero(np.isin(out.status[lanes], (Status.NO_SOLUTION, Status.OUT_OF_RANGE)))
+    if none.size:
+        T = value[none] if name == "T" else np.full(none.size, T_15C)
+        split = lanes[none[splits_anyway(fluid, T, feed[none])]]
+        out.status[split], out.checks[split] = Status.LIQUID_SPLITS, SPLITS
 
 
 def _take_in(out, lanes, fluid, name: str, value, problem, fixed):
@@ -82,8 +90,8 @@ def _take_in(out, lanes, fluid, name: str, value, problem, fixed):
         outside = ~((found > low * 1.000001) & (found < high * 0.999999))
     status = np.where(fixed.converged & (volume_V <= volume_L), int(Status.NO_SOLUTION), status)
     status = np.where(fixed.converged & dense, int(Status.LIQUID_SPLITS), status)
-    status = np.where(fixed.converged & alike, int(Status.TRIVIAL), status)
     status = np.where(outside, int(Status.OUT_OF_RANGE), status)
+    status = np.where(fixed.converged & alike, int(Status.TRIVIAL), status)
     out.status[lanes] = status
     out.iterations[lanes] += fixed.iterations
     out.residual[lanes] = fixed.residual

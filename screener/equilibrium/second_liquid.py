@@ -3,7 +3,8 @@
 Group-contribution models predict that dry ethanol and C6 to C8 paraffins split
 near ambient temperature; that is held not to happen (common practice, no
 source). Such a prediction is reported in words and never takes the place of
-the vapour-liquid answer. A split in the presence of water or methanol is real.
+the vapour-liquid answer. A split with methanol, or with more water than
+fuel-grade ethanol carries, counts.
 """
 
 from __future__ import annotations
@@ -15,6 +16,7 @@ from screener.equilibrium.stability import tangent_plane
 from screener.ground.errors import InputError
 
 DEPTH = 1e-8  # [-] tangent-plane distance over RT that counts: a hundred times the residual of the answer
+DRY = 0.04  # [-] water to ethanol by moles: 1.2 vol% in ethanol, about fuel grade; from memory, unverified
 NO_VAPOUR_LEFT = 1e7  # [Pa] above the bubble pressure of any liquid stored near ambient temperature; own choice
 NOT_TESTED = "not tested for a second liquid"
 TESTED = "tangent plane"
@@ -84,9 +86,10 @@ def splits_anyway(fluid, T, z):
 
 
 def dry_ethanol(fluid, z):
-    """Mask (n,) of lanes that hold ethanol and neither water nor methanol."""
+    """Mask (n,) of lanes z (n, c) [-] that hold ethanol, next to no water for it, and no methanol."""
 
-    def holds(name):
-        return z[:, fluid.names.index(name)] > 0.0 if name in fluid.names else np.zeros(z.shape[0], dtype=bool)
+    def share(name):
+        return z[:, fluid.names.index(name)] if name in fluid.names else np.zeros(z.shape[0])
 
-    return holds("ethanol") & ~holds("water") & ~holds("methanol")
+    ethanol = share("ethanol")
+    return (ethanol > 0.0) & (share("water") <= DRY * ethanol) & (share("methanol") == 0.0)
