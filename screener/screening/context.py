@@ -105,6 +105,13 @@ class Context:
             return f"{words(status)}: {', '.join('+'.join(pair) for pair in gaps[:4])}"
         return words(status)
 
+    def typical_cap(self) -> tuple[str, ...]:
+        """A range of typical days does not bound the hottest one: a cap for every hottest-day finding."""
+        ambient = self.case.site.ambient
+        if ambient is not None and ambient.meaning == "typical" and self.case.site.liquid_temperature is None:
+            return (say("cap", "typical"),)
+        return ()
+
     def holds_gas(self) -> bool:
         """Whether the receipt's own composition holds a permanent gas."""
         blend = self.case.blend

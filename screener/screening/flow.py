@@ -68,7 +68,8 @@ def suction(context: Context, stream) -> Draft:
         place = PLACES[int(s.place[i, k])] if s.place[i, k] >= 0 else "suction line"
         rows.append(Lane(
             context.condition(k, context.hottest_day, place, _level(k)), value, low, high, 0.0,
-            reference=context.barometer, unknown=_lane_unknown(context, stream, k), facts=_facts(context, stream, k),
+            reference=context.barometer, unknown=_lane_unknown(context, stream, k),
+                caps=context.typical_cap(), facts=_facts(context, stream, k),
             tag=k,
         ))  # fmt: skip
     return _draft(key, lanes=tuple(rows), unknown=_unknown(context, stream),
@@ -87,6 +88,7 @@ def npsh(context: Context, stream) -> Draft:
         rows.append(Lane(
             context.condition(k, context.hottest_day, "pump inlet", _level(k)), value, low, high, required,
             reference=float(s.head[i, k]), unknown=_lane_unknown(context, stream, k),
+                caps=context.typical_cap(),
             facts=_facts(context, stream, k) + (Fact("NPSH to ask for", float(asked_npsh(required)), "m"),)
             if math.isfinite(required) else _facts(context, stream, k), tag=k,
         ))  # fmt: skip

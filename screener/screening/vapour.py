@@ -46,16 +46,8 @@ def _hot_lane(context: Context, k: int, limit: float, where: str, caps=()) -> La
         context.condition(k, context.hottest_day, where), value, low, high, limit,
         unknown=say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else "",
         facts=tuple(f for f in facts if math.isfinite(f.value)) + vapour_facts(context, lanes.y_hot[i, k]), tag=k,
-        caps=_typical_cap(context) + tuple(caps),
+        caps=context.typical_cap() + tuple(caps),
     )  # fmt: skip
-
-
-def _typical_cap(context: Context) -> tuple[str, ...]:
-    """A range of typical days does not bound the hottest one."""
-    ambient = context.case.site.ambient
-    if ambient is not None and ambient.meaning == "typical" and context.case.site.liquid_temperature is None:
-        return (say("cap", "typical"),)
-    return ()
 
 
 def _barometer_missing(context: Context) -> str:

@@ -75,12 +75,12 @@ def outbreathing(context: Context, stream) -> Draft:
 def _out_lane(context: Context, b, k: int) -> Lane:
     i, lanes = context.i, context.lanes
     Pv = float(lanes.P_hot[i, k, BEST])
-    unknown, caps = context.why_no_hot_pressure(k), ()
+    unknown, caps = context.why_no_hot_pressure(k), context.typical_cap()
     growth = float(b.growth[i, k])
     if not unknown and math.isnan(growth):
         unknown = say("unknown", "boils")
     elif Pv > 0.5 * context.barometer:
-        caps = (say("cap", "growth", factor=f"{growth:.2f}"),)
+        caps += (say("cap", "growth", factor=f"{growth:.2f}"),)
     if unknown:
         unknown = say("unknown", "lane", liquid=context.liquid_name(k), why=unknown)
     facts = (
@@ -177,8 +177,9 @@ def _setting(context: Context, key: str, design: str, reached, setting, given, n
         lane = Lane(
             Condition("", "", "as it opens", "vapour space"), *[float(setting[i])] * 3, context.input(design)
         )
+    unit = criterion(key).unit
     facts = _finite(
-        (Fact("setting", float(setting[i]), "Pa"), Fact("setting plus accumulation", value, "Pa"))
+        (Fact("setting", float(setting[i]), unit), Fact("setting plus accumulation", value, unit))
     )
     return _draft(key, lanes=(lane,), unknown=unknown, range_covers=(), facts=facts)
 

@@ -113,6 +113,13 @@ def test_ambient_alone_leaves_the_legal_finding_unknown():
     assert result["boiling.surface"] in ("room", "near")
 
 
+def test_a_typical_ambient_range_never_gives_room_to_a_hottest_day_finding():
+    typical = verdicts(screen(case(site=site(ambient=replace(site().ambient, meaning="typical")))))
+    design = verdicts(screen(case()))
+    for finding in ("boiling.surface", "vapour-lock.suction", "npsh.pump", "vents.outbreathing"):
+        assert (design[finding], typical[finding]) == ("room", "near"), finding
+
+
 def test_a_hot_vapour_space_is_unknown():
     hot = case(tank=tank(vapour_space_temperature=ZERO + 52.0))
     found = {f.id: f for f in screen(hot).findings}
