@@ -7,6 +7,8 @@ import numpy as np
 from screener.species import forms, pure
 
 FALLING = np.geomspace(150.0, 2500.0, 60)  # [K] alpha must fall from each of these to the next; our choice
+SUPERCRITICAL = 500.0, 0.1  # [K], [-] alpha stays above the second up to the first, so that gases keep some attraction:
+# second virial coefficients at 300 K ask for 0.48 (nitrogen, Tr 2.4) and 0.16 (hydrogen, Tr 9); our choice
 TWU_ENOUGH = 0.0015  # largest relative error in vapour pressure up to which three constants are kept; our choice
 
 
@@ -19,24 +21,29 @@ def psat_coefficients(T, P, digits=13):
     return solution, float(np.max(np.abs(np.expm1(basis @ solution - ln_P))))
 
 
-def alpha_constants(T, P, Tc, Pc, weight):
+def alpha_constants(T, P, Tc, Pc, weight, five=True):
     """Alpha constants L, M, N, C, D [-] that reproduce points T [K], P [Pa] of a vapour-pressure curve.
 
     The alpha that makes the equation saturate exactly is found at each point; then
     ln alpha = -h ln Tr + L (1 - Tr^g) [+ C s^3 + D s^4] is linear in all but g, and g is
-    searched on a line among the values that let alpha fall with temperature everywhere.
-    Each point counts by its weight [-] and by what an error of alpha does to the vapour
-    pressure there. C and D stay zero where three constants are enough.
+    searched on a line among the values that let alpha fall with temperature everywhere and
+    leave a supercritical gas some attraction. Each point counts by its weight [-] and by what an error of alpha does to the vapour
+    pressure there. C and D stay zero where three constants are enough, or `five` is false.
     """
     Tr = np.asarray(T) / Tc
     exact, sensitivity = pure.alpha_at_saturation(Tr, np.asarray(P) / Pc)
     good = np.isfinite(exact) & np.isfinite(sensitivity)
     Tr, ln_alpha, sensitivity, weight = Tr[good], np.log(exact[good]), sensitivity[good], weight[good]
-    for terms in (2, 4):
-        _, error, constants = _search(Tr, ln_alpha, sensitivity, weight, FALLING / Tc, terms)
-        if error <= TWU_ENOUGH:
-            break
-    return constants
+    found = []
+    for terms in (2, 4) if five else (2,):
+        total, error, constants = _search(Tr, ln_alpha, sensitivity, weight, Tc, terms)
+        if np.isfinite(total):
+            found.append((error, constants))
+            if error <= TWU_ENOUGH:
+                break
+    if not found:
+        raise LookupError("no alpha function that falls with temperature fits the vapour-pressure curve")
+    return min(found)[1]
 
 
 def _alpha_basis(Tr, g, terms):
@@ -44,16 +51,18 @@ def _alpha_basis(Tr, g, terms):
     return np.stack([-np.log(Tr), 1.0 - Tr**g, s**3, s**4][:terms], axis=1)
 
 
-def _search(Tr, ln_alpha, sensitivity, weight, falling, terms):
+def _search(Tr, ln_alpha, sensitivity, weight, Tc, terms):
     """Best exponent g on successively finer lines: sum of squares, largest error, constants."""
+    falling, end = FALLING / Tc, SUPERCRITICAL[0] / Tc
 
     def solve(g):
         basis = _alpha_basis(Tr, g, terms)
         w = weight * sensitivity
         solution = np.linalg.lstsq(basis * w[:, None], ln_alpha * w, rcond=1e-12)[0]
         miss = (basis @ solution - ln_alpha) * sensitivity
-        rises = np.any(np.diff(_alpha_basis(falling, g, terms) @ solution) > 0.0)
-        return (np.inf if rises else float(np.sum((miss * weight) ** 2))), float(np.abs(miss).max()), g, solution
+        beyond = _alpha_basis(falling, g, terms) @ solution
+        bad = np.any(np.diff(beyond) > 0.0) or np.interp(end, falling, beyond) < np.log(SUPERCRITICAL[1])
+        return (np.inf if bad else float(np.sum((miss * weight) ** 2))), float(np.abs(miss).max()), g, solution
 
     grid = np.geomspace(0.1, 6.0, 60)
     for _ in range(5):
