@@ -69,12 +69,12 @@ class Span:
 _TABLE: dict[str, dict[str, Shown]] = {
     "Pa": {"si": Shown("kPa", 1e3, decimals=1), "us": Shown("psi", _PSI, decimals=2)},
     "Pa over barometer": {
-        "si": Shown("kPa over barometer", 1e3, decimals=2),
-        "us": Shown("psi over barometer", _PSI, decimals=3),
+        "si": Shown("kPa gauge", 1e3, decimals=2),
+        "us": Shown("psi gauge", _PSI, decimals=3),
     },
     "Pa under barometer": {
-        "si": Shown("kPa under barometer", 1e3, decimals=2),
-        "us": Shown("psi under barometer", _PSI, decimals=3),
+        "si": Shown("kPa vacuum", 1e3, decimals=2),
+        "us": Shown("psi vacuum", _PSI, decimals=3),
     },
     "Pa difference": {"si": Shown("kPa", 1e3, decimals=1), "us": Shown("psi", _PSI, decimals=2)},
     "K": {

@@ -254,7 +254,7 @@ def test_a_bare_case_still_gives_a_memo():
 def test_us_units_throughout():
     text = write_markdown(memo(system="us"))
     assert "9.59 psi" in text
-    assert "psi over barometer" in text
+    assert "psi gauge" in text
     # Section 14 is in SI, so that a calculator needs no conversion factors.
     shown = [part for part in memo(system="us").sections if part.number != "14"]
     cells = [cell.text for cell in cells_of(tuple(shown))]

@@ -14,8 +14,8 @@ from screener.memo import numbers
     [
         (101325.0, "Pa", "101.3 kPa", "14.70 psi"),  # 101325 / 6894.757 = 14.696
         (66100.0, "Pa", "66.1 kPa", "9.59 psi"),  # 66.1 / 6.894757 = 9.587
-        (250.0, "Pa over barometer", "0.250 kPa over barometer", "0.0363 psi over barometer"),
-        (1500.0, "Pa over barometer", "1.50 kPa over barometer", "0.218 psi over barometer"),
+        (250.0, "Pa over barometer", "0.250 kPa gauge", "0.0363 psi gauge"),
+        (1500.0, "Pa over barometer", "1.50 kPa gauge", "0.218 psi gauge"),
         (310.92777777777775, "K", "37.8 degC", "100.0 degF"),
         (273.15, "K", "0.0 degC", "32.0 degF"),
         (273.11, "K", "0.0 degC", "31.9 degF"),  # -0.04 degC is printed without a minus; 31.93 degF
