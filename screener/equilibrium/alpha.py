@@ -18,6 +18,14 @@ class Soave:
         """alpha (n, c) [-] at T (n,) [K]."""
         return (1.0 + self.m * (1.0 - np.sqrt(T[:, None] / self.Tc))) ** 2
 
+    def slopes(self, T):
+        """alpha [-], its first [1/K] and second [1/K2] derivative, each (n, c), at T (n,) [K]."""
+        T = T[:, None]
+        sink = self.m * np.sqrt(T / self.Tc)
+        root = 1.0 + self.m - sink
+        first, second = -0.5 * sink / T, 0.25 * sink / T**2
+        return root**2, 2.0 * root * first, 2.0 * (first**2 + root * second)
+
 
 @dataclass(frozen=True)
 class Twu:
@@ -43,6 +51,17 @@ class Twu:
         exponent = self.N * (self.M - 1.0) * ln_Tr - self.L * np.expm1(self.N * self.M * ln_Tr)
         return np.exp(exponent + s**3 * (self.C + self.D * s))
 
+    def slopes(self, T):
+        """alpha [-], its first [1/K] and second [1/K2] derivative, each (n, c), at T (n,) [K]."""
+        alpha, T = self(T), T[:, None]
+        s = np.maximum(1.0 - T / self.Tc, 0.0)
+        g = self.N * self.M
+        steep = self.L * g * (T / self.Tc) ** g
+        power = self.N * (self.M - 1.0) - steep  # d ln alpha / d ln T of Twu's three constants
+        first = power / T - s**2 * (3.0 * self.C + 4.0 * self.D * s) / self.Tc
+        second = -(power + g * steep) / T**2 + s * (6.0 * self.C + 12.0 * self.D * s) / self.Tc**2
+        return alpha, alpha * first, alpha * (second + first**2)
+
 
 @dataclass(frozen=True)
 class ByComponent:
@@ -55,6 +74,11 @@ class ByComponent:
     def __call__(self, T):
         """alpha (n, c) [-] at T (n,) [K]."""
         return np.where(self.mask, self.chosen(T), self.rest(T))
+
+    def slopes(self, T):
+        """alpha [-], its first [1/K] and second [1/K2] derivative, each (n, c), at T (n,) [K]."""
+        pairs = zip(self.chosen.slopes(T), self.rest.slopes(T), strict=True)
+        return tuple(np.where(self.mask, one, other) for one, other in pairs)
 
 
 def m_of_omega(omega, eos: str):

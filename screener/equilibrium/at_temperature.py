@@ -3,11 +3,22 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import NamedTuple
 
 import numpy as np
 
-from screener.equilibrium.eos import Mixture
+from screener.equilibrium.eos import Mixture, attraction_at_critical
 from screener.ground.constants import R
+
+
+class Slopes(NamedTuple):
+    """Derivatives in T of a mixture's alpha (n,) [1/K], of the same again (n,) [1/K2], of abar (n, c) [1/K], of the
+    translation (n,) [m3/(mol K)]."""
+
+    alpha_1: np.ndarray
+    alpha_2: np.ndarray
+    abar_1: np.ndarray
+    shift_1: np.ndarray
 
 
 @dataclass(frozen=True)
@@ -41,6 +52,17 @@ class AtTemperature:
             alpha, abar = self.mixing.mix(x, b, self.b_i)
             shift = np.einsum("nc,nc->n", *np.broadcast_arrays(x, self.shift_i))
         return Mixture(self.fluid.equation.d, R * self.T, alpha, abar, b, self.b_i, shift)
+
+    def slopes(self, x, mixture: Mixture) -> Slopes:
+        """How the mixtures `mix(x)` change with temperature at fixed composition x (n, c)."""
+        x = as_rows(x)
+        equation, T = self.fluid.equation, self.T[:, None]
+        k = attraction_at_critical(equation, self.fluid.Tc, self.fluid.Pc) / (self.b_i * R)
+        with np.errstate(all="ignore"):
+            alpha, first, second = self.fluid.alpha.slopes(self.T)
+            first, second = first - alpha / T, second - 2.0 * first / T + 2.0 * alpha / T**2
+            alpha_i = self.alpha_i, k / T * first, k / T * second
+            return Slopes(*self.mixing.slopes(x, mixture, alpha_i), x @ self.fluid.shift_1)
 
     def ln_phi(self, P, x, phase: str):
         """ln phi (n, c) [-] at P (n,) [Pa] and composition x (n, c)."""

@@ -57,3 +57,18 @@ class ExcessAt:
             field -= half[:, None]
             ln_gamma = ln_gamma + (field if factor is None else factor * field)
         return ln_gamma
+
+    def slopes(self, x):
+        """d ln gamma / dT (n, c) [1/K] and d2(G^E/RT)/dT2 (n,) [1/K2] at mole fractions x (n, c)."""
+        ln_gamma_1, excess_2 = self.unifac.slopes(x, self.T)
+        T = self.T[:, None]
+        for matrix, first, second in (
+            (self.model.A1, -1.0 / T**2, 2.0 / T**3), (self.model.A2, 1.0 / T, -1.0 / T**2)
+        ):
+            if matrix is None:
+                continue
+            field = x @ matrix
+            half = 0.5 * np.einsum("nc,nc->n", x, field)
+            ln_gamma_1 = ln_gamma_1 + first * (field - half[:, None])
+            excess_2 = excess_2 + second[:, 0] * half
+        return ln_gamma_1, excess_2

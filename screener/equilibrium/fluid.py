@@ -30,7 +30,8 @@ class Fluid:
     """Constants, model and model parameters of c components.
 
     names (c,), MW (c,) [kg/mol], Tc (c,) [K], Pc (c,) [Pa], omega (c,) [-],
-    v_15 (c,) liquid volume at 15 degC [m3/mol], NaN where not known. The
+    v_15 (c,) liquid volume at 15 degC [m3/mol], NaN where not known; cp_ideal
+    (c, 5) polynomials of the ideal-gas heat capacity in T, None without. The
     volume translation is shift_0 + shift_1 (T - 298.15 K), each (c,).
     gaps names the parameters that fell back to zero; missing holds the pairs
     of names whose parameter is needed and unknown.
@@ -51,6 +52,7 @@ class Fluid:
     gaps: tuple[str, ...] = ()
     missing: tuple[tuple[str, str], ...] = ()
     vapour_pressure: object = None
+    cp_ideal: np.ndarray | None = None
 
     @classmethod
     def of(cls, names, model: str = "auto") -> Fluid:

@@ -46,6 +46,27 @@ class VanDerWaalsAt:
         abar = (2.0 * field - alpha[:, None] * b_i) / b[:, None]
         return alpha, abar
 
+    def slopes(self, x, mixture, alpha_i):
+        """Derivatives in T of alpha, alpha again and abar: (n,) [1/K], (n,) [1/K2], (n, c) [1/K].
+
+        alpha_i holds the components' alpha_i (n, c) [-] and its two derivatives, mixture what `mix` gave.
+        """
+        first = 0.5 * alpha_i[1] / alpha_i[0]  # of ln root
+        second = 0.5 * alpha_i[2] / alpha_i[0] - first**2
+        root, root_1 = self.root, self.root * first
+        s, s_1, s_2 = x * root, x * root_1, x * (self.root * second)
+        pull, pull_1 = self._pull(s), self._pull(s_1)
+        b = mixture.b
+        alpha_1 = 2.0 * (s_1 * pull).sum(axis=1) / b
+        alpha_2 = 2.0 * ((s_2 * pull).sum(axis=1) + (s_1 * pull_1).sum(axis=1)) / b
+        abar_1 = (2.0 * (root_1 * pull + root * pull_1) - alpha_1[:, None] * mixture.b_i) / b[:, None]
+        return alpha_1, alpha_2, abar_1
+
+    def _pull(self, s):
+        """sum_j (1 - k_ij) s_j, (n, 1) where every k_ij is zero, else (n, c)."""
+        total = s.sum(axis=1, keepdims=True)
+        return total if self.kij is None else total - s @ self.kij
+
     def ln_gamma(self, x):
         """NaN (n, c): this rule carries no excess Gibbs energy model."""
         return np.full_like(x, np.nan)

@@ -28,7 +28,7 @@ def fluid_of(kind, names, model: str):
     return kind(
         names=canonical, model=model, MW=table.MW, Tc=table.Tc, Pc=table.Pc, omega=table.omega, equation=equation,
         alpha=alpha, mixing=mixing, shift_0=shift[0], shift_1=shift[1], v_15=table.MW / table.rho_15, gaps=gaps,
-        missing=missing, vapour_pressure=Curves(found),
+        missing=missing, vapour_pressure=Curves(found), cp_ideal=table.cp_ideal,
     )
 
 

@@ -142,6 +142,31 @@ class UnifacAt:
         ln_gamma += self._combinatorial(x, surface, has)
         return ln_gamma
 
+    def slopes(self, x, T):
+        """d ln gamma / dT (n, c) [1/K] and d2(G^E/RT)/dT2 (n,) [1/K2] at x (n, c) and the T (n,) [K] of psi.
+
+        The combinatorial part holds no T; sum_i x_i ln gamma_i of the residual part is
+        -(x q) sum_m Theta_m ln S_m less the same of the pure components.
+        """
+        m, t = self.model, T[:, None, None]
+        rate = m.a / t**2 - m.c
+        psi_1 = self.psi * rate
+        psi = self.psi, psi_1, psi_1 * rate - self.psi * (2.0 * m.a / t**3)
+        has = m.q > 0.0
+        n = max(x.shape[0], T.size)
+        if not has.any():
+            return np.zeros((n, has.size)), np.zeros(n)
+        seen = np.where((x @ has.astype(float) > 0.0)[:, None], x, has)
+        theta = (seen @ m.QN) / (seen @ m.q)[:, None]
+        g_1, bend = _group_slopes(theta[:, None, :], *psi)
+        ln_gamma_1, excess_2 = g_1[:, 0, :] @ m.QN.T, bend[:, 0] * (x @ m.q)
+        if m.several.size:
+            g_1, bend = _group_slopes(m.kinds / m.kinds.sum(axis=1, keepdims=True), *psi)
+            pure_1, pure_2 = np.einsum("nkm,km->nk", g_1, m.kinds), bend * m.kinds.sum(axis=1)
+            ln_gamma_1[:, m.several] -= pure_1[:, m.kind]
+            excess_2 = excess_2 - (x[:, m.several] * pure_2[:, m.kind]).sum(axis=1)
+        return np.where(has, ln_gamma_1, 0.0), excess_2
+
     def _combinatorial(self, x, surface, has):
         m = self.model
         r, q, r_p = (np.where(has, v, 1.0) for v in (m.r, m.q, m.r_p))
@@ -155,3 +180,11 @@ def _group_terms(theta, psi):
     """g (..., M) of surface fractions theta (..., M) and psi (n, M, M)."""
     S = theta @ psi
     return 1.0 - np.log(S) - (theta / S) @ psi.swapaxes(-1, -2)
+
+
+def _group_slopes(theta, psi, psi_1, psi_2):
+    """dg/dT (..., M) and -sum Theta d2 ln S / dT2 (...), from psi and its derivatives (n, M, M)."""
+    S, S_1, S_2 = theta @ psi, theta @ psi_1, theta @ psi_2
+    share, drift = theta / S, S_1 / S
+    g_1 = -drift - share @ psi_1.swapaxes(-1, -2) + (share * drift) @ psi.swapaxes(-1, -2)
+    return g_1, -(theta * (S_2 / S - drift**2)).sum(axis=-1)

@@ -42,15 +42,42 @@ def _liquid(alpha):
     return -1.0 - np.log(gap) + alpha * slope, slope
 
 
+def _liquid_curvature(alpha):
+    """d2q/dalpha2 where the zero-pressure liquid root exists. [-]"""
+    k = alpha - 4.0
+    gap = 4.0 / (k + np.sqrt(k * k - 8.0))
+    product = (gap + (1.0 + _D1)) * (gap + (1.0 + _D2))
+    return 1.0 / product / ((2.0 * gap + 4.0) / gap - product / gap**2)
+
+
+def curvature_of_q(alpha):
+    """Second derivative of the zero-pressure function.
+
+    Parameters
+    ----------
+    alpha : array
+        a / (b R T). [-]
+
+    Returns
+    -------
+    array
+        d2q/dalpha2, in the shape of alpha; continuous at JOINT. [-]
+
+    Source
+    ------
+    As `q_and_slope`.
+    """
+    curvature = _liquid_curvature(np.maximum(alpha, JOINT))
+    _, s0, rate = _joint()
+    bent = (s0 - SLOPE_BELOW) * rate * np.exp(rate * np.minimum(alpha - JOINT, 0.0))
+    return np.where(alpha < JOINT, bent, curvature)
+
+
 @lru_cache(maxsize=1)
 def _joint():
     """Value and slope of q at the joint, and the rate at which the slope settles below it. [-]"""
     value, slope = (float(v) for v in _liquid(np.array(JOINT)))
-    k = JOINT - 4.0
-    u = 1.0 + 4.0 / (k + np.sqrt(k * k - 8.0))
-    product = (u + _D1) * (u + _D2)
-    curvature = 1.0 / product / ((2.0 * u + 2.0) / (u - 1.0) - product / (u - 1.0) ** 2)
-    return value, slope, float(curvature) / (slope - SLOPE_BELOW)
+    return value, slope, float(_liquid_curvature(np.array(JOINT))) / (slope - SLOPE_BELOW)
 
 
 def q_and_slope(alpha):
@@ -152,3 +179,23 @@ class ZeroPressureAt:
         term /= slope[:, None]
         term += alpha[:, None]
         return alpha, term
+
+    def slopes(self, x, mixture, alpha_i):
+        """Derivatives in T of alpha, alpha again and abar: (n,) [1/K], (n,) [1/K2], (n, c) [1/K].
+
+        alpha_i holds the components' alpha_i (n, c) [-] and its two derivatives, mixture what `mix` gave.
+        Both sides of the matching condition, derived at fixed x.
+        """
+        value, first, second = alpha_i
+        ln_gamma_1, excess_2 = self.excess.slopes(x)
+        slope_i = q_and_slope(value)[1]
+        term = ln_gamma_1 + slope_i * first
+        bend = curvature_of_q(value) * first**2 + slope_i * second
+        q_1 = (x * term).sum(axis=1)
+        q_2 = excess_2 + (x * bend).sum(axis=1)
+        slope, curvature = q_and_slope(mixture.alpha)[1], curvature_of_q(mixture.alpha)
+        alpha_1 = q_1 / slope
+        alpha_2 = (q_2 - curvature * alpha_1**2) / slope
+        away = (mixture.abar - mixture.alpha[:, None]) * (curvature * alpha_1)[:, None]
+        abar_1 = alpha_1[:, None] + (term - q_1[:, None] - away) / slope[:, None]
+        return alpha_1, alpha_2, abar_1
