@@ -3,10 +3,15 @@
 from __future__ import annotations
 
 import math
+import subprocess
+import sys
+from pathlib import Path
 
 import pytest
 
 from screener.memo import numbers
+
+ROOT = Path(__file__).resolve().parents[2]
 
 
 @pytest.mark.parametrize(
@@ -85,3 +90,10 @@ def test_every_unit_of_a_criterion_is_in_the_table():
 
     for item in criteria().values():
         assert numbers.unit_text(item.unit, "us") != item.unit or item.unit in ("-", ""), item.id
+
+
+def test_numbers_load_without_numpy():
+    """The first screen is painted before NumPy is there."""
+    code = "import sys, screener.memo.numbers, screener.memo.text; print('numpy' in sys.modules, 'pint' in sys.modules)"
+    done = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, check=True, cwd=ROOT)
+    assert done.stdout.split() == ["False", "False"]
