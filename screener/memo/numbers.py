@@ -196,10 +196,12 @@ def quantity(value, unit: str, system: str = "si", *, places=None, sign=False, b
 
 
 def span(low, high, unit: str, system: str = "si", *, places=None, bare=False) -> Span:
-    """Low to high with one unit, which `bare` leaves out."""
+    """Low to high with one unit, which `bare` leaves out; 'no range' where both ends are the same number."""
     texts = [number(value, unit, system, places=places) for value in (low, high)]
     label = "" if bare else unit_text(unit, system)
     text = NONE if NONE in texts else f"{texts[0]} to {texts[1]} {label}".rstrip()
+    if NONE not in texts and _real(low) == _real(high):
+        text = "no range"
     return Span(_real(low), _real(high), unit, text)
 
 
