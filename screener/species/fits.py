@@ -6,7 +6,7 @@ import numpy as np
 
 from screener.species import forms, pure
 
-FALLING = np.geomspace(150.0, 2500.0, 60)  # [K] alpha must fall from each of these to the next; our choice
+FALLING = np.geomspace(195.0, 1050.0, 60)  # [K] alpha must fall from each of these to the next; our choice
 SUPERCRITICAL = 500.0, 0.1  # [K], [-] alpha stays above the second up to the first, so that gases keep some attraction:
 # second virial coefficients at 300 K ask for 0.48 (nitrogen, Tr 2.4) and 0.16 (hydrogen, Tr 9); our choice
 TWU_ENOUGH = 0.0015  # largest relative error in vapour pressure up to which three constants are kept; our choice
@@ -38,7 +38,7 @@ def alpha_constants(T, P, Tc, Pc, weight, five=True):
     for terms in (2, 4) if five else (2,):
         total, error, constants = _search(Tr, ln_alpha, sensitivity, weight, Tc, terms)
         if np.isfinite(total):
-            found.append((error, constants))
+            found.append((total, constants))
             if error <= TWU_ENOUGH:
                 break
     if not found:
@@ -56,13 +56,13 @@ def _search(Tr, ln_alpha, sensitivity, weight, Tc, terms):
     falling, end = FALLING / Tc, SUPERCRITICAL[0] / Tc
 
     def solve(g):
-        basis = _alpha_basis(Tr, g, terms)
+        basis, far = _alpha_basis(Tr, g, terms), _alpha_basis(falling, g, terms)
         w = weight * sensitivity
         solution = np.linalg.lstsq(basis * w[:, None], ln_alpha * w, rcond=1e-12)[0]
         miss = (basis @ solution - ln_alpha) * sensitivity
-        beyond = _alpha_basis(falling, g, terms) @ solution
+        beyond = far @ solution
         bad = np.any(np.diff(beyond) > 0.0) or np.interp(end, falling, beyond) < np.log(SUPERCRITICAL[1])
-        return (np.inf if bad else float(np.sum((miss * weight) ** 2))), float(np.abs(miss).max()), g, solution
+        return (np.inf if bad else float(np.sum((miss * weight) ** 2))), float(np.abs(miss[weight >= 1.0]).max()), g, solution
 
     grid = np.geomspace(0.1, 6.0, 60)
     for _ in range(5):
