@@ -88,7 +88,7 @@ def passports(rows, bad_flash) -> dict[str, dict]:
         "species/vapour_pressure": {
             "title": "Vapour-pressure curves: the chosen one as our own fit, and how far others disagree",
             "source_keys": sorted({c["source"] for c in curves}), "how": "fitted here",
-            "where": "ln(P/Pa) = c0 + c1/t + c2 ln t + c3 t + c4 t^2 + c5 t^4, t = T/300 K. Which curve: screener/species/vapour_pressure.py, six rules. Two curves that coincide within 0.05 % count as one data set. Outside the validity of the source the fit continues it by the geometric mean of two Wagner forms through the critical point",
+            "where": "ln(P/Pa) = c0 + c1/t + c2 ln t + c3 t + c4 t^2 + c5 t^4, t = T/300 K. Which curve: screener/species/vapour_pressure.py, six rules. Two curves that coincide within 0.05 % count as one data set. Outside the validity of the source the fit continues it by the geometric mean of two Wagner forms through the critical point; tried on hydrocarbons whose curve is known, it misses by 0.4, 0.9 and 2.0 % (rms; worst 0.9, 2.1, 5.3 %) at 20, 40 and 60 K below a narrow curve (tests/species/test_continuation.py)",
             "note": "curves more than 3 % apart within 250-350 K: " + _names(rows, "vapour_pressure", lambda c: (c["spread"] or 0.0) > 0.03)
             + ". Only one curve there: " + _names(rows, "vapour_pressure", lambda c: c["spread"] is None)
             + ". No curve reaches below 300 K: " + _names(rows, "vapour_pressure", lambda c: "no curve reaches below 300 K" in c["note"]),

@@ -177,7 +177,7 @@ def volume_of_unknown_temperature(cas):
     """Liquid molar volume [m3/mol] of the CAS Common Chemistry table, or None.
 
     The library carries no temperature with it. Read as at 20 degC it agrees with the other
-    densities of 202 species within 0.3 % for half of them and 1 to 2.5 % for nine in ten.
+    densities of 202 species within 0.3 % for half of them and -0.9 to +2.4 % for nine in ten.
     """
     text = _common_chemistry().get(cas.replace("-", ""), "")
     return float(text) if text else None
