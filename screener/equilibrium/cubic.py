@@ -67,13 +67,12 @@ def roots(A, B, d=PENG_ROBINSON) -> Roots:
     c2, c1, c0 = _coefficients(A, B, d)
     with np.errstate(all="ignore"):
         w = _largest(c2, c1, c0)
-        w = _polish(_polish(w, c2, c1, c0), c2, c1, c0)
         e0 = -c0 / w
         e1 = (e0 - c1) / w
         square = e1 * e1 - 4.0 * e0
         two = (square >= 0.0) & (e1 < 0.0)
         small = 2.0 * e0 / (np.sqrt(np.where(two, square, 0.0)) - e1)
-        small = _polish(_polish(small, c2, c1, c0), c2, c1, c0)
+        small = _polish(small, c2, c1, c0)
         two &= np.isfinite(small) & (small > 0.0) & (small < w)
         bad = ~(np.isfinite(w) & (w > 0.0) & (B > 0.0))
     w = np.where(bad, np.nan, w)
@@ -104,8 +103,12 @@ def Z_of_phase(A, B, phase: str, d=PENG_ROBINSON):
     ------
     As `roots`.
     """
-    found = roots(A, B, d)
-    return found.Z_L if phase == "L" else found.Z_V
+    if phase == "L":
+        return roots(A, B, d).Z_L
+    A, B = np.asarray(A, dtype=float), np.asarray(B, dtype=float)
+    with np.errstate(all="ignore"):
+        w = _largest(*_coefficients(A, B, d))
+        return np.where((w > 0.0) & (B > 0.0), B + w, np.nan)
 
 
 def _coefficients(A, B, d):
@@ -118,7 +121,12 @@ def _coefficients(A, B, d):
 
 
 def _largest(c2, c1, c0):
-    """Largest real root in closed form, good to some 1e-8 before polishing."""
+    """Largest real root: in closed form, good to some 1e-8, then polished."""
+    w = _closed_form(c2, c1, c0)
+    return _polish(_polish(w, c2, c1, c0), c2, c1, c0)
+
+
+def _closed_form(c2, c1, c0):
     shift = c2 / 3.0
     Q = shift * shift - c1 / 3.0
     R = shift * (shift * shift - 0.5 * c1) + 0.5 * c0

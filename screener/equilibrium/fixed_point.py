@@ -24,6 +24,8 @@ from typing import NamedTuple
 
 import numpy as np
 
+from screener.equilibrium.rows import row_max
+
 TOLERANCE = 1e-10  # on max |image(u) - u|: ten times below the residual promised
 MOST_PLAIN = 30  # accelerated substitutions before Newton takes over
 MOST_NEWTON = 15
@@ -132,7 +134,7 @@ class _Walk:
         image = self.problem.image(self.u)
         with np.errstate(invalid="ignore"):
             self.g = np.where(self.present, image - self.u, 0.0)
-            self.r = np.abs(self.g).max(axis=1)
+            self.r = row_max(np.abs(self.g))
             if self.downhill:
                 self.value, self.weight = self.problem.descent(self.u, image)
         return self.moving & (self.r <= tolerance)
@@ -162,9 +164,9 @@ class _Walk:
             self.past = [(np.where(row, 0.0, du), np.where(row, 0.0, dg)) for du, dg in self.past]
         with np.errstate(all="ignore"):
             move = self._accelerated(g) * self.damping[:, None]
-            longest = np.abs(move).max(axis=1)
+            longest = row_max(np.abs(move))
             move *= np.minimum(1.0, LONGEST / np.maximum(longest, LONGEST))[:, None]
-            self.jumped = np.abs(move - g).max(axis=1) > 0.0
+            self.jumped = (move != g).any(axis=1)
         self.last = (u, g, r, self.value)
         usable = self.moving & np.isfinite(longest)
         self.u = np.where(usable[:, None], u + move, self.u)
@@ -196,9 +198,9 @@ class _Walk:
         move = g - s1[:, None] * (du1 + dg1)
         if len(self.past) == 2:
             move -= np.where(np.isfinite(s2), s2, 0.0)[:, None] * (du2 + dg2)
-        plain = np.abs(g).max(axis=1)
+        plain = row_max(np.abs(g))
         trusted = np.minimum(TRUSTED * plain, self.reach)
-        size = np.abs(move).max(axis=1)
+        size = row_max(np.abs(move))
         if not self.downhill:
             move = np.where((size > trusted)[:, None], move * (trusted / size)[:, None], move)
             return np.where(((plain > trusted) | ~np.isfinite(size))[:, None], g, move)
@@ -206,7 +208,7 @@ class _Walk:
         # against g lies a saddle: leave it faster along g (undone if that overshoots)
         faster = np.where(uphill & (a11 > 0.0), self.boost, 1.0)
         move = np.where(uphill[:, None], faster[:, None] * g, move)
-        size = np.abs(move).max(axis=1)
+        size = row_max(np.abs(move))
         trusted = np.where(uphill, self.reach, trusted)
         move = np.where((size > trusted)[:, None], move * (trusted / size)[:, None], move)
         return np.where((plain > trusted)[:, None], g, move)
@@ -269,7 +271,7 @@ def _newton_step(problem, u, g, present):
 def _search(problem, u, g, r, step, present):
     """Shorten the step until the residual falls; a plain substitution where it never does."""
     norm = np.sqrt(_dot(g, g))
-    longest = np.abs(step).max(axis=1)
+    longest = row_max(np.abs(step))
     step = step * np.minimum(1.0, LONGEST / np.maximum(longest, LONGEST))[:, None]
     new_u, new_g, new_r = u + g, g, r
     open_ = np.ones(u.shape[0], dtype=bool)
@@ -283,7 +285,7 @@ def _search(problem, u, g, r, step, present):
             good = open_
         new_u = np.where(good[:, None], trial, new_u)
         new_g = np.where(good[:, None], trial_g, new_g)
-        new_r = np.where(good, np.abs(trial_g).max(axis=1), new_r)
+        new_r = np.where(good, row_max(np.abs(trial_g)), new_r)
         open_ &= ~good
         if not open_.any():
             break

@@ -17,6 +17,7 @@ from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.phase import DENSE, Feed, reduced_volume
 from screener.equilibrium.rachford_rice import split
 from screener.equilibrium.results import TPD_ZERO, Flash, bad_status
+from screener.equilibrium.rows import row_max, row_sum
 from screener.equilibrium.second_liquid import NOT_TESTED, TWO_LIQUIDS, full_check, known_check
 from screener.equilibrium.stability import FEW, tangent_plane
 from screener.ground.shapes import lanes as as_lanes
@@ -40,25 +41,31 @@ class Split:
         """Some of the lanes."""
         return Split(self.state.take(lanes), self.P[lanes], self.z[lanes], self.beta[lanes], self.kinds)
 
-    def phases(self, ln_K):
+    def phases(self, ln_K, rough=False):
         """beta (n,), x and y (n, c) at these K-values, beta held inside 0..1."""
         z = self.z
         ln_K = np.where(z > 0.0, np.clip(ln_K, -LARGEST, LARGEST), 0.0)
         K = np.exp(ln_K)
-        beta, _, x, y, _, _, _ = split(z, K, np.expm1(ln_K), self.beta)
         up, down = z * K, z / K
-        all_up, all_down = up.sum(axis=1), down.sum(axis=1)
+        all_up, all_down = row_sum(up), row_sum(down)
         liquid = ~(all_up > 1.0)  # no vapour forms: F(0) <= 0
         vapour = ~liquid & ~(all_down > 1.0)  # no liquid forms: F(1) >= 0
-        if liquid.any():
-            beta[liquid], x[liquid], y[liquid] = 0.0, z[liquid], up[liquid] / all_up[liquid, None]
-        if vapour.any():
-            beta[vapour], x[vapour], y[vapour] = 1.0, down[vapour] / all_down[vapour, None], z[vapour]
+        one = liquid | vapour
+        if not one.any():
+            beta, _, x, y, _, _, _ = split(z, K, np.expm1(ln_K), self.beta, rough)
+            return beta, x, y
+        beta = np.where(liquid, 0.0, 1.0)
+        x = np.where(liquid[:, None], z, down / all_down[:, None])
+        y = np.where(liquid[:, None], up / all_up[:, None], z)
+        two = np.flatnonzero(~one)
+        if two.size:
+            found = split(z[two], K[two], np.expm1(ln_K[two]), self.beta[two], rough)
+            beta[two], x[two], y[two] = found[0], found[2], found[3]
         return beta, x, y
 
     def image(self, ln_K):
         """ln phi(x) - ln phi(y)."""
-        self.beta, x, y = self.phases(ln_K)
+        self.beta, x, y = self.phases(ln_K, rough=True)
         return self.state.mix(x).ln_phi(self.P, self.kinds[0]) - self.state.mix(y).ln_phi(self.P, self.kinds[1])
 
 
@@ -74,7 +81,7 @@ class DescendingSplit(Split):
 
     def image(self, ln_K):
         """ln phi(x) - ln phi(y); keeps the Gibbs energy over RT on the way."""
-        self.beta, x, y = self.phases(ln_K)
+        self.beta, x, y = self.phases(ln_K, rough=True)
         ln_phi_x = self.state.mix(x).ln_phi(self.P, self.kinds[0])
         ln_phi_y = self.state.mix(y).ln_phi(self.P, self.kinds[1])
         self.energy = (1.0 - self.beta) * _energy(x, ln_phi_x) + self.beta * _energy(y, ln_phi_y)
@@ -169,7 +176,7 @@ class _Answer:
         self.y[lanes] = np.where(both_liquid[:, None], np.nan, y)
         self.x_W[lanes] = np.where(both_liquid[:, None], y, np.nan)
         self.K[lanes] = np.where((z > 0.0) & ~both_liquid[:, None], np.exp(ln_K), np.nan)
-        self.balance[lanes] = np.abs(z - (1.0 - beta)[:, None] * x - beta[:, None] * y).max(axis=1)
+        self.balance[lanes] = row_max(np.abs(z - (1.0 - beta)[:, None] * x - beta[:, None] * y))
 
 
 def _flash(answer, lanes, fluid, T, P, z, full: bool):
@@ -182,7 +189,7 @@ def _flash(answer, lanes, fluid, T, P, z, full: bool):
     fixed = solve(problem, np.where(present, start, 0.0), present, reach=REACH)
     answer.iterations[lanes] = fixed.iterations
     beta, x, y = problem.phases(fixed.u)
-    apart = fixed.converged & (np.abs(np.where(present, fixed.u, 0.0)).max(axis=1) > TRIVIAL)
+    apart = fixed.converged & (row_max(np.abs(np.where(present, fixed.u, 0.0))) > TRIVIAL)
     inside = (beta > 0.0) & (beta < 1.0)
     two = apart & inside
     one = apart & ~inside & feed.sure & ((beta == 0.0) == feed.liquid)
@@ -243,7 +250,7 @@ def _again(answer, lanes, problem, kinds, start):
     fixed = solve(problem, np.where(present, start, 0.0), present, plain=MOST_AGAIN, reach=REACH)
     answer.iterations[lanes] += fixed.iterations
     beta, x, y = problem.phases(fixed.u)
-    apart = np.abs(np.where(present, fixed.u, 0.0)).max(axis=1) > TRIVIAL
+    apart = row_max(np.abs(np.where(present, fixed.u, 0.0))) > TRIVIAL
     answer.status[lanes[fixed.converged & ~apart]] = Status.TRIVIAL
     answer.residual[lanes] = fixed.residual
     _put_two(answer, lanes, np.flatnonzero(fixed.converged & apart & (beta > 0.0) & (beta < 1.0)), problem, beta, x, y, fixed)

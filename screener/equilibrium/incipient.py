@@ -17,6 +17,7 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.phase import DENSE, reduced_volume
+from screener.equilibrium.rows import row_max, row_sum
 
 LOWEST_P, HIGHEST_P = 1e-9, 1e8  # [Pa] beyond these no answer is given: no use of stored liquids comes near
 LOWEST_T, HIGHEST_T = 50.0, 1500.0  # [K] likewise
@@ -47,9 +48,14 @@ class AtTemperature:
     def image(self, u):
         """ln phi_L - ln phi_V + ln P."""
         P, other = self.close(u)
+        state, feed = self.feed_at(None)
+        return step(feed, state.mix(other), P, self.bubble, u, np.log(P)[:, None])
+
+    def feed_at(self, T):
+        """The fluid at the temperatures given from the start, and the feed in it."""
         if self.mixture is None:
             self.mixture = self.state.mix(self.feed)
-        return step(self.mixture, self.state.mix(other), P, self.bubble, u, np.log(P)[:, None])
+        return self.state, self.mixture
 
 
 class AtPressure:
@@ -83,9 +89,13 @@ class AtPressure:
     def image(self, u):
         """ln phi_L - ln phi_V + h / T."""
         T, other = self.close(u)
+        state, feed = self.feed_at(T)
+        return step(feed, state.mix(other), self.P, self.bubble, u, self.h / T[:, None])
+
+    def feed_at(self, T):
+        """The fluid at T (n,) [K], and the feed in it."""
         state = self.fluid.at(T)
-        shift = self.h / T[:, None]
-        return step(state.mix(self.feed), state.mix(other), self.P, self.bubble, u, shift)
+        return state, state.mix(self.feed)
 
 
 def step(feed, other, P, bubble: bool, u, shift):
@@ -110,9 +120,9 @@ def step(feed, other, P, bubble: bool, u, shift):
 
 def weighted(share, exponent):
     """share exp(exponent) scaled to sum 1 (n, c), and ln of its sum (n,); share zero counts for nothing."""
-    top = np.where(share > 0.0, exponent, -np.inf).max(axis=1)
+    top = row_max(np.where(share > 0.0, exponent, -np.inf))
     part = share * np.exp(np.where(share > 0.0, exponent - top[:, None], 0.0))
-    total = part.sum(axis=1)
+    total = row_sum(part)
     return part / total[:, None], top + np.log(total)
 
 

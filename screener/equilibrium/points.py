@@ -15,6 +15,7 @@ from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_P, LOWEST_T, start
 from screener.equilibrium.ladder import seek
 from screener.equilibrium.phase import DENSE, reduced_volume
+from screener.equilibrium.rows import row_max
 from screener.equilibrium.second_liquid import NOT_TESTED, SPLITS, full_check, splits_anyway
 from screener.equilibrium.stability import FEW
 from screener.ground.constants import T_15C
@@ -77,14 +78,14 @@ def _take_in(out, lanes, fluid, name: str, value, problem, fixed):
     T, P = (value, found) if name == "T" else (found, value)
     shift = np.log(P)[:, None] if name == "T" else problem.h / T[:, None]
     ln_K = np.where(problem.present, fixed.u - shift, 0.0)
-    state = fluid.at(T)
+    state, feed = problem.feed_at(T)
+    new = state.mix(other)
     kinds = "LV" if problem.bubble else "VL"
-    feed, new = state.mix(problem.feed), state.mix(other)
     ratio = reduced_volume(feed, P, feed.Z(P, kinds[0])), reduced_volume(new, P, new.Z(P, kinds[1]))
     volume_L, volume_V = (ratio[0] * feed.b, ratio[1] * new.b)[:: 1 if problem.bubble else -1]
     with np.errstate(invalid="ignore"):
         status = np.where(fixed.converged, int(Status.CONVERGED), int(Status.OUT_OF_STEPS))
-        alike = (np.abs(ln_K).max(axis=1) < TRIVIAL) & ~(np.abs(volume_V / volume_L - 1.0) > TRIVIAL)
+        alike = (row_max(np.abs(ln_K)) < TRIVIAL) & ~(np.abs(volume_V / volume_L - 1.0) > TRIVIAL)
         dense = (ratio[0] < DENSE) & (ratio[1] < DENSE)
         low, high = (LOWEST_P, HIGHEST_P) if name == "T" else (LOWEST_T, HIGHEST_T)
         outside = ~((found > low * 1.000001) & (found < high * 0.999999))

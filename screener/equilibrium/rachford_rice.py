@@ -16,6 +16,7 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.results import PhaseSplit
+from screener.equilibrium.rows import row_max, row_sum
 from screener.ground.errors import ShapeError
 from screener.ground.status import Status
 
@@ -72,7 +73,7 @@ def rachford_rice(z, K) -> PhaseSplit:
     )
 
 
-def split(z, K, K_minus_1=None, start=None):
+def split(z, K, K_minus_1=None, start=None, rough=False):
     """The solver itself: z (n, c) with K = 1 wherever z = 0.
 
     Parameters
@@ -85,6 +86,8 @@ def split(z, K, K_minus_1=None, start=None):
         expm1(ln K) where ln K is what is known: keeps K next to 1 exact. [-]
     start : array, shape (n,), optional
         A vapour fraction to start from. [-]
+    rough : bool
+        For use inside an iteration: the root to 1e-12, fractions not refined.
 
     Returns
     -------
@@ -97,35 +100,38 @@ def split(z, K, K_minus_1=None, start=None):
     """
     e = K - 1.0 if K_minus_1 is None else K_minus_1
     with np.errstate(all="ignore"):
-        e1, eN = e.max(axis=1), e.min(axis=1)
+        e1, eN = row_max(e), -row_max(-e)
         found = (e1 > 0.0) & (eN < 0.0)
         e1, eN = np.where(found, e1, 1.0), np.where(found, eN, -0.5)
-        K1, KN = K.max(axis=1), K.min(axis=1)
+        K1, KN = row_max(K), -row_max(-K)
         # Differences of K are exact among small or large K, those of K - 1 among K next to 1.
         p = np.where((K1 < 2.0)[:, None], e1[:, None] - e, K1[:, None] - K) / e1[:, None]
         q = np.where((KN > 0.5)[:, None], e - eN[:, None], K - KN[:, None]) / -eN[:, None]
         width = 1.0 / e1 - 1.0 / eN
-        a = _start(z, e, p, q)
-        if start is not None:
-            warm = (start + 1.0 / e1) / (-1.0 / eN - start)
-            a = np.where((warm > 0.0) & np.isfinite(warm), warm, a)
-        a, step, passes = _iterate(z, e, p, q, width, np.where(found, np.clip(a, LEAST, MOST), 1.0), found)
+        a = _first(z, e, p, q, e1, eN, start)
+        a, step, passes = _iterate(z, e, p, q, width, np.where(found, a, 1.0), found, 1e-12 if rough else 4.0 * EPS)
         # (1 + a) / (p + a q), scaled so that neither end overflows
         scale = 1.0 + np.minimum(a, 1.0 / a)
         low, high = np.minimum(1.0, 1.0 / a)[:, None], np.minimum(1.0, a)[:, None]
         x = z * (scale[:, None] / (p * low + q * high))
         V = _fraction(-1.0 / e1, -1.0 / eN, a)
         L = _fraction(K1 / e1, KN / eN, a)
-        V, L = _refine(z, K, e, V, L)
+        if not rough:
+            V, L = _refine(z, K, e, V, L)
     return V, L, x, K * x, step, passes, found
 
 
-def _start(z, e, p, q):
-    """Where light ends at p = 0 and heavy ends at q = 0 would balance."""
+def _first(z, e, p, q, e1, eN, start):
+    """First a: from a vapour fraction between the poles, else where both ends of the K-values would balance."""
+    if start is not None:
+        a = (start + 1.0 / e1) / (-1.0 / eN - start)
+        if ((a > LEAST) & (a < MOST)).all():
+            return a
     light, heavy = e > 0.0, e < 0.0
-    up = np.sum(np.where(light, z * e / np.where(light, q, 1.0), 0.0), axis=1)
-    down = np.sum(np.where(heavy, -z * e / np.where(heavy, p, 1.0), 0.0), axis=1)
-    return up / down
+    up = row_sum(np.where(light, z * e / np.where(light, q, 1.0), 0.0))
+    down = row_sum(np.where(heavy, -z * e / np.where(heavy, p, 1.0), 0.0))
+    cold = np.clip(up / down, LEAST, MOST)
+    return cold if start is None else np.where((a > LEAST) & (a < MOST), a, cold)
 
 
 def _fraction(at_zero, at_infinity, a):
@@ -133,7 +139,7 @@ def _fraction(at_zero, at_infinity, a):
     return np.where(a < 1.0, (at_zero + a * at_infinity) / (1.0 + a), (at_zero / a + at_infinity) / (1.0 / a + 1.0))
 
 
-def _iterate(z, e, p, q, width, a, found):
+def _iterate(z, e, p, q, width, a, found, enough):
     """Newton on G left of the root and on H right of it, in relative steps of a."""
     passes = np.zeros(a.shape, dtype=int)
     step = np.zeros(a.shape)
@@ -149,13 +155,13 @@ def _iterate(z, e, p, q, width, a, found):
         # t is (K-1)/(p + a q), times a where a < 1: neither end of a then overflows its square
         t = eA * (low * high)[:, None] / (pA * low[:, None] + qA * high[:, None])
         zt = zA * t
-        r = (low + high) * zt.sum(axis=1) / (wA * np.einsum("nc,nc->n", zt, t))
+        r = (low + high) * row_sum(zt) / (wA * np.einsum("nc,nc->n", zt, t))
         new = np.where(r > 0.0, aA * (1.0 + r), aA / (1.0 - r))
         new = np.where(np.isfinite(new), np.clip(new, LEAST, MOST), aA)
         size = np.abs(new - aA) / aA
         passes[active] += 1
         a[active], step[active] = new, size
-        going = (size > 4.0 * EPS) & ~((size < 1e-9) & (size >= 0.5 * last))
+        going = (size > enough) & ~((size < 1e-9) & (size >= 0.5 * last))
         aA, last = new, size
         if not going.all():
             active, last = active[going], last[going]
@@ -177,7 +183,7 @@ def _refine(z, K, e, V, L):
         D = constant + fraction[:, None] * slope
         ratio = slope / D
         zr = z * ratio
-        new = fraction + zr.sum(axis=1) / np.einsum("nc,nc->n", zr, ratio)
-        take = (D.min(axis=1) > 0.05) & np.isfinite(new)
+        new = fraction + row_sum(zr) / np.einsum("nc,nc->n", zr, ratio)
+        take = (row_max(-D) < -0.05) & np.isfinite(new)
         fraction = np.where(take, new, fraction)
     return np.where(small_L, 1.0 - fraction, fraction), np.where(small_L, fraction, 1.0 - fraction)

@@ -20,6 +20,7 @@ import numpy as np
 from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.phase import Feed
 from screener.equilibrium.results import TPD_ZERO, Stability, bad_status
+from screener.equilibrium.rows import row_max, row_sum
 from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
 
@@ -46,9 +47,9 @@ class Trials:
 
     def share(self, ln_W):
         """w (n, c) [-], and ln sum W (n,) [-]."""
-        top = np.where(self.present, ln_W, -np.inf).max(axis=1)
+        top = row_max(np.where(self.present, ln_W, -np.inf))
         W = np.where(self.present, np.exp(ln_W - top[:, None]), 0.0)
-        total = W.sum(axis=1)
+        total = row_sum(W)
         return W / total[:, None], top + np.log(total)
 
     def image(self, ln_W):
@@ -226,7 +227,7 @@ def _try(found, lanes, trials, start, ln_z):
     liquid = trials.liquid(w)
     if lost.size:
         liquid[lost] = lower.liquid(w[lost])
-    away = np.where(trials.present, np.abs(fixed.u - ln_z[lanes]), 0.0).max(axis=1)
+    away = row_max(np.where(trials.present, np.abs(fixed.u - ln_z[lanes]), 0.0))
     # A trial that came back to the feed, on the feed's own root, has distance zero whatever rounding says.
     tpd = np.where((away < TRIVIAL) & (np.abs(ln_total) < 100.0 * TPD_ZERO), 0.0, -ln_total)
     usable = fixed.converged | (fixed.residual < 1e-6)  # next to a stationary point the distance is second order

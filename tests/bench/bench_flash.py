@@ -53,7 +53,7 @@ def loop(function, points):
 
 def row(what, points, per_point, peers=(), note=""):
     """One line of the table."""
-    ratios = "".join(f"{name} {seconds_ * 1e6:9.0f} us ({seconds_ / per_point:6.0f} x)  " for name, seconds_ in peers)
+    ratios = "".join(f"{name} {seconds_ * 1e6:9.0f} us ({seconds_ / per_point:6.1f} x)  " for name, seconds_ in peers)
     print(f"{what:34s} {points:6d} points {per_point * 1e6:9.1f} us/point  {ratios}{note}")
 
 

@@ -238,6 +238,17 @@ def test_zero_shares_change_nothing(odd):
         assert more.y[0, 2:].tolist() == [0.0, 0.0] and np.isnan(more.K[0, 2:]).all()
 
 
+def test_ethanol_from_none_to_a_trace_moves_nothing():
+    """One model for every blend: no jump where ethanol enters."""
+    names = ["n-butane", "isopentane", "n-hexane", "toluene"]
+    z, T = np.array([0.1, 0.3, 0.3, 0.3]), np.array([250.0, 290.0, 330.0])
+    without = bubble_pressure(Fluid.of(names), T, z)
+    for share in (0.0, 1e-9):
+        with_it = bubble_pressure(Fluid.of([*names, "ethanol"]), T, np.append(z * (1.0 - share), share))
+        # ln gamma at infinite dilution is some 3: a share of 1e-9 moves the pressure by some 1e-8
+        assert with_it.P == pytest.approx(without.P, rel=1e-10 if share == 0.0 else 1e-7)
+
+
 def test_arguments_that_cannot_be_meant(gasoline):
     fluid, z = gasoline
     with pytest.raises(ShapeError, match="composition: got shape"):
