@@ -7,8 +7,9 @@ Run from the top folder (needs thermo and chemicals, no network):
 To add a species: add a row to data/species/identity.csv (CAS number, canonical name, family,
 synonyms separated by semicolons) and run this. The script stops with the reason when no
 vapour-pressure curve, density, heat capacity or critical point is to be had; then the
-species cannot be used as itself, and a row of data/species/stand_ins.csv may name another
-that stands for it. Hand choices are in `PREFER` and `GROUPS_BY_HAND` below, each with its reason.
+species cannot be used as itself; a row in data/species/outside.csv (CAS number, name, family)
+makes the script name the nearest one that stands for it in data/species/stand_ins.csv. Hand
+choices are in `PREFER` and `GROUPS_BY_HAND` below, each with its reason.
 """
 
 from __future__ import annotations
@@ -30,14 +31,19 @@ from screener.species.vapour_pressure import choose_vapour_pressure
 
 PREFER = {  # CAS -> curve taken against the rule
     "95-93-2": "ANTOINE_POLING",  # durene: the other curve below 352 K is of the solid
-    "291-64-5": "ANTOINE_POLING",  # cycloheptane: the wide correlation is no smooth curve (1.4 % off any six-term form)
+    "291-64-5": "ANTOINE_POLING",  # cycloheptane: the wide correlation is no smooth curve
     # n-C14 and n-C18: of the curves for C13-C20, the set that makes ln P at 312-350 K smoothest along
     # n-C10 to n-C20 (sum of squared second differences) has these two
     "629-59-4": "DIPPR_PERRY_8E",
     "593-45-3": "DIPPR_PERRY_8E",
 }
 GROUPS_BY_HAND = {  # CAS -> subgroups, where the assignment table has none; checked by the atom balance
-    "112-63-0": {1: 2, 2: 11, 6: 2, 22: 1},  # methyl linoleate, as methyl oleate with one CH2-CH2 turned CH=CH
+    "112-63-0": {
+        1: 2,
+        2: 11,
+        6: 2,
+        22: 1,
+    },  # methyl linoleate, as methyl oleate with one CH2-CH2 turned CH=CH
     "301-00-8": {1: 2, 2: 9, 6: 3, 22: 1},  # methyl linolenate, likewise
 }
 FIRE_SOURCES = {"iec-60079-20-1": "IEC 60079-20-1 (2010)", "nfpa-497": "NFPA 497 (2008)"}
@@ -46,9 +52,18 @@ BAD_FLASH = {  # (CAS, source): flash points of the open tables that are wrong o
     ("1634-04-4", "nfpa-497"): "MTBE -80 degC",
     ("109-67-1", "nfpa-497"): "1-pentene -18 degC",
     ("74-84-0", "nfpa-497"): "ethane -29 degC: vapour pressure there is 450 times the lower limit",
-    ("79-29-8", "iec-60079-20-1"): "2,3-dimethylbutane -20 degC: vapour pressure there is 3.4 times the lower limit",
-    ("96-37-7", "iec-60079-20-1"): "methylcyclopentane -10 degC: vapour pressure there is 3.2 times the lower limit",
-    ("142-29-0", "iec-60079-20-1"): "cyclopentene -22 degC: vapour pressure there is 3.7 times the lower limit",
+    (
+        "79-29-8",
+        "iec-60079-20-1",
+    ): "2,3-dimethylbutane -20 degC: vapour pressure there is 3.4 times the lower limit",
+    (
+        "96-37-7",
+        "iec-60079-20-1",
+    ): "methylcyclopentane -10 degC: vapour pressure there is 3.2 times the lower limit",
+    (
+        "142-29-0",
+        "iec-60079-20-1",
+    ): "cyclopentene -22 degC: vapour pressure there is 3.7 times the lower limit",
 }
 
 
@@ -127,8 +142,16 @@ def fire(cas: str, name: str) -> dict | None:
     row = {"cas": cas, "name": name}
     for column, get, listed in (
         ("flash_point", chemicals.T_flash, chemicals.T_flash_methods),
-        ("LFL", lambda c, method: chemicals.LFL(CASRN=c, method=method), lambda c: chemicals.LFL_methods(CASRN=c)),
-        ("UFL", lambda c, method: chemicals.UFL(CASRN=c, method=method), lambda c: chemicals.UFL_methods(CASRN=c)),
+        (
+            "LFL",
+            lambda c, method: chemicals.LFL(CASRN=c, method=method),
+            lambda c: chemicals.LFL_methods(CASRN=c),
+        ),
+        (
+            "UFL",
+            lambda c, method: chemicals.UFL(CASRN=c, method=method),
+            lambda c: chemicals.UFL_methods(CASRN=c),
+        ),
     ):
         row[column], row[f"{column}_source"] = None, ""
         for key, method in FIRE_SOURCES.items():
@@ -169,7 +192,9 @@ def stand_ins(rows: list[dict]) -> list[dict]:
             if not near:
                 raise SystemExit(f"{out['name']}: nothing near enough to stand for it")
             other, apart, best = min(near, key=lambda n: n[:2])
-            words = "same formula and family" if other == 0 else f"same family, {best['formula']} for {formula}"
+            words = (
+                "same formula and family" if other == 0 else f"same family, {best['formula']} for {formula}"
+            )
             found.append({
                 "cas": out["cas"], "name": out["name"], "stands_in": best["cas"], "stands_in_name": best["name"],
                 "reason": f"{words}, boils {apart:.1f} K apart",
@@ -214,11 +239,17 @@ def kij(names: dict[str, str]) -> None:
     for key, value in found.items():
         i, j = sorted(key.split(), key=lambda cas: list(names).index(cas) if cas in names else -1)
         if i in names and j in names:
-            rows.append({"cas_i": i, "cas_j": j, "name_i": names[i], "name_j": names[j], "kij": float(value["kij"])})
+            rows.append(
+                {"cas_i": i, "cas_j": j, "name_i": names[i], "name_j": names[j], "kij": float(value["kij"])}
+            )
     for row in rows:
         family = [r["kij"] for r in rows if r["cas_i"] == row["cas_i"] and r is not row]
         far = abs(row["kij"] - np.median(family)) > 0.25 if family else abs(row["kij"]) > 0.2
-        row |= {"eos": "PR", "used": 0 if far else 1, "reason": "out of family: more than 0.25 off" if far else ""}
+        row |= {
+            "eos": "PR",
+            "used": 0 if far else 1,
+            "reason": "out of family: more than 0.25 off" if far else "",
+        }
     rows.sort(key=lambda r: (list(names).index(r["cas_i"]), list(names).index(r["cas_j"])))
     write("pairs/kij.csv", ["eos", "cas_i", "cas_j", "name_i", "name_j", "kij", "used", "reason"], rows)
 
@@ -234,7 +265,11 @@ def main() -> None:
     if faults:
         raise SystemExit("not to be had:\n" + "\n".join(faults))
     for table in rows[0]:
-        write(f"species/{table}.csv", list(rows[0][table]), [row[table] for row in rows if row[table].get("groups") != ""])
+        write(
+            f"species/{table}.csv",
+            list(rows[0][table]),
+            [row[table] for row in rows if row[table].get("groups") != ""],
+        )
     flames = [f for f in (fire(row["cas"], row["name"]) for row in identity()) if f]
     write("species/flammability.csv", list(flames[0]), flames)
     others = stand_ins(rows)

@@ -19,9 +19,9 @@ def fit_alpha(curve, Tc, Pc):
     """Alpha constants, and mean and worst relative miss of the vapour pressure of the equation [-].
 
     Fitted over 230-400 K clipped to 0.9 Tc (light species: their saturation range up to
-    0.98 Tc, with three constants only), with a fifth of the weight below 230 K, and above 400 K to 0.75 Tc for heavy
-    ones. The misses are found by solving the equation for its vapour pressure between 250
-    and 350 K, below 0.9 Tc (light: over the fitted range).
+    0.98 Tc, with three constants only), with a fifth of the weight below 230 K, and above
+    400 K to 0.75 Tc for heavy ones. The misses are found by solving the equation for its
+    vapour pressure between 250 and 350 K, below 0.9 Tc (light: over the fitted range).
     """
     light = Tc <= LIGHT
     top = 0.98 * Tc if light else min(400.0, 0.9 * Tc)
@@ -121,7 +121,10 @@ def density_at_15(cas, MW, Tc, Pc, Tb, density):
     """
     if Tc > LIGHT:
         return float(forms.density_basis(288.15) @ density), ""
-    for T, words in ((288.15, ""), (Tb, f"effective: no liquid at 15 degC; saturated liquid at {Tb:.1f} K taken")):
+    for T, words in (
+        (288.15, ""),
+        (Tb, f"effective: no liquid at 15 degC; saturated liquid at {Tb:.1f} K taken"),
+    ):
         for c in library.liquid_densities(cas, MW, Tc, Pc):
             value = c.at(np.array([T]))[0]
             if np.isfinite(value) and T <= 0.97 * Tc:

@@ -49,7 +49,9 @@ def find(text: str) -> Species:
     cas = _names().get(_key(str(text)))
     if cas is None:
         spellings = [name.lower() for name in names()]
-        spellings += [s.lower() for row in tables.by_cas("identity").values() for s in row["synonyms"].split(";") if s]
+        spellings += [
+            s.lower() for row in tables.by_cas("identity").values() for s in row["synonyms"].split(";") if s
+        ]
         raise UnknownName("", str(text), "species", spellings)
     return tables.species(cas)
 
@@ -105,7 +107,10 @@ def columns(wanted) -> Columns:
     shift = column(lambda one: one.translation).reshape(len(found), 2)
     return Columns(
         names=tuple(one.name for one in found),
-        **{name: column(lambda one, name=name: getattr(one, name)) for name in ("MW", "Tc", "Pc", "omega", "Tb")},
+        **{
+            name: column(lambda one, name=name: getattr(one, name))
+            for name in ("MW", "Tc", "Pc", "omega", "Tb")
+        },
         **{name: alpha[:, i] for i, name in enumerate("LMNCD")},
         c0=shift[:, 0],
         c1=shift[:, 1],

@@ -7,9 +7,12 @@ import numpy as np
 from screener.species import forms, pure
 
 FALLING = np.geomspace(195.0, 1050.0, 60)  # [K] alpha must fall from each of these to the next; our choice
-SUPERCRITICAL = 500.0, 0.1  # [K], [-] alpha stays above the second up to the first, so that gases keep some attraction:
-# second virial coefficients at 300 K ask for 0.48 (nitrogen, Tr 2.4) and 0.16 (hydrogen, Tr 9); our choice
-TWU_ENOUGH = 0.0015  # largest relative error in vapour pressure up to which three constants are kept; our choice
+# alpha [-] stays above the second up to the first [K], so that gases keep some attraction: second virial
+# coefficients at 300 K ask for 0.48 (nitrogen, Tr 2.4) and 0.16 (hydrogen, Tr 9); our choice
+SUPERCRITICAL = 500.0, 0.1
+TWU_ENOUGH = (
+    0.0015  # largest relative miss in vapour pressure up to which three constants are kept; our choice
+)
 
 
 def psat_coefficients(T, P, digits=13):
@@ -27,8 +30,9 @@ def alpha_constants(T, P, Tc, Pc, weight, five=True):
     The alpha that makes the equation saturate exactly is found at each point; then
     ln alpha = -h ln Tr + L (1 - Tr^g) [+ C s^3 + D s^4] is linear in all but g, and g is
     searched on a line among the values that let alpha fall with temperature everywhere and
-    leave a supercritical gas some attraction. Each point counts by its weight [-] and by what an error of alpha does to the vapour
-    pressure there. C and D stay zero where three constants are enough, or `five` is false.
+    leave a supercritical gas some attraction. Each point counts by its weight [-] and by
+    what an error of alpha does to the vapour pressure there. C and D stay zero where three
+    constants are enough, or `five` is false.
     """
     Tr = np.asarray(T) / Tc
     exact, sensitivity = pure.alpha_at_saturation(Tr, np.asarray(P) / Pc)
@@ -62,7 +66,8 @@ def _search(Tr, ln_alpha, sensitivity, weight, Tc, terms):
         miss = (basis @ solution - ln_alpha) * sensitivity
         beyond = far @ solution
         bad = np.any(np.diff(beyond) > 0.0) or np.interp(end, falling, beyond) < np.log(SUPERCRITICAL[1])
-        return (np.inf if bad else float(np.sum((miss * weight) ** 2))), float(np.abs(miss[weight >= 1.0]).max()), g, solution
+        total = np.inf if bad else float(np.sum((miss * weight) ** 2))
+        return total, float(np.abs(miss[weight >= 1.0]).max()), g, solution
 
     grid = np.geomspace(0.1, 6.0, 60)
     for _ in range(5):
@@ -86,7 +91,7 @@ def translation(T, v_pr, v_liquid, linear):
 
 
 def polynomial(T, value, degree, digits=12):
-    """Coefficients a0..a_degree of a polynomial in T [K] fitted to values, and the largest relative error [-]."""
+    """Coefficients a0..a_degree of a polynomial in T [K] fitted to values, and the largest miss [-]."""
     t = np.asarray(T) / forms.T_SCALE
     basis = np.stack([t**k for k in range(degree + 1)], axis=1)
     solution = np.linalg.lstsq(basis / np.asarray(value)[:, None], np.ones_like(t), rcond=None)[0]

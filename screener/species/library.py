@@ -148,7 +148,9 @@ def liquid_densities(cas, MW, Tc, Pc):
     found = []
     for c in _candidates(volume, DENSITY_SOURCES):
         low = max(c.low, 0.25 * Tc)
-        found.append(Candidate(c.method, c.source, low, min(c.high, 0.97 * Tc), lambda t, f=c.function: MW / f(t)))
+        found.append(
+            Candidate(c.method, c.source, low, min(c.high, 0.97 * Tc), lambda t, f=c.function: MW / f(t))
+        )
     return found
 
 

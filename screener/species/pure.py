@@ -84,7 +84,9 @@ def alpha_at_saturation(Tr, Pr, steps=200):
             gas_like = np.where(np.isfinite(vapour), vapour, liquid) > U_CRITICAL
             gap = _ln_fugacity(liquid, a, B) - _ln_fugacity(vapour, a, B)
             slope = _log_term(vapour) - _log_term(liquid)
-            step = np.where(one, np.where(gas_like, -0.003, 0.003) * a, np.clip(gap / slope, -0.1 * a, 0.1 * a))
+            step = np.where(
+                one, np.where(gas_like, -0.003, 0.003) * a, np.clip(gap / slope, -0.1 * a, 0.1 * a)
+            )
             a = a - step
             if np.all(np.abs(step) < 1e-13 * a):
                 break
@@ -94,7 +96,7 @@ def alpha_at_saturation(Tr, Pr, steps=200):
 
 
 def psat_of_alpha(T, alpha, Tc, Pc, P_guess, steps=60):
-    """Vapour pressure [Pa] of the equation at T [K] with the alpha [-] given; NaN where it does not saturate."""
+    """Vapour pressure [Pa] of the equation at T [K] with the alpha [-] given; NaN without saturation."""
     T, alpha = np.asarray(T, dtype=float), np.asarray(alpha, dtype=float)
     a = OMEGA_A / OMEGA_B * alpha * Tc / T
     scale = OMEGA_B * Tc / (Pc * T)

@@ -29,7 +29,10 @@ class Curve:
 
 @dataclass(frozen=True)
 class Limit:
-    """An exposure limit: kind ("TWA", "STEL", "ceiling", "IDLH"), value [mole fraction in air], agency, date, mark."""
+    """An exposure limit and how it is known.
+
+    kind "TWA", "STEL", "ceiling", "peak" or "IDLH"; value [mole fraction in air].
+    """
 
     kind: str
     value: float
@@ -88,10 +91,12 @@ class Species:
         """Vapour pressure [Pa] of the chosen curve at T [K], scalar or (n,); NaN outside its range."""
         T = np.asarray(T, dtype=float)
         inside = (T >= self.curve.T_low) & (T <= self.curve.T_high)
-        P = np.where(inside, forms.psat(self.curve.coefficients, np.where(inside, T, self.curve.T_low)), np.nan)
+        P = np.where(
+            inside, forms.psat(self.curve.coefficients, np.where(inside, T, self.curve.T_low)), np.nan
+        )
         return float(P) if P.ndim == 0 else P
 
     @property
     def psat_error(self) -> float:
-        """Relative error bar of the vapour pressure within 250-350 K [-]: the worse of spread and extension."""
+        """Relative error bar of the vapour pressure in 250-350 K [-]: the worse of spread and extension."""
         return max(self.psat_spread or 0.0, self.psat_extension)

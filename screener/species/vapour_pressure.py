@@ -14,7 +14,8 @@ Rule, in this order:
 
 Where the chosen curve is not valid, it is continued by the geometric mean of two Wagner
 forms through the critical point and the last valid point (upwards also through 1 atm at the
-boiling point); half their distance is the extension band. tests/species/test_continuation.py measures both on species whose curve is known.
+boiling point); half their distance is the extension band. tests/species/test_continuation.py
+measures both on species whose curve is known.
 """
 
 from __future__ import annotations
@@ -34,7 +35,9 @@ NEAR_MEDIAN = 0.03  # [-] rule 5; our choice
 REACH, CLOSE = 60.0, 0.005  # [K], [-] rule 6; our choice
 WINDOW = 120.0  # [K] stretch of a curve that its continuation is fitted to; our choice
 LIGHT = 340.0  # [K] species with Tc below this are fitted on their own saturation range; our choice
-LOWEST = 200.0  # [K] curves are continued down to here (flash points of light species lie near 215 K); our choice
+LOWEST = (
+    200.0  # [K] curves are continued down to here (flash points of light species lie near 215 K); our choice
+)
 ATMOSPHERE = 101325.0  # [Pa] the boiling points of the library are at 1 atm
 REFERENCE = ("iapws-2007", "helmholtz")
 

@@ -95,7 +95,9 @@ def test_tables_speak_of_the_same_species():
         assert all(identity[row["cas"]] == row["name"] for row in rows(f"species/{name}")), name
     assert {row["stands_in"] for row in rows("species/stand_ins")} <= set(identity)
     assert not {row["cas"] for row in rows("species/outside")} & set(identity)
-    assert [row["cas"] for row in rows("species/outside")] == [row["cas"] for row in rows("species/stand_ins")]
+    assert [row["cas"] for row in rows("species/outside")] == [
+        row["cas"] for row in rows("species/stand_ins")
+    ]
 
 
 def test_source_columns_are_keys():

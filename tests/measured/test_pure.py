@@ -46,7 +46,7 @@ def test_vapour_pressure_against_measurement(name):
         f"{name:12s} n {len(T):3d}  curve mean {np.mean(np.abs(curve)):.2f} % worst {np.max(np.abs(curve)):.2f} %"
         f"  equation mean {np.mean(np.abs(state)):.2f} % worst {np.max(np.abs(state)):.2f} %"
     )
-    # 1 %: the measurements scatter by 0.2 to 0.5 %, isooctane's from two laboratories by 3 % at its coldest point
+    # 1 %: measurements scatter by 0.2 to 0.5 %, isooctane's (two laboratories) by 3 % at its coldest
     assert np.mean(np.abs(curve)) <= 1.0
     assert np.mean(np.abs(state)) <= 1.0
     # 3.5 %: no single point worse than that coldest one
@@ -70,7 +70,7 @@ def test_liquid_density_against_reference_equation(name):
 
 
 def test_density_at_15_degrees():
-    # API and ISO tables are built on this temperature: the standard density must hold closer than the equation
+    # trade volumes stand on this temperature: the standard density must hold closer than the equation
     for name in TABLES:
         data, one = read(f"{name}_sat"), find(name)
         reference = np.interp(288.15, data["T_K"], data["rhoL_kg_m3"])

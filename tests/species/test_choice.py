@@ -45,7 +45,9 @@ def test_repeats_of_one_data_set_count_once(offer):
 
 
 def test_lone_outlier_among_four_is_rejected(offer):
-    found = offer(candidate("A", off=0.08), candidate("B"), candidate("C", off=0.004), candidate("D", off=-0.004))
+    found = offer(
+        candidate("A", off=0.08), candidate("B"), candidate("C", off=0.004), candidate("D", off=-0.004)
+    )
     assert found.method == "B" and "rejected A" in found.note and found.spread < 0.01
 
 

@@ -22,7 +22,11 @@ def trials():
     found = {20: [], 40: [], 60: []}
     for name in names():
         one = find(name)
-        if one.family not in HYDROCARBONS or one.Tc < 400.0 or one.curve.source not in ("helmholtz", "poling-2001"):
+        if (
+            one.family not in HYDROCARBONS
+            or one.Tc < 400.0
+            or one.curve.source not in ("helmholtz", "poling-2001")
+        ):
             continue
         offered = {c.method: c for c in library.vapour_pressures(one.cas)}
         wide = offered.get("HEOS_FIT") or offered.get("WAGNER_POLING")

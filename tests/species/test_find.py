@@ -34,14 +34,20 @@ def test_every_name_and_synonym_finds_its_species():
         assert all(find(other) is one for other in (*one.synonyms, one.cas, name.upper()))
 
 
-@pytest.mark.parametrize("typed, nearest", [("ethanl", "ethanol"), ("tolune", "toluene"), ("n-butan", "n-butane")])
+@pytest.mark.parametrize(
+    "typed, nearest", [("ethanl", "ethanol"), ("tolune", "toluene"), ("n-butan", "n-butane")]
+)
 def test_a_slip_names_the_nearest(typed, nearest):
-    with pytest.raises(UnknownName, match=f"'{typed}' is not a known species; nearest: .*{nearest}") as caught:
+    with pytest.raises(
+        UnknownName, match=f"'{typed}' is not a known species; nearest: .*{nearest}"
+    ) as caught:
         find(typed)
     assert nearest in caught.value.nearest
 
 
-@pytest.mark.parametrize("typed", ["", "   ", "\n", "naphtha", "xylene", "C5", "propanol", "12345", "µ-🛢", "a" * 5000])
+@pytest.mark.parametrize(
+    "typed", ["", "   ", "\n", "naphtha", "xylene", "C5", "propanol", "12345", "µ-🛢", "a" * 5000]
+)
 def test_odd_and_ambiguous_input_is_refused(typed):
     with pytest.raises(UnknownName, match="is not a known species"):
         find(typed)

@@ -1,4 +1,4 @@
-"""What the fitted numbers promise: alpha, translation, heat capacity, vapour pressure at the boiling point."""
+"""What the fitted numbers promise: alpha, translation, heat capacity, boiling point."""
 
 from __future__ import annotations
 
@@ -21,7 +21,7 @@ def table(name):
 
 
 def misses(one):
-    """Relative misses of the equation against its curve, 250-350 K below 0.9 Tc, recomputed from the tables."""
+    """Relative misses of the equation against its curve, 250-350 K below 0.9 Tc, recomputed."""
     low, high = (250.0, min(350.0, 0.9 * one.Tc)) if one.Tc > 340.0 else (one.curve.T_low, 0.97 * one.Tc)
     T = np.linspace(max(low, one.curve.T_low), high, 21)
     P = one.psat(T)
@@ -43,18 +43,25 @@ def test_equation_reproduces_the_curve():
 
 
 def test_saturation_by_an_independent_route():
-    """Equal fugacities with roots of the cubic in Z from numpy.roots, at pressures the table's solver found."""
+    """Equal fugacities with roots of the cubic in Z from numpy.roots, at pressures the solver found."""
     for name in ("n-butane", "toluene", "ethanol", "water", "nitrogen"):
         one = find(name)
         for T in np.linspace(0.6 * one.Tc, min(0.85 * one.Tc, one.curve.T_high), 3):
             a = float(alpha(T / one.Tc, *one.alpha))
-            P = float(pure.psat_of_alpha(np.array([T]), np.array([a]), one.Tc, one.Pc, np.array([one.psat(T)]))[0])
+            P = float(
+                pure.psat_of_alpha(np.array([T]), np.array([a]), one.Tc, one.Pc, np.array([one.psat(T)]))[0]
+            )
             A = pure.OMEGA_A * a * (P / one.Pc) / (T / one.Tc) ** 2
             B = pure.OMEGA_B * (P / one.Pc) / (T / one.Tc)
             roots = np.roots([1.0, B - 1.0, A - 3.0 * B**2 - 2.0 * B, B**3 + B**2 - A * B])
             Z = np.sort(roots[np.abs(roots.imag) < 1e-10].real)
-            ln_phi = Z - 1.0 - np.log(Z - B) - A / (2.0 * np.sqrt(2.0) * B) * np.log(
-                (Z + (1.0 + np.sqrt(2.0)) * B) / (Z + (1.0 - np.sqrt(2.0)) * B)
+            ln_phi = (
+                Z
+                - 1.0
+                - np.log(Z - B)
+                - A
+                / (2.0 * np.sqrt(2.0) * B)
+                * np.log((Z + (1.0 + np.sqrt(2.0)) * B) / (Z + (1.0 - np.sqrt(2.0)) * B))
             )
             assert abs(ln_phi[0] - ln_phi[-1]) < 1e-8  # numpy.roots is good to about 1e-10 in the small root
 
@@ -76,7 +83,7 @@ def test_supercritical_gases_keep_their_attraction():
         one = find(name)
         b = pure.covolume(one.Tc, one.Pc)
         a = pure.OMEGA_A * (R * one.Tc) ** 2 / one.Pc * alpha(300.0 / one.Tc, *one.alpha)
-        # 12 cm3/mol: a cubic equation with its b is off by some cm3/mol anyway; at 1 bar it is 0.05 % in fugacity
+        # 12 cm3/mol: a cubic equation is off by some cm3/mol anyway; at 1 bar it is 0.05 % in fugacity
         assert 1e6 * (b - a / (R * 300.0)) == pytest.approx(B, abs=12.0), name
 
 
@@ -107,7 +114,9 @@ def test_translation_gives_the_density():
         miss = np.abs(one.MW / v / rho - 1.0)
         found.append((float(np.mean(miss)), one.name))
         assert np.mean(miss) <= 0.01 and np.max(miss) <= 0.03, one.name  # propane bends most: 1.7 % at 333 K
-    print(f"{len(found)} species: density mean {100 * np.mean([f[0] for f in found]):.3f} %, worst {max(found)}")
+    print(
+        f"{len(found)} species: density mean {100 * np.mean([f[0] for f in found]):.3f} %, worst {max(found)}"
+    )
 
 
 def test_boiling_point_is_one_atmosphere():
@@ -153,7 +162,7 @@ def test_heat_of_vaporisation_is_plausible():
 
 def test_density_at_15_degrees():
     # values printed in handbooks for 15 degC: benzene 884.2 (20 degC 879.0 + 1.07/K), water 999.1 kg/m3;
-    # ethanol 793.5 and methanol 795.9 at 15 degC (OIML tables, density in air corrected): from memory, so 0.2 %
+    # ethanol 793.5 and methanol 795.9 at 15 degC : from memory, so 0.2 %
     for name, rho in {"benzene": 884.2, "water": 999.1, "ethanol": 793.5, "methanol": 796.0}.items():
         assert find(name).rho_15 == pytest.approx(rho, rel=2e-3), name
     assert "effective" in find("nitrogen").rho_note and "effective" not in find("propane").rho_note

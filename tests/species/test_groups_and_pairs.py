@@ -24,7 +24,15 @@ def test_groups_make_up_the_formula():
             assert {e: n for e, n in atoms(one.groups).items() if n} == formula(one.formula), name
         else:
             without.append(name)
-    assert set(without) == {"hydrogen", "nitrogen", "oxygen", "carbon dioxide", "hydrogen sulfide", "methane", "ethylene"}
+    assert set(without) == {
+        "hydrogen",
+        "nitrogen",
+        "oxygen",
+        "carbon dioxide",
+        "hydrogen sulfide",
+        "methane",
+        "ethylene",
+    }
     assert all(find(name).family == "gas" for name in without)
 
 

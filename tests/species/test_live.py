@@ -30,7 +30,9 @@ def test_a_new_species_is_fitted_like_the_others():
 
 
 def test_refused_without_a_curve():
-    with pytest.raises(InputError, match=r"'2-methyl-2-pentene' \(625-27-4\) cannot be used: .*no vapour-pressure curve"):
+    with pytest.raises(
+        InputError, match=r"'2-methyl-2-pentene' \(625-27-4\) cannot be used: .*no vapour-pressure curve"
+    ):
         find_live("2-methyl-2-pentene")
     with pytest.raises(InputError, match="cannot be used"):
         find_live("glucose")
