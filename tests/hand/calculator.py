@@ -244,7 +244,8 @@ def suction(rho, Ps, Pb, nu, rate, length, bore, K, level, nozzle, pump, rough=0
     npsh = (Ps - Pb) / rho / G + level - pump - hf
     lock = Ps + rho * G * (level - pump - hf - vh) - Pb
     mouth = Ps + rho * G * (level - nozzle - 1.57 * vh) - Pb
-    print(f"rho {rho:.1f} u {u:.4f} nu {nu:.3g} Re {Re:.4g} f {f:.5f} velocity head {vh:.4f} friction {hf:.3f}")
+    print(f"rho {rho:.1f} u {u:.4f} nu {nu:.3g} Re {Re:.4g} f {f:.5f} "
+          f"velocity head {vh:.4f} friction {hf:.3f}")
     print(f"NPSH {npsh:.3f} m; pressure less bubble pressure: pump {lock:.0f} Pa, nozzle {mouth:.0f} Pa")
 
 
@@ -351,7 +352,8 @@ def condensate():
     P = bubble(liquid, T, 16, "condensate")
     bubble(liquid, 296.05, 16, "condensate")
     top = 1.05 * bubble(liquid, ends[1][1] + 273.15)
-    print(f"high end: {ends[1][1]:.2f} degC {top:.0f} Pa; n-hexane at 46 degC {pure('n-hexane').psat(T):.0f} Pa")
+    print(f"high end: {ends[1][1]:.2f} degC {top:.0f} Pa; "
+          f"n-hexane at 46 degC {pure('n-hexane').psat(T):.0f} Pa")
     suction(density(liquid, T), 97600, P, viscosity("n-octane", T), 200, 60, 0.203, 4.5, 1.0, 0.5, 0.2)
     suction(density(liquid, T), 97600, top, viscosity("n-octane", T), 200, 60, 0.203, 4.5, 1.0, 0.5, 0.2)
 
