@@ -5,7 +5,6 @@ import sys
 
 import screener.equilibrium as floor
 
-
 FLASHES = {"bubble_pressure", "bubble_temperature", "dew_pressure", "dew_temperature", "flash_tp", "rachford_rice",
            "stability"}  # fmt: skip
 ANSWERS = {"Flash", "PhaseSplit", "Saturation", "Stability"}

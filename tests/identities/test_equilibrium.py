@@ -130,7 +130,7 @@ def test_a_species_written_twice_is_one_species(mixture, share):
 @FEW
 @given(mixtures())
 def test_saturation_points_are_where_the_flash_changes(mixture):
-    rows, z, T, P = mixture
+    rows, z, T, _ = mixture
     fluid = fluid_of(rows)
     for point, below, above in ((bubble_pressure, 2, 1), (dew_pressure, 1, 2)):
         found = point(fluid, T, z)
@@ -146,7 +146,7 @@ def test_saturation_points_are_where_the_flash_changes(mixture):
 @FEW
 @given(mixtures())
 def test_bubble_above_dew_and_temperature_inverse_to_pressure(mixture):
-    rows, z, T, P = mixture
+    rows, z, T, _ = mixture
     fluid = fluid_of(rows)
     bubble, dew = bubble_pressure(fluid, T, z), dew_pressure(fluid, T, z)
     both = bubble.ok & dew.ok

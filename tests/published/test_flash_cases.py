@@ -2,8 +2,8 @@
 
 Every case carries its source in tests/published/data. All equations are used
 with their exact critical constants; with the rounded ones (0.45724, 0.07780)
-the printed fractions of Ivanov and of MultiComponentFlash.jl are missed by
-1e-6 to 2e-4, so those sources used exact ones too.
+the fractions printed to nine digits are missed by 1e-6 to 2e-4, so those
+sources used exact ones too.
 """
 
 import json
