@@ -5,8 +5,6 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass, replace
 
-import numpy as np
-
 from screener.ground.errors import UnknownName
 from screener.screening.context import Context
 from screener.screening.finding import Fact
@@ -102,12 +100,3 @@ def _unsized(context: Context, pack: str) -> Rule:
     horizontal = context.case.tank.kind in ("horizontal", "underground")
     paths = context.missing("shell_diameter", "tank_length" if horizontal else "shell_height")
     return Rule(pack, unknown=say("unknown", "rule-volume", pack=pack, paths=", ".join(paths)))
-
-
-def warm_receipt(context: Context) -> tuple[str, ...]:
-    """A liquid that arrives warmer than the monthly mean is not one 'stored at ambient' without doubt."""
-    T = context.input("receipt_temperature")
-    legal = float(np.asarray(context.lanes.T_legal)[context.i])
-    if math.isfinite(T) and math.isfinite(legal) and T > legal:
-        return (say("cap", "warm-receipt"),)
-    return ()

@@ -8,7 +8,7 @@ from screener.screening.context import MONTHS, Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Condition, Fact
-from screener.screening.rules import Rule, warm_receipt
+from screener.screening.rules import Rule
 from screener.screening.wording import lines, say
 from screener.states.lanes import BEST, RECEIPT
 
@@ -110,11 +110,14 @@ def legal(context: Context, rule: Rule | None) -> Draft:
                 "unknown", "no-bubble", why=context._status_words(lanes.status_legal[i, k]))  # fmt: skip
             unknown = say("unknown", "lane", liquid=context.liquid_name(k), why=why)
         facts = (Fact("highest monthly mean air temperature", float(lanes.T_legal[i]), "K"),)
+        own = float(lanes.T_own[i, k])
+        if own > lanes.T_legal[i]:
+            facts += (Fact("temperature the liquid brings along, the high end", own, "K"),)
         rows.append(Lane(context.condition(k, when, "tank"), value, low, high, rule.limit, unknown=unknown,
-                         caps=rule.caps + warm_receipt(context), facts=facts if month else (), tag=k))  # fmt: skip
+                         caps=rule.caps, facts=facts if month else (), tag=k))  # fmt: skip
     unknown = rule.unknown or ("" if month else say("unknown", "months"))
-    return _draft("vapour-pressure.legal", lanes=tuple(rows), unknown=unknown, range_covers=("method",),
-                  facts=rule.facts, **fields)  # fmt: skip
+    return _draft("vapour-pressure.legal", lanes=tuple(rows), unknown=unknown, range_covers=("inputs", "method"),
+                  facts=rule.facts + _other_roof_fact(rule), **fields)  # fmt: skip
 
 
 def hottest(context: Context, rule: Rule | None) -> Draft:

@@ -45,7 +45,8 @@ class Lanes:
     z (n, 5, c) [-]; level (n, 5) at which each liquid is judged [m];
     present (n, 5); T_own (n, 5) temperature the liquid brings along [K];
     T_hot (n, 5, 3) hottest liquid [K]; P_hot, P_hot_low, P_hot_high (n, 5) its
-    bubble pressure with range [Pa]; P_legal (n, 5, 3) [Pa]; P_receipt (n, 3)
+    bubble pressure with range [Pa]; P_legal (n, 5, 3) the same at
+    the highest monthly mean, the high end at the own temperature if that is higher [Pa]; P_receipt (n, 3)
     bubble pressure at arrival [Pa]; beta (n, 3) vapour fraction at arrival [-];
     beta_gas (n,) the same with the air the receipt is stated to hold, NaN where
     none is stated; y_receipt, y_hot vapour compositions; status_* per lane.
@@ -161,6 +162,16 @@ def _hottest_liquid(weather: Weather, T_own, has_receipt):
     return np.maximum(weather.T_surface[:, None, :], own[:, :, None])
 
 
+def _legal_temperatures(weather: Weather, T_own) -> np.ndarray:
+    """Highest monthly mean, and the warmest a month's storage can be (n, 5, 2). [K]
+
+    A liquid that comes in warmer than the monthly mean of the air may keep the
+    tank above it; its own temperature bounds that, and is the high end.
+    """
+    mean = np.broadcast_to(weather.T_legal[:, None], T_own.shape)
+    return np.stack([mean, np.where(T_own > mean, T_own, mean)], axis=-1)
+
+
 def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     """Work out every liquid of every case: compositions, bubble pressures, the receipt's flash."""
     cases = inputs.cases
@@ -175,9 +186,15 @@ def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     P_hot, y, status_hot, res_hot, asked_hot = _bubble(fluid, T_hot, z[:, :, None, :], known[:, :, None])
     spread = _method_spread(y, spreads)
     P_hot = _with_edges(P_hot, spread)
-    T_legal = np.broadcast_to(weather.T_legal[:, None], known.shape)
-    P_legal, y_legal, status_legal, res_legal, asked_legal = _bubble(fluid, T_legal, z, known)
-    P_legal = P_legal[..., None] * (1.0 + _method_spread(y_legal, spreads)[..., None] * _SIGNS)
+    T_legal = _legal_temperatures(weather, T_own)
+    P_two, y_legal, status_legal, res_legal, asked_legal = _bubble(
+        fluid, T_legal, z[:, :, None, :], known[:, :, None]
+    )
+    spread = _method_spread(y_legal, spreads)
+    P_legal = np.stack(
+        [P_two[:, :, 0] * (1.0 - spread[:, :, 0]), P_two[:, :, 0], P_two[:, :, 1] * (1.0 + spread[:, :, 1])],
+        axis=-1,
+    )
 
     flash = _receipt(fluid, z[:, RECEIPT], T_own[:, RECEIPT], weather.barometer, spreads, has_receipt)
     P_receipt, status_receipt, beta, y_receipt, status_flash, res_receipt, asked_receipt = flash
@@ -191,7 +208,7 @@ def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     )
     return Lanes(
         inputs, weather, fluid, names, z, level, present, T_own, T_hot, P_hot, y[:, :, BEST],
-        status_hot, weather.T_legal, P_legal, status_legal, P_receipt, status_receipt, beta, beta_gas, y_receipt,
+        status_hot, weather.T_legal, P_legal, status_legal[:, :, 0], P_receipt, status_receipt, beta, beta_gas, y_receipt,
         status_flash, float(np.nanmax(residuals, initial=0.0)), int((statuses != Status.CONVERGED).sum()),
     )  # fmt: skip
 
@@ -267,5 +284,5 @@ def method_spread(lanes: Lanes, y) -> np.ndarray:
 
 
 def psat_spreads(names) -> np.ndarray:
-    """Disagreement of independent vapour-pressure curves of each species, 0 where only one is known. [-]"""
-    return np.array([find(name).psat_spread or 0.0 for name in names])
+    """Error bar of each species' vapour-pressure curve: disagreement or extension, 0 where none is known. [-]"""
+    return np.array([find(name).psat_error or 0.0 for name in names])
