@@ -14,6 +14,7 @@ from itertools import pairwise
 
 from screener.app.glyphs import Glyphs
 from screener.app.rows import Row, Span, columns_of, pad, paragraph
+from screener.app.words import say
 
 _BRAILLE = ((0x01, 0x08), (0x02, 0x10), (0x04, 0x20), (0x40, 0x80))  # dot bits by row and column of a cell
 _HALF = {1: "▀", 2: "▄", 3: "█"}
@@ -123,7 +124,7 @@ def draw(plot: Plot, width: int, height: int, marks: Glyphs) -> list[Row]:
     left = max(map(len, numbers)) + 1
     inner = width - left - 1
     if inner < 20 or tall < 3:
-        return [(Span(marks.plain("too little room for the curve"), "dim"),)]
+        return [(Span(marks.plain(say("curve", "small")), "dim"),)]
     cells = [[[" ", ""] for _ in range(inner)] for _ in range(tall)]
     ends = _paint(cells, plot, inner, tall, marks)
     for (column, row), label in ends:

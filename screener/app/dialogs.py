@@ -25,9 +25,9 @@ class Box(ModalScreen):
 
     DEFAULT_CSS = """
     Box { align: center middle; background: $ground; }
-    Box > Vertical { width: 76; max-width: 96%; height: auto; max-height: 90%; background: $ground; border: round $foreground; padding: 0 1; }
+    Box > Vertical { width: 76; max-width: 96%; height: auto; background: $ground; border: round $foreground; padding: 0 1; }
     Box.-ascii > Vertical { border: ascii $foreground; }
-    Box Lines { height: auto; max-height: 70vh; }
+    Box Lines { height: 8; }
     Box KeyRow { dock: none; }
     """
 
@@ -35,6 +35,12 @@ class Box(ModalScreen):
         super().__init__(**kwargs)
         self.marks = marks
         self.set_class(marks.name == "ascii", "-ascii")
+
+    def on_resize(self) -> None:
+        """A list in the box is as high as its content, and no higher than the screen lets it be."""
+        for lines in self.query(Lines):
+            content = lines.get_content_height(self.size, self.size, lines.size.width or self.size.width - 8)
+            lines.styles.height = min(content, max(4, self.size.height - 6))
 
 
 class HelpBox(Box):

@@ -85,7 +85,7 @@ class Card(Lines):
     """The why card: a text that scrolls."""
 
     HELP = say("widgets", "card")
-    BINDINGS: ClassVar = [Binding("escape", "back", "Back to the list", id="card.back")]
+    BINDINGS: ClassVar = [Binding("escape", "back", "Back", id="card.back")]
 
     def action_back(self) -> None:
         self.post_message(FindingsPane.Back())

@@ -9,21 +9,21 @@ from textual.binding import Binding
 from textual.containers import Container, Vertical
 from textual.message import Message
 
-from screener.app import edits, fields
+from screener.app import fields
 from screener.app.chrome import SumRow
 from screener.app.desk import Desk
 from screener.app.glyphs import Glyphs
 from screener.app.lines import Block, Lines
+from screener.app.row_actions import RowActions
 from screener.app.rows import Row, Span, labelled, one_line, paragraph
 from screener.app.searching import Searching
 from screener.app.sheet import Sheet
 from screener.app.strip import EditRequested, EditStrip
 from screener.app.words import say
 from screener.casefile import keys as schema
-from screener.ground.errors import InputError
 
 
-class InputPane(Searching, Container):
+class InputPane(RowActions, Searching, Container):
     """One input step."""
 
     BINDINGS: ClassVar = [
@@ -46,14 +46,15 @@ class InputPane(Searching, Container):
     class Pointed(Message):
         """Words for the hint row."""
 
-        def __init__(self, text: str, tone: str = ""):
+        def __init__(self, step: str, text: str, tone: str):
             super().__init__()
-            self.text, self.tone = text, tone
+            self.step, self.text, self.tone = step, text, tone
 
     def __init__(self, step: str, desk: Desk, marks: Glyphs, **kwargs):
         super().__init__(id=step, **kwargs)
         self.step, self.desk, self.marks = step, desk, marks
         self._found: list = []
+        self.news = ""  # what the last edit did; stays in the hint row until the cursor moves
 
     def compose(self) -> ComposeResult:
         with Vertical(classes="left"):
@@ -65,11 +66,17 @@ class InputPane(Searching, Container):
 
     @property
     def sheet(self) -> Sheet:
+        """The sheet of this step."""
         return self.query_one(Sheet)
 
     @property
     def strip(self) -> EditStrip:
+        """The row that edits."""
         return self.query_one(EditStrip)
+
+    def point(self, text: str, tone: str = "") -> None:
+        """Put words into the hint row."""
+        self.post_message(self.Pointed(self.step, text, tone))
 
     # showing
 
@@ -103,7 +110,7 @@ class InputPane(Searching, Container):
             self.strip.read("", "")
             return
         self.strip.read(self.marks.plain(self.label), self.marks.plain(self._value(cell.path)))
-        self.post_message(self.Pointed(self.hint))
+        self.point(self.hint)
         self.query_one(".field-help", Lines).show(self._help)
         self.refresh_bindings()
 
@@ -124,8 +131,8 @@ class InputPane(Searching, Container):
     def hint(self) -> str:
         """Meaning and range of the value under the cursor, or its fault."""
         cell = self.sheet.cell
-        if cell is None:
-            return ""
+        if self.news or cell is None:
+            return self.news
         if self._is_adder:
             return say("hint", "parts_add" if cell.path.endswith("parts[+]") else "row_add")
         if fault := self.desk.known.faults.get(cell.path):
@@ -151,84 +158,12 @@ class InputPane(Searching, Container):
             rows += labelled(say("help", "taken"), self.marks.plain(echo.text), width, 10)
         return (), [Block((row,)) for row in rows]
 
-    # what can be done here
-
-    @property
-    def _is_adder(self) -> bool:
-        return self.sheet.key.endswith("[+]")
-
-    @property
-    def _row_at(self) -> str:
-        """Path of the row of a list that the cursor stands in; '' outside lists."""
-        key = self.sheet.key
-        return "" if self._is_adder or "]" not in key else key[: key.rindex("]") + 1]
-
-    @property
-    def _list_here(self) -> str:
-        """Path of the list the cursor stands in or at the end of; '' elsewhere."""
-        key = self.sheet.key
-        return key[: key.rindex("[")] if "[" in key else ""
-
-    @property
-    def _part_base(self) -> str:
-        return self._list_here.removesuffix(".parts") if self._list_here.endswith("parts") else ""
-
-    def check_action(self, action: str, parameters: tuple) -> bool | None:
-        """Keys that would do nothing here are not keys here."""
-        if action in ("add", "remove", "clear", "scale") and self.strip.editing:
-            return False
-        if action == "add":
-            return bool(self._list_here) and not (
-                self._list_here == "site.months" and self.desk.text.rows("site.months") >= 12
-            )
-        if action == "remove":
-            return bool(self._row_at)
-        if action == "clear":
-            cell = self.sheet.cell
-            return bool(cell and not self._is_adder and self.desk.text.has(cell.path))
-        if action == "scale":
-            total = fields.share_total(self._part_base, self.desk.text) if self._part_base else None
-            scaled = self.desk.text.get(f"{self._part_base}.scale") if self._part_base else None
-            return scaled == "true" or (total is not None and abs(total - 100.0) > 0.05)
-        return True
-
-    def action_add(self) -> None:
-        here = self._list_here
-        if here.endswith("parts"):
-            self._search(f"{here}[+]", say("strip", "add_part"), "")
-        else:
-            self._change(say("change", "add"), lambda text: edits.add_row(text, here))
-            self.sheet.go_to(f"{here}[{self.desk.text.rows(here) - 1}]")
-            self._read()
-
-    def action_remove(self) -> None:
-        at = self._row_at
-        self._change(say("change", "remove"), lambda text: edits.remove_row(text, at))
-
-    def action_clear(self) -> None:
-        path = self.sheet.cell.path
-        self._change(path, lambda text: edits.enter(text, path, ""))
-
-    def action_scale(self) -> None:
-        base = self._part_base
-        on = self.desk.text.get(f"{base}.scale") != "true"
-        self._change(say("change", "scale"), lambda text: edits.scale(text, base, on))
-
-    def _change(self, label: str, act) -> None:
-        """Make a change and show it; one that is refused is told in the hint row."""
-        try:
-            self.desk.session.change(label, act)
-        except InputError as error:
-            self.post_message(self.Pointed(str(error), "bad"))
-            return
-        self.update_case()
-        self.post_message(self.Changed())
-
     # editing
 
     def on_lines_moved(self, event: Lines.Moved) -> None:
         event.stop()
         if event.lines is self.sheet and not self.strip.editing:
+            self.news = ""
             self._read()
 
     def on_lines_chosen(self, event: Lines.Chosen) -> None:
@@ -253,7 +188,7 @@ class InputPane(Searching, Container):
             self._search(cell.path, self.label, self.desk.text.get(cell.path) or "")
         else:
             self.strip.edit(cell.path, self.label, self.desk.text.get(cell.path) or "", self.desk.choices(cell.path))
-            self.post_message(self.Pointed(self._while_editing(cell.path)))
+            self.point(self._while_editing(cell.path))
         self.refresh_bindings()
 
     @property
@@ -278,12 +213,14 @@ class InputPane(Searching, Container):
         if not self.desk.ready:
             return
         checked = self.desk.check(event.purpose, event.value)
-        if checked.problem:
-            self.post_message(self.Pointed(checked.problem, "dim"))
+        if event.value in self.strip.input.choices:
+            self.point(self._while_editing(event.purpose))
+        elif checked.problem:
+            self.point(checked.problem, "dim")
         elif checked.echo:
-            self.post_message(self.Pointed(say("hint", "taken", text=checked.echo.text)))
+            self.point(say("hint", "taken", text=checked.echo.text))
         else:
-            self.post_message(self.Pointed(say("hint", "emptied")))
+            self.point(say("hint", "emptied"))
 
     def on_edit_strip_taken(self, event: EditStrip.Taken) -> None:
         event.stop()
@@ -292,15 +229,16 @@ class InputPane(Searching, Container):
             return
         checked = self.desk.take(event.purpose, event.value)
         if checked.problem:
-            self.post_message(self.Pointed(checked.problem, "bad"))
+            self.point(checked.problem, "bad")
             return
         self._leave()
         self.post_message(self.Changed())
         self.update_case()
-        self.sheet.action_step(1)
+        with self.prevent(Lines.Moved):
+            self.sheet.action_step(1)
+        taken = checked.echo and say("hint", "entered", value=event.value.strip(), text=checked.echo.text)
+        self.news = taken or ""
         self._read()
-        if checked.echo:
-            self.post_message(self.Pointed(say("hint", "entered", value=event.value.strip(), text=checked.echo.text)))
 
     def on_edit_strip_left(self, event: EditStrip.Left) -> None:
         event.stop()

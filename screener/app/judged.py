@@ -93,7 +93,7 @@ def card_lines(item: Judged, system: str = "si") -> list[tuple[str, str, str]]:
         lines.append((label["source"], f.source, ""))
     if f.margin is not None and f.verdict not in ("unknown", "skipped"):
         lines.append((label["margin"], _margin(f, shown, system), ""))
-    lines.append((f.verdict, f.reason, f.verdict if f.verdict != "skipped" else "dim"))
+    lines.append((f.verdict, f.reason, {"skipped": "dim", "room": ""}.get(f.verdict, f.verdict)))
     lines += [(label["moved"] if i == 0 else "", text, "") for i, text in enumerate(f.moved_by)]
     lines += [(label["room"] if i == 0 else "", step.sentence, "") for i, step in enumerate(f.headroom)]
     lines += _beside(f, system)
@@ -101,18 +101,21 @@ def card_lines(item: Judged, system: str = "si") -> list[tuple[str, str, str]]:
 
 
 def _margin(f, shown, system: str) -> str:
-    """The margin, the gap asked for and what the worse end of the range leaves."""
+    """The margin, what the worse end of the range leaves and the gap asked for, with one count of decimals."""
     from screener.memo import numbers
 
     apart = numbers.difference_unit(f.unit)
-    text = shown.margin.text
     limit, sign = (f.limit_high, 1.0) if f.kind == "stay below" else (f.limit_low, -1.0)
     end = f.high if sign > 0 else f.low
-    if limit is not None and end is not None and f.kind != "keep out of":
-        text += f"; {say('card', 'worse_end')} {numbers.quantity(sign * (limit - end), apart, system, sign=True).text}"
-    if f.asked_gap is not None:
-        text += f"; {say('card', 'asked')} {numbers.quantity(f.asked_gap, apart, system).text}"
-    return text
+    known = limit is not None and end is not None and f.kind != "keep out of"
+    left = sign * (limit - end) if known else None
+    places = numbers.decimals((f.value, f.margin, f.limit_high, f.limit_low), apart, system)
+    parts = [shown.margin.text]
+    for name, value, signed in (("worse_end", left, True), ("asked", f.asked_gap, False)):
+        if value is not None:
+            text = numbers.quantity(value, apart, system, places=places, sign=signed).text
+            parts.append(f"{say('card', name)} {text}")
+    return "; ".join(parts)
 
 
 def _beside(f, system: str) -> list[tuple[str, str, str]]:

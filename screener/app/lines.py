@@ -84,6 +84,7 @@ class Toned(Widget):
 class Lines(Toned, can_focus=True):
     """Blocks of rows with a cursor."""
 
+    HELP = say("widgets", "list")
     BINDINGS: ClassVar = [
         Binding("up", "step(-1)", "Up", show=False, id="lines.up"),
         Binding("down", "step(1)", "Down", show=False, id="lines.down"),

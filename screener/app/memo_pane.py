@@ -72,6 +72,7 @@ class MemoPane(Container):
         self.words = MemoWords()
         self.document = None
         self._note = ("", "")
+        self.news = ""  # what was done last; stays in the hint row until the cursor moves
 
     def compose(self) -> ComposeResult:
         yield Sheet(self.marks, classes="sheet")
@@ -80,10 +81,12 @@ class MemoPane(Container):
 
     @property
     def sheet(self) -> Sheet:
+        """The rows above the memo."""
         return self.query_one(Sheet)
 
     @property
     def strip(self) -> EditStrip:
+        """The row that edits."""
         return self.query_one(EditStrip)
 
     @property
@@ -145,6 +148,8 @@ class MemoPane(Container):
     def hint(self) -> str:
         """What the row under the cursor means."""
         key = self.sheet.key
+        if self.news:
+            return self.news
         if key.startswith("memo:"):
             return say("memo_hints", key[5:])
         declared = schema.key_at(key)
@@ -166,6 +171,7 @@ class MemoPane(Container):
     def on_lines_moved(self, event: Lines.Moved) -> None:
         event.stop()
         if event.lines is self.sheet and not self.strip.editing:
+            self.news = ""
             self._read()
 
     def on_lines_chosen(self, event: Lines.Chosen) -> None:

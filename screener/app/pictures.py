@@ -13,6 +13,7 @@ from dataclasses import dataclass
 
 from screener.app.glyphs import Glyphs
 from screener.app.rows import Row, Span, columns_of, pad, wrap
+from screener.app.words import say
 
 POST_SHARE = 0.77  # place of the post along the bar: leaves room for 1.3 times the limit
 LEAST_BAR = 14
@@ -74,7 +75,7 @@ def _no_bar(gap: Gap, post: int, width: int, marks: Glyphs) -> Row:
     mark, tone = (marks.skipped, "dim") if gap.verdict == "skipped" else (marks.unknown, "unknown")
     if gap.verdict not in ("unknown", "skipped"):
         mark, tone = marks.more_left + marks.more_right, "dim"
-        words = wrap("no scale", post)[0]
+        words = wrap(say("findings", "no_scale"), post)[0]
         return (Span(pad(words, post), tone), Span(marks.post, "bold"), Span(" " * (width - post - 1)))
     dotted = "".join(mark if i % 4 == 0 else " " for i in range(post))
     return (Span(dotted, tone), Span(marks.post, "bold"), Span(" " * (width - post - 1)))

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from pathlib import Path
 
-from screener.app.chrome import Hint
 from screener.app.dialogs import Question
 from screener.app.memo_pane import MemoPane
 from screener.app.naming import NameBox
@@ -43,18 +42,18 @@ class Saving:
         self.app.push_screen(NameBox(say("save", "name"), proposed, self.marks), named)
 
     def _write_case(self, path: Path | None, after, *, anyway: bool = False) -> None:
-        session, hint = self.desk.session, self.query_one(Hint)
+        session = self.desk.session
         try:
             target = session.save(path, anyway=anyway)
         except FileChanged as error:
             self._ask_over(str(error), lambda: self._write_case(path, after, anyway=True))
             return
         except InputError as error:
-            hint.tell(str(error), "bad")
+            self.tell(str(error), "bad")
             return
         kept = before_beside(target)
         words = say("save", "done", path=target)
-        hint.tell(f"{words}; {say('save', 'comments', path=kept.name)}" if session.kept_comments else words)
+        self.tell(f"{words}; {say('save', 'comments', path=kept.name)}" if session.kept_comments else words)
         self.refresh_frame()
         self.query_one(MemoPane).update_case()
         if after:
@@ -91,7 +90,7 @@ class Saving:
         """Write the memo; a file of that name that we did not write is asked about."""
         pane, session = self.query_one(MemoPane), self.desk.session
         if session.stale or pane.document is None:
-            self.query_one(Hint).tell(say("memo", "stale"), "near")
+            self.tell(say("memo", "stale"), "near")
             return
         target = session.folder / Path(pane.file).expanduser()
         if target.exists() and str(target) not in self.app.written:
@@ -104,13 +103,13 @@ class Saving:
         self._write_memo()
 
     def _write_memo(self) -> None:
-        pane, hint = self.query_one(MemoPane), self.query_one(Hint)
+        pane = self.query_one(MemoPane)
         try:
             path = self.desk.session.export(pane.file, self._markdown)
         except InputError as error:
-            hint.tell(str(error), "bad")
+            self.tell(str(error), "bad")
             return
         self.app.written.add(str(path))
         self.desk.memo_written = str(path)
-        hint.tell(say("memo", "written", path=path, size=f"{path.stat().st_size / 1000:.1f}"))
+        self.tell(say("memo", "written", path=path, size=f"{path.stat().st_size / 1000:.1f}"))
         self.refresh_frame()

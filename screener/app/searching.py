@@ -16,7 +16,7 @@ class Searching:
         self.add_class("-searching")
         self.strip.edit(purpose, label, value)
         self._show_matches("" if purpose.endswith("[+]") else value)
-        self.post_message(self.Pointed(say("hint", "search")))
+        self.point(say("hint", "search"))
 
     def _show_matches(self, typed: str) -> None:
         self._found = self.desk.matches(typed)
@@ -40,7 +40,7 @@ class Searching:
     def _take_match(self) -> None:
         kind, _, name = self.query_one(".matches", Lines).key.partition(":")
         if not name or not self._found:
-            self.post_message(self.Pointed(say("hint", "no_match"), "bad"))
+            self.point(say("hint", "no_match"), "bad")
             return
         purpose = self.strip.purpose
         self._leave()

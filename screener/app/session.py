@@ -125,10 +125,12 @@ class Session:
 
     @property
     def can_undo(self) -> bool:
+        """Whether there is a change to take back."""
         return bool(self._back)
 
     @property
     def can_redo(self) -> bool:
+        """Whether there is a change to make again."""
         return bool(self._forward)
 
     @property

@@ -114,6 +114,7 @@ class Sheet(Lines):
         return head, sheet_blocks(self.sections, width, self.marks, self.at)
 
     def cursor_changed(self) -> None:
+        """The cell under the cursor is drawn apart, so the rows are built again."""
         self.lay_out_again()
 
     @property
@@ -168,6 +169,7 @@ class Sheet(Lines):
             self.post_message(self.Moved(self, self.key))
 
     def on_click(self, event: events.Click) -> None:
+        event.prevent_default()  # the list's own click knows no cells
         before, record = self.key, None
         at = event.y - len(self._head) + self._top
         if event.y >= len(self._head) and 0 <= at < len(self._flat):

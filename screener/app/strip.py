@@ -93,6 +93,7 @@ class EditStrip(Horizontal):
 
     @property
     def input(self) -> StripInput:
+        """The field in which a value is typed."""
         return self.query_one(StripInput)
 
     def read(self, label: str, value: str) -> None:

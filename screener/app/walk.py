@@ -115,7 +115,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         return "", ""
 
     def on_input_pane_pointed(self, event: InputPane.Pointed) -> None:
-        if self.current == getattr(event._sender, "id", self.current):
+        if self.current == event.step:
             self.query_one(Hint).tell(event.text, event.tone)
 
     def on_memo_pane_pointed(self, event: MemoPane.Pointed) -> None:
@@ -126,13 +126,21 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         if self.current == "findings":
             self.query_one(Hint).tell(event.text)
 
+    def tell(self, text: str, tone: str = "") -> None:
+        """Say in the hint row what was done; it stays until the cursor moves."""
+        pane = self.query_one(f"#{self.current}")
+        if isinstance(pane, (InputPane, MemoPane)):
+            pane.news = text
+        self.query_one(Hint).tell(text, tone)
+
     # walking
 
     def action_go(self, number: int) -> None:
         self.current = STEPS[number - 1]
         self.query_one(ContentSwitcher).current = self.current
         pane = self.query_one(f"#{self.current}")
-        if self.current != "findings":
+        if isinstance(pane, (InputPane, MemoPane)):
+            pane.news = ""
             pane.update_case()
         main = pane.query_one("#bars" if self.current == "findings" else ".sheet", Lines)
         main.focus()
@@ -201,7 +209,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
             return
         self.refresh_case()
         self.case_changed()
-        self.query_one(Hint).tell(say("change", word, what=label))
+        self.tell(say("change", word, what=label))
 
     # working
 
@@ -213,7 +221,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
     def action_stop(self) -> None:
         self.stop()
         self.refresh_frame()
-        self.query_one(Hint).tell(say("result", "stopped"))
+        self.tell(say("result", "stopped"))
 
     def on_warmed(self, event: Warmed) -> None:
         self.desk.ready = True
