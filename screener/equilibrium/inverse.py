@@ -1,0 +1,232 @@
+"""Flashes that solve for T or P: one engine for enthalpy, entropy, volume and vapour fraction.
+
+At given pressure (temperature) the bubble and the dew point divide the lanes.
+Where the target lies between them the vapour fraction is the unknown: every
+target is a smooth and nearly straight function of it, for a pure component,
+whose T does not move, as for a wide-boiling blend. Outside, the feed is one
+phase, and T or P follows from that phase alone. What was found is then given to
+the flash at T and P. Where the two agree the flash's answer stands; where the
+boiling range is too narrow for T and P to tell the vapour fraction the pair
+stands; every other lane is sought by flashes between the ends of the range.
+"""
+
+from __future__ import annotations
+
+from dataclasses import fields, replace
+from typing import NamedTuple
+
+import numpy as np
+
+from screener.equilibrium.flash import flash_tp
+from screener.equilibrium.flash_search import PROMISED, FlashSearch, miss_of, rows_of
+from screener.equilibrium.fraction import start_of
+from screener.equilibrium.pairs import PairSearch
+from screener.equilibrium.results import Flash, bad_status
+from screener.equilibrium.saturation import bubble_pressure, bubble_temperature, dew_pressure, dew_temperature
+from screener.equilibrium.second_liquid import NOT_TESTED, full_check, known_check
+from screener.equilibrium.solved import SolvedFlash, totals_of
+from screener.ground.shapes import lanes as as_lanes
+from screener.ground.status import Status
+
+MOST_NUMBERS = 40_000  # lanes times components handled at once: keeps the working arrays in cache
+NARROW = 1e-4  # [-] relative boiling range below which T and P do not tell the vapour fraction; own choice
+ALIKE = 1e-4  # [-] vapour fractions this close are one state, told more sharply by the fraction itself; own choice
+
+
+class Ends(NamedTuple):
+    """Bubble or dew points of the lanes: the point, its T or ln P (n,), the excess over the target (n,) there."""
+
+    point: object
+    at: np.ndarray
+    excess: np.ndarray
+
+    def take(self, lanes) -> Ends:
+        """Some of the lanes, without the point."""
+        return Ends(None, self.at[lanes], self.excess[lanes])
+
+
+def solve_many(fluid, target, given, z, check: str) -> SolvedFlash:
+    """Any number of states, valid or not, in chunks.
+
+    Parameters
+    ----------
+    fluid : Fluid
+        The fluid.
+    target : Target
+        What is asked for; its value a scalar or (n,).
+    given : float or array, shape (n,)
+        Temperature [K] or pressure [Pa], as the target says.
+    z : array, shape (c,) or (n, c)
+        Feed. [-]
+    check : str
+        As in `flash_tp`.
+
+    Returns
+    -------
+    SolvedFlash
+        One row per lane.
+
+    Raises
+    ------
+    ShapeError
+        z does not match the fluid, or rows do not broadcast.
+    InputError
+        check is no known word.
+
+    Source
+    ------
+    As `solve_lanes`.
+    """
+    known_check(check)
+    usable = np.where(np.isfinite(target.value), 1.0, np.nan)  # negative values are fine, but no number is not
+    z, at, usable, good = as_lanes(fluid.c, z, **{target.given: given}, target=usable)
+    n = at.size
+    value = np.array(np.broadcast_to(target.value, (n,)))
+    if target.what == "ratio":
+        good &= ~(value < 0.0)
+    status = bad_status(good)
+    status[good & fluid.lacks(z)] = Status.NO_PARAMETERS
+    if target.what in ("H", "S") and fluid.cp_ideal is None:
+        status[good] = Status.NO_PARAMETERS
+    lanes = np.flatnonzero(status == Status.OUT_OF_STEPS)
+    target = replace(target, value=value)
+    rows = _no_rows(at, z, status, target.given)
+    for some in np.array_split(lanes, max(1, -(-lanes.size * fluid.c // MOST_NUMBERS))):
+        if some.size:
+            part = solve_lanes(fluid, target.take(some), at[some], z[some], check)
+            for name in rows:
+                rows[name][some] = getattr(part, name)
+    return SolvedFlash(**rows)
+
+
+def _no_rows(given, z, status, name: str):
+    """Rows without an answer."""
+    rows = {}
+    for field in fields(SolvedFlash):
+        rows[field.name] = np.full(z.shape if field.name in ("x", "y", "K", "x_W") else given.shape, np.nan)
+    rows |= {"z": z, name: given, "status": status, "checks": np.full(given.shape, NOT_TESTED, dtype=object)}
+    return rows | {"phases": np.zeros(given.size, dtype=int), "iterations": np.zeros(given.size, dtype=int)}
+
+
+def solve_lanes(fluid, target, given, z, check: str) -> SolvedFlash:
+    """The state of each lane that meets its target.
+
+    Parameters
+    ----------
+    fluid : Fluid
+        The fluid.
+    target : Target
+        What is asked for.
+    given : array, shape (n,)
+        Temperature [K] or pressure [Pa], as the target says.
+    z : array, shape (n, c)
+        Feed. [-]
+    check : str
+        As in `flash_tp`.
+
+    Returns
+    -------
+    SolvedFlash
+        One row per lane; where the target is not met NaN and a status.
+
+    Source
+    ------
+    Own arrangement, after the state-function flashes of Michelsen, Fluid Phase
+    Equilib. 33 (1987) 13.
+    """
+    bubble, dew = _ends(fluid, target, given, z)
+    with np.errstate(invalid="ignore"):
+        inside = (bubble.excess < 0.0) & (dew.excess > 0.0)
+        two = np.flatnonzero(inside | target.of_pairs & ((bubble.excess == 0.0) | (dew.excess == 0.0)))
+        narrow = np.abs(dew.at - bubble.at)[two] <= NARROW * np.abs(bubble.at[two])
+    unknown = _single(fluid, target, given, z, bubble, dew)
+    starts = [start_of(fluid, target.given, end.point) for end in (bubble, dew)]
+    pairs = PairSearch(fluid, target.take(two), given[two], z[two], [(u[two], s[two]) for u, s in starts])
+    pairs.run(bubble.excess[two], dew.excess[two])
+    unknown[two] = pairs.best["P" if target.given == "T" else "T"]
+    T, P = (given, unknown) if target.given == "T" else (unknown, given)
+    rows = rows_of(flash_tp(fluid, T, P, z, check=check))
+    rows["iterations"] += bubble.point.iterations + dew.point.iterations
+    rows["iterations"][two] += pairs.iterations
+    miss = miss_of(fluid, target, rows)
+    with np.errstate(invalid="ignore"):
+        alike = np.abs(rows["beta"][two] - pairs.best["beta"]) < ALIKE
+        sharper = target.of_pairs[two] | ~(miss[two] <= PROMISED)
+        stands = (pairs.miss <= PROMISED) & (alike | narrow) & sharper
+    _put_pairs(fluid, rows, two[stands], pairs, np.flatnonzero(stands), check)
+    miss[two[stands]] = pairs.miss[stands]
+    again = np.flatnonzero(~(miss <= PROMISED))
+    if again.size:
+        search = FlashSearch(fluid, target.take(again), given[again], z[again], check)
+        sought, miss[again] = search.run(bubble.take(again), dew.take(again))
+        sought["iterations"] += rows["iterations"][again]
+        for name, value in sought.items():
+            rows[name][again] = value
+    return _answer(fluid, target, rows, miss)
+
+
+def _ends(fluid, target, given, z):
+    """Bubble and dew points, and the excess there; NaN without one, or outside the range of the target."""
+    points = (bubble_pressure, dew_pressure) if target.given == "T" else (bubble_temperature, dew_temperature)
+    low, high = target.limits
+    ends = []
+    for point, beta in zip(points, (0.0, 1.0)):
+        found = point(fluid, given, z)
+        with np.errstate(invalid="ignore"):
+            at = np.log(found.P) if target.given == "T" else found.T
+            inside = found.ok & (at >= low) & (at <= high)
+        share = np.where(inside, beta, np.nan)
+        excess, _ = target.excess(fluid, found.T, found.P, share, np.full_like(share, np.nan), found.x, found.y, z)
+        ends.append(Ends(found, np.where(inside, at, np.nan), excess))
+    return ends
+
+
+def _single(fluid, target, given, z, bubble, dew):
+    """T or P (n,) of the lanes that are one phase by their bubble or dew point, NaN for the others."""
+    unknown = np.full(given.shape, np.nan)
+    with np.errstate(invalid="ignore"):
+        liquid = bubble.excess >= 0.0
+        vapour = (dew.excess <= 0.0) & ~liquid
+    for mask, end in ((liquid, bubble), (vapour, dew)):
+        some = np.flatnonzero(mask & ~target.of_pairs)
+        if some.size:
+            edge = end.point.P if target.given == "T" else end.point.T
+            unknown[some] = target.take(some).single(fluid, given[some], z[some], end is bubble, edge[some])
+    return unknown
+
+
+def _put_pairs(fluid, rows, lanes, pairs, some, check: str):
+    """Write pairs found by fraction over the flash's rows."""
+    if lanes.size == 0:
+        return
+    best = {name: value[some] for name, value in pairs.best.items()}
+    for name in ("T", "P", "beta", "x", "y", "residual", "balance"):
+        rows[name][lanes] = best[name]
+    rows["K"][lanes] = np.where(best["x"] > 0.0, np.exp(best["ln_K"]), np.nan)
+    rows["phases"][lanes], rows["status"][lanes] = 2, Status.CONVERGED
+    rows["beta_W"][lanes] = rows["x_W"][lanes] = rows["tpd"][lanes] = np.nan
+    rows["checks"][lanes] = NOT_TESTED
+    if check == "full":
+        T, P, x = best["T"], best["P"], best["x"]
+        state = fluid.at(T)
+        found, splits, text = full_check(
+            fluid, state, P, rows["z"][lanes], x, state.ln_phi(P, x, "L"), fluid.wilson_K(T, P)
+        )
+        rows["tpd"][lanes], rows["checks"][lanes] = found.tpd, text
+        rows["status"][lanes[splits]] = Status.LIQUID_SPLITS
+        rows["status"][lanes[~np.isfinite(found.tpd)]] = Status.OUT_OF_STEPS
+
+
+def _answer(fluid, target, rows, miss) -> SolvedFlash:
+    """The rows with their totals; NaN where the target is not met."""
+    lost = ~(miss <= PROMISED)
+    status = rows["status"]
+    status[lost & ((status == Status.CONVERGED) | (status == Status.BAD_INPUT))] = Status.OUT_OF_STEPS
+    status[lost & (status == Status.LIQUID_SPLITS)] = Status.OUT_OF_STEPS
+    for name, value in rows.items():
+        if value.dtype.kind == "f" and name not in ("z", target.given):
+            value[lost] = np.nan
+    rows["phases"][lost] = 0
+    rows["checks"][lost] = NOT_TESTED
+    H, S, v, v_L, v_V = totals_of(fluid, Flash(**rows))
+    return SolvedFlash(**rows, H=H, S=S, v=v, v_L=v_L, v_V=v_V, miss=miss)
