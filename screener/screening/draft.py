@@ -7,7 +7,7 @@ from dataclasses import dataclass, field, replace
 
 from screener.screening.criteria import Criterion
 from screener.screening.finding import WORST_FIRST, Condition, Fact, Finding, Headroom
-from screener.screening.judge import Judgement, judge
+from screener.screening.judge import Judgement, judge, judge_keep_out
 from screener.screening.wording import say
 
 
@@ -20,6 +20,8 @@ class Lane:
     low: float = math.nan
     high: float = math.nan
     limit: float = math.nan
+    upper: float = math.nan  # upper end of an interval to keep out of; limit is then its lower end
+    rich_caps: tuple[str, ...] = ()  # caps that hold above such an interval only
     reference: float = 0.0
     unknown: str = ""  # why this lane cannot be told, '' if it can
     caps: tuple[str, ...] = ()  # each keeps the lane from being better than near
@@ -56,10 +58,16 @@ class Draft:
 def _judge_lane(draft: Draft, lane: Lane) -> Judgement:
     c = draft.criterion
     gap = c.gap(lane.limit if c.scale == "percent" else lane.limit - lane.reference)
-    judged = judge(
-        lane.value, lane.low, lane.high, lane.limit,
-        kind=c.kind, reference=lane.reference, gap=gap, evidence=draft.limit_evidence, caps=lane.caps,
-    )  # fmt: skip
+    if c.kind == "keep out of":
+        judged = judge_keep_out(
+            lane.value, lane.low, lane.high, lane.limit, lane.upper,
+            gap=gap, evidence=draft.limit_evidence, caps=lane.caps, rich_caps=lane.rich_caps,
+        )  # fmt: skip
+    else:
+        judged = judge(
+            lane.value, lane.low, lane.high, lane.limit,
+            kind=c.kind, reference=lane.reference, gap=gap, evidence=draft.limit_evidence, caps=lane.caps,
+        )  # fmt: skip
     if judged.verdict == "beyond" or not (lane.unknown or judged.verdict == "unknown"):
         return judged
     return replace(
@@ -101,7 +109,6 @@ def _number(value) -> float | None:
 def _finding(draft: Draft, lane: Lane, judged: Judgement) -> Finding:
     c = draft.criterion
     limit = _number(lane.limit)
-    below = c.kind == "stay below"
     gap = None
     if limit is not None:
         gap = c.gap(limit if c.scale == "percent" else limit - lane.reference)
@@ -113,8 +120,8 @@ def _finding(draft: Draft, lane: Lane, judged: Judgement) -> Finding:
         low=_number(lane.low),
         high=_number(lane.high),
         range_covers=draft.range_covers,
-        limit_low=None if below else limit,
-        limit_high=limit if below else None,
+        limit_low=None if c.kind == "stay below" else limit,
+        limit_high={"stay below": limit, "keep out of": _number(lane.upper)}.get(c.kind),
         kind=c.kind,
         evidence=draft.limit_evidence,
         margin=judged.margin,

@@ -75,3 +75,42 @@ def _verdict(margin, at_edge, gap, evidence, caps) -> tuple[Verdict, str]:
     if caps:
         return "near", caps[0]
     return "room", say("judge", "room")
+
+
+def judge_keep_out(
+    value, low, high, limit_low, limit_high, *, gap, evidence, caps=(), rich_caps=()
+) -> Judgement:
+    """Judge a value that has to stay out of an interval, by staying below it or above it.
+
+    rich_caps hold on the upper side only: they are the ways through the
+    interval that a value above it can still take, so that side is at best
+    near. Room used is value/limit below the interval and limit/value above it.
+    """
+    value, low, high, limit_low, limit_high = (_number(v) for v in (value, low, high, limit_low, limit_high))
+    if value is None or limit_low is None or limit_high is None:
+        return Judgement("unknown", "", None, None, None, None, None)
+    inside = limit_low <= value <= limit_high
+    below = value < limit_low
+    edges = [e for e in (low, high) if e is not None]
+
+    def margin_of(v):
+        """Distance out of the interval, on the side the best value lies on."""
+        return limit_low - v if below else v - limit_high
+
+    def used(v):
+        return v / limit_low if below or inside or not v else limit_high / v
+
+    if inside:
+        margin = -min(value - limit_low, limit_high - value)
+        return Judgement("beyond", say("judge", "inside"), margin, margin, used(value), *_ends(used, edges))
+    at_edge = min(margin_of(e) for e in edges) if len(edges) == 2 else None
+    caps = tuple(caps) if below else tuple(rich_caps) + tuple(caps)
+    verdict, reason = _verdict(margin_of(value), at_edge, gap, evidence, caps)
+    if verdict == "room" and not below:
+        # Nothing that is too rich to burn counts as room: it passes through the interval on its way out.
+        verdict, reason = "near", say("judge", "rich")
+    return Judgement(verdict, reason, margin_of(value), at_edge, used(value), *_ends(used, edges))
+
+
+def _ends(used, edges) -> list[float | None]:
+    return sorted(used(e) for e in edges) if len(edges) == 2 else [None, None]

@@ -9,7 +9,7 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from screener.screening.finding import READ_EVIDENCE
-from screener.screening.judge import judge
+from screener.screening.judge import judge, judge_keep_out
 
 BELOW = {"kind": "stay below", "reference": 0.0, "gap": 5.0, "evidence": "law"}
 ABOVE = {"kind": "stay above", "reference": 200.0, "gap": 5.0, "evidence": "law"}
@@ -78,3 +78,33 @@ def test_room_means_what_it_says(value, low, high, limit, kind, evidence):
         assert worse >= 3.0
     if math.isnan(value) or math.isnan(limit):
         assert judged.verdict == "unknown"
+
+
+@pytest.mark.parametrize(
+    ("value", "low", "high", "verdict"),
+    [
+        (0.4, 0.3, 0.5, "room"),  # lean, with the gap
+        (0.9, 0.8, 0.95, "near"),  # lean, gap too small
+        (0.9, 0.8, 1.2, "near"),  # lean, the range reaches in
+        (1.0, 0.9, 1.1, "beyond"),  # on the lower limit
+        (4.0, 3.0, 5.0, "beyond"),
+        (8.0, 7.0, 9.0, "beyond"),  # on the upper limit
+        (9.0, 7.0, 11.0, "near"),  # rich, the range reaches in
+        (40.0, 35.0, 45.0, "near"),  # rich and far away: still no room
+        (math.nan, 1.0, 2.0, "unknown"),
+        (0.4, math.nan, 0.5, "unknown"),
+    ],
+)
+def test_keep_out(value, low, high, verdict):
+    judged = judge_keep_out(value, low, high, 1.0, 8.0, gap=0.2, evidence="standard")
+    assert judged.verdict == verdict
+    if verdict in ("room", "near"):
+        assert judged.margin > 0.0 and judged.room_used < 1.0
+
+
+@settings(max_examples=400, deadline=None)
+@given(numbers, numbers, numbers, numbers, numbers, evidences)
+def test_keep_out_gives_room_on_the_lean_side_only(value, low, high, lower, upper, evidence):
+    judged = judge_keep_out(value, low, high, lower, upper, gap=0.5, evidence=evidence)
+    if judged.verdict == "room":
+        assert max(value, low, high) <= lower - 0.5 and evidence in READ_EVIDENCE
