@@ -56,12 +56,12 @@ class Fluid:
 
     @classmethod
     def of(cls, names, model: str = "auto") -> Fluid:
-        """A fluid of tabulated species.
+        """A fluid of tabulated species and of pseudo-components.
 
         Parameters
         ----------
-        names : sequence of str
-            Species names, synonyms or CAS numbers.
+        names : sequence of str or Species
+            Species names, synonyms, CAS numbers or names of cuts; records as they are.
         model : str
             "auto" (= "PR-GE"), "PR-GE", "PR", "SRK" or "gamma-phi". "PR" takes
             the same alpha with k_ij, but Soave's for gases without groups;

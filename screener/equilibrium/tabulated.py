@@ -17,14 +17,14 @@ from screener.ground.constants import ATMOSPHERE, T_15C, R
 
 
 def fluid_of(kind, names, model: str):
-    """A fluid of tabulated species; see `Fluid.of`."""
+    """A fluid of species by name or as records; see `Fluid.of`."""
     from screener import species
 
     found = tuple(species.find(name) for name in names)
     canonical = tuple(one.name for one in found)
-    table = species.columns(canonical)
+    table = species.columns(found)
     parts = _van_der_waals if model in ("PR", "SRK") else _peng_robinson_excess
-    equation, alpha, mixing, shift, gaps, missing = parts(canonical, model, table)
+    equation, alpha, mixing, shift, gaps, missing = parts(found, model, table)
     return kind(
         names=canonical, model=model, MW=table.MW, Tc=table.Tc, Pc=table.Pc, omega=table.omega, equation=equation,
         alpha=alpha, mixing=mixing, shift_0=shift[0], shift_1=shift[1], v_15=table.MW / table.rho_15, gaps=gaps,
@@ -47,14 +47,14 @@ def _alpha(table) -> Twu:
     return Twu(table.Tc, table.L, table.M, table.N, table.C, table.D)
 
 
-def _peng_robinson_excess(names, model: str, table):
+def _peng_robinson_excess(found, model: str, table):
     """Parts of the PR-GE fluid: equation, alpha, mixing rule, translation, gaps, missing pairs."""
     from screener import species
 
     R_k, Q_k, main, a, b, c = species.group_tables(table.subgroups)
     unifac = Unifac.of(table.groups, R_k, Q_k, main, a, b, c)
-    A0, A1, A2, lacking = species.pair_terms(names)
-    missing = tuple(tuple(pair) for pair in lacking) + _pairs_without_groups(names, table.groups, a)
+    A0, A1, A2, lacking = species.pair_terms(found)
+    missing = tuple(tuple(pair) for pair in lacking) + _pairs_without_groups(table.names, table.groups, a)
     gaps = tuple(f"no parameter for {one} + {other}; taken as zero" for one, other in missing)
     mixing = ZeroPressure(Excess.of(unifac, A0, A1, A2))
     return EQUATIONS["PR"], _alpha(table), mixing, (table.c0, table.c1), gaps, missing
@@ -69,7 +69,7 @@ def _pairs_without_groups(names, counts, a):
     return tuple((names[i], names[j]) for i in range(c) for j in range(i, c) if touch[i, j])
 
 
-def _van_der_waals(names, model: str, table):
+def _van_der_waals(found, model: str, table):
     """Parts of the plain cubic equations: equation, alpha, mixing rule, translation, gaps, nothing missing."""
     from screener import species
 
@@ -77,11 +77,11 @@ def _van_der_waals(names, model: str, table):
     if model == "SRK":
         alpha = Soave(table.Tc, m_of_omega(table.omega, "SRK"))
         shift = _shift_at_15(equation, alpha, table)
-        gaps = ("no table of k_ij for SRK; every pair taken as zero",) if len(names) > 1 else ()
+        gaps = ("no table of k_ij for SRK; every pair taken as zero",) if len(found) > 1 else ()
         return equation, alpha, VanDerWaals(None), (shift, np.zeros_like(shift)), gaps, ()
-    kij, fallback = species.interactions(names, model)
+    kij, fallback = species.interactions(found, model)
     gaps = tuple(f"k_ij of {one} + {other} in no table; taken as zero" for one, other in fallback)
-    mixing = VanDerWaals(interaction_matrix(kij, len(names)))
+    mixing = VanDerWaals(interaction_matrix(kij, len(found)))
     # library k_ij of gases far above their critical point were fitted with Soave's alpha and go wrong with another
     gas = table.groups.sum(axis=1) == 0.0
     alpha = ByComponent(gas, Soave(table.Tc, m_of_omega(table.omega, "PR")), _alpha(table)) if gas.any() else _alpha(table)

@@ -8,6 +8,7 @@ from screener.species.catalogue import Columns, columns, find, names, stand_in
 from screener.species.forms import alpha
 from screener.species.groups import group_tables
 from screener.species.pairs import interactions, pair_terms
+from screener.species.pseudo import cut
 from screener.species.record import Curve, Limit, Species
 
 __all__ = [
@@ -17,6 +18,7 @@ __all__ = [
     "Species",
     "alpha",
     "columns",
+    "cut",
     "find",
     "find_live",
     "group_tables",

@@ -10,6 +10,7 @@ import numpy as np
 
 from screener.ground.errors import DataError, UnknownName
 from screener.species import tables
+from screener.species.pseudo import is_cut, read
 from screener.species.record import Species
 
 
@@ -38,15 +39,22 @@ def names() -> tuple[str, ...]:
     return tuple(row["name"] for row in tables.by_cas("identity").values())
 
 
-def find(text: str) -> Species:
+def find(text: str | Species) -> Species:
     """The species with this name, synonym or CAS number; case does not matter.
+
+    The name of a cut describes it wholly and gives the pseudo-component (`screener.species.cut`);
+    a species is given back as it is.
 
     Raises
     ------
     UnknownName
         Nothing in the table is called so; carries the nearest names.
     """
+    if isinstance(text, Species):
+        return text
     cas = _names().get(_key(str(text)))
+    if cas is None and is_cut(str(text)):
+        return read(str(text))
     if cas is None:
         spellings = [name.lower() for name in names()]
         spellings += [

@@ -56,6 +56,9 @@ class Species:
     curves within 250-350 K, None with a single curve; psat_extension [-] the band of the
     part of 250-350 K where no curve is valid and the chosen one was continued, 0 where
     none was needed. flash_point [K], LFL and UFL [mole fraction in air], each with its source.
+
+    families holds what a pseudo-component is made of, (family, share of its molecules) [-]; empty
+    for a real species, which is all of its own family. A pseudo-component's groups are means.
     """
 
     name: str
@@ -71,7 +74,7 @@ class Species:
     alpha: tuple[float, float, float, float, float]
     translation: tuple[float, float]
     cp_ideal: tuple[float, ...]
-    groups: dict[int, int]
+    groups: dict[int, float] = field(hash=False)
     rho_15: float
     rho_note: str
     curve: Curve
@@ -86,6 +89,7 @@ class Species:
     UFL_source: str = ""
     exposure: tuple[Limit, ...] = ()
     live: bool = field(default=False)
+    families: tuple[tuple[str, float], ...] = ()
 
     def psat(self, T):
         """Vapour pressure [Pa] of the chosen curve at T [K], scalar or (n,); NaN outside its range."""
@@ -95,6 +99,11 @@ class Species:
             inside, forms.psat(self.curve.coefficients, np.where(inside, T, self.curve.T_low)), np.nan
         )
         return float(P) if P.ndim == 0 else P
+
+    @property
+    def family_shares(self) -> tuple[tuple[str, float], ...]:
+        """Families of the molecules and their shares [-]; one for a real species."""
+        return self.families or ((self.family, 1.0),)
 
     @property
     def psat_error(self) -> float:
