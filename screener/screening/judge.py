@@ -87,7 +87,7 @@ def judge_keep_out(
     near. Room used is value/limit below the interval and limit/value above it.
     """
     value, low, high, limit_low, limit_high = (_number(v) for v in (value, low, high, limit_low, limit_high))
-    if value is None or limit_low is None or limit_high is None:
+    if value is None or limit_low is None or limit_high is None or not 0.0 < limit_low < limit_high:
         return Judgement("unknown", "", None, None, None, None, None)
     inside = limit_low <= value <= limit_high
     below = value < limit_low
