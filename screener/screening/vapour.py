@@ -155,12 +155,12 @@ def receipt(context: Context) -> Draft:
     if context.case.tank.kind == "pressure-vessel":
         return _draft(key, skip=say("skip", "pressure-vessel"))
     lanes, i = context.lanes, context.i
-    low, value, high = lanes.P_receipt[i]
+    low, value, high = lanes.arrival.P[i]
     unknown, caps = _gas_state(context)
     if not math.isfinite(value):
         paths = context.missing("receipt_temperature")
         unknown = say("unknown", "missing", paths=", ".join(paths)) if paths else say(
-            "unknown", "no-bubble", why=context._status_words(lanes.status_receipt[i]))  # fmt: skip
+            "unknown", "no-bubble", why=context._status_words(lanes.arrival.status[i]))  # fmt: skip
     lane = Lane(
         Condition("receipt", "", "on arrival", "tank inlet"), value, low, high, context.barometer,
         unknown=unknown, caps=caps, facts=_receipt_facts(context), tag=RECEIPT,
@@ -186,15 +186,23 @@ def _gas_state(context: Context) -> tuple[str, tuple[str, ...]]:
 
 def _receipt_facts(context: Context) -> tuple[Fact, ...]:
     lanes, i = context.lanes, context.i
+    came = lanes.arrival
     facts = [
         Fact("arrival temperature", context.input("receipt_temperature"), "K"),
         Fact("tank pressure", context.barometer, "Pa"),
-        Fact("vapour fraction by moles", float(lanes.beta[i, BEST]), "mol/mol", say("note", "isothermal")),
-        Fact("vapour fraction, high end", float(lanes.beta[i, 2]), "mol/mol"),
+        Fact("vapour fraction by moles, isenthalpic", float(came.beta[i, BEST]), "mol/mol"),
+        Fact("temperature after the flash", float(came.T_after[i]), "K"),
+        Fact(
+            "vapour fraction by moles, isothermal",
+            float(came.isothermal[i]),
+            "mol/mol",
+            say("note", "isothermal"),
+        ),
+        Fact("vapour fraction by moles, high end", float(came.beta[i, 2]), "mol/mol"),
     ]
     if context.case.line.receipt.dissolved_gas == "air-saturated":
         facts.append(Fact("vapour fraction with the dissolved air", float(lanes.beta_gas[i]), "mol/mol"))
     facts = [f for f in facts if math.isfinite(f.value)]
-    if lanes.beta[i, BEST] > 0.0:
-        facts += vapour_facts(context, lanes.y_receipt[i])
+    if came.beta[i, BEST] > 0.0:
+        facts += vapour_facts(context, came.y[i])
     return tuple(facts)

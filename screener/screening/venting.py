@@ -64,7 +64,7 @@ def outbreathing(context: Context, stream) -> Draft:
     )
     facts = (
         Fact("thermal", float(b.out_thermal[i]), "m3/s air"),
-        Fact("flashed vapour as air", float(b.out_flash[i, BEST]), "m3/s air", say("note", "isothermal")),
+        Fact("flashed vapour as air", float(b.out_flash[i, BEST]), "m3/s air"),
         Fact("installed capacity", float(b.vents.out[i]), "m3/s air"),
         Fact(say("note", "one-out"), float(b.vents.out_less[i]), "m3/s air"),
         Fact("hottest vapour space", float(context.lanes.weather.T_space[i]), "K"),

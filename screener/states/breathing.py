@@ -98,8 +98,9 @@ def _flash(lanes: Lanes, fill, filling) -> np.ndarray:
     inputs = lanes.inputs
     T, z = inputs["receipt_temperature"], lanes.z[:, RECEIPT]
     v = molar_volume(lanes.fluid, T, z)
-    y = np.where(np.isfinite(lanes.y_receipt), lanes.y_receipt, 0.0)
-    M = np.where(lanes.beta[:, BEST] > 0.0, y @ lanes.fluid.MW, z @ lanes.fluid.MW)
-    flow = lanes.beta * (fill / v)[:, None]
-    flash = flashed_vapour_as_air(flow, M[:, None], np.where(np.isfinite(T), T, T_15C)[:, None])
+    after = lanes.arrival.T_after
+    y = np.where(np.isfinite(lanes.arrival.y), lanes.arrival.y, 0.0)
+    M = np.where(lanes.arrival.beta[:, BEST] > 0.0, y @ lanes.fluid.MW, z @ lanes.fluid.MW)
+    flow = lanes.arrival.beta * (fill / v)[:, None]
+    flash = flashed_vapour_as_air(flow, M[:, None], np.where(np.isfinite(after), after, T_15C)[:, None])
     return np.where(filling[:, None], flash, 0.0)

@@ -14,10 +14,11 @@ from dataclasses import dataclass
 import numpy as np
 
 from screener.blends import mix, union
-from screener.equilibrium import Fluid, bubble_pressure, flash_tp
+from screener.equilibrium import Fluid
 from screener.ground.status import Status
-from screener.species import find
+from screener.states.arrival import AIR, Arrival, arrival, vapour_with_air
 from screener.states.inputs import Inputs
+from screener.states.pressures import bubble, psat_errors, relative_spread, with_edges
 from screener.states.volumes import density_15, expansion
 from screener.states.weather import Weather
 from screener.tank import horizontal_liquid_volume, vertical_liquid_volume
@@ -26,16 +27,6 @@ LIQUIDS = (("receipt", ""), ("heel", ""), ("mixture", "low"), ("mixture", "norma
 RECEIPT, HEEL, LOW, NORMAL, HIGH = range(5)
 EDGES = ("low", "best", "high")
 BEST = 1
-
-AIR = ("nitrogen", "oxygen")
-AIR_SHARES = np.array(
-    [0.79, 0.21]
-)  # dry air with its argon counted as nitrogen, by moles; common practice, no source
-
-METHOD_SPREAD = 0.05  # least relative spread of any computed vapour pressure; rule of this project
-SPREAD_COUNTED = (
-    0.03  # disagreement of pure vapour-pressure curves above this is carried; rule of this project
-)
 
 
 @dataclass(frozen=True)
@@ -46,10 +37,9 @@ class Lanes:
     present (n, 5); T_own (n, 5) temperature the liquid brings along [K];
     T_hot (n, 5, 3) hottest liquid [K]; P_hot, P_hot_low, P_hot_high (n, 5) its
     bubble pressure with range [Pa]; P_legal (n, 5, 3) the same at
-    the highest monthly mean, the high end at the own temperature if that is higher [Pa]; P_receipt (n, 3)
-    bubble pressure at arrival [Pa]; beta (n, 3) vapour fraction at arrival [-];
-    beta_gas (n,) the same with the air the receipt is stated to hold, NaN where
-    none is stated; y_receipt, y_hot vapour compositions; status_* per lane.
+    the highest monthly mean, the high end at the own temperature if that is higher [Pa];
+    arrival of the receipt; beta_gas (n,) its vapour fraction with the air it is
+    stated to hold, NaN where none is stated; y_hot vapour compositions; status_* per lane.
     """
 
     inputs: Inputs
@@ -67,12 +57,8 @@ class Lanes:
     T_legal: np.ndarray
     P_legal: np.ndarray
     status_legal: np.ndarray
-    P_receipt: np.ndarray
-    status_receipt: np.ndarray
-    beta: np.ndarray
+    arrival: Arrival
     beta_gas: np.ndarray
-    y_receipt: np.ndarray
-    status_flash: np.ndarray
     worst_residual: float
     failed: int
 
@@ -129,28 +115,6 @@ def _mixtures(inputs, fluid, Z, has_heel):
     return z, T_own, present
 
 
-def _bubble(fluid, T, z, mask):
-    """Bubble pressure (...), y (..., c), status (...) and residual (...) of the lanes in mask."""
-    shape, c = T.shape, fluid.c
-    P = np.full(shape, np.nan)
-    y = np.full((*shape, c), np.nan)
-    status = np.full(shape, Status.BAD_INPUT, dtype=int)
-    residual = np.full(shape, np.nan)
-    wanted = mask & np.isfinite(T)
-    if wanted.any():
-        answer = bubble_pressure(fluid, T[wanted], np.broadcast_to(z, (*shape, c))[wanted])
-        P[wanted] = np.where(answer.ok, answer.P, np.nan)
-        y[wanted] = np.where(answer.ok[:, None], answer.y, np.nan)
-        status[wanted], residual[wanted] = answer.status, answer.residual
-    return P, y, status, residual, wanted
-
-
-def _method_spread(y, spreads):
-    """Relative method spread (...) of a vapour pressure: 5 % and what its vapour species add."""
-    carried = np.where(spreads > SPREAD_COUNTED, spreads, 0.0)
-    return METHOD_SPREAD + np.nansum(y * carried, axis=-1)
-
-
 def _hottest_liquid(weather: Weather, T_own, has_receipt):
     """Hottest liquid (n, 5, 3): the surface of the hottest day, or the liquid's own temperature if warmer.
 
@@ -181,108 +145,37 @@ def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     has_receipt = np.array([case.line.receipt is not None for case in cases])
     T_hot = _hottest_liquid(weather, T_own, has_receipt)
     known = present & np.isfinite(z).all(axis=-1)
-    spreads = psat_spreads(names)
+    errors = psat_errors(names)
 
-    P_hot, y, status_hot, res_hot, asked_hot = _bubble(fluid, T_hot, z[:, :, None, :], known[:, :, None])
-    spread = _method_spread(y, spreads)
-    P_hot = _with_edges(P_hot, spread)
+    P_hot, y, status_hot, res_hot, asked_hot = bubble(fluid, T_hot, z[:, :, None, :], known[:, :, None])
+    spread = relative_spread(y, errors)
+    P_hot = with_edges(P_hot, spread)
     T_legal = _legal_temperatures(weather, T_own)
-    P_two, y_legal, status_legal, res_legal, asked_legal = _bubble(
+    P_two, y_legal, status_legal, res_legal, asked_legal = bubble(
         fluid, T_legal, z[:, :, None, :], known[:, :, None]
     )
-    spread = _method_spread(y_legal, spreads)
+    spread = relative_spread(y_legal, errors)
     P_legal = np.stack(
         [P_two[:, :, 0] * (1.0 - spread[:, :, 0]), P_two[:, :, 0], P_two[:, :, 1] * (1.0 + spread[:, :, 1])],
         axis=-1,
     )
 
-    flash = _receipt(fluid, z[:, RECEIPT], T_own[:, RECEIPT], weather.barometer, spreads, has_receipt)
-    P_receipt, status_receipt, beta, y_receipt, status_flash, res_receipt, asked_receipt = flash
-    beta_gas = _with_air(fluid, z[:, RECEIPT], T_own[:, RECEIPT], inputs, weather.barometer)
-    residuals = np.concatenate([res_hot[asked_hot], res_legal[asked_legal], res_receipt[asked_receipt]])
-    statuses = np.concatenate(
-        [status_hot[asked_hot], status_legal[asked_legal], status_receipt[asked_receipt]]
+    came, res_receipt, asked_receipt = arrival(
+        fluid, z[:, RECEIPT], T_own[:, RECEIPT], weather.barometer, errors, has_receipt
     )
+    beta_gas = vapour_with_air(fluid, z[:, RECEIPT], T_own[:, RECEIPT], inputs, weather.barometer)
+    residuals = np.concatenate([res_hot[asked_hot], res_legal[asked_legal], res_receipt[asked_receipt]])
+    statuses = np.concatenate([status_hot[asked_hot], status_legal[asked_legal], came.status[asked_receipt]])
     level = np.column_stack(
         [inputs[k] for k in ("level_low", "level_low", "level_low", "level_normal", "level_high")]
     )
     return Lanes(
         inputs, weather, fluid, names, z, level, present, T_own, T_hot, P_hot, y[:, :, BEST],
-        status_hot, weather.T_legal, P_legal, status_legal[:, :, 0], P_receipt, status_receipt, beta, beta_gas, y_receipt,
-        status_flash, float(np.nanmax(residuals, initial=0.0)), int((statuses != Status.CONVERGED).sum()),
+        status_hot, weather.T_legal, P_legal, status_legal[:, :, 0], came, beta_gas,
+        float(np.nanmax(residuals, initial=0.0)), int((statuses != Status.CONVERGED).sum()),
     )  # fmt: skip
-
-
-_SIGNS = np.array([-1.0, 0.0, 1.0])
-
-
-def _with_edges(P, spread):
-    """Widen low and high of P (..., 3) by the relative spread (..., 3)."""
-    return P * (1.0 + spread * _SIGNS)
-
-
-def _receipt(fluid, z, T, barometer, spreads, has_receipt):
-    """Bubble pressure at arrival (n, 3) and the flash at tank pressure: beta (n, 3), y (n, c).
-
-    The range of beta comes from flashing at a tank pressure moved by the method
-    spread of the vapour pressure, which does to the flash what an error of the
-    vapour pressure would.
-    """
-    n = len(T)
-    P, y, status, residual, asked = _bubble(fluid, T, z, has_receipt)
-    spread = _method_spread(y, spreads)
-    P = P[:, None] * (1.0 + spread[:, None] * _SIGNS)
-    beta, y_flash = np.full((n, 3), np.nan), np.full((n, fluid.c), np.nan)
-    status_flash = np.full((n, 3), Status.BAD_INPUT, dtype=int)
-    go = np.isfinite(T) & np.isfinite(barometer) & has_receipt
-    if go.any():
-        tank = barometer[go][:, None] / (1.0 + spread[go][:, None] * _SIGNS)
-        tank = np.where(np.isfinite(tank), tank, barometer[go][:, None])
-        answer = flash_tp(fluid, np.repeat(T[go], 3), tank.ravel(), np.repeat(z[go], 3, axis=0))
-        ok = answer.ok.reshape(-1, 3)
-        beta[go] = np.where(ok, np.clip(answer.beta.reshape(-1, 3), 0.0, 1.0), np.nan)
-        y_flash[go] = np.where(ok[:, 1, None], answer.y.reshape(-1, 3, fluid.c)[:, 1], np.nan)
-        status_flash[go] = answer.status.reshape(-1, 3)
-    return P, status, beta, y_flash, status_flash, residual, asked
-
-
-def _with_air(fluid, z, T, inputs, barometer):
-    """Vapour fraction (n,) at arrival of a receipt that was saturated with air at its stated temperature.
-
-    Air and vapour shared the barometer where it was saturated; the air that
-    dissolved follows from the fugacity coefficients at infinite dilution. A
-    lane whose receipt is not stated to be saturated holds NaN.
-    """
-    T_sat = np.array([
-        case.line.receipt.saturated_at or np.nan
-        if case.line.receipt and case.line.receipt.dissolved_gas == "air-saturated" else np.nan
-        for case in inputs.cases
-    ])  # fmt: skip
-    beta = np.full(len(T_sat), np.nan)
-    go = np.isfinite(T_sat) & np.isfinite(T) & np.isfinite(barometer)
-    if not go.any():
-        return beta
-    z, T, T_sat, P = z[go], T[go], T_sat[go], barometer[go]
-    bubble = bubble_pressure(fluid, T_sat, z)
-    air = np.clip(P - bubble.P, 0.0, None) / P
-    gas = [fluid.names.index(name) for name in AIR]
-    y = np.where(np.isfinite(bubble.y), bubble.y, 0.0) * (1.0 - air)[:, None]
-    y[:, gas] += air[:, None] * AIR_SHARES
-    y /= y.sum(axis=1, keepdims=True)
-    ln_K = fluid.ln_phi(T_sat, P, z, "L") - fluid.ln_phi(T_sat, P, y, "V")
-    full = z.copy()
-    full[:, gas] += y[:, gas] / np.exp(ln_K[:, gas])
-    full /= full.sum(axis=1, keepdims=True)
-    answer = flash_tp(fluid, T, P, np.where(np.isfinite(full), full, np.nan))
-    beta[go] = np.where(answer.ok & bubble.ok, np.clip(answer.beta, 0.0, 1.0), np.nan)
-    return beta
 
 
 def method_spread(lanes: Lanes, y) -> np.ndarray:
     """Relative method spread (n,) of vapour pressures whose vapour is y (n, c). [-]"""
-    return _method_spread(np.asarray(y), psat_spreads(lanes.names))
-
-
-def psat_spreads(names) -> np.ndarray:
-    """Error bar of each species' vapour-pressure curve: disagreement or extension, 0 where none is known. [-]"""
-    return np.array([find(name).psat_error or 0.0 for name in names])
+    return relative_spread(np.asarray(y), psat_errors(lanes.names))

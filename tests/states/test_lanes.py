@@ -67,16 +67,19 @@ def test_dissolved_air_comes_out_only_where_the_receipt_warms_up():
 def test_a_receipt_above_its_bubble_point_flashes_and_loads_the_vents():
     light = blend({"n-butane": 0.5, "isopentane": 0.2, "toluene": 0.3})
     table = lanes(case(blend=light, line=line(receipt=replace(line().receipt, temperature=ZERO + 25.0))))
-    low, best, high = table.beta[0]
+    low, best, high = table.arrival.beta[0]
     assert 0.0 < low < best < high < 1.0
+    # Nothing heats the liquid: it cools, and gives off less than at constant temperature.
+    assert table.arrival.T_after[0] < ZERO + 25.0
+    assert best < table.arrival.isothermal[0] <= high
     out = flows(table).breathing
     assert out.out[0, RECEIPT, 1] == pytest.approx(
         out.out_liquid[0, RECEIPT] + out.out_thermal[0] + out.out_flash[0, 1]
     )
     # First principles: beta times the molar feed at 22.414 l/mol, as air by the root of M T over that of air at 0 degC.
     feed = 0.10 * light.density_15 / light.expansion(ZERO + 25.0)[0] / light.MW
-    M = float(table.y_receipt[0] @ table.fluid.MW)
-    air = best * feed * 0.022414 * np.sqrt(M * (ZERO + 25.0) / (0.028965 * 273.15))
+    M = float(table.arrival.y[0] @ table.fluid.MW)
+    air = best * feed * 0.022414 * np.sqrt(M * table.arrival.T_after[0] / (0.028965 * 273.15))
     assert out.out_flash[0, 1] == pytest.approx(air, rel=1e-3)
 
 

@@ -1,0 +1,104 @@
+"""The receipt as it enters the tank: does it boil, how much vapour, and what dissolved air adds."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from screener.equilibrium import bubble_pressure, caloric, flash_ph, flash_tp
+from screener.ground.status import Status
+from screener.states.pressures import SIGNS, bubble, relative_spread
+
+AIR = ("nitrogen", "oxygen")
+AIR_SHARES = np.array(
+    [0.79, 0.21]
+)  # dry air with its argon counted as nitrogen, by moles; common practice, no source
+BEST = 1
+
+
+@dataclass(frozen=True)
+class Arrival:
+    """The receipt as it enters the tank.
+
+    P (n, 3) bubble pressure at arrival with its range [Pa]; beta (n, 3) vapour fraction at tank
+    pressure, isenthalpic with the isothermal high end [-]; isothermal (n,) upper bound of the best
+    value [-]; T_after (n,) [K]; y (n, c) vapour of the isenthalpic flash, NaN without vapour;
+    status (n,) of the bubble point, status_flash (n, 3).
+    """
+
+    P: np.ndarray
+    status: np.ndarray
+    beta: np.ndarray
+    isothermal: np.ndarray
+    T_after: np.ndarray
+    y: np.ndarray
+    status_flash: np.ndarray
+
+
+def arrival(fluid, z, T, barometer, errors, has_receipt):
+    """The receipt on arrival: bubble pressure (n, 3) and its flash at tank pressure.
+
+    Nothing heats the liquid as it enters, so the flash is isenthalpic: beta low
+    and best, y and the temperature it cools to. The isothermal flash gives more
+    vapour; it is the upper bound and the high end. The range comes from a tank
+    pressure moved by the method spread of the vapour pressure, which does to
+    the flash what an error of the vapour pressure would.
+    """
+    n = len(T)
+    P, y, status, residual, asked = bubble(fluid, T, z, has_receipt)
+    spread = relative_spread(y, errors)
+    P = P[:, None] * (1.0 + spread[:, None] * SIGNS)
+    go = np.isfinite(T) & np.isfinite(barometer) & has_receipt
+    tank = barometer[:, None] / (1.0 + np.where(np.isfinite(spread), spread, 0.0)[:, None] * SIGNS)
+    isothermal, y_flash = np.full((n, 3), np.nan), np.full((n, fluid.c), np.nan)
+    status_flash = np.full((n, 3), Status.BAD_INPUT, dtype=int)
+    if go.any():
+        answer = flash_tp(fluid, np.repeat(T[go], 3), tank[go].ravel(), np.repeat(z[go], 3, axis=0))
+        ok = answer.ok.reshape(-1, 3)
+        isothermal[go] = np.where(ok, np.clip(answer.beta.reshape(-1, 3), 0.0, 1.0), np.nan)
+        status_flash[go] = answer.status.reshape(-1, 3)
+    beta, T_after = isothermal.copy(), np.where(isothermal[:, BEST] == 0.0, T, np.nan)
+    boils = np.flatnonzero(isothermal[:, BEST] > 0.0)
+    if boils.size:
+        feed = caloric(fluid, T[boils], tank[boils, BEST], z[boils], "L")
+        two = np.repeat(boils, 2)
+        answer = flash_ph(fluid, tank[boils, :2].ravel(), np.repeat(feed.H, 2), z[two])
+        ok = (answer.ok & np.repeat(feed.ok, 2)).reshape(-1, 2)
+        beta[boils, :2] = np.where(ok, np.clip(answer.beta.reshape(-1, 2), 0.0, 1.0), np.nan)
+        T_after[boils] = np.where(ok[:, BEST], answer.T.reshape(-1, 2)[:, BEST], np.nan)
+        y_flash[boils] = np.where(ok[:, BEST, None], answer.y.reshape(-1, 2, fluid.c)[:, BEST], np.nan)
+        status_flash[boils, :2] = answer.status.reshape(-1, 2)
+    return Arrival(P, status, beta, isothermal[:, BEST], T_after, y_flash, status_flash), residual, asked
+
+
+def vapour_with_air(fluid, z, T, inputs, barometer):
+    """Vapour fraction (n,) at arrival of a receipt that was saturated with air at its stated temperature.
+
+    Air and vapour shared the barometer where it was saturated; the air that
+    dissolved follows from the fugacity coefficients at infinite dilution. A
+    lane whose receipt is not stated to be saturated holds NaN.
+    """
+    T_sat = np.array([
+        case.line.receipt.saturated_at or np.nan
+        if case.line.receipt and case.line.receipt.dissolved_gas == "air-saturated" else np.nan
+        for case in inputs.cases
+    ])  # fmt: skip
+    beta = np.full(len(T_sat), np.nan)
+    go = np.isfinite(T_sat) & np.isfinite(T) & np.isfinite(barometer)
+    if not go.any():
+        return beta
+    z, T, T_sat, P = z[go], T[go], T_sat[go], barometer[go]
+    bubble = bubble_pressure(fluid, T_sat, z)
+    air = np.clip(P - bubble.P, 0.0, None) / P
+    gas = [fluid.names.index(name) for name in AIR]
+    y = np.where(np.isfinite(bubble.y), bubble.y, 0.0) * (1.0 - air)[:, None]
+    y[:, gas] += air[:, None] * AIR_SHARES
+    y /= y.sum(axis=1, keepdims=True)
+    ln_K = fluid.ln_phi(T_sat, P, z, "L") - fluid.ln_phi(T_sat, P, y, "V")
+    full = z.copy()
+    full[:, gas] += y[:, gas] / np.exp(ln_K[:, gas])
+    full /= full.sum(axis=1, keepdims=True)
+    answer = flash_tp(fluid, T, P, np.where(np.isfinite(full), full, np.nan))
+    beta[go] = np.where(answer.ok & bubble.ok, np.clip(answer.beta, 0.0, 1.0), np.nan)
+    return beta
