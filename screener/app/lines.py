@@ -15,6 +15,7 @@ from rich.segment import Segment
 from rich.style import Style
 from textual import events
 from textual.binding import Binding
+from textual.color import Color
 from textual.geometry import Size
 from textual.message import Message
 from textual.strip import Strip
@@ -23,7 +24,17 @@ from textual.widget import Widget
 from screener.app.rows import Row, Span, columns_of, pad, row_width
 from screener.app.words import say
 
-TONES = ("dim", "bold", "near", "beyond", "unknown", "band", "curve", "cursor", "head", "cell", "bad")
+# Attributes of the tones that need no colour, and the theme variables of those that have one.
+_ATTRIBUTES = {
+    "dim": Style(dim=True),
+    "bold": Style(bold=True),
+    "head": Style(bold=True),
+    "curve": Style(bold=True),
+    "cursor": Style(bold=True),
+    "cell": Style(reverse=True),
+}
+_COLOURS = {"near": "near", "beyond": "beyond", "bad": "beyond", "unknown": "unknown", "band": "band"}
+TONES = (*_ATTRIBUTES, *_COLOURS)
 
 
 @dataclass(frozen=True)
@@ -40,23 +51,6 @@ Builder = Callable[[int], tuple[Sequence[Row], Sequence[Block]]]
 class Toned(Widget):
     """A widget that paints rows of spans; tones become styles of its theme."""
 
-    COMPONENT_CLASSES: ClassVar = {f"tone-{tone}" for tone in TONES}
-    DEFAULT_CSS = """
-    Toned {
-        .tone-dim { text-style: dim; }
-        .tone-bold { text-style: bold; }
-        .tone-head { text-style: bold; }
-        .tone-near { color: $near; }
-        .tone-beyond { color: $beyond; }
-        .tone-bad { color: $beyond; }
-        .tone-unknown { color: $unknown; }
-        .tone-band { background: $band; }
-        .tone-curve { text-style: bold; }
-        .tone-cursor { text-style: bold; }
-        .tone-cell { text-style: reverse; }
-    }
-    """
-
     _tones: dict[str, Style] | None = None  # styles by tone, until the style of the widget changes
 
     def notify_style_update(self) -> None:
@@ -71,9 +65,14 @@ class Toned(Widget):
         if tone not in self._tones:
             style = self._tones[""]
             for word in tone.split():
-                style += self.get_component_rich_style(f"tone-{word}", partial=True)
+                style += _ATTRIBUTES[word] if word in _ATTRIBUTES else self._coloured(word)
             self._tones[tone] = style
         return self._tones[tone]
+
+    def _coloured(self, word: str) -> Style:
+        """Style of a tone that has a colour of the theme: a ground for the band, else a foreground."""
+        colour = Color.parse(self.app.theme_variables[_COLOURS[word]]).rich_color
+        return Style(bgcolor=colour) if word == "band" else Style(color=colour)
 
     def paint(self, row: Row, width: int) -> Strip:
         """A row as a strip exactly `width` columns wide."""
