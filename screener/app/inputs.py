@@ -140,6 +140,8 @@ class InputPane(RowActions, Searching, Container):
         key = schema.key_at(cell.path)
         if key is None:
             return ""
+        if key.kind in (schema.STOCK, schema.SPECIES):
+            return say("hint", "part_name")
         echo = self.desk.known.echoes.get(cell.path)
         taken = say("hint", "taken", text=echo.text) if echo and not echo.default else ""
         note = echo.note if echo else ""

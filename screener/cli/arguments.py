@@ -94,8 +94,13 @@ def _add_schema(parser) -> None:
     parser.add_argument("of", nargs="?", choices=("case", "result"), default="case", help=_help("schema_of"))
 
 
+# The sets of screener.app.glyphs, named here so that --help loads no screens.
+GLYPHS = ("braille", "block", "ascii")
+
+
 def _add_open(parser) -> None:
     parser.add_argument("case", nargs="?", default=None, metavar="CASE.toml", help=_help("cases"))
+    parser.add_argument("--glyphs", choices=GLYPHS, default=None, help=_help("glyphs"))
 
 
 _COMMANDS = {
@@ -121,7 +126,7 @@ def parser() -> argparse.ArgumentParser:
         allow_abbrev=False,
     )
     top.add_argument("--version", action="version", version=f"screener {__version__}")
-    top.set_defaults(run=_later("screens", "open_screens"), case=None)
+    top.set_defaults(run=_later("screens", "open_screens"), case=None, glyphs=None)
     commands = top.add_subparsers(metavar="COMMAND", parser_class=_Parser)
     for name, (add, module, function) in _COMMANDS.items():
         text = say("commands", name)

@@ -13,4 +13,5 @@ def open_screens(arguments) -> int:
     """Hand over to the screens, on a case if one is named; without a terminal they would wait for ever."""
     if not streams.interactive():
         raise InputError("", None, say("faults", "no_terminal"), say("faults", "no_terminal_hint"))
-    return import_module("screener.app").run(arguments.case) or 0
+    wanted = {"glyphs": arguments.glyphs} if arguments.glyphs else {}
+    return import_module("screener.app").run(arguments.case, **wanted) or 0

@@ -74,3 +74,18 @@ async def test_without_colour_no_colour_is_sent(case_file, monkeypatch):
         await pressed(pilot, "5")
         for name in colours_of(pilot.app):
             assert name == "default"
+
+
+def test_the_command_line_offers_the_marks_that_exist(monkeypatch):
+    import screener.app
+    from screener.app.glyphs import NAMES
+    from screener.cli import main, streams
+    from screener.cli.arguments import GLYPHS
+
+    assert GLYPHS == NAMES
+    opened_with = []
+    monkeypatch.setattr(streams, "interactive", lambda: True)
+    monkeypatch.setattr(screener.app, "run", lambda path, glyphs="braille": opened_with.append((path, glyphs)))
+    assert main(["open", "a.toml", "--glyphs", "ascii"]) == 0
+    assert main([]) == 0
+    assert opened_with == [("a.toml", "ascii"), (None, "braille")]
