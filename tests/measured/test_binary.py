@@ -2,7 +2,7 @@
 
 The sets are those of tests/measured/binary, each with its source in its first line; rows with use = 0
 are left out. Isobaric sets are scored as the bubble pressure at the measured temperature and liquid
-composition. The model is the one used for every blend. Five sets of quality A served to fit pair corrections
+composition. The model is the one used for every blend. Four sets of quality A served to fit pair corrections
 (data/pairs/pair_corrections.csv); no set of quality B served for anything.
 """
 
