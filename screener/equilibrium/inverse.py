@@ -155,14 +155,26 @@ def solve_lanes(fluid, target, given, z, check: str) -> SolvedFlash:
         stands = (pairs.miss <= PROMISED) & (alike | narrow) & sharper
     _put_pairs(fluid, rows, two[stands], pairs, np.flatnonzero(stands), check)
     miss[two[stands]] = pairs.miss[stands]
-    again = np.flatnonzero(~(miss <= PROMISED))
+    bare = target.at_edge
+    bare[two[stands]] = False
+    miss[bare] = np.inf  # without its saturation point an edge has no state, whatever one phase the flash finds
+    again = np.flatnonzero(~(miss <= PROMISED) & ~bare)
     if again.size:
         search = FlashSearch(fluid, target.take(again), given[again], z[again], check)
         sought, miss[again] = search.run(bubble.take(again), dew.take(again))
         sought["iterations"] += rows["iterations"][again]
         for name, value in sought.items():
             rows[name][again] = value
-    return _answer(fluid, target, rows, miss)
+    answer = _answer(fluid, target, rows, miss)
+    _say_why(answer.status, np.flatnonzero(bare), target, bubble, dew)
+    return answer
+
+
+def _say_why(status, bare, target, bubble, dew):
+    """The status of a state at the edge that does not exist: that of its saturation point."""
+    dry = target.value[bare] == 1.0 if target.what == "beta" else np.zeros(bare.size, dtype=bool)
+    found = np.where(dry, dew.point.status[bare], bubble.point.status[bare])
+    status[bare] = np.where(found == Status.CONVERGED, int(Status.OUT_OF_RANGE), found)
 
 
 def _ends(fluid, target, given, z):

@@ -33,6 +33,12 @@ class Target:
         """Some of the lanes."""
         return replace(self, value=self.value[lanes])
 
+    @property
+    def at_edge(self):
+        """Mask (n,) of the targets that are a bubble or dew point themselves."""
+        ends = (0.0, 1.0) if self.what == "beta" else (0.0,)
+        return self.of_pairs & np.isin(self.value, ends)
+
     def small(self, edge):
         """|excess| (n,) taken as zero; edge (n,) is the excess of the liquid at its bubble point."""
         return MISS * np.clip(np.abs(edge), 1e-6, 0.1) if self.what == "ratio" else np.full(edge.shape, MISS)
