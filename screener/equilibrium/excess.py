@@ -1,4 +1,4 @@
-"""The excess Gibbs energy of a blend: modified UNIFAC plus a pair term for dissolved gases.
+"""The excess Gibbs energy of a blend: modified UNIFAC plus a pair term (dissolved gases, measured pairs).
 
     G^E/RT = (UNIFAC) + sum_{i<j} x_i x_j A_ij(T),   A_ij = A0 + A1/T + A2 ln T
 

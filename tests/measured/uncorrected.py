@@ -19,7 +19,7 @@ def with_terms(fluid, A0, A1, A2=None):
 
 
 def corrected(fluid, value=lambda one, other: (0.0, 0.0)):
-    """The fluid with the pair terms of dissolved gases and A0 [-], A1 [K] = value(one, other) as corrections."""
+    """The fluid with the pair terms of dissolved gases and, else, A0 [-], A1 [K] = value(one, other)."""
     found = [find(name) for name in fluid.names]
     A0, A1, A2, _ = pair_terms(fluid.names)
     for i, one in enumerate(found):
