@@ -47,6 +47,7 @@ class Desk:
         self.known = fields.NOTHING
         self.ready = False  # whether the heavy libraries are loaded
         self._names: tuple[Name, ...] = ()
+        self._told: tuple[int, object | None] = (-1, None)  # revision and screening of the last full result
         self.memo_written = ""  # where the memo of these inputs was written
 
     @property
@@ -102,8 +103,10 @@ class Desk:
 
     def attach(self, revision: int, worked: Worked) -> None:
         """Keep what was worked out; faults and echoes are kept by path."""
-        if not self.session.attach(Result(revision, worked.screening, worked.faults)):
+        if not self.session.attach(Result(revision, worked.screening, worked.faults, worked.full)):
             return
+        if worked.full and worked.screening is not None:
+            self._told = (revision, worked.screening)
         faults: dict[str, str] = {}
         for fault in worked.faults:
             sentence = fault_sentence(fault)
@@ -124,9 +127,10 @@ class Desk:
         """Sections of an input step; below the inputs of a liquid what the liquid amounts to."""
         made = fields.sections(step, self.text, self.known)
         liquid = {"blend": "receipt", "tank": "heel"}.get(step)
-        lines = information(self.session.screening, liquid) if liquid else []
+        revision, screening = self._told
+        lines = information(screening, liquid) if liquid and self.session.screening else []
         if lines:
-            note = say("information", "stale" if self.session.stale else "note")
+            note = say("information", "note" if revision == self.session.revision else "stale")
             made.append(fields.told(say("information", "heading"), note, lines))
         return made
 

@@ -7,7 +7,7 @@ worker once the first screen is painted.
 
 from __future__ import annotations
 
-from collections.abc import Callable
+from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass, replace
 from datetime import date
 from functools import lru_cache
@@ -28,11 +28,16 @@ class Name(NamedTuple):
 
 @dataclass(frozen=True)
 class Worked:
-    """One case worked out: a screening, or the faults that stopped it."""
+    """One case worked out: a screening, or the faults that stopped it.
+
+    full is False for the verdicts alone, which are there at once; what would
+    give room, the figures of the liquids and the curve take longer.
+    """
 
     screening: object | None
     faults: tuple[InputError, ...]
     echoes: dict[str, Echo]
+    full: bool = True
 
 
 @dataclass(frozen=True)
@@ -51,7 +56,7 @@ class Engine:
     """Everything the screens ask of the floors below."""
 
     warm: Callable[[], None]
-    work: Callable[[str, str], Worked]  # TOML text and name of the file -> result
+    work: Callable[[str, str], Iterable[Worked]]  # TOML text and name of the file -> verdicts, then all of it
     check: Callable[[str, str], Echo]  # path and text -> what it is taken as; raises InputError
     names: Callable[[], tuple[Name, ...]]
     packs: Callable[[], tuple[str, ...]]  # names of the rule packs
@@ -78,20 +83,22 @@ def _warm() -> None:
     units.registry()
 
 
-def _work(text: str, source: str) -> Worked:
+def _work(text: str, source: str) -> Iterator[Worked]:
     from screener.casefile import read_case
-    from screener.screening import screen
+    from screener.screening import screen, screen_many
 
     try:
         case = read_case(text)
     except InputError as error:
-        return Worked(None, faults_of(error), _echoes(text, ()))
+        yield Worked(None, faults_of(error), _echoes(text, ()))
+        return
     case = replace(case, source=source)
     echoes = _echoes(text, case.inputs)
     try:
-        return Worked(screen(case), (), echoes)
+        yield Worked(screen_many((case,))[0], (), echoes, full=False)
+        yield Worked(screen(case), (), echoes)
     except InputError as error:
-        return Worked(None, faults_of(error), echoes)
+        yield Worked(None, faults_of(error), echoes)
 
 
 def _echoes(text: str, inputs) -> dict[str, Echo]:

@@ -142,8 +142,11 @@ class FindingsPane(Container):
 
     # content
 
-    def show(self, screening, faults=()) -> None:
-        """A new result: findings, or the faults that kept the case from being read."""
+    def show(self, screening, faults=(), *, full: bool = True) -> None:
+        """A new result: findings, or the faults that kept the case from being read.
+
+        The curve of before stays until a full result brings the next one.
+        """
         self.screening, self.faults = screening, tuple(faults)
         self.set_class(bool(faults) or screening is None, "-faults")
         bars = self.query_one("#bars", Bars)
@@ -155,7 +158,8 @@ class FindingsPane(Container):
         else:
             self.items = {item.finding.id: item for item in view.judged(screening)}
             bars.show(self._bars)
-            self.query_one("#curve", CurveView).show(view.plot(screening))
+            if full:
+                self.query_one("#curve", CurveView).show(view.plot(screening))
             self._follow()
 
     def _no_result(self, width: int):

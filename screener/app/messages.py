@@ -14,12 +14,19 @@ class Warmed(Message):
 
 @dataclass
 class WorkDone(Message):
-    """A case was worked out."""
+    """A case was worked out; `worked.full` tells whether there is more to come."""
 
     token: int
     revision: int
     worked: object  # Worked
     seconds: float
+
+
+@dataclass
+class WorkEnded(Message):
+    """The thread of a run has come to its end."""
+
+    token: int
 
 
 @dataclass

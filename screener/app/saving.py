@@ -89,7 +89,7 @@ class Saving:
     def on_memo_pane_write(self, event: MemoPane.Write) -> None:
         """Write the memo; a file of that name that we did not write is asked about."""
         pane, session = self.query_one(MemoPane), self.desk.session
-        if session.stale or pane.document is None:
+        if not session.complete or pane.document is None:
             self.tell(say("memo", "stale"), "near")
             return
         target = session.folder / Path(pane.file).expanduser()

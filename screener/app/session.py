@@ -31,6 +31,7 @@ class Result:
     revision: int
     screening: object | None  # None when the case could not be read
     faults: tuple = ()  # InputError objects, each with its path
+    full: bool = True  # False for the verdicts alone
 
 
 @dataclass(frozen=True)
@@ -151,6 +152,11 @@ class Session:
     def stale(self) -> bool:
         """Whether the result belongs to other inputs than those on the screen."""
         return self.result is not None and self.result.revision != self.revision
+
+    @property
+    def complete(self) -> bool:
+        """Whether everything is worked out for the inputs on the screen."""
+        return self.result is not None and not self.stale and self.result.full
 
     @property
     def screening(self):

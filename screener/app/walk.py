@@ -17,7 +17,7 @@ from screener.app.glyphs import Glyphs
 from screener.app.inputs import InputPane
 from screener.app.lines import Lines
 from screener.app.memo_pane import MemoPane
-from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDone
+from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDone, WorkEnded
 from screener.app.pictures import tally
 from screener.app.saving import Saving
 from screener.app.strip import StripInput
@@ -105,7 +105,8 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         if self._trouble:
             return self._trouble, "bad"
         if self.working:
-            return say("result", "working"), "unknown"
+            fresh = session.result is not None and not session.stale
+            return say("result", "more" if fresh else "working"), "dim" if fresh else "unknown"
         if session.result is None:
             return say("result", "loading" if not self.desk.ready else "none"), "dim"
         if session.stale:
@@ -229,19 +230,24 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         self.refresh_frame()
 
     def on_work_done(self, event: WorkDone) -> None:
-        if self.wanted(event.token):
-            self.desk.attach(event.revision, event.worked)
-            session = self.desk.session
-            self.query_one(FindingsPane).show(session.screening, session.result.faults)
-            self.refresh_case()
-            if self.current == "findings":
-                self.query_one(Hint).tell(self.query_one(FindingsPane).hint)
+        if not self.wanted(event.token):
+            return
+        self.desk.attach(event.revision, event.worked)
+        result = self.desk.session.result
+        self.query_one(FindingsPane).show(result.screening, result.faults, full=result.full)
+        self.refresh_case()
+        if self.current == "findings":
+            self.query_one(Hint).tell(self.query_one(FindingsPane).hint)
+        if result.full:
             self.refresh_memo()
+
+    def on_work_ended(self, event: WorkEnded) -> None:
+        self.ended(event.token)
         self.refresh_frame()
 
     def on_broke(self, event: Broke) -> None:
         if event.what == "work":
-            self.wanted(event.token)
+            self.ended(event.token)
         self._trouble = event.sentence
         self.refresh_frame()
 
@@ -254,7 +260,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
             return
         if session.screening is None:
             pane.show_document(None, say("memo", "nothing"))
-        elif session.stale:
+        elif not session.complete:
             pane.show_document(None, say("memo", "stale"))
         else:
             self.build_memo(session.revision, session.screening, pane.asked)

@@ -12,7 +12,7 @@ from pathlib import Path
 
 from textual import work
 
-from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDone
+from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDone, WorkEnded
 from screener.app.words import say
 
 
@@ -55,13 +55,16 @@ class Workers:
         self._token += 1
 
     def wanted(self, token: int) -> bool:
-        """Take note that a thread has ended; whether its result is still wanted."""
+        """Whether the result of a run is still wanted."""
+        return token == self._token
+
+    def ended(self, token: int) -> None:
+        """Take note that a thread has ended; what was asked for meanwhile begins."""
         self._busy = 0
         if self._again:
             self.begin()
         elif token == self._token:
             self.working = False
-        return token == self._token or self.working
 
     @work(thread=True, group="warm", exit_on_error=False)
     def warm(self) -> None:
@@ -78,11 +81,14 @@ class Workers:
     def _work(self, token: int, revision: int, text: str, source: str) -> None:
         start = time.perf_counter()
         try:
-            worked = self.desk.engine.work(text, source)
+            for worked in self.desk.engine.work(text, source):
+                self.post_message(WorkDone(token, revision, worked, time.perf_counter() - start))
+                if self._again or token != self._token:
+                    break  # newer inputs wait, or nobody wants this run: the rest of it is left out
         except Exception as error:  # noqa: BLE001  the worker boundary
             self.post_message(Broke("work", token, log_bug(error)))
             return
-        self.post_message(WorkDone(token, revision, worked, time.perf_counter() - start))
+        self.post_message(WorkEnded(token))
 
     @work(thread=True, group="memo", exclusive=True, exit_on_error=False)
     def build_memo(self, revision: int, screening, asked) -> None:

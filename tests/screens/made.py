@@ -131,6 +131,8 @@ class Playing:
         self.runs = 0
         self.gate = threading.Event()
         self.gate.set()
+        self.more = threading.Event()  # holds up what follows the verdicts
+        self.more.set()
         self.bug: Exception | None = None
         self.findings = None
 
@@ -138,7 +140,8 @@ class Playing:
         """The functions the screens call."""
         return Engine(lambda: None, self.work, self.check, self.names, lambda: ("us-40cfr60-kb",), self.memo, self.markdown)
 
-    def work(self, text: str, source: str) -> Worked:
+    def work(self, text: str, source: str):
+        """The verdicts alone, then all of it; faults at once."""
         self.runs += 1
         self.gate.wait(5)
         if self.bug:
@@ -153,9 +156,14 @@ class Playing:
         if not entered.rows("blend.parts"):
             faults.append(InputError("blend.parts", None, "this is missing: what the receipt is made of"))
         if faults:
-            return Worked(None, faults_of(CaseErrors(faults)), echoes)
+            yield Worked(None, faults_of(CaseErrors(faults)), echoes)
+            return
         diameter = float((entered.get("tank.shell_diameter") or "24 m").split()[0])
-        return Worked(screening(diameter, self.findings), (), echoes)
+        whole = screening(diameter, self.findings)
+        bare = tuple(replace(finding, moved_by=(), headroom=()) for finding in whole.findings)
+        yield Worked(replace(whole, findings=bare, information=(), curve={}), (), echoes, full=False)
+        self.more.wait(5)
+        yield Worked(whole, (), echoes)
 
     @staticmethod
     def check(path: str, text: str) -> Echo:

@@ -18,7 +18,8 @@ def desk(tmp_path):
 
 
 def worked(desk):
-    desk.attach(desk.session.revision, desk.engine.work(desk.text.toml(), ""))
+    for done in desk.engine.work(desk.text.toml(), ""):
+        desk.attach(desk.session.revision, done)
     return desk
 
 

@@ -68,8 +68,10 @@ def test_the_real_engine_reads_names_and_packs():
 
 def test_every_default_and_value_of_an_example_is_echoed():
     path = examples()[0]
-    worked = real().work(path.read_text(encoding="utf-8"), str(path))
-    assert not worked.faults
+    verdicts, worked = real().work(path.read_text(encoding="utf-8"), str(path))
+    assert not worked.faults and worked.full and not verdicts.full
+    judged = [{f.id: f.verdict for f in done.screening.findings} for done in (verdicts, worked)]
+    assert judged[0] == judged[1], "the verdicts shown first are those of the whole"
     assert worked.echoes["tank.shell_diameter"].text == "24 m"
     assert worked.echoes["tank.insulated"].default
     assert worked.screening.case.source == str(path)
@@ -77,7 +79,7 @@ def test_every_default_and_value_of_an_example_is_echoed():
 
 def test_a_broken_case_gives_faults_and_still_echoes_the_rest():
     text = examples()[0].read_text(encoding="utf-8").replace('"24 m"', '"24"')
-    worked = real().work(text, "")
+    (worked,) = real().work(text, "")
     assert worked.screening is None
     assert [fault.path for fault in worked.faults] == ["tank.shell_diameter"]
     assert "tank.shell_height" in worked.echoes and "tank.shell_diameter" not in worked.echoes

@@ -128,6 +128,24 @@ async def test_results_are_marked_stale_until_worked_out_again(case_file):
         assert tally_words(pilot) == "" and not walk(pilot).desk.session.stale
 
 
+async def test_verdicts_are_there_before_what_gives_room(case_file):
+    async with opened(case_file) as pilot:
+        await pressed(pilot, "5", "v")
+        pilot.playing.more.clear()
+        await pilot.press("r")
+        await pilot.pause(0.2)
+        assert tally_words(pilot) == "looking for what gives room"
+        assert not walk(pilot).desk.session.stale and not walk(pilot).desk.session.complete
+        assert walk(pilot).query_one("#findings").items["boiling.surface"].finding.headroom == ()
+        assert "ambient, design" in grid(pilot.app), "the curve of before stays meanwhile"
+        await pilot.press("1")
+        await pilot.pause()
+        assert "59.8 kPa" in grid(pilot.app), "and so do the figures of the blend"
+        pilot.playing.more.set()
+        await settled(pilot)
+        assert walk(pilot).query_one("#findings").items["boiling.surface"].finding.headroom
+
+
 async def test_edits_while_working_lead_to_one_more_run(case_file):
     async with opened(case_file) as pilot:
         runs = pilot.playing.runs
