@@ -42,7 +42,10 @@ def members(families):
         found = [one for one in found if one.Tc > 400.0 and one.Tb < HIGHEST]
         if family == "olefin":
             found = [one for one in found if set(one.groups) <= OPEN_CHAIN]
-        rows += [(one.Tb, float(watson_factor(one.Tb, specific_gravity(one.rho_15))), 1.0 / len(found)) for one in found]
+        rows += [
+            (one.Tb, float(watson_factor(one.Tb, specific_gravity(one.rho_15))), 1.0 / len(found))
+            for one in found
+        ]
     return np.array(rows).T
 
 

@@ -53,9 +53,7 @@ def watson_factor(Tb, SG):
 
 def _twu_paraffin(R):
     """Tc [degR], Pc [psia], Vc and SG of the n-paraffin that boils at R [degR]."""
-    Tc = R / (
-        0.533272 + 0.191017e-3 * R + 0.779681e-7 * R**2 - 0.284376e-10 * R**3 + 0.959468e28 / R**13
-    )
+    Tc = R / (0.533272 + 0.191017e-3 * R + 0.779681e-7 * R**2 - 0.284376e-10 * R**3 + 0.959468e28 / R**13)
     a = 1.0 - R / Tc
     SG = 0.843593 - 0.128624 * a - 3.36159 * a**3 - 13749.5 * a**12
     Pc = (3.83354 + 1.19629 * np.sqrt(a) + 34.8888 * a + 36.1952 * a**2 + 104.193 * a**4) ** 2
@@ -88,9 +86,7 @@ def critical_pressure_twu_1984(Tb, SG):
     d = np.expm1(4.0 * (SG_0**2 - SG**2))
     volume = _perturbed(d * (0.466590 / root + (-0.182421 + 3.01721 / root) * d))
     d = np.expm1(0.5 * (SG_0 - SG))
-    f = d * (
-        (2.53262 - 46.1955 / root - 0.00127885 * R) + (-11.4277 + 252.140 / root + 0.00230535 * R) * d
-    )
+    f = d * ((2.53262 - 46.1955 / root - 0.00127885 * R) + (-11.4277 + 252.140 / root + 0.00230535 * R) * d)
     return Pc * _twu_temperature(R, SG) / volume * _perturbed(f) * PSI
 
 
@@ -156,9 +152,9 @@ def acentric_factor_lee_kesler_1976(Tb, Tc, Pc, K):
     """
     Tbr = np.asarray(Tb, dtype=float) / Tc
     ln_Tbr, sixth = np.log(Tbr), Tbr**6
-    low = (-np.log(np.asarray(Pc) / 101325.0) - 5.92714 + 6.09648 / Tbr + 1.28862 * ln_Tbr - 0.169347 * sixth) / (
-        15.2518 - 15.6875 / Tbr - 13.4721 * ln_Tbr + 0.43577 * sixth
-    )
+    low = (
+        -np.log(np.asarray(Pc) / 101325.0) - 5.92714 + 6.09648 / Tbr + 1.28862 * ln_Tbr - 0.169347 * sixth
+    ) / (15.2518 - 15.6875 / Tbr - 13.4721 * ln_Tbr + 0.43577 * sixth)
     high = -7.904 + 0.1352 * K - 0.007465 * np.square(K) + 8.359 * Tbr + (1.408 - 0.01063 * K) / Tbr
     return np.where(Tbr < 0.8, low, high)
 

@@ -29,7 +29,10 @@ from screener.species.cut_constants import RANKINE
 FAMILIES = ("paraffin", "naphthene", "olefin", "aromatic")
 CARBON, HYDROGEN = 0.0120107, 0.00100794  # atomic masses [kg/mol]; IUPAC 2001, as the species table has them
 CH2 = CARBON + 2.0 * HYDROGEN
-AROMATICS_FROM = 340.0, 360.0  # [K] no aromatic boils below the first, benzene (353 K) lies between; our choice
+AROMATICS_FROM = (
+    340.0,
+    360.0,
+)  # [K] no aromatic boils below the first, benzene (353 K) lies between; our choice
 BRANCHED = 0.5  # [-] single branches per paraffin; our choice
 
 # subgroups of modified UNIFAC (Dortmund), data/groups/subgroups.csv

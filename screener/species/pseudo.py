@@ -23,7 +23,7 @@ import numpy as np
 
 from screener.ground.constants import T_15C, ZERO_CELSIUS, R
 from screener.ground.errors import InputError
-from screener.species import build, cut_constants, fits, forms
+from screener.species import build, cut_constants, fits
 from screener.species.cut_families import FAMILIES, family_shares, groups_of, mole_shares
 from screener.species.cut_pressure import heat_capacity_lee_kesler_1976, vapour_pressure_ambrose_walton_1989
 from screener.species.record import Curve, Species
@@ -78,15 +78,16 @@ def name_of(Tb, rho_15, *, aromatics=None, naphthenes=None, olefins=0.0, MW=None
     SG = cut_constants.specific_gravity(rho_15)
     _, N, O, A = (float(v) for v in family_shares(Tb, SG, aromatics, naphthenes, olefins))
     mass = "" if MW is None else f" M{1000.0 * MW:.2f}"
-    return (
-        f"cut {Tb - ZERO_CELSIUS:.2f} degC {rho_15:.2f} kg/m3 A{100 * A:.1f} N{100 * N:.1f} O{100 * O:.1f}{mass}"
-    )
+    return f"cut {Tb - ZERO_CELSIUS:.2f} degC {rho_15:.2f} kg/m3 A{100 * A:.1f} N{100 * N:.1f} O{100 * O:.1f}{mass}"
 
 
 def _inside(word, value, span, unit):
     if not span[0] <= value <= span[1]:
         raise InputError(
-            "", value, f"a cut of {word} {value:.6g} {unit} cannot be made", f"{span[0]:g} to {span[1]:g} {unit}"
+            "",
+            value,
+            f"a cut of {word} {value:.6g} {unit} cannot be made",
+            f"{span[0]:g} to {span[1]:g} {unit}",
         )
 
 
@@ -98,7 +99,11 @@ def read(text: str) -> Species:
     part = {key: None if value is None else float(value) for key, value in found.groupdict().items()}
     shares = {}
     if part["A"] is not None:
-        shares = {"aromatics": part["A"] / 100.0, "naphthenes": part["N"] / 100.0, "olefins": part["O"] / 100.0}
+        shares = {
+            "aromatics": part["A"] / 100.0,
+            "naphthenes": part["N"] / 100.0,
+            "olefins": part["O"] / 100.0,
+        }
     MW = None if part["M"] is None else part["M"] / 1000.0
     name = name_of(part["Tb"] + ZERO_CELSIUS, part["rho"], MW=MW, **shares)
     return _record(name) if _fields(name) == _fields(text) else read(name)
@@ -126,7 +131,9 @@ def _record(name: str) -> Species:
         curve = _curve(Tb, Tc, Pc)
         alpha, _, _ = build.fit_alpha(curve, Tc, Pc)
     except LookupError as error:
-        raise InputError("", name, f"'{name}' cannot be used: {error}", "another boiling point or density") from error
+        raise InputError(
+            "", name, f"'{name}' cannot be used: {error}", "another boiling point or density"
+        ) from error
     omega = float(-np.log10(vapour_pressure_ambrose_walton_1989(0.7 * Tc, Tb, Tc, Pc) / Pc) - 1.0)
     return Species(
         name=name, synonyms=(), cas="", formula=f"cut, {1000.0 * MW:.1f} g/mol", family="cut",

@@ -13,12 +13,15 @@ from screener.ground.errors import UnknownName
 from screener.ground.files import read_table
 from screener.ground.shapes import lanes
 from screener.ground.status import Status
+from screener.species import find
 from screener.volatility.air import cell_air_pressure, ostwald_air
 from screener.volatility.cell import T_CHILLED, vapour_pressure_at_ratio
 from screener.volatility.liquid_volume import standard_density
 from screener.volatility.results import TestPressure
 
 SCOPE = (7e3, 130e3)  # total pressures ASTM D5191 covers [Pa]; its scope, read on the publisher's page
+CHAMBERS = {"dry": "ASTM D4953 (dry Reid), gauge", "wet": "ASTM D323 (wet Reid), gauge"}
+ALCOHOL_WET = 1e-3  # volume fraction of alcohol from which a wet chamber has no reading here; our choice [-]
 RATIO = 4.0  # vapour-liquid ratio of the Reid, D5191 and EN 13016-1 tests; ASTM D323, D5191 scopes
 
 
@@ -164,16 +167,21 @@ def dvpe(fluid, x, *, equation: str = "ASTM D5191", product: str | None = None) 
     )
 
 
-def reid_vapour_pressure(fluid, x, *, product: str | None = None) -> TestPressure:
-    """Gauge pressure of the dry Reid apparatus (ASTM D4953) at 37.8 degC.
+def reid_vapour_pressure(fluid, x, *, chamber: str = "dry", product: str | None = None) -> TestPressure:
+    """Gauge pressure of the Reid apparatus at 37.8 degC: dry after ASTM D4953, wet after ASTM D323.
 
     What is computed: one volume of sample, saturated with air at 0 to 1 degC under one
     atmosphere, is joined to an air chamber of four volumes that was at 37.8 degC and one
-    atmosphere, dry. At 37.8 degC the pressure is the vapour pressure at ratio 4 plus all
-    the air, chamber's and sample's, divided between vapour space and liquid. Reported is
-    that total less one atmosphere. The wet chamber of ASTM D323 differs by water vapour
-    that stands before and after alike, and by alcohol lost to the wet walls; neither is
-    computed.
+    atmosphere. At 37.8 degC the pressure is the vapour pressure at ratio 4 plus all the air,
+    chamber's and sample's, divided between vapour space and liquid. Reported is that total
+    less one atmosphere.
+
+    Wet: the walls of the chamber hold liquid water, so its air was saturated with water vapour
+    before, and the gas is saturated with it after. The vapour pressure of water at 37.8 degC (6.6 kPa)
+    therefore takes the place of that much air at the start and is added at the end; the two
+    nearly cancel, since only the air is squeezed and partly dissolved. Water that dissolves in
+    the fuel is left out. An alcohol goes over into the water of the walls and lowers the
+    reading by an amount that depends on how wet they are: such a fuel has no wet reading here.
 
     Parameters
     ----------
@@ -181,31 +189,45 @@ def reid_vapour_pressure(fluid, x, *, product: str | None = None) -> TestPressur
         Species and model of c components.
     x : array, shape (c,) or (n, c)
         Liquid mole fractions. [-]
+    chamber : str
+        "dry" (ASTM D4953) or "wet" (ASTM D323).
     product : str, optional
         "crude" for crude and condensate; otherwise the density chooses the volume correction.
 
     Returns
     -------
     TestPressure
-        P is the gauge pressure, P_total the absolute one.
+        P is the gauge pressure, P_total the absolute one; P_air includes the water vapour of the wet
+        chamber. Wet with more than 0.1 vol% alcohol: OUT_OF_RANGE.
+
+    Raises
+    ------
+    UnknownName
+        chamber is neither.
 
     Source
     ------
-    ASTM D4953 section 3 and ASTM D323 (ratio, temperature: summaries read; chilling to
-    0 to 1 degC from memory, unverified); air after ASTM D2779 (from memory, unverified).
+    ASTM D4953 section 3 and ASTM D323 (ratio, temperature, wetness: summaries read; chilling
+    to 0 to 1 degC from memory, unverified); air after ASTM D2779 (from memory, unverified).
     """
+    if chamber not in CHAMBERS:
+        raise UnknownName("chamber", chamber, "Reid chamber", CHAMBERS)
     z, T, good = lanes(fluid.c, x, T=T_100F)
     air = ATMOSPHERE - bubble_pressure(fluid, T_CHILLED, z).P
     cell = vapour_pressure_at_ratio(fluid, T, z, RATIO, product=product)
     status = np.where(good & (air < 0.0), Status.OUT_OF_RANGE, cell.status)
     status = np.where(cell.ok & ~np.isfinite(air), Status.NO_SOLUTION, status)
+    water = 0.0
+    if chamber == "wet":
+        water = find("water").psat(T_100F)
+        status = np.where(good & (_alcohol(fluid, z) > ALCOHOL_WET), Status.OUT_OF_RANGE, status)
     ok = status == Status.CONVERGED
     rho_15 = standard_density(fluid, z)
     space = 1.0 + RATIO - cell.expansion
     brought = cell_air_pressure(rho_15, np.maximum(air, 0.0), T_CHILLED, T, space, cell.expansion)
     # The chamber's own air, at 37.8 degC from the start, is squeezed by the liquid and dissolves in it.
-    chamber = ATMOSPHERE * RATIO / (space + ostwald_air(rho_15, T) * cell.expansion)
-    P_air = brought + chamber
+    chamber_air = (ATMOSPHERE - water) * RATIO / (space + ostwald_air(rho_15, T) * cell.expansion)
+    P_air = brought + chamber_air + water
     total = np.where(ok, cell.P + P_air, np.nan)
     return TestPressure(
         status=status,
@@ -213,5 +235,13 @@ def reid_vapour_pressure(fluid, x, *, product: str | None = None) -> TestPressur
         P_total=total,
         P_vapour=cell.P,
         P_air=np.where(ok, P_air, np.nan),
-        method="ASTM D4953 (dry Reid), gauge",
+        method=CHAMBERS[chamber],
     )
+
+
+def _alcohol(fluid, z) -> np.ndarray:
+    """Volume fraction of alcohols at 15 degC. [-]"""
+    known = getattr(fluid.vapour_pressure, "species", ())  # a fluid of bare constants has no families
+    alcohol = np.array([one.family == "alcohol" for one in known] or [False] * fluid.c)
+    volume = np.where(z > 0.0, z * fluid.v_15, 0.0)
+    return volume[:, alcohol].sum(axis=-1) / volume.sum(axis=-1)

@@ -9,6 +9,7 @@ from screener.ground.files import data_folder, read_table, read_toml
 VOLATILITY = (
     "volume_correction", "own_volume_species", "dvpe_equations",
     "classes", "vapour_lock_classes", "ethanol_allowance",
+    "distillation_power", "distillation_gaps", "d6378_bias", "rvpe_factors", "true_from_reid", "d86_slopes",
 )  # fmt: skip
 TABLES = (
     *(f"volatility/{name}" for name in VOLATILITY),
