@@ -14,7 +14,7 @@ The rule, in three steps.
 3. The groups of the cut are the mean of these over its molecules. Their mass is the
    molar mass of the cut exactly, whatever the shares.
 
-tests/studies/cuts_against_molecules.csv shows what comes of it for ethanol in a gasoline.
+tests/studies/cuts_against_molecules.md shows what comes of it for ethanol in a gasoline.
 """
 
 from __future__ import annotations

@@ -2,7 +2,7 @@
 
 The chosen one for cuts is `vapour_pressure_ambrose_walton_1989`, anchored on the boiling
 point, with critical constants after Twu 1984. Treated as cuts, the hydrocarbons of the
-species table come back with it as the table in tests/studies/cut_vapour_pressures.csv
+species table come back with it as the table in tests/studies/cut_vapour_pressures.md
 shows; Maxwell and Bonnell and Lee and Kesler stand beside it there and lose. All of them are exact at
 the boiling point, so errors grow with the distance from it.
 """

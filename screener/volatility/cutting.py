@@ -29,7 +29,7 @@ from screener.volatility.interconversion import curve_at
 
 SLICES = 2000
 # Boundaries of the cuts [K]; our choice. Halving the steps moves bubble pressures of a gasoline by less than 1 %
-# (tests/studies/cuts_against_molecules.csv).
+# (tests/studies/cuts_against_molecules.md).
 EDGES = tuple(
     np.concatenate(
         [np.arange(270.0, 400.0, 10.0), np.arange(400.0, 500.0, 20.0), np.arange(500.0, 1000.0, 40.0)]

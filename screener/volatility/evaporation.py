@@ -29,11 +29,12 @@ class Evaporation(Lanes):
     P: np.ndarray
 
 
-def open_evaporation(fluid, T, x, lost, *, steps: int = STEPS) -> Evaporation:
+def open_evaporation(fluid, T, x, lost, *, mobility=None, steps: int = STEPS) -> Evaporation:
     """Composition of the first mass that an open, well-stirred liquid loses at one temperature.
 
-    Vapour leaves as it forms, in equilibrium with the whole liquid: no depletion of the surface,
-    no air swept through that takes each vapour at its own rate of diffusion.
+    Vapour leaves as it forms, in equilibrium with the whole liquid, whose surface is not depleted.
+    It is carried away as one gas; where it has to diffuse through still air, the species of higher
+    diffusivity leave faster than that, and `mobility` says how much.
 
     Parameters
     ----------
@@ -45,6 +46,8 @@ def open_evaporation(fluid, T, x, lost, *, steps: int = STEPS) -> Evaporation:
         Liquid mole fractions. [-]
     lost : float or array, shape (n,)
         Mass lost over mass charged, above 0, at most 0.95. [-]
+    mobility : array, shape (c,), optional
+        Relative rates at which the vapours are carried away; all alike when absent. [-]
     steps : int
         Steps of about equal mass.
 
@@ -65,7 +68,14 @@ def open_evaporation(fluid, T, x, lost, *, steps: int = STEPS) -> Evaporation:
     active = np.flatnonzero(good)
     mass = z @ fluid.MW
     dish = Still(
-        fluid, z[active], T[active], fluid.MW, lost[active] * mass[active] / steps, bubble_pressure, "P"
+        fluid,
+        z[active],
+        T[active],
+        fluid.MW,
+        lost[active] * mass[active] / steps,
+        bubble_pressure,
+        "P",
+        mobility=mobility,
     )
     for step in range(steps + 1):
         failed = dish.boil()

@@ -25,13 +25,15 @@ class Still:
 
     given (m,) is what stays: pressure with saturation bubble_temperature and sought "T", or
     temperature with bubble_pressure and "P"; found (m,) is the other. weight (c,) is what the
-    drop (m,) of each step is counted in, volume or mass per mole. status (m,) of the last point.
+    drop (m,) of each step is counted in, volume or mass per mole; mobility (c,) the relative rates
+    at which vapours are carried away, all alike without it. status (m,) of the last point.
     """
 
-    def __init__(self, fluid, n, given, weight, drop, saturation, sought, reflux=None):
+    def __init__(self, fluid, n, given, weight, drop, saturation, sought, reflux=None, mobility=None):
         self.fluid, self.n, self.given, self.weight, self.drop = fluid, n.copy(), given, weight, drop
         self.saturation, self.sought = saturation, sought
         self.reflux = np.zeros(given.shape) if reflux is None else reflux
+        self.ln_mobility = 0.0 if mobility is None else np.log(mobility)
         self.found, self.ln_K, self.before, self.status = np.full(given.shape, np.nan), None, None, None
 
     def boil(self):
@@ -68,6 +70,8 @@ class Still:
     def _neck(self, point):
         """ln of leaving vapour over pot liquid (m, c), and the condensate (m, c) of the neck."""
         f, K = self.reflux[:, None], np.where(point.K > 0.0, point.K, 0.0)
+        if not (f > 0.0).any():
+            return np.log(np.maximum(K, TINY)) + self.ln_mobility, point.x
         y, ln_k = point.x * K, np.zeros(self.given.shape)
         for _ in range(60):
             passed = (1.0 - f) * np.exp(ln_k)[:, None] * K
@@ -83,9 +87,8 @@ class Still:
         leaving = kK * K / (f + (1.0 - f) * kK + TINY)
         total = condensate.sum(axis=-1, keepdims=True)
         good = np.isfinite(total) & (total > 0.0)
-        return np.log(np.maximum(leaving, TINY)), np.where(
-            good, condensate / np.where(good, total, 1.0), point.x
-        )
+        ln_leaving = np.log(np.maximum(leaving, TINY)) + self.ln_mobility
+        return ln_leaving, np.where(good, condensate / np.where(good, total, 1.0), point.x)
 
     def _leave(self, K, drop):
         """Amounts after `drop` has left at fixed K: n exp(-K s).
