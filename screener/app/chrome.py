@@ -11,7 +11,7 @@ from textual.strip import Strip
 from screener.app.chrome_state import StepState
 from screener.app.glyphs import Glyphs, glyphs
 from screener.app.lines import Toned
-from screener.app.rows import Row, Span, columns_of, pad, paragraph, row_width, wrap
+from screener.app.rows import Row, Span, columns_of, flow, pad, paragraph, row_width, wrap
 from screener.app.words import say
 
 
@@ -52,10 +52,10 @@ class TitleLine(Rows):
         return [(Span(" " + line, "bold"),) for line in wrap(title, width - 2)]
 
 
-class StepBar(Toned):
-    """The six steps: one row on narrow screens, a rail with words on wide ones."""
+class StepBar(Rows):
+    """The six steps: a strip on narrow screens, a rail with words on wide ones."""
 
-    DEFAULT_CSS = "StepBar { height: 1; width: 1fr; }"
+    DEFAULT_CSS = "StepBar { height: auto; width: 1fr; }"
 
     class Picked(Message):
         """A step was clicked."""
@@ -72,51 +72,51 @@ class StepBar(Toned):
     def tell(self, states, current: int, saved: str, marks: Glyphs) -> None:
         """New states of the steps, and whether the case is saved."""
         self.states, self.current, self.saved, self.marks = tuple(states), current, saved, marks
-        self.refresh()
+        self.refresh(layout=True)
 
     @property
     def _rail(self) -> bool:
-        return self.size.height > 1
+        return self.screen.has_class("-wide")
 
-    def _strip(self) -> list[tuple[int, Span]]:
-        gap = " " if self.size.width < 80 else "  "
-        spans = []
-        for state in self.states:
-            here = state.number == self.current
-            text = f"{self.marks.cursor if here else ' '}{state.number} {state.name} {self.marks.plain(state.mark)}"
-            spans.append((state.number, Span(text.rstrip() + gap, "head" if here else state.tone)))
-        left = self.size.width - sum(columns_of(span.text) for _, span in spans) - 1
-        if left >= columns_of(self.saved):
-            spans.append((self.current, Span(pad(self.saved, left, "right"), "dim")))
-        return spans
+    def rows(self, width: int) -> list[Row]:
+        if self._rail:
+            return [row for _, row in self._rail_rows(width)]
+        rows = flow([self._span_of(state) for state in self.states], width, 1 if width < 80 else 2)
+        left = width - row_width(rows[-1]) - 1
+        if left > columns_of(self.saved):
+            rows[-1] = (*rows[-1], Span(pad(self.saved, left, "right"), "dim"))
+            return rows
+        return [*rows, (Span(f" {self.saved}", "dim"),)]
 
-    def _rail_rows(self) -> list[tuple[int, Row]]:
+    def _span_of(self, state: StepState) -> Span:
+        here = state.number == self.current
+        lead = self.marks.cursor if here else " "
+        text = f"{lead}{state.number} {state.name} {self.marks.plain(state.mark)}".rstrip()
+        return Span(text, "head" if here else state.tone)
+
+    def _rail_rows(self, width: int) -> list[tuple[int, Row]]:
         rows: list[tuple[int, Row]] = []
         for state in self.states:
             here = state.number == self.current
             lead = self.marks.cursor if here else " "
             rows.append((state.number, (Span(f"{lead} {state.number} {state.name}", "head" if here else ""),)))
-            for line in wrap(self.marks.plain(state.words), self.size.width - 6):
+            for line in wrap(self.marks.plain(state.words), width - 6):
                 rows.append((state.number, (Span("     "), Span(line, state.tone or "dim"))))
         return [*rows, (self.current, (Span(""),)), (self.current, (Span(f"  {self.saved}", "dim"),))]
 
-    def render_line(self, y: int) -> Strip:
-        if not self._rail:
-            return self.paint(tuple(span for _, span in self._strip()), self.size.width)
-        rows = self._rail_rows()
-        return self.paint(rows[y][1] if y < len(rows) else (), self.size.width)
-
     def on_click(self, event: events.Click) -> None:
-        if self._rail:
-            rows = self._rail_rows()
+        rows = self._rail_rows(self.size.width) if self._rail else []
+        if rows:
             if event.y < len(rows):
                 self.post_message(self.Picked(rows[event.y][0]))
             return
         at = 0
-        for number, span in self._strip():
+        names = {self._span_of(state): state.number for state in self.states}
+        for span in self.rows(self.size.width)[event.y]:
             at += columns_of(span.text)
+            if event.x < at and span in names:
+                self.post_message(self.Picked(names[span]))
             if event.x < at:
-                self.post_message(self.Picked(number))
                 return
 
 
@@ -134,15 +134,15 @@ class Tally(Rows):
         self.refresh(layout=True)
 
     def rows(self, width: int) -> list[Row]:
-        lead = (Span(" "), *self.counted)
+        tone = self.tone or "dim"
+        words: list[Row] = [(Span(" " + line, tone),) for line in wrap(self.state, width - 2)] if self.state else []
         if not self.counted:
-            return [(Span(" " + line, self.tone or "dim"),) for line in wrap(self.state, width - 2)]
-        if not self.state:
-            return [lead]
-        gap = width - row_width(lead) - columns_of(self.state) - 1
-        if gap >= 2:
-            return [(*lead, Span(" " * gap), Span(self.state, self.tone or "dim"))]
-        return [lead, *((Span(" " + line, self.tone or "dim"),) for line in wrap(self.state, width - 2))]
+            return words
+        lead = [(Span(" "), *row) for row in flow(self.counted, width - 2, 3)]
+        gap = width - row_width(lead[-1]) - columns_of(self.state) - 1
+        if words and gap >= 2:
+            return [*lead[:-1], (*lead[-1], Span(" " * gap), Span(self.state, tone))]
+        return lead + words
 
 
 class Hint(Rows):

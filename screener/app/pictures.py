@@ -17,6 +17,7 @@ from screener.app.words import say
 
 POST_SHARE = 0.77  # place of the post along the bar: leaves room for 1.3 times the limit
 LEAST_BAR = 14
+NARROWEST = 50  # below this the words take all the room and no bar is drawn
 
 
 @dataclass(frozen=True)
@@ -89,20 +90,22 @@ def gap_bars(gaps: Sequence[Gap], width: int, marks: Glyphs) -> tuple[Row, list[
     """
     margins = [marks.plain(gap.margin) for gap in gaps]
     verdict_width = max([9, *(columns_of(f"{gap.mark} {gap.verdict}") for gap in gaps)])
-    most_margin = 16 if width >= 70 else 10
+    most_margin = 16 if width >= 70 else 10 if width >= NARROWEST else 8
     margin_width = max([6, *(columns_of(line) for margin in margins for line in wrap(margin, most_margin))])
     titles = [marks.plain(gap.title) for gap in gaps]
     limits = [marks.plain(gap.limit) for gap in gaps]
-    least_bar = LEAST_BAR if width >= 70 else 8
+    least_bar = LEAST_BAR if width >= 70 else 8 if width >= NARROWEST else 0
     free = width - verdict_width - margin_width - 5  # shared by title and bar
-    title_width = min(max([5, *map(columns_of, titles)]), max(8, free - max(least_bar, free // 3)))
+    title_width = min(max([5, *map(columns_of, titles)]), max(8, free - (max(least_bar, free // 3) if least_bar else 0)))
     limit_width = max([5, *map(columns_of, limits)])
     left = free - title_width
     with_limit = left - limit_width - 2 >= 30
     bar_width = max(least_bar, left - (limit_width + 2 if with_limit else 0))
+    if not least_bar:
+        bar_width = 0
     post = round(bar_width * POST_SHARE)
     head = "room used"
-    heading = pad(head, post - 2) + "limit" if post >= len(head) + 3 else pad("limit", bar_width, "left")
+    heading = pad(head, post - 2) + "limit" if post >= len(head) + 3 else "limit" if bar_width else ""
     names = [pad("verdict", verdict_width), " ", pad("check", title_width), "  ", pad(heading, bar_width), "  "]
     names.append(pad("margin", margin_width, "right"))
     if with_limit:
@@ -129,7 +132,7 @@ def _block(gap, texts, widths, marks, with_limit) -> list[Row]:
             Span(" "),
             Span(pad(title_lines[line] if line < len(title_lines) else "", title_width), "dim" if tone == "dim" else ""),
             Span("  "),
-            *(bar(gap, bar_width, marks) if first else (Span(" " * bar_width),)),
+            *(bar(gap, bar_width, marks) if first and bar_width else (Span(" " * bar_width),)),
             Span("  "),
             Span(pad(margin_lines[line] if line < len(margin_lines) else "", margin_width, "right"), tone),
         ]
@@ -141,13 +144,9 @@ def _block(gap, texts, widths, marks, with_limit) -> list[Row]:
 
 def tally(verdicts: Sequence[str], marks: Glyphs) -> Row:
     """The verdict strip: how many of each, worst first, unknown before near."""
-    spans: list[Span] = []
+    spans = []
     for verdict, mark in (("beyond", "!"), ("unknown", "?"), ("near", "~"), ("room", marks.room), ("skipped", "-")):
         count = sum(1 for item in verdicts if item == verdict)
         tone = {"beyond": "beyond", "unknown": "unknown", "near": "near", "skipped": "dim"}.get(verdict, "")
-        if spans:
-            spans.append(Span("   "))
         spans.append(Span(f"{mark} {count} {verdict}", tone if count else "dim"))
     return tuple(spans)
-
-

@@ -109,32 +109,47 @@ def one_line(parts: list[str], width: int) -> str:
     return line
 
 
+def flow(spans: Sequence[Span], width: int, gap: int) -> list[Row]:
+    """Spans side by side, as many to a row as fit whole."""
+    rows: list[list[Span]] = [[]]
+    used = 0
+    for span in spans:
+        size = columns_of(span.text)
+        if rows[-1] and used + gap + size > width:
+            rows.append([])
+            used = 0
+        if rows[-1]:
+            rows[-1].append(Span(" " * gap))
+            used += gap
+        rows[-1].append(span)
+        used += size
+    return [tuple(row) for row in rows]
+
+
 @dataclass(frozen=True)
 class Column:
     """A column of a table."""
 
     heading: str
     align: str = "left"
-    least: int = 4  # never narrower than this [columns]
-    flexible: bool = True  # may be narrowed when the table is too wide
+    least: int = 4  # narrower than this only where the table would not fit otherwise [columns]
 
 
 def column_widths(columns: Sequence[Column], records: Sequence[Sequence[Span]], width: int, gap: int) -> list[int]:
-    """Widths that hold the widest cell, narrowed from the widest flexible column down to fit."""
+    """Widths that hold the widest cell, narrowed from the widest column down to fit."""
     wanted = [columns_of(column.heading) for column in columns]
     for record in records:
         for i, cell in enumerate(record):
             wanted[i] = max(wanted[i], columns_of(cell.text))
     over = sum(wanted) + gap * (len(columns) - 1) - width
-    while over > 0:
-        room = [
-            wanted[i] if column.flexible and wanted[i] > column.least else 0 for i, column in enumerate(columns)
-        ]
-        widest = max(range(len(room)), key=room.__getitem__)
-        if not room[widest]:
-            break
-        wanted[widest] -= 1
-        over -= 1
+    for least in ([column.least for column in columns], [3] * len(columns)):  # the second only where it must be
+        while over > 0:
+            room = [size if size > least[i] else 0 for i, size in enumerate(wanted)]
+            widest = max(range(len(room)), key=room.__getitem__)
+            if not room[widest]:
+                break
+            wanted[widest] -= 1
+            over -= 1
     return wanted
 
 

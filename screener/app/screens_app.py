@@ -14,6 +14,7 @@ from screener.app.desk import Desk
 from screener.app.dialogs import Question
 from screener.app.engine import Engine
 from screener.app.glyphs import Glyphs
+from screener.app.keymap import keys_file, own_keys
 from screener.app.palette import Command, Commands, Palette
 from screener.app.session import Session, left_behind
 from screener.app.start import StartScreen
@@ -41,6 +42,7 @@ class ScreenerApp(App):
         self.theme = PLAIN.name if plain else DARK.name
         self.animation_level = "none"
         self.engine, self.marks, self.first = engine, marks, path
+        self.keys_trouble = ""  # what is wrong with the file of one's own keys
         self.written: set[str] = set()  # memos written since the start
 
     def get_theme_variable_defaults(self) -> dict[str, str]:
@@ -48,10 +50,12 @@ class ScreenerApp(App):
         return {name: value for name, value in DARK.variables.items()}
 
     def on_mount(self) -> None:
+        keys, self.keys_trouble = own_keys(keys_file())
+        self.set_keymap(keys)
         if self.first:
             self.open_path(Path(self.first).expanduser())
         else:
-            self.push_screen(StartScreen(self.marks))
+            self.push_screen(StartScreen(self.marks, self.keys_trouble))
 
     # opening
 

@@ -8,7 +8,7 @@ from textual.app import ComposeResult
 from textual.binding import Binding
 from textual.containers import Container, Vertical
 from textual.screen import Screen
-from textual.widgets import ContentSwitcher
+from textual.widgets import ContentSwitcher, Static
 
 from screener.app.chrome import Hint, KeyRow, StepBar, Tally, TitleLine
 from screener.app.desk import INPUT_STEPS, STEPS, Desk
@@ -25,7 +25,8 @@ from screener.app.talk import Talk
 from screener.app.words import say
 from screener.app.workers import Workers
 
-WAIT_BEFORE_WORK = 0.03  # seconds of calm after an edit before it is worked out
+WAIT_BEFORE_WORK = 0.01  # seconds of calm after an edit before it is worked out
+WAIT_WHILE_TYPING = 0.25  # before it is looked again whether the share of a new part is there
 WAIT_BEFORE_AUTOSAVE = 1.0
 
 
@@ -45,8 +46,8 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         Binding("ctrl+g", "letters", "Letters", show=False, id="walk.letters"),
         *(Binding(str(i), f"go({i})", show=False, id=f"walk.go_{i}") for i in range(1, 7)),
     ]
-    HORIZONTAL_BREAKPOINTS: ClassVar = [(0, "-narrow"), (120, "-wide")]
-    VERTICAL_BREAKPOINTS: ClassVar = [(0, "-short"), (34, "-tall")]
+    HORIZONTAL_BREAKPOINTS: ClassVar = [(0, "-tiny"), (40, "-narrow"), (120, "-wide")]
+    VERTICAL_BREAKPOINTS: ClassVar = [(0, "-flat"), (14, "-low"), (20, "-short"), (34, "-tall")]
     CSS_PATH = "walk.tcss"
 
     def __init__(self, desk: Desk, marks: Glyphs, first: str = "blend"):
@@ -58,6 +59,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         self._trouble = ""  # a sentence that stays beside the verdicts until the next result
 
     def compose(self) -> ComposeResult:
+        yield Static(say("walk", "too_small"), id="too-small", markup=False)
         yield TitleLine()
         with Container(id="body"):
             yield StepBar()
@@ -73,6 +75,8 @@ class WalkScreen(Talk, Saving, Workers, Screen):
     def on_mount(self) -> None:
         self.query_one(Hint).marks = self.marks
         self.action_go(STEPS.index(self.current) + 1)
+        if self.app.keys_trouble:
+            self.tell(self.app.keys_trouble, "bad")
         self.call_after_refresh(self.painted)
 
     def painted(self) -> None:
@@ -194,7 +198,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
 
     def _work_if_stale(self) -> None:
         if any(pane.unfinished for pane in self.query(InputPane)):
-            self._calm = self.set_timer(WAIT_BEFORE_WORK, self._work_if_stale)
+            self._calm = self.set_timer(WAIT_WHILE_TYPING, self._work_if_stale)
         elif self.desk.ready and (self.desk.session.stale or self.desk.session.result is None):
             self.begin()
             self.refresh_frame()

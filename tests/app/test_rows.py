@@ -11,6 +11,7 @@ from screener.app.rows import (
     Span,
     column_widths,
     columns_of,
+    flow,
     labelled,
     one_line,
     paragraph,
@@ -85,6 +86,14 @@ def test_a_table_fits_and_keeps_every_cell(width):
         for cell in record:
             for word in cell.text.split():
                 assert word in joined or len(word) > min(widths)
+
+
+@pytest.mark.parametrize(("width", "rows"), [(80, 1), (20, 2), (9, 3)])
+def test_what_flows_stays_whole(width, rows):
+    flowed = flow([Span("1 Blend"), Span("2 Tank"), Span("3 Site")], width, 2)
+    assert len(flowed) == rows
+    assert all(row_width(row) <= width for row in flowed)
+    assert " ".join("".join(text_of(row) for row in flowed).split("  ")).count("Tank") == 1
 
 
 def test_a_table_with_room_is_as_wide_as_its_cells():

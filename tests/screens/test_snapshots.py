@@ -46,6 +46,11 @@ VISITS = {
 }  # fmt: skip
 
 
+async def test_a_window_too_small_says_so(case_file):
+    async with opened(case_file, size=(30, 10)) as pilot:
+        assert "This window is too small" in " ".join(grid(pilot.app).split())
+
+
 def compared(name: str, text: str) -> None:
     """Compare with the file kept, or write it when asked to."""
     file = FOLDER / f"{name}.txt"
@@ -83,7 +88,7 @@ def test_no_snapshot_is_left_over():
     assert {path.stem for path in FOLDER.glob("*.txt")} == {"start_80x24", *(n for *_, screens in VISITS.values() for n in screens)}
 
 
-@pytest.mark.parametrize("size", [(60, 20), (80, 24), (120, 26), (200, 60)])
+@pytest.mark.parametrize("size", [(40, 14), (60, 20), (80, 24), (120, 26), (200, 60)])
 async def test_no_text_is_cut_at_any_size(tmp_path, size):
     """Titles, margins, sentences and the title line are all there, whole, and nothing ends in an ellipsis."""
     async with opened(written_case(tmp_path), size=size) as pilot:
@@ -101,3 +106,15 @@ async def test_no_text_is_cut_at_any_size(tmp_path, size):
         for item in walk(pilot).query_one("#findings").items.values():
             for word in (*item.gap.title.split(), *item.gap.margin.split()):
                 assert word in seen, word
+
+
+async def test_a_window_that_changes_its_size_looks_like_one_opened_so(case_file):
+    async with opened(case_file, size=SMALL) as pilot:
+        await pressed(pilot, "5")
+        small = grid(pilot.app)
+        await pilot.resize_terminal(*LARGE)
+        await settled(pilot)
+        assert grid(pilot.app) + "\n" == (FOLDER / "findings_140x40.txt").read_text(encoding="utf-8")
+        await pilot.resize_terminal(*SMALL)
+        await settled(pilot)
+        assert grid(pilot.app) == small

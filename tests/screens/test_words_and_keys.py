@@ -13,7 +13,7 @@ from screener.app import words
 from screener.app.dialogs import HelpBox, Letters
 from screener.app.palette import Palette
 from screener.ground.errors import DataError
-from tests.screens.driving import grid, keys_shown, opened, pressed, typed, walk
+from tests.screens.driving import grid, hint, keys_shown, opened, pressed, typed, walk
 
 APP = Path(words.__file__).parent
 CALL = re.compile(r'say\(\s*"(\w+)",\s*"([^"]+)"')
@@ -153,6 +153,32 @@ async def test_every_pane_helps(case_file):
         for widget in walk(pilot).query("*"):
             if widget.can_focus:
                 assert widget.HELP, widget
+
+
+async def test_keys_can_be_given_by_a_file(case_file, tmp_path):
+    folder = tmp_path / "home" / ".screener"
+    folder.mkdir()
+    (folder / "keys.toml").write_text('"walk.next" = "f7"\n"walk.help" = "h"\n', encoding="utf-8")
+    async with opened(case_file) as pilot:
+        await pressed(pilot, "f7")
+        assert walk(pilot).current == "tank"
+        await pressed(pilot, "f6", "n")
+        assert walk(pilot).current == "tank", "the usual keys of that binding are free"
+        await pressed(pilot, "h")
+        assert isinstance(pilot.app.screen, HelpBox)
+
+
+@pytest.mark.parametrize(
+    ("content", "words_told"), [("next = 7", "next: not a binding id"), ("no toml", "cannot be read, so the usual keys hold")]
+)
+async def test_a_wrong_file_of_keys_is_told(case_file, tmp_path, content, words_told):
+    folder = tmp_path / "home" / ".screener"
+    folder.mkdir()
+    (folder / "keys.toml").write_text(content, encoding="utf-8")
+    async with opened(case_file) as pilot:
+        assert words_told in hint(pilot)
+        await pressed(pilot, "f6")
+        assert walk(pilot).current == "tank"
 
 
 async def test_dark_and_light_ground(case_file):
