@@ -162,7 +162,6 @@ def _paint(cells, plot: Plot, inner: int, tall: int, marks: Glyphs):
         for column in range(inner):
             if cells[row][column][0] == " ":
                 cells[row][column][0] = marks.dash
-        _write(cells, row, 1, f" {marks.plain(label)} ", "bold")
     ends = []
     for line in plot.lines:
         canvas = _Canvas(inner, tall, marks.dots)
@@ -177,7 +176,17 @@ def _paint(cells, plot: Plot, inner: int, tall: int, marks: Glyphs):
                     cells[row][column] = [mark, f"curve {under}".strip()]
         if last:
             ends.append((last, line.label))
+    for value, label in plot.limits:
+        _limit_label(cells, _row_of(value, plot, tall), f" {marks.plain(label)} ", marks)
     return ends
+
+
+def _limit_label(cells, row: int, text: str, marks: Glyphs) -> None:
+    """Put the number of a limit on its line, at the first place from the left that no curve takes."""
+    size, free = columns_of(text), (marks.dash, " ", marks.edge)
+    starts = range(1, len(cells[row]) - size)
+    place = next((s for s in starts if all(mark in free for mark, _ in cells[row][s : s + size])), 1)
+    _write(cells, row, place, text, "bold")
 
 
 def _write(cells, row: int, column: int, text: str, tone: str) -> None:

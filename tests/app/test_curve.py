@@ -68,6 +68,12 @@ def test_limits_are_dashed_and_carry_their_number():
     assert sum("╌ L2 ╌" in row for row in rows) == 1
 
 
+def test_a_curve_along_a_limit_does_not_hide_its_number():
+    flat = Line("", XS, [97.5 if x < 10 else 10.0 for x in XS])
+    row = next(row for row in shown(plot(lines=(flat,))) if " L1 " in row)
+    assert row.index(" L1 ") > 20, "the curve takes the left end of the dashed line"
+
+
 def test_labels_stand_beside_their_lines():
     text = "\n".join(shown(plot()))
     assert "receipt" in text and "heel" in text and "ambient, design" in text
