@@ -13,6 +13,7 @@ from screener.volatility.crude_pressure import CrudePressure, reid_equivalent_cr
 from screener.volatility.cutting import Cuts, pseudo_components
 from screener.volatility.distillation import Distillation, distillation, distillation_d86
 from screener.volatility.evaporation import Evaporation, open_evaporation
+from screener.volatility.fuel_limits import common_limits, ethanol_fuel_classes, season_limits
 from screener.volatility.indices import driveability_index, ratio_20_temperature_d4814, vapour_lock_index
 from screener.volatility.interconversion import (
     curve_at,
@@ -55,6 +56,7 @@ __all__ = [
     "TripleExpansion",
     "average_boiling_points",
     "class_standards",
+    "common_limits",
     "curve_at",
     "d86_from_d2887_daubert_1994",
     "d86_from_tbp_daubert_1994",
@@ -68,6 +70,7 @@ __all__ = [
     "dvpe",
     "dvpe_equation",
     "ethanol_allowance",
+    "ethanol_fuel_classes",
     "liquid_expansion",
     "liquid_molar_volume",
     "open_evaporation",
@@ -78,6 +81,7 @@ __all__ = [
     "ratio_temperature",
     "reid_equivalent_crude",
     "reid_vapour_pressure",
+    "season_limits",
     "standard_density",
     "standard_molar_volume",
     "tbp_from_d86_daubert_1994",

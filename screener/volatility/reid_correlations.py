@@ -67,14 +67,12 @@ def _true(stock, T, reid, root_slope):
         *(np.atleast_1d(np.asarray(v, dtype=float)) for v in (T, reid, root_slope))
     )
     degF, RVP = T * _RANKINE - 459.67, reid / PSI
-    R = degF + 459.6  # the correlation's own zero
     # half a millionth of slack, so that 20 psi turned into pascal and back stays 20 psi
     inside = (RVP >= k["RVP_low"] * (1 - 5e-7)) & (RVP <= k["RVP_high"] * (1 + 5e-7))
     inside &= (degF >= DEGF[0] - 1e-6) & (degF <= DEGF[1] + 1e-6)
-    log = np.log10(np.where(inside, RVP, 1.0))
-    R = np.where(inside, R, 500.0)
-    ln_P = (k["a0"] + k["a1"] / R) * root_slope * log + (k["b0"] + k["b1"] / R) * root_slope
-    ln_P = ln_P + (k["c0"] + k["c1"] / R) * log + k["d0"] + k["d1"] / R
+    log = np.log(np.where(inside, RVP, 1.0))
+    A, B = (k[f"{x}0"] + k[f"{x}1"] * root_slope + (k[f"{x}2"] + k[f"{x}3"] * root_slope) * log for x in "AB")
+    ln_P = A - B / np.where(inside, _RANKINE * T, 500.0)
     return np.where(inside, PSI * np.exp(ln_P), np.nan)
 
 

@@ -121,8 +121,8 @@ def main():
               "Published: about 13 % in weight-loss tests at 70 degF (AWMA study of evaporation, abstract). Of the difference,",
               "diffusion through still air explains the step between the two columns: ethanol diffuses faster than the",
               "butane and pentanes it competes with. A less volatile base adds more, from right to left in the bases: the base of",
-              "the study is not stated in what was read; on the base of 50 kPa the first "
-              f"20 % lost hold {100 * first_lost(50e3, 0.20, diffusing=True):.1f} %.",
+              "the study is not stated in what was read; on the base of 50 kPa the first 20 % lost hold",
+              f"{100 * first_lost(50e3, 0.20, diffusing=True):.1f} %.",
               "At the same mass lost the blend loses that much less hydrocarbon, which the study puts at about 5 %."]  # fmt: skip
     FILE.write_text("\n".join(lines) + "\n", encoding="utf-8")
 
