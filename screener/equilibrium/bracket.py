@@ -91,7 +91,7 @@ def _evaluate(function, lanes, t, x):
 
 
 def _next(x, f):
-    """Share of the bracket for the next point: inverse quadratic where that can be trusted, else the middle."""
+    """Share of the bracket for the next point: inverse quadratic where it can be trusted, else the middle."""
     with np.errstate(all="ignore"):
         xi = (x[0] - x[1]) / (x[2] - x[1])
         phi = (f[0] - f[1]) / (f[2] - f[1])

@@ -25,8 +25,12 @@ from screener.ground.constants import R
 
 
 class Values(NamedTuple):
-    """Departures of one phase: H [J/mol], S and Cp [J/(mol K)], partial molar H_i [J/mol]; and in full v [m3/mol],
-    expansion (dv/dT)/v [1/K], compression -(dv/dP)/v [1/Pa]; residual, the miss of P over its repulsive part [-]."""
+    """Departures of one phase, and its volume.
+
+    H [J/mol], S and Cp [J/(mol K)] (n,), partial molar H_i (n, c) [J/mol]: differences from
+    the ideal gas. In full: v [m3/mol], expansion (dv/dT)/v [1/K], compression -(dv/dP)/v
+    [1/Pa], each (n,). residual (n,) [-] is the miss of P over its repulsive part.
+    """
 
     v: np.ndarray
     H: np.ndarray
@@ -83,7 +87,12 @@ def departures(state, P, x, phase: str) -> Values:
         lift_i = state.shift_i - state.T[:, None] * state.fluid.shift_1
         residual = np.abs(RT / gap - RT * alpha * b / product - P) * gap / RT
         return Values(
-            v - c, H - P * (c - T * c_1), S + P * c_1, Cp,
+            v - c,
+            H - P * (c - T * c_1),
+            S + P * c_1,
+            Cp,
             -(RT * T)[:, None] * ln_phi_T - P[:, None] * lift_i,
-            (v_T - c_1) / (v - c), -1.0 / (P_v * (v - c)), residual,
+            (v_T - c_1) / (v - c),
+            -1.0 / (P_v * (v - c)),
+            residual,
         )

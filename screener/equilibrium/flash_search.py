@@ -46,7 +46,10 @@ class FlashSearch:
         Returns the rows and the miss; OUT_OF_RANGE where the target lies beyond the range.
         """
         low, high = self.target.limits
-        wide = [np.full(self.given.shape, end) for end in ((high, low) if self.target.given == "T" else (low, high))]
+        wide = [
+            np.full(self.given.shape, end)
+            for end in ((high, low) if self.target.given == "T" else (low, high))
+        ]
         with np.errstate(invalid="ignore"):
             a = np.where(bubble.excess < 0.0, bubble.at, wide[0])
             b = np.where(dew.excess > 0.0, dew.at, wide[1])
@@ -87,7 +90,7 @@ class FlashSearch:
         return f
 
     def _widen(self, end, f, sign, own, other):
-        """Move an end on the wrong side of the target, or without a flash, to the end of the range or near it."""
+        """Move an end on the wrong side of the target, or without a flash, to the end of the range."""
         for inward in INWARD:
             bad = np.flatnonzero(~(f * sign >= 0.0))
             if bad.size == 0:
@@ -96,7 +99,7 @@ class FlashSearch:
             f[bad] = self._excess(bad, end[bad])
 
     def _scan(self, lanes, a, f_a, b, f_b):
-        """Ends around the crossing nearest the vapour: with dissolved gases the fraction may fall before it rises."""
+        """Ends around the crossing nearest the vapour; with dissolved gases a fraction may fall, then rise."""
         at, f, stop = b[lanes].copy(), f_b[lanes].copy(), a[lanes].copy()
         some = np.arange(lanes.size)
         for left in range(RUNGS, 0, -1):
@@ -109,5 +112,10 @@ class FlashSearch:
             with np.errstate(invalid="ignore"):
                 crossed = (f_last > 0.0) & (f[some] <= 0.0)
             here = lanes[some[crossed]]
-            a[here], f_a[here], b[here], f_b[here] = at[some[crossed]], f[some[crossed]], last[crossed], f_last[crossed]
+            a[here], f_a[here], b[here], f_b[here] = (
+                at[some[crossed]],
+                f[some[crossed]],
+                last[crossed],
+                f_last[crossed],
+            )
             some = some[~crossed]

@@ -26,7 +26,7 @@ REACH = 1.0  # longest accelerated step in ln K
 
 
 class AtFraction:
-    """Lanes of given vapour fraction beta (n,) and given T or P (`name`, `value` (n,)); s (n,) the last root."""
+    """Lanes of given vapour fraction beta (n,) and given T or P: `name`, `value` (n,); s (n,) the last root."""
 
     def __init__(self, fluid, name: str, value, z, beta, state=None, s=None):
         self.fluid, self.name, self.value, self.z, self.beta = fluid, name, value, z, beta
@@ -140,8 +140,17 @@ def at_fraction(fluid, name: str, value, z, beta, u, s=None) -> Fractions:
     T, P = (T, np.where(lost, np.nan, P)) if name == "T" else (np.where(lost, np.nan, T), P)
     row = lost[:, None]
     return Fractions(
-        T, P, beta, np.where(row, np.nan, x), np.where(row, np.nan, y), np.where(row, np.nan, ln_K), fixed.u,
-        status, fixed.iterations, fixed.residual, np.where(lost, np.nan, balance),
+        T,
+        P,
+        beta,
+        np.where(row, np.nan, x),
+        np.where(row, np.nan, y),
+        np.where(row, np.nan, ln_K),
+        fixed.u,
+        status,
+        fixed.iterations,
+        fixed.residual,
+        np.where(lost, np.nan, balance),
     )
 
 

@@ -30,11 +30,11 @@ from screener.ground.status import Status
 
 MOST_NUMBERS = 40_000  # lanes times components handled at once: keeps the working arrays in cache
 NARROW = 1e-4  # [-] relative boiling range below which T and P do not tell the vapour fraction; own choice
-ALIKE = 1e-4  # [-] vapour fractions this close are one state, told more sharply by the fraction itself; own choice
+ALIKE = 1e-4  # [-] vapour fractions this close are one state, told more sharply by the pair; own choice
 
 
 class Ends(NamedTuple):
-    """Bubble or dew points of the lanes: the point, its T or ln P (n,), the excess over the target (n,) there."""
+    """Bubble or dew points of the lanes: the point, its T or ln P (n,), the excess over the target (n,)."""
 
     point: object
     at: np.ndarray
@@ -78,7 +78,9 @@ def solve_many(fluid, target, given, z, check: str) -> SolvedFlash:
     As `solve_lanes`.
     """
     known_check(check)
-    usable = np.where(np.isfinite(target.value), 1.0, np.nan)  # negative values are fine, but no number is not
+    usable = np.where(
+        np.isfinite(target.value), 1.0, np.nan
+    )  # negative values are fine, but no number is not
     z, at, usable, good = as_lanes(fluid.c, z, **{target.given: given}, target=usable)
     n = at.size
     value = np.array(np.broadcast_to(target.value, (n,)))
@@ -157,7 +159,9 @@ def solve_lanes(fluid, target, given, z, check: str) -> SolvedFlash:
     miss[two[stands]] = pairs.miss[stands]
     bare = target.at_edge
     bare[two[stands]] = False
-    miss[bare] = np.inf  # without its saturation point an edge has no state, whatever one phase the flash finds
+    miss[bare] = (
+        np.inf
+    )  # without its saturation point an edge has no state, whatever one phase the flash finds
     again = np.flatnonzero(~(miss <= PROMISED) & ~bare)
     if again.size:
         search = FlashSearch(fluid, target.take(again), given[again], z[again], check)
@@ -188,7 +192,9 @@ def _ends(fluid, target, given, z):
             at = np.log(found.P) if target.given == "T" else found.T
             inside = found.ok & (at >= low) & (at <= high)
         share = np.where(inside, beta, np.nan)
-        excess, _ = target.excess(fluid, found.T, found.P, share, np.full_like(share, np.nan), found.x, found.y, z)
+        excess, _ = target.excess(
+            fluid, found.T, found.P, share, np.full_like(share, np.nan), found.x, found.y, z
+        )
         ends.append(Ends(found, np.where(inside, at, np.nan), excess))
     return ends
 

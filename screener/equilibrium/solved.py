@@ -64,7 +64,9 @@ def totals(fluid, T, P, beta, beta_W, x, y, x_W):
     each = {"x": np.full(T.shape, np.nan), "y": np.full(T.shape, np.nan), "x_W": np.full(T.shape, np.nan)}
     second = np.where(np.isfinite(beta_W), beta_W, 0.0)
     for name, share, part, kind in (
-        ("x", 1.0 - beta - second, x, "L"), ("y", beta, y, "V"), ("x_W", second, x_W, "L")
+        ("x", 1.0 - beta - second, x, "L"),
+        ("y", beta, y, "V"),
+        ("x_W", second, x_W, "L"),
     ):
         some = np.flatnonzero(known & (share > 0.0))
         if some.size == 0:

@@ -18,7 +18,7 @@ from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_P, LOWES
 from screener.equilibrium.solved import totals
 from screener.ground.constants import R
 
-MISS = 1e-9  # [-] to which a target is met: ten times below what is promised, ten times above the flash's residual
+MISS = 1e-9  # [-] to which a target is met: ten times below the promise, ten times above the flash's residual
 
 
 @dataclass(frozen=True)
@@ -52,7 +52,7 @@ class Target:
     def limits(self) -> tuple[float, float]:
         """Range of the unknown: T [K] or ln P [ln Pa]."""
         if self.given == "T":
-            return float(np.log(1e3 * LOWEST_P)), float(np.log(HIGHEST_P))
+            return float(np.log(LOWEST_P)), float(np.log(HIGHEST_P))
         if self.what in ("H", "S"):
             return ideal_gas.T_LOW, ideal_gas.T_HIGH
         return LOWEST_T, HIGHEST_T
@@ -78,7 +78,7 @@ class Target:
         return (above - below) * unit, np.maximum(above, below) * unit
 
     def single(self, fluid, given, z, liquid: bool, edge):
-        """The unknown (n,), T [K] or P [Pa], where the feed is one phase between `edge` and the end of the range."""
+        """T [K] or P [Pa] (n,) of a feed that is one phase, between `edge` and the end of the range."""
         if self.what == "v":
             return self._pressure_of_volume(fluid, given, z)
         if self.what not in ("H", "S"):

@@ -82,6 +82,13 @@ def heat_of_vaporisation(fluid, x, *, T=None, P=None, beta=0.0) -> HeatOfVaporis
         start = state_at_beta(fluid, 0.0, state.z[some], **given)
         taken[some] = state.H[some] - start.H
     return HeatOfVaporisation(
-        T=state.T, P=state.P, beta=state.beta, x=state.x, y=state.y, differential=differential, taken=taken,
-        status=state.status, residual=state.residual,
+        T=state.T,
+        P=state.P,
+        beta=state.beta,
+        x=state.x,
+        y=state.y,
+        differential=differential,
+        taken=taken,
+        status=state.status,
+        residual=state.residual,
     )

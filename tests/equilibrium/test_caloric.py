@@ -96,7 +96,7 @@ def test_residual_is_rounding(fluid):
 
 
 def test_heat_of_vaporisation_of_a_pure_species_is_clapeyrons():
-    """T (v_V - v_L) dP/dT, with the equation's own vapour pressure; the translation drops out of v_V - v_L."""
+    """T (v_V - v_L) dP/dT with the equation's own vapour pressure; the translation drops out of v_V - v_L."""
     from screener.equilibrium import bubble_pressure
 
     fluid = Fluid.of(["n-hexane"])
@@ -122,7 +122,10 @@ def test_heat_taken_up_along_the_boiling_range(fluid):
     at_T = heat_of_vaporisation(fluid, x, T=340.0, beta=beta).require()
     rise = (at_T.taken[2] - at_T.taken[0]) / 2e-4
     moved = (beta[2] * at_T.y[2] - beta[0] * at_T.y[0]) / 2e-4  # what turns into vapour, not quite y
-    partial = [caloric(fluid, 340.0, at_T.P[1], part, phase).H_i[0] for part, phase in ((at_T.x[1], "L"), (at_T.y[1], "V"))]
+    partial = [
+        caloric(fluid, 340.0, at_T.P[1], part, phase).H_i[0]
+        for part, phase in ((at_T.x[1], "L"), (at_T.y[1], "V"))
+    ]
     # 1 %: the rest is dH/dP of both phases, v - T dv/dT times a fall of P of some bar per unit of beta
     assert rise == pytest.approx(moved @ (partial[1] - partial[0]), rel=0.01)
 

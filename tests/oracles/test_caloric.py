@@ -8,10 +8,16 @@ import pytest
 from screener.equilibrium import Fluid, departure
 
 # Tc [K], Pc [Pa], omega [-], rounded; any values would do for comparing two codes
-CONSTANTS = np.array([
-    [369.83, 4.248e6, 0.152], [425.12, 3.796e6, 0.200], [469.7, 3.370e6, 0.252], [540.2, 2.740e6, 0.350],
-    [562.05, 4.895e6, 0.210], [617.7, 2.110e6, 0.489],
-])
+CONSTANTS = np.array(
+    [
+        [369.83, 4.248e6, 0.152],
+        [425.12, 3.796e6, 0.200],
+        [469.7, 3.370e6, 0.252],
+        [540.2, 2.740e6, 0.350],
+        [562.05, 4.895e6, 0.210],
+        [617.7, 2.110e6, 0.489],
+    ]
+)
 SEED = 20260711
 
 
@@ -38,6 +44,9 @@ def test_departures(eos):
             for name in ("H", "S", "G", "U", "Cp"):
                 expected = getattr(theirs, f"{name}_dep_{suffix}")
                 scale = 8.3 if name in ("S", "Cp") else 8.3 * T
-                # 1e-7: their cubic root is good to 1e-9, the heat capacity of a warm liquid a hundred times as sensitive
-                assert abs(getattr(ours, name)[0] - expected) <= 1e-7 * max(abs(expected), scale), (name, phase)
+                # 1e-7: their cubic root is good to 1e-9, Cp of a warm liquid a hundred times as sensitive
+                assert abs(getattr(ours, name)[0] - expected) <= 1e-7 * max(abs(expected), scale), (
+                    name,
+                    phase,
+                )
     assert compared >= 40
