@@ -44,7 +44,12 @@ def rows():
         r = np.array(list(ratios(limit).values()))
         low, high = np.quantile(r, [0.05, 0.95])
         miss = np.median(np.abs(r - 1.0))
-        yield [limit, coefficient, *(f"{v:.3f}" for v in (low, high, r.mean(), miss, r.min(), r.max())), len(r)]
+        yield [
+            limit,
+            coefficient,
+            *(f"{v:.3f}" for v in (low, high, r.mean(), miss, r.min(), r.max())),
+            len(r),
+        ]
 
 
 def main():

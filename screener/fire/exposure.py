@@ -39,7 +39,7 @@ class ExposureLimit:
     @property
     def ppm(self) -> float:
         """The limit by volume. [ppm]"""
-        return self.value * 1e6
+        return round(self.value * 1e6, 9)  # as the agency printed it, rid of the digits of the conversion
 
 
 @dataclass(frozen=True)

@@ -16,6 +16,7 @@ from screener.ground.files import read_table
 # annex I 2.6.4.2.1 asks of a calculation method a mean error below 5 degC there (read in a copy of it). [K]
 BOILING_DOUBT = 5.0
 HEATED_WITHIN = 30.0 / 1.8  # [K] 30 degF below the flash point; 29 CFR 1910.106(a)(19)(iii)
+SAME = 6  # decimals of a kelvin: 60 degC and 140 degF are one temperature
 FLASH_100F = (100.0 + 459.67) / 1.8  # [K]
 NOT_CLASSED = "not classed"
 UNKNOWN = "unknown"
@@ -97,7 +98,17 @@ def boiling_rules() -> dict[str, BoilingRule]:
 
 
 def hazard_systems() -> tuple[str, ...]:
-    """Names of the texts, in the order of the table."""
+    """Names of the texts on hazard classes.
+
+    Returns
+    -------
+    tuple of str
+        In the order of the table.
+
+    Source
+    ------
+    data/fire/hazard_classes.csv.
+    """
     return tuple(dict.fromkeys(rule.system for rule in class_rules()))
 
 
@@ -171,7 +182,8 @@ def hazard_class(
 
 
 def _within(value, low, low_counts, high, high_counts):
-    inside = np.ones(value.shape, dtype=bool)
+    inside, value = np.ones(value.shape, dtype=bool), np.round(value, SAME)
+    low, high = (None if v is None else round(v, SAME) for v in (low, high))
     if low is not None:
         inside &= (value >= low) if low_counts else (value > low)
     if high is not None:

@@ -107,7 +107,7 @@ def limiting_oxygen(fluid, y, *, inert: str = "nitrogen", flammability=None) -> 
             "inert", inert, f"'{inert}' is not an inert gas of the table", f"one of {INERT_GASES}"
         )
     limits = flammability or Flammability.of(fluid)
-    guess = np.where(limits.burns, limits.LFL * limits.oxygen, np.nan)
+    guess = np.where(limits.burns, limits.LFL, np.nan) * limits.oxygen
     known = [_of_species(name, inert, g) for name, g in zip(fluid.names, guess, strict=True)]
     value = np.array([v for v, _ in known])
     y = np.atleast_2d(np.asarray(y, dtype=float))

@@ -23,6 +23,8 @@ T_TABLED = (
 # modified Burgess-Wheeler law, Zabetakis, US Bureau of Mines Bulletin 627 (1965). From memory,
 # unverified; equal to 0.75 kcal/mol over the usual 1040 kcal/mol of LFL (in percent) times heat of burning.
 PER_KELVIN = 0.000721
+FORMULA = re.compile(r"([A-Z][a-z]?([\d.]+)?)+")
+CH2 = 0.0140266  # [kg/mol] of one CH2; atomic weights of IUPAC
 O2_IN_AIR = 0.2095  # [-] dry air; from memory, unverified (CIPM 2007 gives 0.2093)
 
 
@@ -83,7 +85,8 @@ def limit_jones_1938(formula: str, limit: str) -> float:
 
     Validity
     --------
-    Hydrocarbons and their oxygenates. Measured error: data/fire/limit_estimates.toml.
+    Hydrocarbons and their oxygenates; a petroleum cut counts as CnH2n of its molar mass. Measured error:
+    data/fire/limit_estimates.toml.
 
     Source
     ------
@@ -133,6 +136,17 @@ class Flammability:
             value = value * np.where(estimated, rule.low if shift < 0.0 else rule.high, 1.0)
         return value * (1.0 + sign * PER_KELVIN * (T - T_TABLED))[:, None]
 
+    def resting_on_estimates(self, limit: str) -> tuple[str, ...]:
+        """Names of the species whose "LFL" or "UFL" is an estimate."""
+        return tuple(
+            n for n, guess in zip(self.names, getattr(self, f"{limit}_estimated"), strict=True) if guess
+        )
+
+    def without_data(self) -> tuple[str, ...]:
+        """Names of the species for which there is neither limit nor estimate."""
+        lacking = np.isnan(self.LFL) | np.isnan(self.UFL)
+        return tuple(n for n, lacks in zip(self.names, lacking, strict=True) if lacks)
+
     def unknown(self, x, *limits: str) -> np.ndarray:
         """Mask (n,) of the lanes that hold a species without value and estimate of one of the limits."""
         lacking = np.zeros(len(self.names), dtype=bool)
@@ -152,15 +166,19 @@ def _row(one):
     nan = float("nan")
     if one is None:
         return nan, nan, False, False, nan, nan, nan
-    demand = oxygen_demand(one.formula) if one.formula else nan
+    formula = one.formula
+    if not FORMULA.fullmatch(formula):
+        # A petroleum cut has none: CnH2n of its molar mass. Between H/C 1.6 and 2.2 that moves an estimate
+        # by 4 %.
+        formula = f"C{one.MW / CH2:.6f}H{2.0 * one.MW / CH2:.6f}"
+    demand = oxygen_demand(formula)
     if demand <= 0.0:
         return np.inf, np.inf, False, False, nan, nan, 0.0
     LFL, UFL = one.LFL, one.UFL
-    guess = limit_jones_1938 if one.formula else (lambda formula, limit: nan)
     flash = one.flash_point or nan
     return (
-        LFL if LFL is not None else guess(one.formula, "LFL"),
-        UFL if UFL is not None else guess(one.formula, "UFL"),
+        LFL if LFL is not None else limit_jones_1938(formula, "LFL"),
+        UFL if UFL is not None else limit_jones_1938(formula, "UFL"),
         LFL is None, UFL is None, flash, one.psat(flash), demand,
     )  # fmt: skip
 

@@ -28,7 +28,8 @@ TOLERANCE = 1e-9  # largest change of ln p between rounds
 
 
 class Vapour(NamedTuple):
-    """p (n, c) [Pa] partial pressures, x (n, c) [-] the liquid left, n_L (n,) [-] its moles of one charged."""
+    """p (n, c) [Pa] partial pressures, x (n, c) [-] the liquid left, n_L (n,) [-] its moles of one
+    charged."""
 
     p: np.ndarray
     x: np.ndarray
