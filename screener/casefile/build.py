@@ -36,6 +36,7 @@ def build(values: Values, blend, heel, *, source: str, digest: str) -> Case:
         prepared_by=v("case.prepared_by") or "",
         criteria=v("screening.criteria") or (),
         fuel_class=v("case.fuel_class") or "",
+        hydrogen_sulfide=v("blend.h2s_in_liquid"),
         inputs=tuple(_echo(values.taken[path]) for path in sorted(values.taken, key=order)),
         source=source,
         digest=digest,
@@ -73,6 +74,9 @@ def _tank(values: Values, heel) -> Tank:
         vapour_return=v("tank.vapour_return"),
         roof_leg_height=v("tank.roof_leg_height"),
         vapour_space_temperature=v("tank.vapour_space_temperature"),
+        vapour_space_oxygen=v("tank.vapour_space_oxygen"),
+        previous_contents=v("tank.previous_contents"),
+        sour_service=v("tank.sour_service"),
         contents=Contents(heel, v("tank.contents.volume"), v("tank.contents.temperature")) if heel else None,
     )
 

@@ -37,6 +37,7 @@ def check(values: Values) -> None:
         _months,
         _barometer,
         _suction,
+        _basis_of_shares,
     ):
         one(values)
     _not_used(values)
@@ -183,6 +184,18 @@ def _barometer(values: Values) -> None:
 def _suction(values: Values) -> None:
     nozzle, top = "line.suction.nozzle_above_tank_bottom", "line.suction.highest_point_above_tank_bottom"
     _rising(values, "length", nozzle, top)
+
+
+def _basis_of_shares(values: Values) -> None:
+    """Hydrogen sulfide is counted by mass, oxygen of a gas by volume; a text that says less is no number."""
+    for path, wanted, text in (
+        ("blend.h2s_in_liquid", ("mass",), "20 ppm mass"),
+        ("tank.vapour_space_oxygen", ("", "volume", "mole"), "4 mol%"),
+    ):
+        taken = values.taken.get(path)
+        if taken is not None and taken.mark not in wanted:
+            problem = f"'{taken.entered}' does not say that it counts {'mass' if 'mass' in wanted else 'volume'}"
+            values.complain(InputError(path, taken.entered, problem, f'write it as "{text}"'))
 
 
 def _not_used(values: Values) -> None:

@@ -61,6 +61,9 @@ _CASE = (
 _BLEND = (
     Key("blend", TABLE, "The liquid that is received", required=True, section=True),
     *_parts("blend", "the receipt"),
+    Key("blend.h2s_in_liquid", "share", "Hydrogen sulfide dissolved in the receipt, by mass, beside its parts",
+        "20 ppm mass", unit="-", low="0 ppm", high="5 %", usual="0 to 100 ppm mass in crude and condensate",
+        where="certificate of analysis"),
     Key("blend.lab", LATER, "Laboratory sheet", section=True,
         problem="laboratory sheets are not read yet; describe the blend by parts"),
 )  # fmt: skip
@@ -131,6 +134,12 @@ _ROOF_AND_HEEL = (
         low="0.1 m", high="5 m", usual="1 m to 2.5 m", where=DRAWING),
     Key("tank.vapour_space_temperature", "temperature", "Hottest vapour space, if it was measured", "44 degC",
         unit="K", low="-60 degC", high="150 degC", where="roof thermometer"),
+    Key("tank.vapour_space_oxygen", "share", "Oxygen measured in the vapour space; a blanket counts only with it",
+        "4 mol%", unit="-", low="0 %", high="21 %", quality="measured", where="oxygen meter at the hatch or roof"),
+    Key("tank.previous_contents", STOCK, "Blendstock the tank held before, if it was not freed of gas since",
+        "summer gasoline base", where="tank log"),
+    Key("tank.sour_service", FLAG, "The tank holds liquid with hydrogen sulfide, now or before", "false",
+        where="tank log"),
     Key("tank.contents", TABLE, "What is in the tank now; leave out if it is empty", section=True),
     *_parts("tank.contents", "the liquid in the tank"),
     Key("tank.contents.volume", "volume", "Volume in the tank now, at its own temperature", "2100 m3",

@@ -11,6 +11,7 @@ from screener.ground.status import Status, words
 from screener.screening.finding import Condition
 from screener.screening.wording import say
 from screener.states.case import Case
+from screener.states.fire import FireStates
 from screener.states.lanes import LIQUIDS, Lanes
 
 MONTHS = ("January", "February", "March", "April", "May", "June", "July", "August", "September",
@@ -24,6 +25,8 @@ class Context:
 
     lanes: Lanes
     i: int
+    fire: FireStates | None = None  # of the same lanes
+    full: bool = False  # facts beside a finding are worked out too
 
     @property
     def case(self) -> Case:

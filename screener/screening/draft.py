@@ -22,6 +22,8 @@ class Lane:
     limit: float = math.nan
     upper: float = math.nan  # upper end of an interval to keep out of; limit is then its lower end
     rich_caps: tuple[str, ...] = ()  # caps that hold above such an interval only
+    evidence: str = ""  # mark of this lane's own limit, '' for that of the draft
+    beyond: str = ""  # what being on the wrong side means here, '' for the general words
     reference: float = 0.0
     unknown: str = ""  # why this lane cannot be told, '' if it can
     caps: tuple[str, ...] = ()  # each keeps the lane from being better than near
@@ -61,14 +63,17 @@ def _judge_lane(draft: Draft, lane: Lane) -> Judgement:
     if c.kind == "keep out of":
         judged = judge_keep_out(
             lane.value, lane.low, lane.high, lane.limit, lane.upper,
-            gap=gap, evidence=draft.limit_evidence, caps=lane.caps, rich_caps=lane.rich_caps,
+            gap=gap, evidence=lane.evidence or draft.limit_evidence, caps=lane.caps, rich_caps=lane.rich_caps,
         )  # fmt: skip
     else:
         judged = judge(
             lane.value, lane.low, lane.high, lane.limit,
-            kind=c.kind, reference=lane.reference, gap=gap, evidence=draft.limit_evidence, caps=lane.caps,
+            kind=c.kind, reference=lane.reference, gap=gap, evidence=lane.evidence or draft.limit_evidence,
+            caps=lane.caps,
         )  # fmt: skip
-    if judged.verdict == "beyond" or not (lane.unknown or judged.verdict == "unknown"):
+    if judged.verdict == "beyond":
+        return replace(judged, reason=lane.beyond or judged.reason)
+    if not (lane.unknown or judged.verdict == "unknown"):
         return judged
     return replace(
         judged, verdict="unknown", reason=lane.unknown or judged.reason or say("judge", "number-missing")
@@ -123,7 +128,7 @@ def _finding(draft: Draft, lane: Lane, judged: Judgement) -> Finding:
         limit_low=None if c.kind == "stay below" else limit,
         limit_high={"stay below": limit, "keep out of": _number(lane.upper)}.get(c.kind),
         kind=c.kind,
-        evidence=draft.limit_evidence,
+        evidence=lane.evidence or draft.limit_evidence,
         margin=judged.margin,
         asked_gap=gap,
         room_used=judged.room_used,

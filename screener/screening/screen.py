@@ -8,14 +8,17 @@ from screener.ground.constants import ZERO_CELSIUS
 from screener.screening.context import Context
 from screener.screening.draft import finish
 from screener.screening.finding import Finding, Screening
+from screener.screening.fire import flash, oxygen, space, switch_loading
 from screener.screening.flow import npsh, suction
 from screener.screening.headroom import with_headroom
+from screener.screening.health import hatch
 from screener.screening.information import information
 from screener.screening.notes import assumptions, reservations, sources
 from screener.screening.rules import packs_of
 from screener.screening.vapour import boiling, hottest, legal, receipt
 from screener.screening.venting import inbreathing, outbreathing, pressure_setting, vacuum_setting
 from screener.states.case import Case
+from screener.states.fire import fire_states
 from screener.states.quantities import bubble_curve, flows, table
 
 CURVE = np.arange(-10.0, 61.0, 2.5) + ZERO_CELSIUS  # temperatures of the picture [K]
@@ -30,6 +33,9 @@ def findings_of(context: Context, stream) -> tuple[Finding, ...]:
     drafts += [outbreathing(context, stream), inbreathing(context, stream)]
     drafts += [pressure_setting(context, stream), vacuum_setting(context, stream)]
     findings = [finish(draft) for draft in drafts]
+    inerting = finish(oxygen(context))
+    drafts = (space(context, inerting), flash(context), hatch(context), switch_loading(context))
+    findings += [inerting, *map(finish, drafts)]
     return tuple(sorted(findings, key=lambda finding: finding.rank))
 
 
@@ -47,9 +53,10 @@ def screen_many(cases, *, full: bool = False) -> tuple[Screening, ...]:
     cases = tuple(cases)
     lanes = table(cases)
     stream = flows(lanes)
+    fire = fire_states(lanes, stream.breathing.volume)
     results = []
     for i in range(len(cases)):
-        context = Context(lanes, i)
+        context = Context(lanes, i, fire, full)
         findings = findings_of(context, stream)
         if full:
             findings = with_headroom(context, stream, findings)

@@ -95,6 +95,9 @@ class Tank:
     vapour_return: bool = False
     roof_leg_height: float | None = None  # [m]
     vapour_space_temperature: float | None = None  # hottest, if known [K]
+    vapour_space_oxygen: float | None = None  # measured [mole fraction]
+    previous_contents: str | None = None  # stock the tank held before it was emptied
+    sour_service: bool | None = None  # holds liquid with hydrogen sulfide; None: not stated
     contents: Contents | None = None
 
 
@@ -187,6 +190,7 @@ class Case:
     prepared_by: str = ""
     criteria: tuple[str, ...] = ()  # names of criteria packs in data/criteria
     fuel_class: str = ""  # volatility class claimed, for information
+    hydrogen_sulfide: float | None = None  # dissolved in the receipt, beside its parts [kg/kg]
     inputs: tuple[InputEcho, ...] = field(default_factory=tuple)  # as entered, and every default used
     source: str = ""  # path of the case file, '' if built by hand
     digest: str = ""  # sha256 of the case file text, '' if built by hand

@@ -26,6 +26,9 @@ _READ = {
         "tank.vapour_space_temperature",
         lambda c: c.tank.vapour_space_temperature,
     ),
+    "vapour_space_oxygen": ("tank.vapour_space_oxygen", lambda c: c.tank.vapour_space_oxygen),
+    "roof_leg_height": ("tank.roof_leg_height", lambda c: c.tank.roof_leg_height),
+    "hydrogen_sulfide": ("blend.h2s_in_liquid", lambda c: c.hydrogen_sulfide),
     "heel_volume": ("tank.contents.volume", lambda c: c.tank.contents and c.tank.contents.volume),
     "heel_temperature": (
         "tank.contents.temperature",

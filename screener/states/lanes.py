@@ -16,6 +16,7 @@ import numpy as np
 from screener.blends import mix, union
 from screener.equilibrium import Fluid
 from screener.ground.status import Status
+from screener.species import find
 from screener.states.arrival import AIR, Arrival, arrival, vapour_with_air
 from screener.states.inputs import Inputs
 from screener.states.pressures import bubble, psat_errors, relative_spread, with_edges
@@ -23,6 +24,7 @@ from screener.states.volumes import density_15, expansion
 from screener.states.weather import Weather
 from screener.tank import horizontal_liquid_volume, vertical_liquid_volume
 
+SOUR_GAS = "hydrogen sulfide"
 LIQUIDS = (("receipt", ""), ("heel", ""), ("mixture", "low"), ("mixture", "normal"), ("mixture", "high"))
 RECEIPT, HEEL, LOW, NORMAL, HIGH = range(5)
 EDGES = ("low", "best", "high")
@@ -72,13 +74,26 @@ def _compositions(cases):
     blends = [case.blend for case in cases]
     heels = [case.tank.contents.blend if case.tank.contents else case.blend for case in cases]
     names, Z = union(blends + heels)
-    extra = [name for name in AIR if name not in names] if _any_air(cases) else []
-    Z = np.pad(Z, ((0, 0), (0, len(extra))))
+    sour = [case.hydrogen_sulfide or 0.0 for case in cases]
+    wanted = (*AIR,) * _any_air(cases) + (SOUR_GAS,) * any(sour)
+    extra = [name for name in wanted if name not in names]
+    Z = np.pad(Z, ((0, 0), (0, len(extra)))).reshape(2, len(cases), -1)
+    names += tuple(extra)
+    if any(sour):
+        Z[0] = _with_sour_gas(names, Z[0], np.array(sour))
     has_heel = np.array([case.tank.contents is not None for case in cases])
-    return names + tuple(extra), Z.reshape(2, len(cases), -1), has_heel
+    return names, Z, has_heel
 
 
-def _filled(inputs) -> np.ndarray:
+def _with_sour_gas(names, z, share):
+    """Liquids z (n, c) with hydrogen sulfide of the mass share (n,) dissolved beside the parts given. [-]"""
+    MW, at = np.array([find(name).MW for name in names]), names.index(SOUR_GAS)
+    z = z.copy()
+    z[:, at] += share / (1.0 - share) * (z @ MW) / MW[at]
+    return z / z.sum(axis=1, keepdims=True)
+
+
+def filled_volumes(inputs) -> np.ndarray:
     """Liquid volume (n, 3) with the tank at its low, normal and high level. [m3]"""
     levels = np.stack([inputs["level_low"], inputs["level_normal"], inputs["level_high"]], axis=1)
     lying = np.isfinite(inputs["tank_length"])[:, None]
@@ -100,7 +115,7 @@ def _mixtures(inputs, fluid, Z, has_heel):
     n = len(has_heel)
     T_r, T_h = inputs["receipt_temperature"], inputs["heel_temperature"]
     heel_volume = np.where(has_heel, inputs["heel_volume"], np.nan)[:, None]
-    filled = _filled(inputs)
+    filled = filled_volumes(inputs)
     received = np.maximum(filled - heel_volume, 0.0) / expansion(fluid, T_r, Z[0])[:, None]
     left = np.minimum(heel_volume, filled) / expansion(fluid, T_h, Z[1])[:, None]
     z = np.empty((n, 5, fluid.c))

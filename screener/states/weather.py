@@ -11,6 +11,11 @@ Rules, in words:
 - the design day of a month has that month's mean daily maximum raised by the
   distance from the hottest month's mean maximum to the site's design high, the
   month's own daily swing, and a clear sky;
+- the coldest surface is the daily minimum of the published method on a cold day without
+  sun, the colder edition taken; that day has the month's mean daily minimum lowered by the
+  distance from the coldest month's mean minimum to the site's design low, and the month's own
+  swing. Its low end is the air minimum, its high end the day's mean surface. A gauge
+  reading goes before it in the same way;
 - the legal temperature is the highest monthly mean of the air, of the whole year;
 - the barometer is the lowest one given, else the standard atmosphere at the
   elevation less a stated allowance.
@@ -41,24 +46,28 @@ class Weather:
     barometer (n,) [Pa]; T_surface (n, 3) hottest surface [K]; T_estimate (n, 3)
     the same without the gauge reading [K]; T_bulk (n, 3) bulk in the hottest month
     [K]; T_legal (n,) highest monthly mean [K]; T_space (n,) hottest vapour space
-    [K]; month (n,) number of the month judged, 0 if none; month_legal (n,) the month of
-    T_legal, 0 if none; editions (n, 2) the surface by each edition [K]; absorptance
-    (n, 3) [-]; air_high, air_low (n,) [K] and insolation (n,) [J/m2] of the design day.
+    [K]; month (n,) number of the month judged, 0 if none; month_cold (n,) that of the coldest
+    surface; month_legal (n,) the month of T_legal, 0 if none; editions (n, 2) the surface by each edition [K]; absorptance
+    (n, 3) [-]; air_high, air_low (n,) [K] and insolation (n,) [J/m2] of the design day;
+    air_coldest (n,) [K] air minimum of the cold day.
     """
 
     barometer: np.ndarray
     T_surface: np.ndarray
     T_estimate: np.ndarray
     T_bulk: np.ndarray
+    T_cold: np.ndarray
     T_legal: np.ndarray
     T_space: np.ndarray
     month: np.ndarray
+    month_cold: np.ndarray
     month_legal: np.ndarray
     editions: np.ndarray
     absorptance: np.ndarray
     air_high: np.ndarray
     air_low: np.ndarray
     insolation: np.ndarray
+    air_coldest: np.ndarray
 
 
 def _barometer(inputs: Inputs) -> np.ndarray:
@@ -93,6 +102,33 @@ def _design_day(inputs: Inputs, month: np.ndarray, hottest: np.ndarray):
     insolation = np.where(np.isnan(inputs["design_insolation"]), clear, inputs["design_insolation"])
     # A small swing keeps the nights warm: it belongs to the hot edge.
     return high[:, None] * np.ones(3), high[:, None] - swing, insolation
+
+
+def _cold_day(inputs: Inputs, month: np.ndarray, coldest: np.ndarray):
+    """Air maximum (n, 3) and minimum (n,) of the cold day of the month, or of the year where there is none."""
+    highs, lows = inputs.months["mean_high"], inputs.months["mean_low"]
+    fall = _pick(lows, coldest) - inputs["ambient_low"]
+    low = np.where(month > 0, _pick(lows, month) - fall, inputs["ambient_low"])
+    known = (_pick(highs, month) - _pick(lows, month))[:, None]
+    # A small swing keeps the day cold, but the night warm: the low end is the air minimum itself.
+    return low[:, None] + np.where(np.isfinite(known), known, np.array(SWING_UNKNOWN)[None, :]), low
+
+
+def _coldest_surface(inputs, kinds, insulation, alpha, month, coldest):
+    """Coldest surface (n, 3) with its range, and the air minimum (n,) of that day. [K]"""
+    high, low = _cold_day(inputs, month, coldest)
+    buried = (kinds == "underground") & np.isfinite(inputs["reading"])
+    day = hottest_surface(
+        high, low[:, None] * np.ones(3), np.zeros_like(high), alpha, alpha,
+        height_over_diameter=(inputs["shell_height"] / inputs["shell_diameter"])[:, None],
+        roof=kinds[:, None],
+        insulation=insulation[:, None],
+        bulk_temperature=np.where(buried, inputs["reading"], np.nan)[:, None],
+    )  # fmt: skip
+    old, new = (edition.surface_minimum[:, 1] for edition in day.editions)
+    best = np.fmin(old, new)
+    mean = np.fmax(*(edition.surface_mean[:, 1] for edition in day.editions))
+    return np.stack([np.fmin(low, best) + 0.0 * best, best, np.fmax(mean, best)], axis=1), low
 
 
 def _design_day_number(inputs: Inputs, month: np.ndarray) -> np.ndarray:
@@ -132,6 +168,15 @@ def _surface(inputs, kinds, insulation, alpha, high, low, sun):
     )  # fmt: skip
 
 
+def _read(inputs, estimate, end: int, widen) -> np.ndarray:
+    """A gauge reading (n, 3) with the estimate as one end of its range, the estimate (n, 3) where none is."""
+    reading = inputs["reading"][:, None] + np.array([-READING_SPREAD, 0.0, READING_SPREAD])
+    read = np.isfinite(reading[:, 1])
+    surface = np.where(read[:, None], reading, estimate)
+    surface[:, end] = np.where(read, widen(surface[:, end], estimate[:, end]), surface[:, end])
+    return surface
+
+
 def _vapour_space(hottest) -> np.ndarray:
     """Hottest vapour space (n,): daily mean plus half the daily range, the higher edition.
 
@@ -157,23 +202,25 @@ def weather(inputs: Inputs) -> Weather:
     bulk = hottest_bulk(
         inputs.months["mean"][:, None, :], alpha, alpha, inputs.months["insolation"][:, None, :]
     )
-    reading = inputs["reading"][:, None] + np.array([-READING_SPREAD, 0.0, READING_SPREAD])
-    read = np.isfinite(reading[:, 1])
-    surface = np.where(read[:, None], reading, estimate)
-    surface[:, 2] = np.where(read, np.fmax(surface[:, 2], estimate[:, 2]), surface[:, 2])
+    coldest = _hottest(-inputs.months["mean_low"])
+    month_cold = np.array([a or c for a, c in zip(asked, coldest)]) * (coldest > 0)
+    cold, air_coldest = _coldest_surface(inputs, kinds, insulation, alpha, month_cold, coldest)
     given = inputs["vapour_space_temperature"]
     return Weather(
         barometer=_barometer(inputs),
-        T_surface=surface,
+        T_surface=_read(inputs, estimate, 2, np.fmax),
         T_estimate=estimate,
         T_bulk=np.stack([bulk.low[:, 0], bulk.best[:, 1], bulk.high[:, 2]], axis=1),
+        T_cold=_read(inputs, cold, 0, np.fmin),
         T_legal=_pick(inputs.months["mean"], month_legal),
         T_space=np.where(np.isnan(given), _vapour_space(hot), given),
         month=month,
+        month_cold=month_cold,
         month_legal=month_legal,
         editions=np.stack([day.surface_maximum[:, 1] for day in hot.editions], axis=1),
         absorptance=alpha,
         air_high=high[:, 1],
         air_low=low[:, 1],
         insolation=sun,
+        air_coldest=air_coldest,
     )

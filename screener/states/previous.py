@@ -1,0 +1,64 @@
+"""What a tank held before: vapour class beside that of the receipt, and the vapour it may have left."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import lru_cache
+
+import numpy as np
+
+from screener.blends import Blend, volatility_sheet
+from screener.fire import flash_point, static_class, vapour_space
+from screener.states.lanes import Lanes
+from screener.states.pressures import psat_errors, relative_spread
+
+
+@dataclass(frozen=True)
+class Previous:
+    """One case: title of the previous contents, its vapour class and that of the receipt, with flash points [K]
+    and Reid vapour pressures [Pa] of both; fuel (3,) share of the vapour left, low, best and high, and its
+    LFL [-]; T (3,) hottest surface [K]."""
+
+    title: str
+    static: str
+    static_receipt: str
+    T_flash: float
+    T_flash_receipt: float
+    P_reid: float
+    P_reid_receipt: float
+    fuel: np.ndarray
+    LFL: float
+    T: np.ndarray
+
+
+@lru_cache(maxsize=32)
+def _stock(name: str) -> Blend:
+    return Blend.of({f"stock:{name}": 1.0})
+
+
+def _classed(blend) -> tuple[float, float, str]:
+    """Flash point [K], DVPE [Pa] taken as the Reid vapour pressure, and vapour class."""
+    T, P = float(flash_point(blend.fluid, blend.z).T[0]), float(volatility_sheet(blend).DVPE)
+    return T, P, str(static_class(T, P)[0])
+
+
+def previous_contents(lanes: Lanes) -> tuple[Previous | None, ...]:
+    """One entry a case, None where no previous contents or no receipt are described."""
+    return tuple(_previous(lanes, i) for i in range(len(lanes.inputs.cases)))
+
+
+def _previous(lanes: Lanes, i: int) -> Previous | None:
+    case = lanes.inputs.cases[i]
+    if case.tank.previous_contents is None or case.line.receipt is None:
+        return None
+    old = _stock(case.tank.previous_contents)
+    (T_old, P_old, class_old), (T_new, P_new, class_new) = _classed(old), _classed(case.blend)
+    T = lanes.weather.T_surface[i]
+    space = vapour_space(old.fluid, T, old.z, P=float(lanes.weather.barometer[i]))
+    with np.errstate(all="ignore"):
+        s = relative_spread(space.y / space.y.sum(axis=1, keepdims=True), psat_errors(old.names))
+    fuel = np.array([
+        space.LFL[0] * space.lower_ratio_low[0] * (1.0 - s[0]), space.fuel[1],
+        space.LFL[2] * space.lower_ratio_high[2] * (1.0 + s[2]),
+    ])  # fmt: skip
+    return Previous(old.title, class_old, class_new, T_old, T_new, P_old, P_new, fuel, float(space.LFL[1]), T)
