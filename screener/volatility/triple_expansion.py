@@ -141,7 +141,9 @@ def vapour_pressure_d6378(
     Returns
     -------
     TripleExpansion
-        P as the method would report it, P_vapour as it stood in the cell.
+        P as the method would report it, P_vapour as it stood in the cell. The two part for a
+        wide-boiling fuel: by 1 to 3 kPa with the air of an ordinary sample, and without any air,
+        where the readings lie almost on a line, altogether.
 
     Source
     ------

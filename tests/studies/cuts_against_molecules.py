@@ -74,27 +74,30 @@ def curves():
     }
 
 
-def cases():
+def cases(wanted=lambda label: True):
     """{label: Cuts}: every curve, with light ends known or not, aromatics and olefins known or not."""
     density = gasoline().density_15
     found = {}
     for where, (f, tbp) in curves().items():
         for light in ((), ("n-butane",), LIGHT):
             for known in (False, True):
+                ends = {0: "no light ends", 1: "butane", 4: "C4 and C5"}[len(light)]
+                label = f"{where}; {ends}; {'families known' if known else 'density only'}"
+                if not wanted(label):
+                    continue
                 cuts = pseudo_components(
                     f, tbp, density, known={name: SHARES[name] for name in light},
                     aromatics=AROMATICS if known else None, olefins=OLEFINS if known else 0.0,
                 )  # fmt: skip
-                ends = {0: "no light ends", 1: "butane", 4: "C4 and C5"}[len(light)]
-                found[f"{where}; {ends}; {'families known' if known else 'density only'}"] = cuts
+                found[label] = cuts
     return found
 
 
-def pressures(shares):
+def pressures(shares, ethanol=ETHANOL):
     """Bubble pressures at T, and the DVPE at each ethanol share, both in kPa, of volume shares by name."""
     splash = Splash(shares)
     bubble = true_vapour_pressure(splash.fluid, T, splash.moles(splash.base, 0.0)).require().P
-    return bubble / 1e3, dvpe(splash.fluid, splash.moles(splash.base, ETHANOL)).require().P / 1e3
+    return bubble / 1e3, dvpe(splash.fluid, splash.moles(splash.base, ethanol)).require().P / 1e3
 
 
 def shares_of(cuts):
