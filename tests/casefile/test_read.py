@@ -41,6 +41,9 @@ def test_the_tank_in_si(whole):
     assert (tank.blanket.set_low, tank.blanket.set_high) == pytest.approx((249.08891, 747.26673), rel=CLOSE)
     assert (tank.insulated, tank.vapour_return, tank.roof_leg_height) == (True, True, 1.8)
     assert tank.vapour_space_temperature == pytest.approx(317.15, rel=CLOSE)
+    assert tank.vapour_space_oxygen == pytest.approx(0.045, rel=CLOSE)
+    assert (tank.previous_contents, tank.sour_service) == ("heavy naphtha", True)
+    assert whole.hydrogen_sulfide == pytest.approx(20e-6, rel=CLOSE)
 
 
 def test_the_vents_in_si(whole):
