@@ -71,27 +71,18 @@ def flash_point(fluid, x, *, P=ATMOSPHERE, method: str = "liaw", flammability=No
     condition = flash_condition(fluid, limits, method)
     status = np.where(good, int(Status.CONVERGED), int(Status.BAD_INPUT))
     status[good & (fluid.lacks(z) | condition.unknown(z))] = Status.NO_PARAMETERS
-    n, every = P.size, len(SHIFTS)
-    z_all, P_all, shift = np.tile(z, (every, 1)), np.tile(P, every), np.repeat(SHIFTS, n)
-    root = temperature_of(
-        lambda i, T: condition.measure(T, P_all[i], z_all[i], shift[i]), np.tile(status, every)
+    best = temperature_of(lambda i, T: condition.measure(T, P[i], z[i]), status)
+    low, high = (
+        temperature_of(lambda i, T, shift=shift: condition.measure(T, P[i], z[i], shift), status, best.T)
+        for shift in SHIFTS[1:]
     )
-    T, T_low, T_high = root.T.reshape(every, n)
-    estimated = np.full(n, np.nan)
-    ok = np.flatnonzero(root.status[:n] == Status.CONVERGED)
+    estimated = np.full(P.size, np.nan)
+    ok = np.flatnonzero(best.status == Status.CONVERGED)
     if ok.size:
-        p = z[ok] * volatilities(fluid.at(T[ok]), P[ok], z[ok])
+        p = z[ok] * volatilities(fluid.at(best.T[ok]), P[ok], z[ok])
         estimated[ok] = estimated_share(p, limits, limits.LFL_estimated & ~condition.own)
     return FlashPoint(
-        T,
-        T_low,
-        T_high,
-        estimated,
-        P,
-        METHODS[method],
-        root.status[:n],
-        root.iterations[:n],
-        root.residual[:n],
+        best.T, low.T, high.T, estimated, P, METHODS[method], best.status, best.iterations, best.residual
     )
 
 
@@ -108,11 +99,11 @@ class FlashCondition:
         """Mask (n,) of the lanes z (n, c) that hold a species for which there is nothing."""
         return self.limits.unknown(np.where(self.own, 0.0, z), "LFL")
 
-    def measure(self, T, P, z, shift=None):
+    def measure(self, T, P, z, shift: float = 0.0):
         """ln of the vapour over what carries a flame (n,) at T (n,) [K], P (n,) [Pa], liquid z (n, c);
-        shift (n,) moves estimated limits as `Flammability.limit_at` has it."""
+        shift moves estimated limits as `Flammability.limit_at` has it."""
         p = z * volatilities(self.fluid.at(T), P, z)
-        lower = limit_by_shift(self.limits, "LFL", T, np.zeros(T.size) if shift is None else shift)
+        lower = self.limits.limit_at("LFL", T, shift)
         needed = np.where(self.own, self.limits.P_flash / ATMOSPHERE, lower) * P[:, None]
         with np.errstate(all="ignore"):
             return np.log(np.where(z > 0.0, p / needed, 0.0).sum(axis=1))
@@ -126,16 +117,6 @@ def flash_condition(fluid, limits, method: str) -> FlashCondition:
         )
     own = np.isfinite(limits.P_flash) if method == "liaw" else np.zeros(fluid.c, dtype=bool)
     return FlashCondition(fluid, limits, own)
-
-
-def limit_by_shift(limits, limit: str, T, shift):
-    """Limits (lanes, c) [-] with the shift of each lane."""
-    value = np.empty((T.size, len(limits.names)))
-    for one in SHIFTS:
-        here = shift == one
-        if here.any():
-            value[here] = limits.limit_at(limit, T[here], one)
-    return value
 
 
 def estimated_share(p, limits, estimated) -> np.ndarray:

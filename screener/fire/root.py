@@ -25,11 +25,12 @@ class Root(NamedTuple):
     residual: np.ndarray
 
 
-def temperature_of(measure, status) -> Root:
+def temperature_of(measure, status, start=None) -> Root:
     """Temperature at which a rising measure of the vapour is one.
 
     measure(lanes, T) gives ln of the measure for some lanes (indices) at T [K]; status
-    (n,) is CONVERGED where a lane is to be solved, else the reason why not. A lane whose
+    (n,) is CONVERGED where a lane is to be solved, else the reason why not; start (n,) [K] a
+    first guess, T_FIRST where it is none. A lane whose
     measure is -inf everywhere has NO_SOLUTION; one that leaves T_LOW..T_HIGH, or whose
     measure is no number, OUT_OF_RANGE.
     """
@@ -37,7 +38,8 @@ def temperature_of(measure, status) -> Root:
     out = Root(np.full(n, np.nan), np.array(status), np.zeros(n, dtype=int), np.full(n, np.nan))
     lanes = np.flatnonzero(status == Status.CONVERGED)
     out.status[lanes] = Status.OUT_OF_STEPS
-    u = np.full(lanes.size, 1.0 / T_FIRST)
+    first = np.full(n, T_FIRST) if start is None else np.where(np.isfinite(start), start, T_FIRST)
+    u = 1.0 / first[lanes]
     slope, u_old, g_old = np.full(lanes.size, SLOPE), np.full(lanes.size, np.nan), np.full(lanes.size, np.nan)
     low, high = 1.0 / T_HIGH, 1.0 / T_LOW
     for step in range(1, STEPS + 1):

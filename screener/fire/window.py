@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
+
 import numpy as np
 
-from screener.fire.flash_point import SHIFTS, estimated_share, limit_by_shift
+from screener.fire.flash_point import SHIFTS, estimated_share
 from screener.fire.headspace import headspace
 from screener.fire.limits import Flammability, mixture_limit
 from screener.fire.results import SpaceState, VapourSpace, Window
@@ -58,40 +60,66 @@ def flammable_window(fluid, x, *, P=ATMOSPHERE, ratio=0.0, saturation=1.0, flamm
     """
     z, P, s, ratio, good = _lanes(fluid, x, P, ratio, saturation)
     limits = flammability or Flammability.of(fluid)
-    n, every = P.size, len(SHIFTS)
-    z_all, P_all, s_all, r_all = (
-        np.tile(z, (every, 1)),
-        np.tile(P, every),
-        np.tile(s, every),
-        np.tile(ratio, every),
-    )
-    shift = np.repeat(SHIFTS, n)
-
-    def vapour(i, T):
-        return s_all[i][:, None] * over_liquid(fluid, T, P_all[i], z_all[i], r_all[i]).p
-
-    def end(limit):
-        def measure(i, T):
-            need = limit_by_shift(limits, limit, T, shift[i]) * P_all[i][:, None]
-            with np.errstate(all="ignore"):
-                return np.log(np.where(z_all[i] > 0.0, vapour(i, T) / need, 0.0).sum(axis=1))
-
+    space = _Space(fluid, limits, z, P, s, ratio)
+    roots, shares = {}, {}
+    for limit in ("LFL", "UFL"):
         status = np.where(good, int(Status.CONVERGED), int(Status.BAD_INPUT))
         status[good & (fluid.lacks(z) | limits.unknown(z, limit))] = Status.NO_PARAMETERS
-        root = temperature_of(measure, np.tile(status, every))
-        share = np.full(n, np.nan)
-        ok = np.flatnonzero(root.status[:n] == Status.CONVERGED)
-        if ok.size:
-            share[ok] = estimated_share(vapour(ok, root.T[ok]), limits, getattr(limits, f"{limit}_estimated"))
-        return root, share
-
-    (lower, share_lower), (upper, share_upper) = end("LFL"), end("UFL")
-    worse = np.where(lower.status[:n] != Status.CONVERGED, lower.status[:n], upper.status[:n])
+        roots[limit], shares[limit] = space.temperatures(limit, status)
+    lower, upper = roots["LFL"], roots["UFL"]
+    best = lower[0], upper[0]
     return Window(
-        *lower.T.reshape(every, n), *upper.T.reshape(every, n), share_lower, share_upper,
-        lower.status[:n], upper.status[:n], worse, lower.iterations[:n] + upper.iterations[:n],
-        np.maximum(np.abs(lower.residual[:n]), np.abs(upper.residual[:n])),
+        *(root.T for root in lower), *(root.T for root in upper), shares["LFL"], shares["UFL"],
+        best[0].status, best[1].status,
+        np.where(best[0].status != Status.CONVERGED, best[0].status, best[1].status),
+        best[0].iterations + best[1].iterations,
+        np.maximum(np.abs(best[0].residual), np.abs(best[1].residual)),
     )  # fmt: skip
+
+
+@dataclass(frozen=True)
+class _Space:
+    """n lanes: liquid z (n, c), pressure P (n,) [Pa], ratio (n,) [-] and saturation s (n,) [-] of the space."""
+
+    fluid: object
+    limits: Flammability
+    z: np.ndarray
+    P: np.ndarray
+    s: np.ndarray
+    ratio: np.ndarray
+
+    def vapour(self, i, T, ratio):
+        """Partial pressures (lanes, c) [Pa] of some lanes."""
+        return self.s[i][:, None] * over_liquid(self.fluid, T, self.P[i], self.z[i], ratio[i]).p
+
+    def measure(self, limit, ratio, shift):
+        """ln of the vapour over the limit, as `temperature_of` asks for it."""
+
+        def of(i, T):
+            need = self.limits.limit_at(limit, T, shift) * self.P[i][:, None]
+            with np.errstate(all="ignore"):
+                return np.log(np.where(self.z[i] > 0.0, self.vapour(i, T, ratio) / need, 0.0).sum(axis=1))
+
+        return of
+
+    def temperatures(self, limit, status):
+        """Roots at the best, low and high value of estimated limits, and the share (n,) resting on them.
+
+        The best one starts from a space that does not deplete the liquid, the others from it.
+        """
+        start, still = None, np.zeros_like(self.ratio)
+        if (self.ratio > 0.0).any():
+            start = temperature_of(self.measure(limit, still, 0.0), status).T
+        best = temperature_of(self.measure(limit, self.ratio, 0.0), status, start)
+        ends = [
+            temperature_of(self.measure(limit, self.ratio, shift), status, best.T) for shift in SHIFTS[1:]
+        ]
+        share = np.full(status.size, np.nan)
+        ok = np.flatnonzero(best.status == Status.CONVERGED)
+        if ok.size:
+            p = self.vapour(ok, best.T[ok], self.ratio)
+            share[ok] = estimated_share(p, self.limits, getattr(self.limits, f"{limit}_estimated"))
+        return (best, *ends), share
 
 
 def vapour_space(fluid, T, x, *, P=ATMOSPHERE, ratio=0.0, saturation=1.0, flammability=None) -> VapourSpace:
