@@ -79,7 +79,7 @@ def flammable_window(fluid, x, *, P=ATMOSPHERE, ratio=0.0, saturation=1.0, flamm
 
 @dataclass(frozen=True)
 class _Space:
-    """n lanes: liquid z (n, c), pressure P (n,) [Pa], ratio (n,) [-] and saturation s (n,) [-] of the space."""
+    """n lanes: liquid z (n, c), pressure P (n,) [Pa], ratio (n,) and saturation s (n,) [-] of the space."""
 
     fluid: object
     limits: Flammability
