@@ -8,6 +8,7 @@ from enum import IntEnum
 import numpy as np
 
 from screener.equilibrium.results import LaneAnswer
+from screener.ground.constants import R
 
 
 class SpaceState(IntEnum):
@@ -138,8 +139,6 @@ class Headspace(LaneAnswer):
     @property
     def mg_m3(self) -> np.ndarray:
         """Mass of each species per volume of the space at its own T and P (n, c). [mg/m3]"""
-        from screener.ground.constants import R
-
         return self.y * (self.P / (R * self.T))[:, None] * self.MW * 1e6
 
 
