@@ -8,7 +8,7 @@ import re
 
 import pytest
 
-FLOORS = ("screener.equilibrium", "screener.volatility", "screener.blends")
+FLOORS = ("screener.equilibrium", "screener.volatility", "screener.fire", "screener.blends")
 
 
 def _public():
@@ -49,5 +49,5 @@ def test_numbers_have_units(function):
     entries = re.split(r"^(?=[\w*, ]+? :)", text, flags=re.MULTILINE)
     for entry in entries:
         head = entry.split("\n", 1)[0]
-        if re.search(r":.*\b(float|array)\b(?! of str)", head):
+        if re.search(r":.*\b(float|array)\b(?! of (?:str|bool))", head):
             assert re.search(r"\[[^\]]+\]", entry.split("\n", 1)[-1]), f"no unit: {head}"

@@ -8,7 +8,7 @@ import pytest
 
 
 @pytest.mark.parametrize(
-    "name", ["screener", "screener.equilibrium", "screener.species", "screener.volatility", "screener.blends",
+    "name", ["screener", "screener.equilibrium", "screener.species", "screener.volatility", "screener.fire", "screener.blends",
              "screener.casefile", "screener.screening", "screener.memo"]
 )  # fmt: skip
 def test_every_declared_name_exists(name):
