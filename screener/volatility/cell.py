@@ -117,7 +117,7 @@ class _Cell:
         state = self.fluid.at(self.T[active])
         z, x = self.z[active], self.z[active].copy()
         ln_k, P, v_V = _first_k(self.fluid, state, self.T[active], z)
-        n_L = np.ones(active.size)
+        n_L, v_before = np.ones(active.size), np.full(active.size, np.nan)
         for step in range(1, STEPS + 1):
             a = np.exp(ln_k) / (P * v_V)[:, None]
             v_L = self.liquid(active, x)
@@ -132,7 +132,9 @@ class _Cell:
             v_V = state.volume(P, y, "V")
             change = np.max(np.where(z > 0.0, np.abs(new - ln_k), 0.0), axis=-1)
             ln_k = new
-            done = change < TOLERANCE
+            # The liquid's volume lags one round behind its composition: in an ideal fluid it alone moves.
+            done = (change < TOLERANCE) & (np.abs(v_L / v_before - 1.0) < TOLERANCE)
+            v_before = v_L
             lost = ~np.isfinite(change) | (~exists & (step > 4))
             self._store(result, active, done & ~lost, step, P, x, y, n_L, v_L, change)
             result.status[active[lost]] = Status.NO_SOLUTION
@@ -140,7 +142,7 @@ class _Cell:
             if not keep.any():
                 return
             active, z, x, ln_k = active[keep], z[keep], x[keep], ln_k[keep]
-            P, v_V, n_L, state = P[keep], v_V[keep], n_L[keep], state.take(keep)
+            P, v_V, n_L, v_before, state = P[keep], v_V[keep], n_L[keep], v_before[keep], state.take(keep)
         result.iterations[active] = STEPS
 
     def _store(self, result, active, done, step, P, x, y, n_L, v_L, change):
