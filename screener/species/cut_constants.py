@@ -200,3 +200,42 @@ def molar_mass_riazi_daubert_1987(Tb, SG):
     Tb, SG = np.asarray(Tb, dtype=float), np.asarray(SG, dtype=float)
     M = 42.965 * np.exp(2.097e-4 * Tb - 7.78712 * SG + 2.08476e-3 * Tb * SG) * Tb**1.26007 * SG**4.98308
     return M / 1000.0
+
+
+# ---- From molar mass and gravity: for a residue or a plus fraction that nobody distilled.
+# Riazi and Daubert 1987 in the form printed by T. Ahmed, Equations of State and PVT Analysis; from memory, unverified.
+
+
+def _of_mass(MW, SG, a, b, c, d, e, f):
+    M, g = 1000.0 * np.asarray(MW, dtype=float), np.asarray(SG, dtype=float)
+    return a * M**b * g**c * np.exp(d * M + e * g + f * M * g)
+
+
+def boiling_point_of_mass_riazi_daubert_1987(MW, SG):
+    """Boiling point [K] from molar mass [kg/mol] and gravity [-]; 70 to 300 g/mol in the paper."""
+    return _of_mass(MW, SG, 6.77857, 0.401673, -1.58262, 3.77409e-3, 2.984036, -4.25288e-3) / RANKINE
+
+
+def critical_temperature_of_mass_riazi_daubert_1987(MW, SG):
+    """Critical temperature [K] from molar mass [kg/mol] and gravity [-]; 70 to 300 g/mol in the paper."""
+    return _of_mass(MW, SG, 544.4, 0.2998, 1.0555, -1.3478e-4, -0.61641, 0.0) / RANKINE
+
+
+def critical_pressure_of_mass_riazi_daubert_1987(MW, SG):
+    """Critical pressure [Pa] from molar mass [kg/mol] and gravity [-]; 70 to 300 g/mol in the paper."""
+    return _of_mass(MW, SG, 4.5203e4, -0.8063, 1.6015, -1.8078e-3, -0.3084, 0.0) * PSI
+
+
+def boiling_point_of_mass_twu_1984(MW, SG):
+    """Boiling point [K] at which Twu 1984 gives the molar mass [kg/mol] for the gravity [-].
+
+    By bisection between 220 and 1080 K; NaN where it is not there.
+    """
+    MW, SG = np.broadcast_arrays(np.asarray(MW, dtype=float), np.asarray(SG, dtype=float))
+    low, high = np.full(MW.shape, 220.0), np.full(MW.shape, 1080.0)
+    inside = (molar_mass_twu_1984(low, SG) <= MW) & (MW <= molar_mass_twu_1984(high, SG))
+    for _ in range(60):
+        middle = 0.5 * (low + high)
+        light = molar_mass_twu_1984(middle, SG) < MW
+        low, high = np.where(light, middle, low), np.where(light, high, middle)
+    return np.where(inside, 0.5 * (low + high), np.nan)

@@ -46,8 +46,8 @@ _NAME = re.compile(
 
 
 def is_cut(text: str) -> bool:
-    """Whether a text reads as the name of a cut."""
-    return _NAME.fullmatch(text) is not None
+    """Whether a text sets out to name a cut: the word and a number. `read` says what is wrong with the rest."""
+    return re.match(r"\s*cut\s+-?\d", text, re.IGNORECASE) is not None
 
 
 def cut(Tb, rho_15, *, aromatics=None, naphthenes=None, olefins=0.0, MW=None) -> Species:

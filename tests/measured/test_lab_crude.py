@@ -13,7 +13,11 @@ import pytest
 from screener.equilibrium import Fluid
 from screener.ground.constants import T_100F
 from screener.species import find
-from screener.species.cut_constants import molar_mass_twu_1984, specific_gravity
+from screener.species.cut_constants import (
+    boiling_point_of_mass_twu_1984,
+    molar_mass_twu_1984,
+    specific_gravity,
+)
 from screener.volatility import (
     pseudo_components,
     reid_vapour_pressure,
@@ -40,16 +44,6 @@ def kelvin(degF):
     return (degF + 459.67) / 1.8
 
 
-def residue_boiling_point():
-    """Where a cut of the residue's density has its molar mass [K], by bisection of Twu 1984."""
-    low, high = 600.0, 1050.0
-    for _ in range(50):
-        middle = 0.5 * (low + high)
-        light = molar_mass_twu_1984(middle, specific_gravity(RESIDUE[1])) * 1e3 < RESIDUE[2]
-        low, high = (middle, high) if light else (low, middle)
-    return low
-
-
 @pytest.fixture(scope="module")
 def crude():
     """Light ends as analysed, everything else by the cutting rule on the assay's true boiling points."""
@@ -57,8 +51,9 @@ def crude():
     volume = np.array([gas, *(mass / rho for _, mass, rho in CUTS), RESIDUE[0] / RESIDUE[1]])
     fraction = np.concatenate([[0.0], np.cumsum(volume) / volume.sum()])
     top = kelvin(CUTS[-1][0])
+    residue = float(boiling_point_of_mass_twu_1984(RESIDUE[2] / 1e3, specific_gravity(RESIDUE[1])))
     # the gases reach up to the boiling point of butane; the residue's mean boils in its middle
-    T = np.array([255.0, 285.0, *(kelvin(end) for end, _, _ in CUTS), 2.0 * residue_boiling_point() - top])
+    T = np.array([255.0, 285.0, *(kelvin(end) for end, _, _ in CUTS), 2.0 * residue - top])
     known = {name: mass / find(name).rho_15 / volume.sum() for name, mass in LIGHT.items()}
     return pseudo_components(fraction, T, DENSITY, known=known)
 

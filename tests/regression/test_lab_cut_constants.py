@@ -124,3 +124,23 @@ def test_gravity_and_density_are_inverse():
     rho = np.linspace(520.0, 1100.0, 30)
     assert c.density_15(c.specific_gravity(rho)) == pytest.approx(rho, rel=1e-12)
     assert c.specific_gravity(999.1) == pytest.approx(0.9998, abs=4e-4)  # water is 1 by definition, not a petroleum
+
+
+def test_constants_of_mass():
+    """M 150 g/mol, gravity 0.78: remembered from a textbook example, 1139.4 degR, 320.3 psia, 825.26 degR.
+
+    The remembered coefficients, as printed, give 1139.8 and 825.3: their last digits.
+    """
+    MW, SG = 0.150, 0.78
+    assert 1.8 * c.critical_temperature_of_mass_riazi_daubert_1987(MW, SG) == pytest.approx(1139.4, abs=0.5)
+    assert c.critical_pressure_of_mass_riazi_daubert_1987(MW, SG) / c.PSI == pytest.approx(320.3, abs=0.06)
+    assert 1.8 * c.boiling_point_of_mass_riazi_daubert_1987(MW, SG) == pytest.approx(825.26, abs=0.06)
+
+
+def test_boiling_point_of_a_molar_mass():
+    """The inverse of Twu's molar mass; beside it the other paper's form, within 1 % at 100 g/mol, 4 % low at 240."""
+    Tb, SG = np.array([370.0, 430.0, 500.0, 600.0, 800.0]), np.array([0.74, 0.79, 0.83, 0.88, 0.95])
+    MW = c.molar_mass_twu_1984(Tb, SG)
+    assert c.boiling_point_of_mass_twu_1984(MW, SG) == pytest.approx(Tb, abs=1e-6)
+    assert c.boiling_point_of_mass_riazi_daubert_1987(MW, SG)[:4] == pytest.approx(Tb[:4], rel=0.045)
+    assert np.isnan(c.boiling_point_of_mass_twu_1984(5.0, 0.9)) and np.isnan(c.boiling_point_of_mass_twu_1984(0.02, 0.7))

@@ -73,6 +73,10 @@ def test_impossible_cuts_are_refused(arguments, words):
 def test_other_names_are_still_unknown():
     with pytest.raises(UnknownName, match="'cutlery' is not a known species"):
         find("cutlery")
+    with pytest.raises(InputError, match="'cut 99 degrees' does not describe a cut"):
+        find("cut 99 degrees")
+    with pytest.raises(InputError, match="does not describe a cut"):
+        find("cut 99.3 degC 745 kg/m3 A24")  # all families or none
 
 
 SPAN = [(Tb, share) for Tb in (265.0, 300.0, 340.0, 400.0, 470.0, 560.0, 700.0, 900.0) for share in (0.0, 0.5)]
