@@ -22,6 +22,7 @@ from screener.ground.status import Status
 
 LARGEST = 300.0  # bound of |ln K|: keeps squares of exp in double precision
 TRIVIAL = 1e-4  # [-] largest |ln K| and relative difference of volume of two phases that are one
+ROUNDING = 3e-14  # [-] of ln of a sum whose terms carry u of some tens; below it there is no root to sharpen
 REACH = 1.0  # longest accelerated step in ln K
 
 
@@ -49,16 +50,15 @@ class AtFraction:
         s, low, high = self.s, np.full(self.s.shape, self.low), np.full(self.s.shape, self.high)
         for _ in range(80):
             x, y, f, slope = self._balance(u, s)
+            done = ~(np.abs(f) > ROUNDING)
+            if done.all():
+                break
             low, high = np.where(f > 0.0, s, low), np.where(f < 0.0, s, high)
             with np.errstate(all="ignore"):
                 new = s - f / slope
             new = np.where((new > low) & (new < high), new, 0.5 * (low + high))
-            small = np.abs(new - s) <= 4e-16 * np.abs(s)
-            s = np.where((f == 0.0) | ~np.isfinite(new), s, new)
-            if (small | (f == 0.0) | ~np.isfinite(f)).all():
-                break
+            s = np.where(done, s, new)
         self.s = s
-        x, y, _, _ = self._balance(u, s)
         other = np.exp(s) if self.name == "T" else 1.0 / s
         return (self.value, other, x, y) if self.name == "T" else (other, self.value, x, y)
 

@@ -13,36 +13,21 @@ stands; every other lane is sought by flashes between the ends of the range.
 from __future__ import annotations
 
 from dataclasses import fields, replace
-from typing import NamedTuple
 
 import numpy as np
 
+from screener.equilibrium.ends import bubble_points, dew_points
 from screener.equilibrium.flash import flash_tp
 from screener.equilibrium.flash_search import PROMISED, FlashSearch, miss_of, rows_of
-from screener.equilibrium.fraction import start_of
 from screener.equilibrium.pairs import PairSearch
 from screener.equilibrium.results import Flash, bad_status
-from screener.equilibrium.saturation import bubble_pressure, bubble_temperature, dew_pressure, dew_temperature
 from screener.equilibrium.second_liquid import NOT_TESTED, full_check, known_check
 from screener.equilibrium.solved import SolvedFlash, totals_of
 from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
 
 MOST_NUMBERS = 40_000  # lanes times components handled at once: keeps the working arrays in cache
-NARROW = 1e-4  # [-] relative boiling range below which T and P do not tell the vapour fraction; own choice
 ALIKE = 1e-4  # [-] vapour fractions this close are one state, told more sharply by the pair; own choice
-
-
-class Ends(NamedTuple):
-    """Bubble or dew points of the lanes: the point, its T or ln P (n,), the excess over the target (n,)."""
-
-    point: object
-    at: np.ndarray
-    excess: np.ndarray
-
-    def take(self, lanes) -> Ends:
-        """Some of the lanes, without the point."""
-        return Ends(None, self.at[lanes], self.excess[lanes])
 
 
 def solve_many(fluid, target, given, z, check: str) -> SolvedFlash:
@@ -78,9 +63,7 @@ def solve_many(fluid, target, given, z, check: str) -> SolvedFlash:
     As `solve_lanes`.
     """
     known_check(check)
-    usable = np.where(
-        np.isfinite(target.value), 1.0, np.nan
-    )  # negative values are fine, but no number is not
+    usable = np.where(np.isfinite(target.value), 1.0, np.nan)  # a negative value is fine, no number is not
     z, at, usable, good = as_lanes(fluid.c, z, **{target.given: given}, target=usable)
     n = at.size
     value = np.array(np.broadcast_to(target.value, (n,)))
@@ -136,32 +119,26 @@ def solve_lanes(fluid, target, given, z, check: str) -> SolvedFlash:
     Own arrangement, after the state-function flashes of Michelsen, Fluid Phase
     Equilib. 33 (1987) 13.
     """
-    bubble, dew = _ends(fluid, target, given, z)
+    bubble = bubble_points(fluid, target, given, z)
+    dew = dew_points(fluid, target, given, z, np.flatnonzero(~(bubble.excess >= 0.0) | target.of_pairs))
     with np.errstate(invalid="ignore"):
         inside = (bubble.excess < 0.0) & (dew.excess > 0.0)
         two = np.flatnonzero(inside | target.of_pairs & ((bubble.excess == 0.0) | (dew.excess == 0.0)))
-        narrow = np.abs(dew.at - bubble.at)[two] <= NARROW * np.abs(bubble.at[two])
     unknown = _single(fluid, target, given, z, bubble, dew)
-    starts = [start_of(fluid, target.given, end.point) for end in (bubble, dew)]
-    pairs = PairSearch(fluid, target.take(two), given[two], z[two], [(u[two], s[two]) for u, s in starts])
-    pairs.run(bubble.excess[two], dew.excess[two])
+    pairs = PairSearch(fluid, target.take(two), given[two], z[two])
+    pairs.run(bubble.take(two), dew.take(two))
     unknown[two] = pairs.best["P" if target.given == "T" else "T"]
     T, P = (given, unknown) if target.given == "T" else (unknown, given)
     rows = rows_of(flash_tp(fluid, T, P, z, check=check))
-    rows["iterations"] += bubble.point.iterations + dew.point.iterations
+    rows["iterations"] += bubble.iterations + dew.iterations
     rows["iterations"][two] += pairs.iterations
     miss = miss_of(fluid, target, rows)
-    with np.errstate(invalid="ignore"):
-        alike = np.abs(rows["beta"][two] - pairs.best["beta"]) < ALIKE
-        sharper = target.of_pairs[two] | ~(miss[two] <= PROMISED)
-        stands = (pairs.miss <= PROMISED) & (alike | narrow) & sharper
+    stands = _stands(target.of_pairs[two], rows["beta"][two], miss[two], pairs)
     _put_pairs(fluid, rows, two[stands], pairs, np.flatnonzero(stands), check)
     miss[two[stands]] = pairs.miss[stands]
     bare = target.at_edge
     bare[two[stands]] = False
-    miss[bare] = (
-        np.inf
-    )  # without its saturation point an edge has no state, whatever one phase the flash finds
+    miss[bare] = np.inf  # no saturation point, no state at the edge, whatever one phase the flash finds
     again = np.flatnonzero(~(miss <= PROMISED) & ~bare)
     if again.size:
         search = FlashSearch(fluid, target.take(again), given[again], z[again], check)
@@ -174,29 +151,22 @@ def solve_lanes(fluid, target, given, z, check: str) -> SolvedFlash:
     return answer
 
 
+def _stands(of_pairs, beta, miss, pairs):
+    """Mask of the pairs that are a better answer than the flash at their T and P.
+
+    They agree with it, or T and P are too close to tell, and they meet the target more sharply.
+    """
+    with np.errstate(invalid="ignore"):
+        alike = np.abs(beta - pairs.best["beta"]) < ALIKE
+        sharper = of_pairs | ~(miss <= PROMISED)
+        return (pairs.miss <= PROMISED) & (alike | pairs.narrow) & sharper
+
+
 def _say_why(status, bare, target, bubble, dew):
     """The status of a state at the edge that does not exist: that of its saturation point."""
     dry = target.value[bare] == 1.0 if target.what == "beta" else np.zeros(bare.size, dtype=bool)
-    found = np.where(dry, dew.point.status[bare], bubble.point.status[bare])
+    found = np.where(dry, dew.status[bare], bubble.status[bare])
     status[bare] = np.where(found == Status.CONVERGED, int(Status.OUT_OF_RANGE), found)
-
-
-def _ends(fluid, target, given, z):
-    """Bubble and dew points, and the excess there; NaN without one, or outside the range of the target."""
-    points = (bubble_pressure, dew_pressure) if target.given == "T" else (bubble_temperature, dew_temperature)
-    low, high = target.limits
-    ends = []
-    for point, beta in zip(points, (0.0, 1.0)):
-        found = point(fluid, given, z)
-        with np.errstate(invalid="ignore"):
-            at = np.log(found.P) if target.given == "T" else found.T
-            inside = found.ok & (at >= low) & (at <= high)
-        share = np.where(inside, beta, np.nan)
-        excess, _ = target.excess(
-            fluid, found.T, found.P, share, np.full_like(share, np.nan), found.x, found.y, z
-        )
-        ends.append(Ends(found, np.where(inside, at, np.nan), excess))
-    return ends
 
 
 def _single(fluid, target, given, z, bubble, dew):
@@ -208,8 +178,9 @@ def _single(fluid, target, given, z, bubble, dew):
     for mask, end in ((liquid, bubble), (vapour, dew)):
         some = np.flatnonzero(mask & ~target.of_pairs)
         if some.size:
-            edge = end.point.P if target.given == "T" else end.point.T
-            unknown[some] = target.take(some).single(fluid, given[some], z[some], end is bubble, edge[some])
+            unknown[some] = target.take(some).single(
+                fluid, given[some], z[some], end is bubble, end.edge[some]
+            )
     return unknown
 
 

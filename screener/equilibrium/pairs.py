@@ -8,6 +8,7 @@ from screener.equilibrium.bracket import root_between
 from screener.equilibrium.fraction import at_fraction, between, blind_start
 from screener.ground.status import Status
 
+NARROW = 1e-4  # [-] relative boiling range below which T and P do not tell the vapour fraction; own choice
 TINY = 1e-300  # keeps a miss of zero over a size of zero a number
 KEPT = ("T", "P", "beta", "x", "y", "ln_K", "residual", "balance")
 
@@ -16,26 +17,31 @@ class PairSearch:
     """Lanes whose target lies between the bubble and the dew point.
 
     best holds, lane by lane, the fields `KEPT` of the pair that came nearest;
-    miss (n,) [-] how near, infinite where no pair was found.
+    miss (n,) [-] how near, infinite where no pair was found; narrow (n,) the lanes whose boiling
+    range is too narrow for T and P to tell the fraction.
     """
 
-    def __init__(self, fluid, target, given, z, starts):
+    def __init__(self, fluid, target, given, z):
         n, c = z.shape
-        self.fluid, self.target, self.given, self.z, self.starts = fluid, target, given, z, starts
+        self.fluid, self.target, self.given, self.z = fluid, target, given, z
+        self.starts: list[tuple[np.ndarray, np.ndarray]] = []
         self.u, self.s = np.full((n, c), np.nan), np.full(n, np.nan)
         self.best = {name: np.full((n, c) if name in ("x", "y", "ln_K") else n, np.nan) for name in KEPT}
         self.miss = np.full(n, np.inf)
         self.iterations = np.zeros(n, dtype=int)
+        self.narrow = np.zeros(n, dtype=bool)
 
-    def run(self, f_bubble, f_dew) -> PairSearch:
-        """Search, from the excess at the two ends."""
-        zero, small = np.zeros(f_bubble.shape), self.target.small(f_bubble)
-        for f, end in ((f_bubble, zero), (f_dew, zero + 1.0)):
-            there = np.flatnonzero(np.abs(f) <= small)
+    def run(self, bubble, dew):
+        """Search between the two ends."""
+        with np.errstate(invalid="ignore"):
+            self.narrow = np.abs(dew.at - bubble.at) <= NARROW * np.abs(bubble.at)
+        self.starts = [(end.u, end.s) for end in (bubble, dew)]
+        zero, small = np.zeros(self.miss.shape), self.target.small(bubble.excess)
+        for end, beta in ((bubble, zero), (dew, zero + 1.0)):
+            there = np.flatnonzero(np.abs(end.excess) <= small)
             if there.size:
-                self._excess(there, end[there])
-        root_between(self._excess, zero, f_bubble, zero + 1.0, f_dew, small)
-        return self
+                self._excess(there, beta[there])
+        root_between(self._excess, zero, bubble.excess, zero + 1.0, dew.excess, small)
 
     def _excess(self, lanes, beta):
         """Excess over the target at these fractions, NaN where the pair was not found."""
