@@ -24,8 +24,8 @@ def reservations_section(frame: Frame) -> Section:
 
 
 def cautions(frame: Frame) -> tuple[str, ...]:
-    """Each caution of the findings once, worst finding first."""
-    return tuple(dict.fromkeys(f.caution for f in frame.findings if f.caution))
+    """Each caution of the findings that apply once, worst finding first."""
+    return tuple(dict.fromkeys(f.caution for f in frame.findings if f.caution and f.verdict != "skipped"))
 
 
 def _about_inputs(frame: Frame) -> list[str]:
@@ -61,7 +61,8 @@ def _about_findings(frame: Frame) -> list[str]:
 def not_covered_section(frame: Frame) -> Section:
     """10: a fixed list, then what the findings of this case say they leave out."""
     blocks: list[Block] = [Bullets(tuple(words("not_covered", "lines")))]
-    rows = tuple(dict.fromkeys(text for f in frame.findings for text in f.not_counted))
+    applied = [f for f in frame.findings if f.verdict != "skipped"]
+    rows = tuple(dict.fromkeys(text for f in applied for text in f.not_counted))
     if rows:
         blocks += [Paragraph(words("not_covered", "case") + ":"), Bullets(rows)]
     return Section("10", words("sections", "10"), tuple(blocks))

@@ -6,6 +6,7 @@ from screener.memo import numbers
 from screener.memo.document import Axis, Block, Bullets, Figure, Mark, Paragraph, Section, Series, Table
 from screener.memo.finding_text import finding_numbers, limit_span
 from screener.memo.frame import Frame
+from screener.memo.ladder import ladder_figure
 from screener.memo.wording import fill, words
 
 _FIGURE_ROWS = 13  # points printed where nothing is drawn
@@ -18,9 +19,7 @@ def results_section(frame: Frame) -> Section:
         Paragraph(words("results", "margin"), "note"),
         _details(frame),
     ]
-    figure = curve_figure(frame)
-    if figure:
-        blocks.append(figure)
+    blocks += [figure for figure in (curve_figure(frame), ladder_figure(frame)) if figure]
     blocks += [information_table(item, frame.system) for item in frame.screening.information if item.facts]
     return Section("6", words("sections", "6"), tuple(blocks))
 

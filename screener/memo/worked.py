@@ -67,13 +67,22 @@ def _margin(finding) -> Block:
     """The subtraction behind the margin, with its numbers."""
     below = finding.kind != "stay above"
     limit = finding.limit_high if below else finding.limit_low
-    absent = finding.value is None or limit is None or finding.margin is None or finding.verdict == "unknown"
-    if absent or finding.kind == "keep out of":
+    if finding.value is None or limit is None or finding.margin is None or finding.verdict == "unknown":
         return Paragraph(f"{finding.title}: {words('worked', 'no_limit')}")
+    if finding.kind == "keep out of":
+        limit, below, symbols = _nearest_end(finding)
+    else:
+        symbols = "margin_below" if below else "margin_above"
     shown = finding_numbers(finding, _SYSTEM)
     places = numbers.decimals((finding.value, finding.low, finding.high, limit), finding.unit, _SYSTEM)
     limit_text = numbers.quantity(limit, finding.unit, _SYSTEM, places=places).text
     first, second = (limit_text, shown.value.text) if below else (shown.value.text, limit_text)
     note = f"{words('worked', 'ends')}: {shown.low_to_high}" if shown.low_to_high.low is not None else ""
-    symbols = words("worked", "margin_below" if below else "margin_above")
-    return Equation(f"{finding.title}: {symbols}", f"{first} - {second}", shown.margin, note)
+    return Equation(f"{finding.title}: {words('worked', symbols)}", f"{first} - {second}", shown.margin, note)
+
+
+def _nearest_end(finding) -> tuple[float, bool, str]:
+    """End of an interval to keep out of that the margin counts from, and which way it counts."""
+    low, high, value = finding.limit_low, finding.limit_high, finding.value
+    lower = value < low or (value <= high and value - low < high - value)
+    return (low, True, "margin_out_low") if lower else (high, False, "margin_out_high")

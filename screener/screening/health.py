@@ -66,7 +66,7 @@ def _at(context: Context, k: int) -> int:
 def _lane(context: Context, k: int, found, ratios) -> Lane:
     from screener.screening.fire import span_missing
 
-    lanes, i, at = context.lanes, context.i, _at(context, k)
+    i, at = context.i, _at(context, k)
     condition = context.condition(k, context.hottest_day, "vapour space")
     if not np.isfinite(ratios).all():
         paths = span_missing(context, k)

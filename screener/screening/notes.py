@@ -6,6 +6,7 @@ import math
 
 from screener.screening.context import Context
 from screener.screening.finding import Finding
+from screener.screening.health import states_sour_gas
 from screener.screening.wording import say
 
 
@@ -23,6 +24,8 @@ def assumptions(context: Context) -> tuple[str, ...]:
         rows.append(say("assumed", "insolation"))
     if case.site.months and case.site.liquid_temperature is None:
         rows.append(say("assumed", "design-day"))
+    if math.isfinite(context.input("ambient_low")) and case.tank.kind != "underground":
+        rows.append(say("assumed", "cold-day"))
     if case.tank.insulated:
         rows.append(say("assumed", "insulated"))
     for name in ("fittings", "roughness", "nozzle_height") if case.line.suction is not None else ():
@@ -47,13 +50,15 @@ def paint_note(text: str) -> str:
 
 def reservations(context: Context) -> tuple[str, ...]:
     """What weakens the result: failed lanes, parameters that fell back, spread of pure data."""
-    lanes = context.lanes
+    lanes, case = context.lanes, context.case
     rows = []
     if lanes.failed:
         rows.append(say("reserved", "failed", count=lanes.failed))
     if lanes.fluid.gaps:
         rows.append(say("reserved", "gaps", pairs="; ".join(lanes.fluid.gaps[:12])))
     rows.append(say("reserved", "second-liquid"))
+    if not states_sour_gas(context) and case.tank.sour_service is None:
+        rows.append(say("reserved", "sour-gas"))
     rows.append(say("reserved", "residual", value=f"{lanes.worst_residual:.1e}"))
     return tuple(rows)
 

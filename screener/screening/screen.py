@@ -5,10 +5,12 @@ from __future__ import annotations
 import numpy as np
 
 from screener.ground.constants import ZERO_CELSIUS
+from screener.screening.cautions import with_cautions
 from screener.screening.context import Context
 from screener.screening.draft import finish
 from screener.screening.finding import Finding, Screening
 from screener.screening.fire import flash, oxygen, space, switch_loading
+from screener.screening.fire_information import fire_information, ladder
 from screener.screening.flow import npsh, suction
 from screener.screening.headroom import with_headroom
 from screener.screening.health import hatch
@@ -36,7 +38,14 @@ def findings_of(context: Context, stream) -> tuple[Finding, ...]:
     inerting = finish(oxygen(context))
     drafts = (space(context, inerting), flash(context), hatch(context), switch_loading(context))
     findings += [inerting, *map(finish, drafts)]
-    return tuple(sorted(findings, key=lambda finding: finding.rank))
+    return tuple(sorted(with_cautions(context, findings), key=lambda finding: finding.rank))
+
+
+def _pictures(context: Context, findings) -> dict:
+    """Bubble pressures over temperature, and the vapour space month by month where months are given."""
+    months = ladder(context, findings)
+    curve = bubble_curve(context.lanes, context.i, CURVE)
+    return curve | ({"ladder": months} if months else {})
 
 
 def screen(case: Case) -> Screening:
@@ -64,10 +73,10 @@ def screen_many(cases, *, full: bool = False) -> tuple[Screening, ...]:
             Screening(
                 case=cases[i],
                 findings=findings,
-                information=information(context) if full else (),
+                information=information(context) + fire_information(context) if full else (),
                 assumptions=assumptions(context),
                 reservations=reservations(context),
-                curve=bubble_curve(lanes, i, CURVE) if full else {},
+                curve=_pictures(context, findings) if full else {},
                 sources=sources(context, findings),
             )
         )

@@ -1,0 +1,178 @@
+"""Context about fire, judged by nobody: flash point, window, hazard classes, contamination, the vapour ladder."""
+
+from __future__ import annotations
+
+import math
+from functools import lru_cache
+
+import numpy as np
+
+from screener.blends import union
+from screener.equilibrium import Fluid
+from screener.fire import (
+    SpaceState,
+    contaminated_flash_point,
+    contaminated_space,
+    flammable_window,
+    flash_point,
+    hazard_class,
+    hazard_systems,
+    headspace,
+    limiting_oxygen,
+    static_class,
+    vapour_density_ratio,
+)
+from screener.ground.constants import ZERO_CELSIUS
+from screener.screening.context import Context
+from screener.screening.finding import Fact, Information
+from screener.screening.wording import say
+from screener.species import find
+from screener.states.fire import FLASH_SPREAD, INSIDE, LEAN, RICH
+from screener.states.ladder import vapour_ladder
+from screener.states.lanes import BEST, HEEL, LIQUIDS, RECEIPT
+from screener.volatility import distillation_d86
+
+SHARES = (0.001, 0.005, 0.01, 0.02, 0.05)  # of a second liquid by volume
+CONTAMINATION_SHOWN = 1.0  # change of the flash point from which a table of contamination is printed [K]
+D86_STEPS = 10  # the first fifth of the curve moves by 0.2 K at most against 50 steps
+INERT = ("nitrogen", "carbon dioxide")
+
+
+def fire_information(context: Context) -> tuple[Information, ...]:
+    """Fire figures and classes of receipt and heel, and what a little of one does to the other."""
+    case = context.case
+    rows = [_liquid(context, context.liquid_name(RECEIPT), case.blend, RECEIPT)]
+    if case.tank.contents is not None:
+        heel = case.tank.contents.blend
+        rows.append(_liquid(context, "heel", heel, HEEL))
+        rows.append(_contamination(context, "heel", heel, "receipt", case.blend))
+        rows.append(_contamination(context, "receipt", case.blend, "heel", heel))
+    return tuple(row for row in rows if row.facts)
+
+
+@lru_cache(maxsize=64)
+def _boiling_points(blend) -> tuple[float, float, float, float]:
+    """Initial, 10 % and 20 % recovered of a computed D86 curve, and the boiling point of a pure liquid. [K]"""
+    curve = distillation_d86(blend.fluid, blend.z, steps=D86_STEPS)
+    pure = find(blend.names[0]).Tb if len(blend.names) == 1 else math.nan
+    points = curve.T[0, 0], curve.temperature_recovered(0.10)[0], curve.temperature_recovered(0.20)[0]
+    return (*map(float, points), pure)
+
+
+def _liquid(context: Context, name: str, blend, k: int) -> Information:
+    fluid, z = blend.fluid, blend.z
+    P = context.barometer if math.isfinite(context.barometer) else 101325.0
+    flash, limits = flash_point(fluid, z), flash_point(fluid, z, method="le-chatelier")
+    window = flammable_window(fluid, z, P=P)
+    facts = [
+        Fact("flash point by equilibrium (Liaw)", float(flash.T[0]), "K"),
+        Fact("flash point by lower limits (Le Chatelier)", float(limits.T[0]), "K"),
+        Fact("vapour space flammable from", float(window.T_lower[0]), "K", say("note", "window")),
+        Fact("vapour space flammable up to", float(window.T_upper[0]), "K", say("note", "window")),
+    ]
+    ratio = float(context.fire.space.ratio[context.i, k])
+    if math.isfinite(ratio):
+        filled = flammable_window(fluid, z, P=P, ratio=ratio)
+        facts.append(Fact("the same at the lowest level, up to", float(filled.T_upper[0]), "K",
+                          say("note", "depleted")))  # fmt: skip
+    T_hot = float(context.lanes.T_hot[context.i, k, BEST])
+    if math.isfinite(T_hot):
+        y = headspace(fluid, T_hot, z, P=P).y
+        facts.append(Fact("density of the undiluted vapour over that of air", float(vapour_density_ratio(fluid, y)[0]), "-"))
+        facts += _oxygen_facts(fluid, y)
+    facts += _class_facts(context, blend, float(flash.T[0]))
+    return Information(f"{name}: {say('fire', 'information')}", _known(facts), say("note", "fire-information"))
+
+
+def _oxygen_facts(fluid, y) -> list[Fact]:
+    facts = []
+    for gas in INERT:
+        found = limiting_oxygen(fluid, y, inert=gas)
+        facts.append(Fact(f"limiting oxygen in {gas}", float(found.oxygen[0]), "mol/mol",
+                          f"{found.rule[0]}, {found.evidence[0]}"))  # fmt: skip
+    return facts
+
+
+def _class_facts(context: Context, blend, T_flash: float) -> list[Fact]:
+    """Hazard classes with the boiling point each text uses, and the class for static electricity."""
+    initial, at_10, at_20, pure = _boiling_points(blend)
+    facts = [
+        Fact("initial boiling point, computed D86", initial, "K"),
+        Fact("10 % point, computed D86", at_10, "K"),
+        Fact("20 % point, computed D86", at_20, "K"),
+    ]
+    for system in hazard_systems():
+        found = hazard_class(system, T_flash, initial=initial, at_10=at_10, at_20=at_20, constant=pure,
+                             flash_doubt=FLASH_SPREAD)  # fmt: skip
+        means = found.boiling_rule.means if math.isnan(pure) else say("note", "pure-boiling-point")
+        note = say("note", "boiling-used", means=means, T=f"{found.boiling[0] - ZERO_CELSIUS:.1f} degC",
+                   evidence=found.evidence)  # fmt: skip
+        facts.append(Fact(f"{system} class", str(found.name[0]), "", note))
+    from screener.blends import volatility_sheet
+
+    P = float(volatility_sheet(blend).DVPE)
+    facts.append(Fact("vapour class for static electricity", str(static_class(T_flash, P)[0])))
+    return facts
+
+
+def _contamination(context: Context, name: str, blend, other_name: str, other) -> Information:
+    """Flash point and vapour space of one liquid against the share of the other."""
+    names, Z = union([blend, other])
+    fluid = Fluid.of(names)
+    share = np.array((0.0, *SHARES))
+    flash = contaminated_flash_point(fluid, Z[0], Z[1], share)
+    T = float(context.lanes.weather.T_surface[context.i, BEST])
+    state = [""] * share.size
+    if math.isfinite(T) and math.isfinite(context.barometer):
+        space = contaminated_space(fluid, T, Z[0], Z[1], share, P=context.barometer)
+        state = [
+            say("note", "space-at", state=SpaceState(int(s)).label, T=f"{T - ZERO_CELSIUS:.1f} degC")
+            for s in space.state
+        ]
+    if np.nanmax(np.abs(flash.T - flash.T[0]), initial=0.0) < CONTAMINATION_SHOWN and len(set(state)) == 1:
+        return Information(say("fire", "contamination", name=name, other=other_name), ())
+    facts = [
+        Fact(say("fire", "contaminated", name=name, other=other_name, share=f"{100.0 * s:g}"), float(T_f), "K", note)
+        for s, T_f, note in zip(share, flash.T, state)
+    ]
+    title = say("fire", "contamination", name=name, other=other_name)
+    return Information(title, _known(facts), say("note", "contamination"))
+
+
+def _known(facts) -> tuple[Fact, ...]:
+    return tuple(f for f in facts if not isinstance(f.value, float) or math.isfinite(f.value))
+
+
+def ladder(context: Context, findings) -> dict:
+    """The vapour space month by month as plain data, for the liquid that is worst now; {} without months."""
+    finding = next((f for f in findings if f.id == "vapour-space.flammable"), None)
+    k = RECEIPT
+    if finding is None or finding.verdict == "skipped":
+        return {}
+    if finding.condition.liquid:
+        wanted = finding.condition
+        k = next(
+            (k for k in context.liquids() if context.liquid_name(k) == wanted.liquid
+             and LIQUIDS[k][1] in ("", wanted.level)), RECEIPT,
+        )  # fmt: skip
+    rows = vapour_ladder(context.lanes, context.i, k)
+    if not rows:
+        return {}
+    level = LIQUIDS[k][1]
+    liquid = context.liquid_name(k) + (f" at {level} level" if level else "")
+    months = [
+        {name: row[name] for name in ("month", "number", "T_cold", "T_hot", "share_cold", "share_hot", "LFL", "UFL")}
+        | {"equilibrium": _month_word(row), "not_saturated": say("ladder", "passes" if row["reaches"] else "lean")}
+        for row in rows
+    ]
+    return {"liquid": liquid, "months": months}
+
+
+def _month_word(row) -> str:
+    """What the space is in equilibrium, over the month."""
+    ends = row["lowest"], row["highest"]
+    if ends == (LEAN, RICH):
+        return say("ladder", "all")
+    words = {LEAN: "lean", INSIDE: "inside", RICH: "rich"}
+    states = [say("state", words[side]) for side in dict.fromkeys(ends)]
+    return say("ladder", "two", one=states[0], two=states[1]) if len(states) == 2 else states[0]
