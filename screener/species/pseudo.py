@@ -31,6 +31,7 @@ from screener.species.vapour_pressure import NoData
 
 BOILING = 250.0, 1100.0  # [K] span of boiling points accepted; our choice
 DENSITY = 500.0, 1150.0  # [kg/m3] span of densities accepted; our choice
+ROUNDED = 1.002  # [-] three shares printed to 0.1 % may sum to a little more than 1
 T_LOW = 200.0  # [K] vapour-pressure curves of cuts start here, like those of the species
 # Largest relative miss of the vapour pressure between 250 and 350 K, by boiling point [K]: the root mean square over
 # the hydrocarbons of the species table treated as cuts, tests/studies/cut_vapour_pressures.md.
@@ -73,7 +74,7 @@ def name_of(Tb, rho_15, *, aromatics=None, naphthenes=None, olefins=0.0, MW=None
     _inside("boiling point", Tb, BOILING, "K")
     _inside("density", rho_15, DENSITY, "kg/m3")
     given = [v for v in (aromatics, naphthenes, olefins) if v is not None]
-    if min(given) < 0.0 or sum(given) > 1.0005:
+    if min(given) < 0.0 or sum(given) > ROUNDED:
         raise InputError("", sum(given), f"the shares of a cut sum to {100 * sum(given):.4g} %", "0 to 100 %")
     SG = cut_constants.specific_gravity(rho_15)
     _, N, O, A = (float(v) for v in family_shares(Tb, SG, aromatics, naphthenes, olefins))

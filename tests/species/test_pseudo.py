@@ -18,6 +18,7 @@ from screener.species import columns, cut, find, pair_terms, pure
 from screener.species.cut_families import FAMILIES, family_gravity, family_shares, groups_of
 from screener.species.groups import atoms
 from screener.species.pairs import correction
+from screener.species.pseudo import name_of
 
 ROOT = Path(__file__).resolve().parents[2]
 NAPHTHA = 372.45, 745.0  # [K], [kg/m3]
@@ -29,6 +30,18 @@ def test_the_name_is_the_record():
     assert find(one.name) == one
     assert find("CUT 99.3 degc 745 kg/m3 a24 n10 o0") == one
     assert cut(372.4499, 745.0012, aromatics=0.2401, naphthenes=0.1) == one  # rounded to what the name prints
+
+
+def test_names_come_to_rest():
+    """Any cut's name, read back part by part, is that name: rounding never drifts, nor refuses its own print."""
+    rng = np.random.default_rng(8)
+    for _ in range(3000):
+        Tb, rho = rng.uniform(255.0, 1000.0), rng.uniform(520.0, 1100.0)
+        known = {} if rng.random() < 0.5 else {"aromatics": rng.uniform(0.0, 0.7), "olefins": rng.uniform(0.0, 0.3)}
+        name = name_of(Tb, rho, **known)
+        part = name.split()
+        shares = {k: float(part[i][1:]) / 100.0 for k, i in (("aromatics", 5), ("naphthenes", 6), ("olefins", 7))}
+        assert name_of(float(part[1]) + 273.15, float(part[3]), **shares) == name
 
 
 def test_shares_left_out_are_supplied_and_named():
