@@ -16,21 +16,26 @@ HEAVY = {"textual", "matplotlib", "pandas", "pint", "scipy.optimize", "scipy.sta
 def _modules_after(code: str) -> set[str]:
     """Names in sys.modules of a fresh interpreter after running code."""
     script = f"{code}\nimport sys, json\nprint('@@' + json.dumps(sorted(sys.modules)))"
-    done = subprocess.run([sys.executable, "-c", script], capture_output=True, text=True, cwd=ROOT, check=True)
+    done = subprocess.run(
+        [sys.executable, "-c", script], capture_output=True, text=True, cwd=ROOT, check=True
+    )
     return set(json.loads(done.stdout.rsplit("@@", 1)[1]))
 
 
 def test_imports_point_downward():
     """Every folder has a floor and imports only what lies below it."""
     done = subprocess.run(
-        [str(Path(sys.executable).parent / "lint-imports"), "--no-cache"], capture_output=True, text=True, cwd=ROOT
+        [str(Path(sys.executable).parent / "lint-imports"), "--no-cache"],
+        capture_output=True,
+        text=True,
+        cwd=ROOT,
     )
     assert done.returncode == 0, done.stdout + done.stderr
 
 
 @pytest.mark.parametrize(
     "module",
-    ["screener", "screener.species", "screener.equilibrium", "screener.volatility", "screener.blends",
+    ["screener", "screener.species", "screener.equilibrium", "screener.volatility", "screener.fire", "screener.blends",
      "screener.tank", "screener.line", "screener.site", "screener.states", "screener.screening"],
 )  # fmt: skip
 def test_a_floor_loads_nothing_heavy(module):
@@ -44,7 +49,9 @@ def test_the_import_of_the_library_is_light():
 
 
 def test_help_needs_only_the_standard_library():
-    code = "import sys\nfrom screener.cli import main\ntry:\n    main(['--help'])\nexcept SystemExit:\n    pass"
+    code = (
+        "import sys\nfrom screener.cli import main\ntry:\n    main(['--help'])\nexcept SystemExit:\n    pass"
+    )
     loaded = {name.split(".")[0] for name in _modules_after(code)}
     outside = {n for n in loaded if n not in sys.stdlib_module_names and n not in {"screener", "__main__"}}
     # Files that a Python installation itself preloads from site-packages are not ours to forbid.
