@@ -1,8 +1,8 @@
-"""The excess Gibbs energy of a blend: modified UNIFAC plus a pair term (dissolved gases, measured pairs).
+"""The excess Gibbs energy of a blend: modified UNIFAC, a pair term (dissolved gases, measured pairs), a water term.
 
-    G^E/RT = (UNIFAC) + sum_{i<j} x_i x_j A_ij(T),   A_ij = A0 + A1/T + A2 ln T
+    G^E/RT = (UNIFAC) + sum_{i<j} x_i x_j A_ij(T) + (water term),   A_ij = A0 + A1/T + A2 ln T
 
-so that the pair term adds ln gamma_i = (A x)_i - x A x / 2.
+so that the pair term adds ln gamma_i = (A x)_i - x A x / 2. The water term is in `water_term`.
 """
 
 from __future__ import annotations
@@ -12,21 +12,23 @@ from dataclasses import dataclass
 import numpy as np
 
 from screener.equilibrium.unifac import Unifac, UnifacAt
+from screener.equilibrium.water_term import WaterTerm
 
 
 @dataclass(frozen=True)
 class Excess:
-    """UNIFAC and the pair term; A0 [-], A1 [K], A2 [-] symmetric (c, c), or all None without one."""
+    """UNIFAC, the pair term (A0 [-], A1 [K], A2 [-] symmetric (c, c), each None without one) and the water term."""
 
     unifac: Unifac
     A0: np.ndarray | None
     A1: np.ndarray | None
     A2: np.ndarray | None
+    water: WaterTerm | None = None
 
     @classmethod
-    def of(cls, unifac: Unifac, A0, A1, A2) -> Excess:
+    def of(cls, unifac: Unifac, A0, A1, A2, water: WaterTerm | None = None) -> Excess:
         """From coefficient arrays (c, c); an array of zeros is dropped."""
-        return cls(unifac, *(m if np.any(m) else None for m in (A0, A1, A2)))
+        return cls(unifac, *(m if np.any(m) else None for m in (A0, A1, A2)), water)
 
     def at(self, T) -> ExcessAt:
         """The temperature-only part for T (n,). [K]"""
@@ -56,6 +58,8 @@ class ExcessAt:
             half = 0.5 * np.einsum("nc,nc->n", x, field)
             field -= half[:, None]
             ln_gamma = ln_gamma + (field if factor is None else factor * field)
+        if self.model.water is not None:
+            ln_gamma = ln_gamma + self.model.water.ln_gamma(x, self.T)
         return ln_gamma
 
     def slopes(self, x):
@@ -71,4 +75,7 @@ class ExcessAt:
             half = 0.5 * np.einsum("nc,nc->n", x, field)
             ln_gamma_1 = ln_gamma_1 + first * (field - half[:, None])
             excess_2 = excess_2 + second[:, 0] * half
+        if self.model.water is not None:
+            first, second = self.model.water.slopes(x, self.T)
+            ln_gamma_1, excess_2 = ln_gamma_1 + first, excess_2 + second
         return ln_gamma_1, excess_2

@@ -28,6 +28,8 @@ TRIVIAL = 1e-5  # largest |ln w - ln z| of a trial that came back to the feed; i
 PURE = 0.999  # share of the main component of a pure-component start; the rest is the feed
 REACH = 0.3  # longest accelerated step of a trial in ln W: a longer one can leap over a shallow minimum
 MOST_TRIAL = 80  # substitutions: next to a vanishing minimum they crawl, and Newton cannot help
+MOST_ALONE, FEW_NEWTON = 120, 6  # substitutions and Newton steps of a trial from a given start
+ENOUGH = 1e-6  # residual of a trial whose distance counts: it is of second order next to a stationary point
 MOST_ROWS = 20_000  # trial lanes handled at once: bounds memory
 FEW = 1e-150  # a share below this would leave double precision in products
 
@@ -151,6 +153,13 @@ class Found:
         for name, value in vars(part).items():
             getattr(self, name)[lanes] = value
 
+    def take(self, lanes) -> Found:
+        """Some of the lanes."""
+        some = Found(0, self.w.shape[1])
+        for name, value in vars(self).items():
+            setattr(some, name, value[lanes])
+        return some
+
     def join(self, lanes, tpd, w, ln_W, kind, fixed) -> None:
         """Take in one trial per lane."""
         self.iterations[lanes] += fixed.iterations
@@ -213,6 +222,44 @@ def tangent_plane(state, P, z, around, ln_phi, K, pures: bool) -> Found:
     return found
 
 
+def trials_from(state, P, z, ln_phi, starts, kind: str) -> Found:
+    """Smallest tangent-plane distance of a phase z over trials of one kind from given starts.
+
+    Parameters
+    ----------
+    state : AtTemperature
+        The fluid at the temperatures of the lanes.
+    P : array, shape (n,)
+        Pressure. [Pa]
+    z : array, shape (n, c)
+        The phase tested. [-]
+    ln_phi : array, shape (n, c)
+        Of the phase tested. [-]
+    starts : array, shape (k, n, c)
+        ln W of k starts; the whole lane NaN where a lane does without. [-]
+    kind : str
+        Root of the trials, "L" or "V".
+
+    Returns
+    -------
+    Found
+        As `tangent_plane`.
+
+    Source
+    ------
+    As `stability`.
+    """
+    n, c = z.shape
+    present = z > 0.0
+    ln_z = np.log(np.where(present, np.maximum(z, FEW), 1.0))
+    found = Found(n, c)
+    which, lanes = np.nonzero(np.isfinite(starts).all(axis=2))
+    trials = Trials(state, P, ln_z + ln_phi, present, kind).take(lanes)
+    fixed = solve(trials, starts[which, lanes], trials.present, plain=MOST_ALONE, newton=FEW_NEWTON, reach=REACH)
+    _join(found, lanes, trials, fixed._replace(converged=fixed.residual < ENOUGH), trials.liquid, ln_z)
+    return found
+
+
 def _try(found, lanes, trials, start, ln_z):
     """Run trials of one kind to their stationary points and take in what they found."""
     fixed = solve(trials, start, trials.present, plain=MOST_TRIAL, reach=REACH)
@@ -223,14 +270,24 @@ def _try(found, lanes, trials, start, ln_z):
         again = solve(lower, start[lost], lower.present, plain=4 * MOST_TRIAL, reach=REACH)
         for old, new in zip(fixed, again):
             old[lost] = new
+
+    def liquid(w):
+        mask = trials.liquid(w)
+        if lost.size:
+            mask[lost] = lower.liquid(w[lost])
+        return mask
+
+    _join(found, lanes, trials, fixed, liquid, ln_z)
+
+
+def _join(found, lanes, trials, fixed, liquid, ln_z):
+    """Take in what trials found; liquid tells from w (n, c) which of them are on the smaller root."""
     w, ln_total = trials.share(fixed.u)
-    liquid = trials.liquid(w)
-    if lost.size:
-        liquid[lost] = lower.liquid(w[lost])
+    liquid = liquid(w)
     away = row_max(np.where(trials.present, np.abs(fixed.u - ln_z[lanes]), 0.0))
     # A trial that came back to the feed, on the feed's own root, has distance zero whatever rounding says.
     tpd = np.where((away < TRIVIAL) & (np.abs(ln_total) < 100.0 * TPD_ZERO), 0.0, -ln_total)
-    usable = fixed.converged | (fixed.residual < 1e-6)  # next to a stationary point the distance is second order
+    usable = fixed.converged | (fixed.residual < ENOUGH)
     tpd = np.where(usable, tpd, np.nan)
     order = np.argsort(lanes, kind="stable")
     position = np.arange(lanes.size) - np.searchsorted(lanes[order], lanes[order])  # nth trial of its lane

@@ -12,6 +12,7 @@ from screener.equilibrium.eos import EQUATIONS, attraction_at_critical, covolume
 from screener.equilibrium.excess import Excess
 from screener.equilibrium.mixing import VanDerWaals, interaction_matrix
 from screener.equilibrium.unifac import Unifac
+from screener.equilibrium.water_term import WaterTerm
 from screener.equilibrium.zero_pressure import ZeroPressure
 from screener.ground.constants import ATMOSPHERE, T_15C, R
 
@@ -56,7 +57,8 @@ def _peng_robinson_excess(found, model: str, table):
     A0, A1, A2, lacking = species.pair_terms(found)
     missing = tuple(tuple(pair) for pair in lacking) + _pairs_without_groups(table.names, table.groups, a)
     gaps = tuple(f"no parameter for {one} + {other}; taken as zero" for one, other in missing)
-    mixing = ZeroPressure(Excess.of(unifac, A0, A1, A2))
+    water = WaterTerm.of(unifac, species.water_targets(found))
+    mixing = ZeroPressure(Excess.of(unifac, A0, A1, A2, water))
     return EQUATIONS["PR"], _alpha(table), mixing, (table.c0, table.c1), gaps, missing
 
 

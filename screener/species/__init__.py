@@ -10,12 +10,14 @@ from screener.species.groups import group_tables
 from screener.species.pairs import interactions, pair_terms
 from screener.species.pseudo import cut
 from screener.species.record import Curve, Limit, Species
+from screener.species.water import WaterTargets, water_targets
 
 __all__ = [
     "Columns",
     "Curve",
     "Limit",
     "Species",
+    "WaterTargets",
     "alpha",
     "columns",
     "cut",
@@ -26,6 +28,7 @@ __all__ = [
     "names",
     "pair_terms",
     "stand_in",
+    "water_targets",
 ]
 
 
