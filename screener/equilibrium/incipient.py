@@ -28,7 +28,9 @@ TRIES = 8  # pressures tried for a liquid root of the feed, each ten times the l
 
 
 class AtTemperature:
-    """Unknown pressure."""
+    """Unknown pressure. `nudged` is switched off to look at a point known to be one."""
+
+    nudged = True
 
     def __init__(self, state, feed, bubble: bool):
         self.state, self.feed, self.bubble = state, feed, bubble
@@ -49,7 +51,7 @@ class AtTemperature:
         """ln phi_L - ln phi_V + ln P."""
         P, other = self.close(u)
         state, feed = self.feed_at(None)
-        return step(feed, state.mix(other), P, self.bubble, u, np.log(P)[:, None])
+        return step(feed, state.mix(other), P, self.bubble, u, np.log(P)[:, None], self.nudged)
 
     def feed_at(self, T):
         """The fluid at the temperatures given from the start, and the feed in it."""
@@ -59,7 +61,9 @@ class AtTemperature:
 
 
 class AtPressure:
-    """Unknown temperature. h (c,) [K] slopes of ln K in 1/T; tau (n,) [1/K] the last 1/T."""
+    """Unknown temperature. h (c,) [K] slopes of ln K in 1/T; tau (n,) [1/K] the last 1/T; `nudged` as above."""
+
+    nudged = True
 
     def __init__(self, fluid, P, feed, bubble: bool, tau=None):
         self.fluid, self.P, self.feed, self.bubble = fluid, P, feed, bubble
@@ -90,7 +94,7 @@ class AtPressure:
         """ln phi_L - ln phi_V + h / T."""
         T, other = self.close(u)
         state, feed = self.feed_at(T)
-        return step(feed, state.mix(other), self.P, self.bubble, u, self.h / T[:, None])
+        return step(feed, state.mix(other), self.P, self.bubble, u, self.h / T[:, None], self.nudged)
 
     def feed_at(self, T):
         """The fluid at T (n,) [K], and the feed in it."""
@@ -98,7 +102,7 @@ class AtPressure:
         return state, state.mix(self.feed)
 
 
-def step(feed, other, P, bubble: bool, u, shift):
+def step(feed, other, P, bubble: bool, u, shift, nudged=True):
     """The image of u; where a phase is not of its kind, a nudge to where it is.
 
     A larger u means a higher pressure, or a lower temperature: either way the
@@ -108,6 +112,8 @@ def step(feed, other, P, bubble: bool, u, shift):
     ln_phi_L, Z_L = liquid.ln_phi_and_Z(P, "L")
     ln_phi_V, Z_V = vapour.ln_phi_and_Z(P, "V")
     image = ln_phi_L - ln_phi_V + shift
+    if not nudged:
+        return image
     with np.errstate(invalid="ignore"):
         thin = reduced_volume(liquid, P, Z_L) > NO_LIQUID
         thick = reduced_volume(vapour, P, Z_V) < NO_VAPOUR

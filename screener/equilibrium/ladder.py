@@ -4,8 +4,8 @@ For a liquid held at falling pressure (or rising temperature) the vapour-like
 trial has a negative tangent-plane distance from the bubble point on; for a
 vapour held at rising pressure (or falling temperature) the liquid-like trial
 has one from the dew point on. A change of sign between two rungs, the feed
-being of its kind on the stable one, proves that the point exists; without one
-there is none in the range looked at.
+being of its kind on the stable one and the trial phase of the other density,
+proves that the point exists; without one there is none that is wider than a rung.
 """
 
 from __future__ import annotations
@@ -14,15 +14,17 @@ import numpy as np
 
 from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_T
-from screener.equilibrium.phase import critical_ratio, reduced_volume
+from screener.equilibrium.phase import DENSE, critical_ratio, reduced_volume
 from screener.equilibrium.results import TPD_ZERO
+from screener.equilibrium.rows import row_max
 from screener.equilibrium.stability import FEW, PURE, REACH, Trials
 from screener.ground.status import Status
 
 RUNGS = 48
 FINE_RUNGS = 9  # a crossing is narrowed eightfold each time
-PRESSURES = (1.0, 2.0 * HIGHEST_P)  # [Pa] ends of the ladder; stored liquids lie far inside
+PRESSURES = (1.0, HIGHEST_P)  # [Pa] ends of the ladder; stored liquids lie far inside
 TEMPERATURES = (LOWEST_T, 0.8 * HIGHEST_T)  # [K]
+ALIKE = 0.05  # [-] |ln w/z| of a crossing that may be a limit of material stability: no point where two phases meet
 MOST_ROWS = 20_000
 
 
@@ -47,9 +49,9 @@ def seek(fluid, name: str, value, feed, bubble: bool, finer: int):
     Returns
     -------
     tuple
-        Status (n,): CONVERGED where it exists, NO_SOLUTION where it does not,
-        OUT_OF_RANGE where it lies beyond the ladder, OUT_OF_STEPS where that
-        cannot be told; and u (n, c) to start from.
+        Status (n,): CONVERGED where it exists, NO_SOLUTION where no two rungs
+        show it, TRIVIAL where the phases that cross are nearly one, OUT_OF_RANGE where it lies beyond the ladder; and u (n, c) to
+        start from.
 
     Source
     ------
@@ -69,6 +71,8 @@ def seek(fluid, name: str, value, feed, bubble: bool, finer: int):
             rungs = ends[:, :1] + (ends[:, 1:] - ends[:, :1]) * share
             inner, ends, start = _climb(fluid, name, value[some], feed[some], bubble, rungs)
             crossed = inner == Status.CONVERGED
+            lost = np.where(inner == Status.TRIVIAL, inner, int(Status.NO_SOLUTION))  # the edge there is another's
+            status[some[~crossed]] = lost[~crossed]
             u[some[crossed]] = start[crossed]
     return status, u
 
@@ -101,12 +105,23 @@ def _climb(fluid, name, value, feed, bubble, rungs):
     unstable = (usable & (ln_sum > TPD_ZERO)).reshape(n, m)
     stable = (usable & (ln_sum <= TPD_ZERO)).reshape(n, m)
     crossing = stable[:, :-1] & unstable[:, 1:]
+    lane, k = np.nonzero(crossing)
+    row = lane * m + k + 1
+    new = state.take(row).mix(trials.take(row).share(ln_W[row])[0])
+    with np.errstate(invalid="ignore"):  # a crossing to a phase of the other density is the edge of another kind
+        lighter = reduced_volume(new, P[row], new.Z(P[row], trial_kind)) > ratio[row]
+    crossing[lane[lighter != bubble], k[lighter != bubble]] = False
     rung = crossing.argmax(axis=1)
-    first = np.take_along_axis(unstable, usable.reshape(n, m).argmax(axis=1)[:, None], axis=1)[:, 0]
-    status = np.where(unstable.any(axis=1), int(Status.OUT_OF_STEPS), int(Status.NO_SOLUTION))
-    status = np.where(first, int(Status.OUT_OF_RANGE), status)
+    begin = usable.reshape(n, m).argmax(axis=1)
+    row = np.arange(n) * m + begin
+    new = state.take(row).mix(trials.take(row).share(ln_W[row])[0])
+    with np.errstate(invalid="ignore"):  # another liquid at the first rung says nothing of bubbles
+        first = unstable[np.arange(n), begin] & ~(bubble & (reduced_volume(new, P[row], new.Z(P[row], "V")) < DENSE))
+    status = np.where(first, int(Status.OUT_OF_RANGE), int(Status.NO_SOLUTION))
     status = np.where(crossing.any(axis=1), int(Status.CONVERGED), status)
     row = np.arange(n) * m + rung + 1
+    apart = row_max(np.where(present[row], np.abs(ln_W - ln_z)[row], 0.0))
+    status = np.where(crossing.any(axis=1) & (apart < ALIKE), int(Status.TRIVIAL), status)
     ln_ratio = (ln_W - ln_z)[row] * (1.0 if bubble else -1.0)
     shift = np.log(P[row])[:, None] if name == "T" else 5.373 * (1.0 + fluid.omega) * fluid.Tc / T[row][:, None]
     ends = np.stack([rungs[np.arange(n), rung], rungs[np.arange(n), rung + 1]], axis=1)

@@ -17,6 +17,7 @@ from screener.equilibrium import (
     stability,
 )
 from screener.equilibrium import fixed_point as engine
+from screener.equilibrium.crossing import Crossings
 from screener.equilibrium.second_liquid import DOUBTFUL, NOT_TESTED, SPLITS, TESTED
 from screener.ground.errors import InputError, NotConverged, ShapeError
 from screener.ground.status import Status
@@ -168,8 +169,15 @@ def test_bubble_point_of_a_dry_ethanol_blend_is_not_overridden():
     assert full.tpd[0] < 0.0 and full.checks[0] == DOUBTFUL
 
 
-def test_every_status_in_one_batch(odd):
-    near_critical = np.linspace(262.0, 325.0, 64)  # of 90 % methane in hexane: phases that nearly coincide
+def test_every_status_in_one_batch(odd, monkeypatch):
+    module = importlib.import_module("screener.equilibrium.points")
+
+    def unknown(fluid, name, value, feed, bubble):
+        """No envelope: next to critical points nothing else tells what is there."""
+        n, c = feed.shape
+        return Crossings(np.zeros(n, dtype=bool), np.full((n, c + 4), np.nan), np.full(n, int(Status.OUT_OF_STEPS)))
+
+    near_critical = np.linspace(252.0, 325.0, 64)  # 90 % methane in hexane; critical at 254 K
     T = np.concatenate([near_critical, [300.0, 52.0, 300.0, np.nan, 300.0]])
     x = np.tile([0.9, 0.1, 0.0, 0.0], (T.size, 1))
     x[64:] = [[0, 0.7, 0.3, 0], [0, 1, 0, 0], [0, 0.5, 0.3, 0.2], [0.5, 0.5, 0, 0], [0.3, 0.7, 0, 0]]
@@ -177,9 +185,15 @@ def test_every_status_in_one_batch(odd):
     assert found.status[64:].tolist() == [
         Status.LIQUID_SPLITS, Status.OUT_OF_RANGE, Status.NO_PARAMETERS, Status.BAD_INPUT, Status.CONVERGED
     ]  # fmt: skip
-    assert set(found.status) == set(Status)
-    answered = found.ok | (found.status == Status.LIQUID_SPLITS)
-    assert np.isnan(found.P[~answered]).all() and np.isnan(found.y[~answered]).all()
+    with monkeypatch.context() as patch:
+        patch.setattr(module, "crossings", unknown)
+        blind = bubble_pressure(odd, T, x, check="full")
+    for one in (found, blind):
+        answered = one.ok | (one.status == Status.LIQUID_SPLITS)
+        assert np.isnan(one.P[~answered]).all() and np.isnan(one.y[~answered]).all()
+    assert set(found.status) | set(blind.status) == set(Status)
+    # without the envelope nothing is claimed that it denies
+    assert not (blind.ok & ~found.ok).any() and not (blind.status == Status.NO_SOLUTION).any()
     with pytest.raises(NotConverged, match="of the lanes have no answer"):
         found.require()
 
@@ -222,7 +236,8 @@ def test_iteration_cap_is_said(gasoline, function, monkeypatch):
     fluid, z = gasoline
     module = importlib.import_module("screener.equilibrium.points")
     monkeypatch.setattr(module, "solve", lambda *a, **k: engine.solve(*a, **{**k, "plain": 1, "newton": 0}))
-    monkeypatch.setattr(module, "FINER", (0,))  # narrowed often enough the ladder alone finds the point
+    monkeypatch.setattr(module, "FINE", 0)  # narrowed often enough the ladder alone finds the point
+    monkeypatch.setattr(module, "PROMISED", -1.0)  # nor does a point of the envelope count
     found = function(fluid, 300.0 if "pressure" in function.__name__ else 1e5, z)
     assert found.status[0] == Status.OUT_OF_STEPS
     assert np.isnan(found.T[0]) or np.isnan(found.P[0])
