@@ -157,11 +157,14 @@ def _span_facts(context: Context) -> tuple[Fact, ...]:
 
 
 def oxygen(context: Context) -> Draft:
-    """vapour-space.oxygen: measured oxygen against the limiting oxygen of the vapour."""
+    """vapour-space.oxygen: measured oxygen against the limiting oxygen of the vapour.
+
+    Only under an inert blanket: without one, little oxygen means vapour in place of air, and air comes back.
+    """
     key, case = "vapour-space.oxygen", context.case
     measured = context.input("vapour_space_oxygen")
     skip, unknown = _closed_space(context)
-    if skip or (case.tank.blanket is None and math.isnan(measured)):
+    if skip or case.tank.blanket is None:
         return _draft(key, skip=skip or say("skip", "no-blanket"))
     if math.isnan(measured):
         unknown = unknown or say("unknown", "blanket-oxygen", paths="tank.vapour_space_oxygen")

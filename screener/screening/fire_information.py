@@ -68,7 +68,7 @@ def _liquid(context: Context, name: str, blend, k: int) -> Information:
         Fact("flash point by equilibrium (Liaw)", float(flash.T[0]), "K"),
         Fact("flash point by lower limits (Le Chatelier)", float(limits.T[0]), "K"),
         Fact("vapour space flammable from", float(window.T_lower[0]), "K", say("note", "window")),
-        Fact("vapour space flammable up to", float(window.T_upper[0]), "K", say("note", "window")),
+        Fact("vapour space flammable up to", float(window.T_upper[0]), "K"),
     ]
     ratio = float(context.fire.space.ratio[context.i, k])
     if math.isfinite(ratio):
@@ -104,7 +104,7 @@ def _class_facts(context: Context, blend, T_flash: float) -> list[Fact]:
     for system in hazard_systems():
         found = hazard_class(system, T_flash, initial=initial, at_10=at_10, at_20=at_20, constant=pure,
                              flash_doubt=FLASH_SPREAD)  # fmt: skip
-        means = found.boiling_rule.means if math.isnan(pure) else say("note", "pure-boiling-point")
+        means = f"{found.boiling_rule.point} point" if math.isnan(pure) else say("note", "pure-boiling-point")
         note = say("note", "boiling-used", means=means, T=f"{found.boiling[0] - ZERO_CELSIUS:.1f} degC",
                    evidence=found.evidence)  # fmt: skip
         facts.append(Fact(f"{system} class", str(found.name[0]), "", note))
@@ -132,7 +132,7 @@ def _contamination(context: Context, name: str, blend, other_name: str, other) -
     if np.nanmax(np.abs(flash.T - flash.T[0]), initial=0.0) < CONTAMINATION_SHOWN and len(set(state)) == 1:
         return Information(say("fire", "contamination", name=name, other=other_name), ())
     facts = [
-        Fact(say("fire", "contaminated", name=name, other=other_name, share=f"{100.0 * s:g}"), float(T_f), "K", note)
+        Fact(say("fire", "contaminated", other=other_name, share=f"{100.0 * s:g}"), float(T_f), "K", note)
         for s, T_f, note in zip(share, flash.T, state)
     ]
     title = say("fire", "contamination", name=name, other=other_name)

@@ -16,12 +16,14 @@ from screener.ground.constants import GRAVITY, ZERO_CELSIUS
 from screener.screening.context import Context
 from screener.screening.criteria import criterion
 from screener.screening.finding import Finding, Headroom
+from screener.screening.fire_headroom import fire_headroom
 from screener.screening.vapour import OTHER_ROOF
 from screener.screening.wording import say
 from screener.states.lanes import LIQUIDS, method_spread
 from screener.states.quantities import flows, table
 
 _PRESSURE = ("boiling.surface", "vapour-pressure.legal", "vapour-pressure.hottest", "receipt.flash")
+_FIRE = ("vapour-space.flammable", "fire.flash-point")
 _SHARE_STEPS = np.linspace(0.0, 1.0, 17)  # of the share the species has now
 
 
@@ -41,6 +43,8 @@ def _extend(context: Context, stream, finding: Finding, knobs) -> Finding:
         moved, rooms = _suction(context, stream, finding, knobs)
     elif family in ("vents.outbreathing", "vents.inbreathing"):
         moved, rooms = _breathing(context, stream, finding)
+    elif family in _FIRE:
+        moved, rooms = fire_headroom(context, finding, _liquid(context, finding))
     else:
         return finding
     if not _short_of_room(finding):
@@ -52,6 +56,8 @@ def _short_of_room(finding: Finding) -> bool:
     """Whether the numbers themselves lack room: a change of a knob does not lift a cap or tell an unknown."""
     if finding.verdict not in ("beyond", "near"):
         return False
+    if finding.kind == "keep out of":
+        return True
     worse = finding.high if finding.kind == "stay below" else finding.low
     limit = finding.limit_high if finding.kind == "stay below" else finding.limit_low
     return (
@@ -98,7 +104,8 @@ def _pressure(context: Context, finding: Finding, family: str):
     shares = z[light] * _SHARE_STEPS
     knobs = np.repeat(z[None, :], len(shares), axis=0)
     knobs[:, light] = shares
-    batch = np.vstack([z, more / more.sum(), knobs / knobs.sum(axis=1, keepdims=True)])
+    with np.errstate(invalid="ignore"):  # a liquid of one species without that species is no liquid
+        batch = np.vstack([z, more / more.sum(), knobs / knobs.sum(axis=1, keepdims=True)])
     answer = bubble_pressure(fluid, np.concatenate([[T + 1.0, T], np.full(len(shares), T)]), batch)
     name = fluid.names[light]
     moved = _moved(here.P[0], answer.P[:2], name)
