@@ -141,7 +141,8 @@ class InputPane(RowActions, Searching, Container):
         if key is None:
             return ""
         if key.kind in (schema.STOCK, schema.SPECIES):
-            return say("hint", "part_name")
+            part = "parts[" in cell.path
+            return say("hint", "part_name") if part else say("hint", "stock_name", meaning=key.meaning)
         echo = self.desk.known.echoes.get(cell.path)
         taken = say("hint", "taken", text=echo.text) if echo and not echo.default else ""
         note = echo.note if echo else ""
@@ -186,7 +187,7 @@ class InputPane(RowActions, Searching, Container):
             return
         if self._is_adder:
             self.action_add()
-        elif schema.pattern(cell.path).endswith(("parts[].stock", "parts[].species")):
+        elif schema.key_at(cell.path).kind in (schema.STOCK, schema.SPECIES):
             self._search(cell.path, self.label, self.desk.text.get(cell.path) or "")
         else:
             self.strip.edit(cell.path, self.label, self.desk.text.get(cell.path) or "", self.desk.choices(cell.path))

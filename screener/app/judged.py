@@ -114,6 +114,8 @@ def _margin(f, shown, system: str) -> str:
     for name, value, signed in (("worse_end", left, True), ("asked", f.asked_gap, False)):
         if value is not None:
             text = numbers.quantity(value, apart, system, places=places, sign=signed).text
+            if value and float(text.split()[0]) == 0.0:  # rounding must not make a gap vanish
+                text = numbers.quantity(value, apart, system, sign=signed).text
             parts.append(f"{say('card', name)} {text}")
     return "; ".join(parts)
 

@@ -19,8 +19,16 @@ class Searching:
         self.point(say("hint", "search"))
 
     def _show_matches(self, typed: str) -> None:
-        self._found = self.desk.matches(typed)
+        found = self.desk.matches(typed)
+        if not self._for_a_part:
+            found = [name for name in found if name.kind == "stock"]
+        self._found = found
         self.query_one(".matches", Lines).show(self._match_list)
+
+    @property
+    def _for_a_part(self) -> bool:
+        """Whether a part is looked for, which may be a stock or a species."""
+        return "parts[" in self.strip.purpose
 
     def _match_list(self, width: int):
         if not self._found:
@@ -44,6 +52,9 @@ class Searching:
             return
         purpose = self.strip.purpose
         self._leave()
+        if "parts[" not in purpose:
+            self._change(name, lambda text: edits.enter(text, purpose, name))
+            return
         if not purpose.endswith("[+]"):
             at = purpose.rpartition(".")[0]
             self._change(name, lambda text: edits.rename_part(text, at, kind, name))

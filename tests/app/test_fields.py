@@ -17,7 +17,7 @@ STEPS = ("blend", "tank", "site", "line")
 EMPTY = CaseText.parse("[blend]\n[tank]\n[site]\n[line]\n")
 
 
-def example(name="winter"):
+def example(name="winter_gasoline"):
     path = next(path for path in examples() if name in path.name)
     return CaseText.parse(path.read_text(encoding="utf-8"))
 
@@ -45,8 +45,10 @@ def test_every_declared_key_has_its_row_in_some_kind_of_tank():
     for kind in schema.key_at("tank.kind").choices:
         text = example()
         text.set("tank.kind", kind)
-        text.insert("blend.parts", {"species": "ethanol", "share": "1 %"})
-        text.insert("tank.contents.parts", {"species": "ethanol", "share": "1 %"})
+        for base in ("blend.parts", "tank.contents.parts"):
+            text.insert(base, {"species": "ethanol", "share": "1 %"})
+            text.insert(base, {"stock": "diesel", "share": "1 %"})
+        text.insert("tank.vents", {"count": "1"})
         shown |= {schema.pattern(path) for path in paths(text)}
     wanted = {
         key.path
@@ -130,7 +132,7 @@ def test_lists_end_with_a_row_that_adds_one():
 
 @pytest.mark.parametrize("step", STEPS)
 @pytest.mark.parametrize("width", [38, 60, 79, 139])
-@pytest.mark.parametrize("name", ["summer", "winter", "condensate"])
+@pytest.mark.parametrize("name", ["summer_e10", "winter_gasoline", "condensate"])
 def test_no_text_of_a_sheet_is_cut(step, width, name):
     text = example(name)
     sections = fields.sections(step, text, fields.NOTHING)

@@ -224,6 +224,17 @@ async def test_a_part_is_renamed_in_place(case_file):
         assert walk(pilot).desk.text.get("blend.parts[1].share") == "10 %"
 
 
+async def test_a_stock_outside_the_parts_is_looked_for_by_name_too(case_file):
+    async with opened(case_file) as pilot:
+        await pressed(pilot, "2")
+        walk(pilot).go_to("tank.previous_contents")
+        await pressed(pilot, "enter")
+        await typed(pilot, "butan")
+        assert "n-butane" not in grid(pilot.app), "only stocks can have been in a tank"
+        await pressed(pilot, "enter")
+        assert walk(pilot).desk.text.get("tank.previous_contents") == "field butane"
+
+
 async def test_rows_are_removed_and_values_cleared(case_file):
     async with opened(case_file) as pilot:
         await pressed(pilot, "down", "d")
