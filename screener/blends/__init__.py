@@ -1,6 +1,7 @@
 """Floor 4: stocks, blending by volume, mass or mole, and the volumes of the trade."""
 
 from screener.blends.blend import Blend, Report
+from screener.blends.lab_sheet import LabSheet
 from screener.blends.lanes import density, density_at, mix, union
 from screener.blends.parts import Part
 from screener.blends.properties import VolatilitySheet, volatility_sheet, volatility_sheets
@@ -8,6 +9,7 @@ from screener.blends.stocks import Stock, stock, stock_names, stocks
 
 __all__ = [
     "Blend",
+    "LabSheet",
     "Part",
     "Report",
     "Stock",

@@ -6,17 +6,20 @@ import math
 from collections.abc import Mapping
 from dataclasses import dataclass, field
 from functools import lru_cache
+from typing import TYPE_CHECKING
 
 import numpy as np
 
-from screener.blends.parts import Part, component, read_basis
+from screener.blends.parts import Part, assumptions, checked_shares, component, read_basis
 from screener.equilibrium import Fluid
 from screener.ground.constants import T_15C, T_60F
 from screener.ground.errors import InputError
 from screener.species import columns, find
 from screener.volatility import liquid_expansion
 
-SUM_TOLERANCE = 5e-4  # shares that miss 100 % by more than 0.05 % are a fault
+if TYPE_CHECKING:
+    from screener.blends.lab_fit import MeasuredPressure
+    from screener.blends.lab_sheet import LabSheet
 
 
 @dataclass(frozen=True)
@@ -32,6 +35,11 @@ class Report:
     sources: tuple[str, ...] = ()
     residuals: tuple[tuple[str, float, float, float], ...] = ()
 
+    @property
+    def misfits(self) -> dict[str, float]:
+        """Computed less measured in units of the reproducibility, by number. [-]"""
+        return {name: (computed - value) / R for name, value, computed, R in self.residuals}
+
 
 @dataclass(frozen=True)
 class Blend:
@@ -39,7 +47,9 @@ class Blend:
 
     names (c,) species with a share above zero, moles (c,) mole fractions, parts as given,
     product the commodity group for volume correction ('' when the density chooses).
-    Standard volumes at 15 degC add without shrinkage.
+    Standard volumes at 15 degC add without shrinkage. measured holds the vapour pressures of the
+    laboratory sheet a blend was fitted to, the most direct first, each with its ratio to the computed
+    one; vapour_pressure_known is False when that sheet had none. A mixture measures nothing.
     """
 
     names: tuple[str, ...]
@@ -48,6 +58,8 @@ class Blend:
     title: str = ""
     product: str = ""
     report: Report = field(default_factory=Report)
+    measured: tuple[MeasuredPressure, ...] = ()
+    vapour_pressure_known: bool = True
 
     @classmethod
     def of(
@@ -85,7 +97,7 @@ class Blend:
         standard volumes is a rule of this program.
         """
         basis, T_at = read_basis(basis, at)
-        shares = _checked(parts)
+        shares = checked_shares(parts)
         total = sum(shares.values())
         read = [
             component(key, share / total, basis, at, f"parts[{i}]")
@@ -101,9 +113,40 @@ class Blend:
         names, z = _normalised(moles)
         product = "crude" if volume.get("crude", 0.0) > 0.5 * sum(volume.values()) else ""
         text = title or " + ".join(f"{100.0 * part.share:.4g} % {part.name}" for part in read)
-        return cls(
-            names, z, tuple(part.part for part in read), text, product, _report(read, basis, at, total)
-        )
+        assumed = Report(*assumptions(read, basis, at, total))
+        return cls(names, z, tuple(part.part for part in read), text, product, assumed)
+
+    @classmethod
+    def from_lab(cls, sheet: LabSheet, start: Blend | None = None) -> Blend:
+        """The blend whose computed tests reproduce a laboratory sheet.
+
+        Parameters
+        ----------
+        sheet : LabSheet
+            Measured numbers in SI.
+        start : Blend, optional
+            The recipe as far as it is known; without it the distillation curve is cut.
+
+        Returns
+        -------
+        Blend
+            `.report.residuals` holds each number measured, computed and its reproducibility;
+            `.measured` the vapour pressures.
+
+        Raises
+        ------
+        InputError
+            Numbers that no composition reproduces together, named; or a bare sheet without
+            density and three points of the distillation.
+
+        Source
+        ------
+        Bounded least squares of `screener.blends.lab_fit`, a rule of this program; weights in
+        data/volatility/reproducibility.csv, an evidence mark per row.
+        """
+        from screener.blends.lab_fit import fitted_blend
+
+        return fitted_blend(sheet, start)
 
     @property
     def z(self) -> np.ndarray:
@@ -207,28 +250,9 @@ class Blend:
             assumed=tuple(dict.fromkeys(self.report.assumed + other.report.assumed)),
             sources=tuple(dict.fromkeys(self.report.sources + other.report.sources)),
         )
-        return Blend(names, z, parts, text, "crude" if crude > 0.5 else "", both)
-
-
-def _checked(parts) -> dict[str, float]:
-    if not isinstance(parts, Mapping) or not parts:
-        raise InputError(
-            "parts", parts, "a blend needs at least one part", "a share for each species or stock"
-        )
-    shares = {}
-    for i, (key, value) in enumerate(parts.items()):
-        share = float(value)
-        if not (math.isfinite(share) and 0.0 <= share):
-            raise InputError(
-                f"parts[{i}]", value, f"{key}: {value} is no share", "a share lies between 0 and 1"
-            )
-        shares[key] = share
-    total = sum(shares.values())
-    if abs(total - 1.0) > SUM_TOLERANCE:
-        raise InputError(
-            "parts", total, f"the shares sum to {100 * total:.4g} %", "they must sum to 100 % within 0.05 %"
-        )
-    return shares
+        known = self.vapour_pressure_known and other.vapour_pressure_known
+        product = "crude" if crude > 0.5 else ""
+        return Blend(names, z, parts, text, product, both, vapour_pressure_known=known)
 
 
 def _amount(part, basis: str, T_at: float) -> tuple[float, float]:
@@ -256,18 +280,6 @@ def _normalised(moles: dict[str, float]) -> tuple[tuple[str, ...], tuple[float, 
     present = {name: n for name, n in moles.items() if n > 0.0}
     total = sum(present.values())
     return tuple(present), tuple(n / total for n in present.values())
-
-
-def _report(read, basis: str, at: str, total: float) -> Report:
-    assumed = []
-    if basis == "volume":
-        assumed.append(f"shares by volume at {at}; standard volumes add without shrinkage")
-    if abs(total - 1.0) > 1e-12:
-        assumed.append(f"the shares sum to {100 * total:.6g} % and were brought to 100 %")
-    for part in read:
-        assumed.extend(part.assumed)
-    sources = tuple(dict.fromkeys(part.source for part in read if part.source))
-    return Report(assumed=tuple(dict.fromkeys(assumed)), sources=sources)
 
 
 @lru_cache(maxsize=256)

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import math
+from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from functools import lru_cache
 
@@ -14,6 +16,7 @@ from screener.species import names as species_names
 BASES = ("volume", "mass", "mole")
 _AT = {"15 degC": T_15C, "60 degF": T_60F}
 KINDS = ("species", "stock")
+SUM_TOLERANCE = 5e-4  # shares that miss 100 % by more than 0.05 % are a fault
 
 
 @dataclass(frozen=True)
@@ -63,6 +66,28 @@ def read_basis(basis: str, at: str) -> tuple[str, float]:
     if at not in _AT:
         raise InputError("at", at, f"volumes at '{at}' are not a trade volume", f"one of {', '.join(_AT)}")
     return basis, _AT[at]
+
+
+def checked_shares(parts) -> dict[str, float]:
+    """Shares by key as numbers; a fault for what is no share and for a sum that is not 100 %."""
+    if not isinstance(parts, Mapping) or not parts:
+        raise InputError(
+            "parts", parts, "a blend needs at least one part", "a share for each species or stock"
+        )
+    shares = {}
+    for i, (key, value) in enumerate(parts.items()):
+        share = float(value)
+        if not (math.isfinite(share) and 0.0 <= share):
+            raise InputError(
+                f"parts[{i}]", value, f"{key}: {value} is no share", "a share lies between 0 and 1"
+            )
+        shares[key] = share
+    total = sum(shares.values())
+    if abs(total - 1.0) > SUM_TOLERANCE:
+        raise InputError(
+            "parts", total, f"the shares sum to {100 * total:.4g} %", "they must sum to 100 % within 0.05 %"
+        )
+    return shares
 
 
 def component(key: str, share: float, basis: str, at: str, path: str) -> Component:
@@ -127,3 +152,16 @@ def _assumed(item: Stock) -> tuple[str, ...]:
         share = sum(row.percent for row in item.stand_ins) / sum(row.percent for row in item.rows)
         lines.append(f"{item.name}: near relatives stand in for {100 * share:.1f} % of the mass")
     return tuple(lines)
+
+
+def assumptions(read, basis: str, at: str, total: float) -> tuple[tuple[str, ...], tuple[str, ...]]:
+    """Sentences on what was assumed for components, and their sources."""
+    assumed = []
+    if basis == "volume":
+        assumed.append(f"shares by volume at {at}; standard volumes add without shrinkage")
+    if abs(total - 1.0) > 1e-12:
+        assumed.append(f"the shares sum to {100 * total:.6g} % and were brought to 100 %")
+    for part in read:
+        assumed.extend(part.assumed)
+    sources = tuple(dict.fromkeys(part.source for part in read if part.source))
+    return tuple(dict.fromkeys(assumed)), sources

@@ -1,0 +1,254 @@
+"""From a laboratory sheet to a composition that reproduces it.
+
+Bounded least squares over the shares of the groups of `lab_start`: misfits count in units of the
+reproducibility of their method, moves away from the start in units of how well it is known, the latter with
+the small weight PRIOR. All perturbed recipes of one round run as lanes of one call of the tests.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from screener.blends.blend import Blend, Report
+from screener.blends.lab_numbers import Laboratory, Number, numbers_of
+from screener.blends.lab_sheet import LabSheet
+from screener.blends.lab_start import Start, start_of
+from screener.equilibrium import Fluid
+from screener.ground.errors import InputError
+from screener.species import columns
+from screener.volatility import dvpe, dvpe_equation, reid_vapour_pressure
+from screener.volatility.distillation import STEPS
+
+PRIOR = 0.1  # weight of the start; at 0.1 it decides only what the sheet leaves open; our choice
+GUIDE = 1.0 / 3.0  # weight of the ends of a distillation
+ROUNDS = 10
+COARSE = 16  # steps of the distillation while searching; the answer is computed with the full number
+CLOSE = 0.05  # largest misfit in units of R at which the search stops
+ENOUGH = 0.01  # mean square misfit, in R, below which slopes are not worked out again; our choice
+CONTRADICTION = 3.0  # misfit in units of R from which a sheet is refused; common practice, no source
+TRIES = np.array([1.0, 0.6, 0.3, 0.1])  # parts of a step that are tried side by side
+
+
+@dataclass(frozen=True)
+class MeasuredPressure:
+    """A vapour pressure of the sheet beside the computed one of the fitted composition.
+
+    what in words; value and computed [Pa] as the method reports them; T [K]; ratio [-] measured over
+    computed pressure of the fuel's own vapour in the test: the factor for a computed vapour pressure at
+    another temperature, the equation supplying the slope.
+    """
+
+    what: str
+    value: float
+    T: float
+    computed: float
+    ratio: float
+    reproducibility: float
+
+
+@dataclass(frozen=True)
+class Fitted:
+    """Species with volume shares at 15 degC (c,) [-], numbers and their computed values (m,) in SI."""
+
+    names: tuple[str, ...]
+    volume: np.ndarray
+    numbers: tuple[Number, ...]
+    computed: np.ndarray
+    measured: tuple[MeasuredPressure, ...]
+    notes: tuple[str, ...]
+
+    @property
+    def misfits(self) -> np.ndarray:
+        """Computed less measured in units of reproducibility (m,). [-]"""
+        return (self.computed - _values(self.numbers)) / _R(self.numbers)
+
+
+def fit_sheet(sheet: LabSheet, recipe=None) -> Fitted:
+    """The composition that reproduces a sheet, from a recipe or from the sheet alone.
+
+    Raises InputError when numbers of the sheet contradict each other, naming them.
+    """
+    start = start_of(sheet, recipe)
+    numbers = numbers_of(sheet)
+    lab = Laboratory(start.names, Fluid.of(start.names), numbers, sheet.product, COARSE)
+    share = _search(lab, start)
+    volume = share @ start.groups
+    keep = volume > 1e-7 * volume.sum()
+    names = tuple(name for name, kept in zip(start.names, keep, strict=True) if kept)
+    volume = volume[keep] / volume[keep].sum()
+    final = Laboratory(names, Fluid.of(names), numbers, sheet.product, STEPS)
+    computed = final.measure(volume[None, :])[0]
+    fitted = Fitted(names, volume, numbers, computed, (), _notes(sheet, start, numbers, computed))
+    _refuse(fitted)
+    return Fitted(
+        names, volume, numbers, computed, tuple(_pressures(sheet, fitted, final.fluid)), fitted.notes
+    )
+
+
+def fitted_blend(sheet: LabSheet, start: Blend | None = None) -> Blend:
+    """`Blend.from_lab`: the fitted composition as a blend, with residuals and measured pressures."""
+    fitted = fit_sheet(sheet, start)
+    table = columns(fitted.names)
+    moles = fitted.volume * table.rho_15 / table.MW
+    residuals = tuple(
+        (one.name, float(one.value), float(computed), float(one.R))
+        for one, computed in zip(fitted.numbers, fitted.computed, strict=True)
+    )
+    before = start.report if start is not None else Report()
+    return Blend(
+        fitted.names,
+        tuple(float(n) for n in moles / moles.sum()),
+        start.parts if start is not None else (),
+        sheet.title or (f"{start.title}, fitted to its laboratory sheet" if start else "laboratory sheet"),
+        sheet.product or (start.product if start is not None else ""),
+        Report((*before.assumed, *fitted.notes), before.sources, residuals),
+        fitted.measured,
+        sheet.vapour_pressure_known,
+    )
+
+
+def _values(numbers):
+    return np.array([one.value for one in numbers])
+
+
+def _R(numbers):
+    return np.array([one.R for one in numbers])
+
+
+def _search(lab: Laboratory, start: Start) -> np.ndarray:
+    """Shares of the groups (k,) by Gauss-Newton rounds within bounds.
+
+    Slopes are kept while a round with them still halves the cost: most rounds are a handful of lanes.
+    """
+    measured, R = _values(lab.numbers), _R(lab.numbers)
+    weight = np.where([one.guide for one in lab.numbers], GUIDE, 1.0) / R
+    prior = PRIOR / start.spread
+    share, slope, miss = start.volume.copy(), None, None
+    for _ in range(ROUNDS):
+        fresh = slope is None
+        if fresh:
+            miss, slope = _slopes(lab, share, start, weight, measured)
+        now = _cost(miss, share, start, prior)
+        move = _step(slope, miss, share, start, prior)
+        tried = np.maximum(share + TRIES[:, None] * move, 0.0)  # bounds hold but for rounding
+        tried /= tried.sum(axis=-1, keepdims=True)
+        misses = (lab.measure(tried @ start.groups) - measured) * weight
+        costs = np.array([_cost(m, s, start, prior) for m, s in zip(misses, tried, strict=True)])
+        best = int(np.argmin(costs))
+        if costs[best] < now:
+            share, miss = tried[best], misses[best]
+        if np.abs(miss).max() < CLOSE or (fresh and not costs[best] < 0.97 * now):
+            break
+        if not costs[best] < 0.5 * now:
+            if costs[best] < ENOUGH * miss.size:
+                break
+            slope = None
+    return share
+
+
+def _slopes(lab, share, start, weight, measured):
+    """Misfits (m,) at the shares and their slopes (m, k), every perturbed recipe a lane."""
+    h = np.maximum(0.05 * share, 0.002)
+    values = lab.measure(np.vstack([share, share + np.diag(h)]) @ start.groups)
+    miss = (values[0] - measured) * weight
+    if not np.isfinite(miss).all():
+        _no_start(lab, values[0])
+    return miss, np.nan_to_num((values[1:] - values[0]).T / h * weight[:, None])
+
+
+def _cost(miss, share, start, prior):
+    total = (miss**2).sum() + ((prior * (share - start.volume)) ** 2).sum()
+    return total if np.isfinite(total) else np.inf
+
+
+def _step(slope, miss, share, start, prior):
+    """Move of the shares (k,) that best mends the misfits, at zero or above and adding to 1."""
+    from scipy.optimize import lsq_linear
+
+    stiff = 1e3
+    A = np.vstack([slope, np.diag(prior), stiff * np.ones((1, share.size))])
+    b = -np.concatenate([miss, prior * (share - start.volume), [stiff * (share.sum() - 1.0)]])
+    return lsq_linear(A, b, bounds=(-share - 1e-12, np.full(share.size, 0.3)), max_iter=200).x
+
+
+def _no_start(lab, values):
+    lost = ", ".join(one.name for one, v in zip(lab.numbers, values, strict=True) if not np.isfinite(v))
+    raise InputError(
+        "lab",
+        None,
+        f"no value can be computed for {lost} of the starting recipe",
+        "a recipe nearer to the sheet, or the sheet without these numbers",
+    )
+
+
+def _refuse(fitted: Fitted) -> None:
+    """Refuse a sheet whose numbers no composition reproduces together."""
+    misfits = fitted.misfits
+    heavy = [
+        i for i, one in enumerate(fitted.numbers) if not one.guide and not abs(misfits[i]) <= CONTRADICTION
+    ]
+    if not heavy:
+        return
+    order = sorted(range(len(misfits)), key=lambda i: -abs(misfits[i]))
+    told = [i for i in order if not fitted.numbers[i].guide and not abs(misfits[i]) <= 1.0][:4]
+    text = "; ".join(
+        f"{fitted.numbers[i].name}: sheet {_shown(fitted.numbers[i], fitted.numbers[i].value)}, "
+        f"nearest composition {_shown(fitted.numbers[i], fitted.computed[i])} "
+        f"({abs(misfits[i]):.1f} reproducibilities off)"
+        for i in told
+    )
+    raise InputError(
+        "lab",
+        None,
+        f"numbers of the sheet contradict each other or the starting recipe: {text}",
+        f"each within {CONTRADICTION:g} reproducibilities",
+    )
+
+
+def _shown(number: Number, value: float) -> str:
+    if number.key in ("distillation", "ibp", "fbp", "flash_point"):
+        return f"{value - 273.15:.4g} degC"
+    if number.key == "density_15":
+        return f"{value:.5g} kg/m3"
+    if number.key in ("h2s", "water"):
+        return f"{1e6 * value:.4g} ppm mass"
+    pressure = number.key in ("dvpe", "rvp", "rvpe", "vpcr_4", "vpcr_low", "tvp")
+    return f"{value / 1e3:.4g} kPa" if pressure else f"{100 * value:.4g} %"
+
+
+def _notes(sheet, start, numbers, computed):
+    notes = list(start.notes)
+    if not sheet.vapour_pressure_known:
+        notes.append("the sheet holds no vapour pressure: that of the fitted composition is not known")
+    if sheet.viscosity is not None:
+        notes.append("the viscosity of the sheet is kept beside the fit; no viscosity of a blend is computed")
+    return tuple(notes)
+
+
+def _pressures(sheet, fitted: Fitted, fluid):
+    """Measured vapour pressures with the ratio of the fuel's own vapour, the most direct first."""
+    table = columns(fitted.names)
+    z = fitted.volume * table.rho_15 / table.MW
+    z /= z.sum()
+    found = []
+    for one, computed in zip(fitted.numbers, fitted.computed, strict=True):
+        if one.key in ("tvp", "vpcr_4", "vpcr_low", "rvpe"):
+            own, change = computed, one.value - computed
+        elif one.key == "dvpe":
+            own = dvpe(fluid, z, equation=one.argument, product=sheet.product or None).P_vapour[0]
+            rule = dvpe_equation(one.argument)
+            change = float(rule.total(one.value) - rule.total(computed))
+        elif one.key == "rvp":
+            own = reid_vapour_pressure(
+                fluid, z, chamber=one.argument, product=sheet.product or None
+            ).P_vapour[0]
+            change = one.value - computed
+        else:
+            continue
+        found.append(
+            MeasuredPressure(one.name, one.value, one.T, float(computed), float(1.0 + change / own), one.R)
+        )
+    rank = ("true", "VPCR", "dvpe", "rvp", "rvpe")
+    return sorted(found, key=lambda m: next(i for i, r in enumerate(rank) if m.what.startswith(r)))
