@@ -10,7 +10,7 @@
 | cold-receipt | the receipt at least 15 K colder than the hottest vapour space | in-breathing, vacuum setting |
 | shared-header | a vapour return | vapour space, hatch, switch loading |
 | static | a receipt, and a vapour space that is not too lean with room | vapour space |
-| boil-over | a liquid with a light and a heavy end | flash point |
+| boil-over | a liquid with a light and a heavy end | boiling at the surface |
 
 The thresholds are common practice, no source; they decide what is printed, never a verdict.
 """
@@ -37,7 +37,7 @@ LIGHT, LIGHT_SHARE = ZERO_CELSIUS + 100.0, 0.05  # boiling below [K], at least t
 HEAVY, HEAVY_SHARE = ZERO_CELSIUS + 300.0, 0.10  # boiling above [K], at least this share by mass [-]
 
 _SPACE, _OXYGEN, _HATCH, _SWITCH = "vapour-space.flammable", "vapour-space.oxygen", "exposure.hatch", "switch-loading"
-_OUT, _IN, _VACUUM, _FLASH = "vents.outbreathing", "vents.inbreathing", "vents.vacuum-setting", "fire.flash-point"
+_OUT, _IN, _VACUUM, _BOILING = "vents.outbreathing", "vents.inbreathing", "vents.vacuum-setting", "boiling.surface"
 
 
 @dataclass(frozen=True)
@@ -121,7 +121,7 @@ TIED = (
     Tied("cold-receipt", (_IN, _VACUUM), _cold_receipt),
     Tied("shared-header", (_SPACE, _HATCH, _SWITCH), _header),
     Tied("static", (_SPACE,), _static),
-    Tied("boil-over", (_FLASH,), _boil_over),
+    Tied("boil-over", (_BOILING,), _boil_over),
 )
 
 

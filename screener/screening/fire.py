@@ -15,11 +15,13 @@ from screener.screening.fire_words import ways_in
 from screener.screening.vapour import FLOATING, _barometer_missing
 from screener.screening.wording import lines, say
 from screener.states.fire import COLD, FLASH_SPREAD, HOT, INSIDE, RICH
-from screener.states.lanes import BEST, RECEIPT
+from screener.states.lanes import BEST, HEEL, RECEIPT
 
 ESTIMATES_CARRIED = 0.10  # share of the vapour that may rest on estimated limits before it caps a verdict
 OXYGEN_OF_AIR = 0.2095  # dry air, where a purge starts; from memory, unverified [-]
 FLASH_REFERENCE = 100.0  # below the flash point, where no room is used: own choice [K]
+# Categories 1 and 2 of GHS and of 29 CFR 1910.106(a)(19) lie below this flash point (73.4 degF) [K].
+ALWAYS_ABOVE = 23.0 + ZERO_CELSIUS
 STATIC_ORDER = ("low vapour pressure", "intermediate vapour pressure", "high vapour pressure")
 
 
@@ -196,6 +198,10 @@ def flash(context: Context) -> Draft:
     key = "fire.flash-point"
     if context.case.tank.kind == "pressure-vessel":
         return _draft(key, skip=say("skip", "pressure-vessel"))
+    own = [k for k in context.liquids() if k in (RECEIPT, HEEL)]
+    if all(context.fire.flash.T[context.i, k] < ALWAYS_ABOVE for k in own):
+        # Mixtures of such liquids are no different; one that is contaminated by such a liquid is judged.
+        return _draft(key, skip=say("skip", "always-above-flash"))
     rows = tuple(_flash_lane(context, k) for k in context.liquids())
     return _draft(key, lanes=rows, range_covers=("weather", "inputs", "method"))
 

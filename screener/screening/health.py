@@ -28,6 +28,9 @@ def hatch(context: Context) -> Draft:
     if context.case.tank.kind == "pressure-vessel":
         return Draft(criterion(key), skip=say("skip", "pressure-vessel"), **fields)
     unknown = _barometer_missing(context) or sour_unknown(context)
+    if context.case.tank.open_gauging is not True and not sour_unknown(context):
+        said = "hatch-not-stated" if context.case.tank.open_gauging is None else "hatch-closed"
+        return Draft(criterion(key), skip=say("skip", said), **fields)
     found = limits_of(context)
     if not found:
         return Draft(criterion(key), skip="" if unknown else say("skip", "no-exposure-limit"), unknown=unknown, **fields)

@@ -97,6 +97,7 @@ class Tank:
     vapour_space_temperature: float | None = None  # hottest, if known [K]
     vapour_space_oxygen: float | None = None  # measured [mole fraction]
     previous_contents: str | None = None  # stock the tank held before it was emptied
+    open_gauging: bool | None = None  # people gauge or sample through an open hatch; None: not stated
     sour_service: bool | None = None  # holds liquid with hydrogen sulfide; None: not stated
     contents: Contents | None = None
 

@@ -45,7 +45,7 @@ def tank(**changes) -> Tank:
     base = Tank(
         "fixed-roof", 24.0, 14.6, levels=Levels(2.0, 9.0, 13.1), surface="white paint, new",
         design_overpressure=2000.0, design_vacuum=600.0, vents=(vent(),),
-        contents=Contents(blend(HEAVY), 1100.0, ZERO + 20.0),
+        contents=Contents(blend(HEAVY), 1100.0, ZERO + 20.0), open_gauging=True,
     )  # fmt: skip
     return replace(base, **changes)
 

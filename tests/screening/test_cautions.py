@@ -26,7 +26,7 @@ RULES = [
     ("cold-receipt", "vents.inbreathing", case(line=COLD_RECEIPT), case(line=line(receipt=None))),
     ("shared-header", "exposure.hatch", case(tank=tank(vapour_return=True)), case()),
     ("static", "vapour-space.flammable", case(), case(blend=LEAN, tank=tank(contents=None), site=site(month="Jan"))),
-    ("boil-over", "fire.flash-point", case(blend=WIDE), case()),
+    ("boil-over", "boiling.surface", case(blend=WIDE), case()),
 ]
 
 

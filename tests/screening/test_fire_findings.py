@@ -61,7 +61,7 @@ def test_a_gasoline_at_20_degrees_in_a_vented_tank_never_has_room():
     for answer in answers:
         found = {f.id: f for f in answer.findings}
         assert found[SPACE].verdict in ("near", "beyond")
-        assert {found[FLASH].verdict, found[HATCH].verdict} == {"beyond"}
+        assert (found[FLASH].verdict, found[HATCH].verdict) == ("skipped", "beyond")
 
 
 def test_nor_in_any_output_of_it():
@@ -84,7 +84,11 @@ def test_nor_in_any_output_of_it():
 )
 def test_the_usual_recipes_come_out_judged(recipe):
     found = of(case(blend=recipe, tank=BARE))
-    assert {found[SPACE].verdict, found[FLASH].verdict} <= {"beyond", "near", "room"}
+    assert found[SPACE].verdict in ("beyond", "near", "room")
+    # Below 23 degC a flash point decides nothing: such a liquid is always stored above it.
+    always_above = recipe.title.endswith(("base", "condensate"))
+    assert (found[FLASH].verdict == "skipped") == always_above
+    assert always_above or found[FLASH].verdict in ("beyond", "near", "room")
     assert found[HATCH].verdict in ("beyond", "near", "room") or recipe.title.endswith("diesel")
 
 
@@ -254,6 +258,18 @@ def test_no_hydrogen_sulfide_stated_is_not_none_where_the_tank_is_sour():
     assert of(case(blend=trace, tank=sour, site=JANUARY))[HATCH].verdict == "unknown"
     zero = replace(case(blend=trace, tank=sour, site=JANUARY), hydrogen_sulfide=0.0)
     assert of(zero)[HATCH].verdict == "room"
+
+
+def test_the_hatch_is_judged_only_where_somebody_opens_it():
+    closed, unsaid = (of(case(tank=tank(open_gauging=said)))[HATCH] for said in (False, None))
+    assert closed.verdict == unsaid.verdict == "skipped"
+    assert "tank.open_gauging" in unsaid.reason
+
+
+def test_a_contaminated_distillate_is_judged_though_its_mixture_flashes_cold():
+    """Gasoline filled on a heel of diesel: the heel is a liquid whose flash point matters."""
+    heel = replace(tank().contents, blend=stock("diesel"))
+    assert of(case(blend=stock("summer gasoline base"), tank=tank(contents=heel)))[FLASH].verdict == "beyond"
 
 
 # Switch loading
