@@ -8,6 +8,7 @@ the small weight PRIOR. All perturbed recipes of one round run as lanes of one c
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import lru_cache
 
 import numpy as np
 
@@ -87,6 +88,7 @@ def fit_sheet(sheet: LabSheet, recipe=None) -> Fitted:
     )
 
 
+@lru_cache(maxsize=16)
 def fitted_blend(sheet: LabSheet, start: Blend | None = None) -> Blend:
     """`Blend.from_lab`: the fitted composition as a blend, with residuals and measured pressures."""
     fitted = fit_sheet(sheet, start)

@@ -62,7 +62,7 @@ def _table(values: Values, declared: str, path: str, table: Mapping, tables: Tab
         place = join(path, name)
         if name in table:
             _entry(values, key, place, table[name], tables)
-        else:
+        elif not key.unless or key.unless not in table:
             _absent(values, key, place, tables)
     for name in table:
         if name not in known:

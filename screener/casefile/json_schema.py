@@ -23,9 +23,13 @@ def schema() -> dict:
 
 def _object(parent: str) -> dict:
     properties = {name: _entry(key) for name, key in children(parent).items()}
-    required = [name for name, key in children(parent).items() if key.required]
+    required = [name for name, key in children(parent).items() if key.required and not key.unless]
+    either = [[name, key.unless] for name, key in children(parent).items() if key.unless]
     made = {"type": "object", "properties": properties, "additionalProperties": False}
-    return {**made, "required": required} if required else made
+    made |= {"required": required} if required else {}
+    for names in either:
+        made["anyOf"] = [{"required": [name]} for name in names]
+    return made
 
 
 def _entry(key: Key) -> dict:

@@ -19,6 +19,7 @@ from screener.casefile.keys import (
     TEXT,
     Key,
 )
+from screener.casefile.lab_keys import LAB_KEYS
 
 OVER, UNDER = "Pa over barometer", "Pa under barometer"
 ROOFS = ("fixed-roof", "internal-floating-roof", "external-floating-roof", "domed-floating-roof")
@@ -27,7 +28,7 @@ BASES = ("volume", "mass", "mole")
 DATA_SHEET, DRAWING, CERTIFICATE = "tank data sheet", "tank drawing", "certificate of the vent"
 
 
-def _parts(path: str, whose: str) -> tuple[Key, ...]:
+def _parts(path: str, whose: str, unless: str = "") -> tuple[Key, ...]:
     """Keys of a list of parts, of the receipt or of the heel."""
     return (
         Key(f"{path}.basis", CHOICE, f"What the shares of {whose} count", "volume", choices=BASES,
@@ -35,7 +36,7 @@ def _parts(path: str, whose: str) -> tuple[Key, ...]:
         Key(f"{path}.at", CHOICE, "Temperature at which shares of volume hold", "15 degC",
             choices=("15 degC", "60 degF"), default="15 degC", note="volumes counted at 15 degC"),
         Key(f"{path}.scale", FLAG, "Bring shares that miss 100 % to 100 %", "false"),
-        Key(f"{path}.parts[]", ROWS, f"What {whose} is made of", required=True,
+        Key(f"{path}.parts[]", ROWS, f"What {whose} is made of", required=True, unless=unless,
             example='[ { stock = "summer gasoline base", share = "100 %" } ]'),
         Key(f"{path}.parts[].stock", STOCK, "Blendstock of the tables; `screener blendstocks` lists them",
             "summer gasoline base", where="blend sheet"),
@@ -60,12 +61,11 @@ _CASE = (
 
 _BLEND = (
     Key("blend", TABLE, "The liquid that is received", required=True, section=True),
-    *_parts("blend", "the receipt"),
+    *_parts("blend", "the receipt", unless="lab"),
     Key("blend.h2s_in_liquid", "share", "Hydrogen sulfide dissolved in the receipt, by mass, beside its parts",
         "20 ppm mass", unit="-", low="0 ppm", high="5 %", usual="0 to 100 ppm mass in crude and condensate",
         where="certificate of analysis"),
-    Key("blend.lab", LATER, "Laboratory sheet", section=True,
-        problem="laboratory sheets are not read yet; describe the blend by parts"),
+    *LAB_KEYS,
 )  # fmt: skip
 
 _SHELL = (

@@ -43,6 +43,7 @@ class Key:
     unit: str = ""
     choices: tuple[str, ...] = ()
     required: bool = False
+    unless: str = ""  # name of a key beside it that takes the place of this required one
     default: object = None
     note: str = ""  # what the default means and why it was taken
     quality: str = "given"
@@ -52,7 +53,7 @@ class Key:
     @property
     def name(self) -> str:
         """Last part of the path: 'set'."""
-        return self.path.rpartition(".")[2].removesuffix("[]")
+        return self.path.rpartition(".")[2].removesuffix("[]").strip('"')
 
     @property
     def parent(self) -> str:
@@ -70,7 +71,8 @@ class Key:
         if not self.example:
             return f"[{self.path}]"
         bare = self.kind in (TABLE, ROWS, PACKS, FLAG, COUNT)
-        return f"{self.name} = {self.example}" if bare else f'{self.name} = "{self.example}"'
+        name = self.path.rpartition(".")[2].removesuffix("[]")
+        return f"{name} = {self.example}" if bare else f'{name} = "{self.example}"'
 
     @property
     def allowed(self) -> str:

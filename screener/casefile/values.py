@@ -12,7 +12,9 @@ from functools import lru_cache
 from screener.casefile import keys as k
 from screener.casefile.keys import Key
 from screener.casefile.quantities import KINDS
+from screener.casefile.spellings import API
 from screener.casefile.units import expected, measure, number_text, quantity, short
+from screener.ground.constants import T_15C, T_60F
 from screener.ground.errors import InputError, UnitError, UnknownName
 
 
@@ -24,6 +26,7 @@ class Tables:
     stock: Callable[[str], str]
     blend: Callable[..., object]  # (shares, basis=, at=) -> Blend
     packs: Callable[[], tuple[str, ...]]  # names of the rule packs
+    lab: Callable[..., object]  # (sheet, start blend or None) -> Blend
 
 
 @lru_cache(maxsize=1)
@@ -33,7 +36,9 @@ def shipped_tables() -> Tables:
     from screener.species import find
     from screener.tank import rule_packs
 
-    return Tables(lambda name: find(name).name, lambda name: stock(name).name, Blend.of, rule_packs)
+    return Tables(
+        lambda name: find(name).name, lambda name: stock(name).name, Blend.of, rule_packs, Blend.from_lab
+    )
 
 
 @dataclass(frozen=True)
@@ -73,12 +78,32 @@ def fault(key: Key, path: str, value: object, problem: str) -> InputError:
 
 def _quantity(key: Key, value: object, path: str, tables: Tables) -> Taken:
     try:
+        if key.path == "blend.lab.density":
+            return _density(key, value, path)
         got = measure(value, key.kind, path)
     except UnitError as error:
         more = f", {key.allowed}" if key.allowed else ""
         raise UnitError(path, error.text, error.problem, expected(key.kind) + more) from error
     _check_range(key, path, value, got.value, _bound(key.low, key.kind), _bound(key.high, key.kind))
     return Taken(key, path, entered(value), got.value, got.mark, quality=key.quality)
+
+
+def _density(key: Key, value: object, path: str) -> Taken:
+    """Density at 15 degC; one at 60 degF, an API gravity among them, is brought to 15 degC."""
+    number, at, where = value.partition(" at ") if isinstance(value, str) else (value, "", "")
+    got = measure(number, key.kind, path)
+    T = quantity(where, "temperature", path) if at else (T_60F if got.mark == API else T_15C)
+    if min(abs(T - T_60F), abs(T - T_15C)) > 0.01:
+        problem = f"a density at '{short(where.strip())}' is not read; write it at 15 degC or 60 degF"
+        raise fault(key, path, value, problem)
+    _check_range(key, path, value, got.value, _bound(key.low, key.kind), _bound(key.high, key.kind))
+    rho, note = got.value, ""
+    if abs(T - T_60F) <= 0.01:
+        from screener.volatility.volume_correction import density_60F
+
+        rho = got.value * got.value / float(density_60F(got.value)[0])
+        note = f"given at 60 degF; {rho:.5g} kg/m3 at 15 degC after API MPMS 11.1"
+    return Taken(key, path, entered(value), rho, note=note, quality=key.quality)
 
 
 @lru_cache(maxsize=256)

@@ -49,6 +49,8 @@ def test_every_declared_key_has_its_row_in_some_kind_of_tank():
             text.insert(base, {"species": "ethanol", "share": "1 %"})
             text.insert(base, {"stock": "diesel", "share": "1 %"})
         text.insert("tank.vents", {"count": "1"})
+        text.insert("blend.lab.vpcr", {"ratio": "4"})
+        text.insert("blend.lab.true_vapour_pressure", {"pressure": "38 kPa"})
         shown |= {schema.pattern(path) for path in paths(text)}
     wanted = {
         key.path

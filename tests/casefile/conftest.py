@@ -23,6 +23,17 @@ class Shares:
     at: str
 
 
+@dataclass(frozen=True)
+class Fitted:
+    """Stands for a blend that was fitted to a sheet alone."""
+
+    sheet: object
+
+
+def _fitted(sheet, start):
+    return Fitted(sheet) if start is None else start
+
+
 def _look(table: dict, kind: str):
     def find(name: str) -> str:
         if name.lower() not in table:
@@ -39,4 +50,4 @@ def _blend(shares, basis="volume", at="15 degC"):
 
 @pytest.fixture(scope="session")
 def tables() -> Tables:
-    return Tables(_look(SPECIES, "species"), _look(STOCKS, "stock"), _blend, lambda: PACKS)
+    return Tables(_look(SPECIES, "species"), _look(STOCKS, "stock"), _blend, lambda: PACKS, _fitted)

@@ -51,7 +51,7 @@ def _put(place: str, value: object) -> CaseText:
     for step in before:
         holder = holder[step.removesuffix("[0]")]
         holder = holder[0] if step.endswith("[0]") else holder
-    holder[name.removesuffix("[0]")] = value
+    holder[name.removesuffix("[0]").strip('"')] = value
     return text
 
 

@@ -205,7 +205,7 @@ def test_a_blend_that_cannot_be_made_is_a_fault_of_its_part(tables):
     def refuse(shares, basis, at):
         raise InputError("parts[0]", "x", "no liquid volume of x at 60 degF", "shares by mass or mole")
 
-    odd = type(tables)(tables.species, tables.stock, refuse, tables.packs)
+    odd = type(tables)(tables.species, tables.stock, refuse, tables.packs, tables.lab)
     with pytest.raises(CaseErrors, match=r"blend\.parts\[0\]: no liquid volume"):
         read_case(SMALLEST, tables=odd)
 
