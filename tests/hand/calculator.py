@@ -28,8 +28,9 @@ R, G = 8.314462618, 9.80665
 STOCKS = Path(__file__).resolve().parents[2] / "data" / "stocks"
 ALIAS = {"isooctane": "2,2,4-trimethylpentane"}
 CAS_FIX = {"trans-2-hexene": "4050-45-7"}
-# Two species without a row in the library's group table, put together by hand.
-GROUPS = {"cis-1,3-dimethylcyclopentane": {1: 2, 78: 3, 79: 2}, "cis-3-hexene": {1: 2, 2: 2, 6: 1}}
+# Three species without a row in the library's group table, put together by hand.
+GROUPS = {"cis-1,3-dimethylcyclopentane": {1: 2, 78: 3, 79: 2}, "cis-3-hexene": {1: 2, 2: 2, 6: 1},
+          "trans-decalin": {78: 8, 79: 2}}
 ESTIMATED = {"BOILING_CRITICAL", "LEE_KESLER_PSAT", "AMBROSE_WALTON", "SANJARI", "EDALAT", "EOS",
              "LANDOLT", "VDI_TABULAR"}
 VOLUME_CURVES = {"DIPPR_PERRY_8E", "VDI_PPDS", "COOLPROP", "HEOS_FIT", "MMSNM0FIT", "RACKETTFIT",

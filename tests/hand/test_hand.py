@@ -15,13 +15,17 @@ HERE = Path(__file__).resolve().parent
 EXAMPLES = HERE.parents[1] / "examples"
 HAND = tomllib.loads((HERE / "hand_values.toml").read_text(encoding="utf-8"))
 NOTES = {"summer_e10_floating_roof": "summer_e10.md", "winter_gasoline_fixed_roof": "winter_gasoline.md",
-         "warm_condensate_receipt": "warm_condensate.md"}
+         "warm_condensate_receipt": "warm_condensate.md", "winter_e85_fixed_roof": "winter_e85.md",
+         "summer_gasoline_small_tank": "summer_gasoline.md", "jet_kerosene_after_gasoline": "jet_kerosene.md"}
 ROWS = [(case, finding) for case, findings in HAND.items() for finding in findings]
 # Two routes with the same composition: other vapour-pressure curves, an activity model with a virial gas
 # against an equation of state. The figure is the one asked for; the means differ by 1.4 % at most.
 VALUE = 0.02
 # Limits are entered in the case or read in a rule: only digits written short in the hand values.
 LIMIT = 1e-5
+# Limits that are worked out themselves: flash points in kelvin agree within 0.5 K, the limits of a vapour
+# depend on its composition, which the two routes see 1 % apart.
+COMPUTED = {"fire.flash-point": 0.5 / 320.0, "vapour-space.flammable": 0.01, "switch-loading": 0.01}
 
 
 @functools.cache
@@ -39,7 +43,11 @@ def test_every_example_and_every_finding_has_a_hand_calculation():
 def test_value_and_limit_agree(case, finding):
     hand, found = HAND[case][finding], findings(case)[finding]
     limit = found.limit_high if found.limit_low is None else found.limit_low
-    for name, got, rel in (("value", found.value, VALUE), ("limit", limit, LIMIT)):
+    of_limit = COMPUTED.get(finding, LIMIT)
+    rows = [("value", found.value, VALUE), ("limit", limit, of_limit)]
+    if found.kind == "keep out of":
+        rows.append(("limit_high", found.limit_high, of_limit))
+    for name, got, rel in rows:
         if name not in hand:
             assert got is None, (name, got)
         else:
