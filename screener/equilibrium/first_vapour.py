@@ -22,10 +22,9 @@ from screener.equilibrium.phase import DENSE, reduced_volume
 from screener.equilibrium.results import LaneAnswer
 from screener.equilibrium.rows import row_max
 from screener.equilibrium.saturation import bubble_pressure
-from screener.equilibrium.second_liquid import TWO_LIQUIDS, full_check
+from screener.equilibrium.second_liquid import NO_VAPOUR_LEFT, TWO_LIQUIDS, full_check
 from screener.equilibrium.stability import FEW
 from screener.equilibrium.two_phase import TRIVIAL, Answer, Split, again, density
-from screener.ground.constants import ATMOSPHERE
 from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
 
@@ -142,7 +141,7 @@ def _settle(out, lanes, fluid, T, z, P_one):
     for name, value in (("P", np.nan), ("y", np.nan), ("x", np.nan), ("residual", np.nan), ("balance", np.nan)):
         out[name][lanes] = value
     out["liquids"][lanes] = 0
-    P = np.where(np.isfinite(P_one), P_one, ATMOSPHERE)
+    P = np.where(np.isfinite(P_one), P_one, NO_VAPOUR_LEFT)
     pair, every = Answer(n, z.shape[1], np.full(n, int(Status.OUT_OF_STEPS))), np.arange(n)
     ln_phi = state.ln_phi(P, z, "L")
     found, _, _ = full_check(fluid, state, P, z, z, ln_phi, fluid.wilson_K(T, P))

@@ -14,7 +14,7 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.fixed_point import solve
-from screener.equilibrium.phase import Feed
+from screener.equilibrium.phase import DENSE, Feed, reduced_volume
 from screener.equilibrium.results import TPD_ZERO, Flash, bad_status
 from screener.equilibrium.rows import row_max
 from screener.equilibrium.second_liquid import DOUBTFUL, dry_ethanol, known_check
@@ -132,12 +132,17 @@ def _hold_together(answer, lanes, doubtful, problem, wilson):
     ln_z = np.log(np.maximum(held.z, FEW))
     found = trials_from(held.state, held.P, held.z, ln_phi, (ln_z + np.log(wilson[doubtful]))[None], "V")
     answer.forget(here)
-    light = found.tpd < -TPD_ZERO
-    some = np.flatnonzero(found.converged & ~light)
+    trial = held.state.mix(np.where(np.isfinite(found.w), found.w, held.z))
+    vapour = reduced_volume(trial, held.P, trial.Z(held.P, "V")) > DENSE  # else it is the liquid held not to exist
+    light = (found.tpd < -TPD_ZERO) & vapour
+    some = np.flatnonzero((found.converged | ~vapour) & ~light)
     K = np.where((held.z > 0.0) & (found.tpd > 0.0)[:, None], np.exp(found.ln_W - ln_z), np.nan)
     answer.one_phase(here[some], held.z[some], np.ones(some.size, dtype=bool), K[some], found.tpd[some])
     some = np.flatnonzero(light)
-    if some.size:
-        again(answer, here[some], held.take(some), "LV", (found.ln_W - ln_z)[some])
+    if some.size:  # from the vapour itself, and not watched over: the two liquids have less energy
+        pair, present = held.take(some), held.z[some] > 0.0
+        fixed = solve(pair, np.where(present, (found.ln_W - ln_z)[some], 0.0), present, reach=REACH)
+        beta, x, y = pair.phases(fixed.u)
+        put_two(answer, here[some], np.flatnonzero(fixed.converged & (beta > 0.0) & (beta < 1.0)), pair, beta, x, y, fixed)
         answer.forget(here[some][np.isfinite(answer.beta_W[here[some]])])
     answer.checks[here[answer.phases[here] > 0]] = DOUBTFUL

@@ -65,12 +65,22 @@ def shares_of_phases(z, ln_e, beta):
         free = (beta > 0.0) | (slope < 0.0)
         if (np.abs(np.where(free, slope, 0.0)) <= SHARE_ZERO).all():
             break
-        matrix = np.where(free[:, :, None] & free[:, None, :], bend, 0.0)
-        matrix += np.eye(k) * np.where(free, 1e-13 * (1.0 + np.einsum("njj->nj", bend)), 1.0)[:, None, :]
-        step = np.linalg.solve(matrix, -np.where(free, slope, 0.0)[:, :, None])[:, :, 0]
+        for _ in range(k):
+            step = _newton(bend, slope, free)
+            held = (beta == 0.0) & (step < 0.0)  # pushed below zero by the others: stays there
+            if not held.any():
+                break
+            free &= ~held
         beta, value, slope, bend, ratio = _descend(z, e, beta, value, slope, bend, ratio, step)
     x = z[:, None, :] * ratio
     return beta / beta.sum(axis=1, keepdims=True), x / x.sum(axis=2, keepdims=True)
+
+
+def _newton(bend, slope, free):
+    """Newton step (n, k) in the shares that are free."""
+    matrix = np.where(free[:, :, None] & free[:, None, :], bend, 0.0)
+    matrix += np.eye(free.shape[1]) * np.where(free, 1e-13 * (1.0 + np.einsum("njj->nj", bend)), 1.0)[:, None, :]
+    return np.linalg.solve(matrix, -np.where(free, slope, 0.0)[:, :, None])[:, :, 0]
 
 
 def _convex(z, e, beta):

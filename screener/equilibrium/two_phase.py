@@ -20,7 +20,7 @@ from screener.ground.status import Status
 TRIVIAL = 1e-4  # largest |ln K| of two phases that are one; critical splits shown apart start near 1e-2
 LARGEST = 300.0  # bound of |ln K|: keeps squares of exp in double precision
 REACH = 1.0  # longest accelerated step in ln K
-MOST_AGAIN = 100  # substitutions of a lane that lost its way
+MOST_AGAIN = 400  # substitutions of a lane that lost its way: next to a plait point they crawl
 
 
 class Split:

@@ -135,7 +135,8 @@ class UnifacAt:
         has = m.q > 0.0
         surface = x @ m.q
         theta = (x @ m.QN) / surface[:, None]
-        theta = np.broadcast_to(theta, (max(x.shape[0], self.psi.shape[0]), theta.shape[1]))
+        rows = self.psi.shape[0] if x.shape[0] == 1 else x.shape[0]
+        theta = np.broadcast_to(theta, (rows, theta.shape[1]))
         g = _group_terms(theta[:, None, :], self.psi)[:, 0, :]
         ln_gamma = g @ m.QN.T
         ln_gamma -= self.pure

@@ -48,7 +48,8 @@ class WaterTolerance(LaneAnswer):
     at 15 degC before mixing, NaN where a volume is not known; x (n, c) [-] the
     blend with that water, x_W (n, c) [-] the liquid that settles; residual (n,)
     [-] the tangent-plane distance over RT left between them, below 1e-9 but
-    next to a point where the two liquids are one; checks in words. NO_SOLUTION where no
+    next to a point where the two liquids are one; checks in words, doubtful
+    where measured blends of ethanol hold more water than this. NO_SOLUTION where no
     amount of water splits the blend, LIQUID_SPLITS where it splits without any.
     """
 
@@ -170,19 +171,20 @@ def _hold(out, lanes, fluid, T, z, i: int):
         below = _look(fluid, T[some], _with_water(z[some], w * (1.0 - BACK), i))
         with np.errstate(invalid="ignore"):
             earlier = below.tpd < -ENOUGH
-        _take_in(out, lanes[some[~earlier]], z[some], i, w, ln_W, left, ~earlier)
+        _take_in(out, lanes[some[~earlier]], fluid, z[some], i, w, ln_W, left, ~earlier)
         some = some[earlier]  # another liquid splits off first: follow that one
         row = some * k + first[some]
         found.ln_W[row], found.tpd[row] = below.ln_W[earlier], below.tpd[earlier]
 
 
-def _take_in(out, lanes, z, i: int, w, ln_W, left, stands):
+def _take_in(out, lanes, fluid, z, i: int, w, ln_W, left, stands):
     """Write down the crossings that stand."""
     w, z, W = w[stands], z[stands], np.exp(ln_W[stands])
     out["water"][lanes], out["residual"][lanes], out["x"][lanes] = w, left[stands], _with_water(z, w, i)
     out["x_W"][lanes] = np.where(out["x"][lanes] > 0.0, W, 0.0)
     out["x_W"][lanes] /= out["x_W"][lanes].sum(axis=1, keepdims=True)
-    out["status"][lanes], out["checks"][lanes] = Status.CONVERGED, TESTED
+    out["status"][lanes] = Status.CONVERGED
+    out["checks"][lanes] = np.where(dry_ethanol(fluid, out["x"][lanes]), DOUBTFUL, TESTED)
 
 
 def _crossing(fluid, T, z, i: int, low, high, ln_W, f_high):
