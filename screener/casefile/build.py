@@ -76,6 +76,7 @@ def _tank(values: Values, heel) -> Tank:
         vapour_space_temperature=v("tank.vapour_space_temperature"),
         vapour_space_oxygen=v("tank.vapour_space_oxygen"),
         previous_contents=v("tank.previous_contents"),
+        open_gauging=v("tank.open_gauging"),
         sour_service=v("tank.sour_service"),
         contents=Contents(heel, v("tank.contents.volume"), v("tank.contents.temperature")) if heel else None,
     )

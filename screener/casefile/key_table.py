@@ -138,6 +138,8 @@ _ROOF_AND_HEEL = (
         "4 mol%", unit="-", low="0 %", high="21 %", quality="measured", where="oxygen meter at the hatch or roof"),
     Key("tank.previous_contents", STOCK, "Blendstock the tank held before, if it was not freed of gas since",
         "summer gasoline base", where="tank log"),
+    Key("tank.open_gauging", FLAG, "People gauge or sample through an open hatch of this tank", "true",
+        where="site procedures"),
     Key("tank.sour_service", FLAG, "The tank holds liquid with hydrogen sulfide, now or before", "false",
         where="tank log"),
     Key("tank.contents", TABLE, "What is in the tank now; leave out if it is empty", section=True),
