@@ -10,7 +10,7 @@ from screener.ground.errors import UnknownName
 SPECIES = {"ethanol": "ethanol", "ethyl alcohol": "ethanol", "64-17-5": "ethanol", "n-butane": "n-butane",
            "isopentane": "isopentane", "toluene": "toluene"}  # fmt: skip
 _BASES = ["summer gasoline base", "winter gasoline base", "field butane", "heavy naphtha"]
-STOCKS = {name: name for name in [*_BASES, "denatured ethanol", "condensate"]}
+STOCKS = {name: name for name in [*_BASES, "denatured ethanol", "condensate", "jet kerosene", "diesel"]}
 PACKS = ("us-40cfr60-kb", "eu-94-63")
 
 
