@@ -25,6 +25,7 @@ from screener.fire import (
 from screener.ground.constants import ZERO_CELSIUS
 from screener.screening.context import Context
 from screener.screening.finding import Fact, Information
+from screener.screening.health import hatch_information
 from screener.screening.wording import say
 from screener.species import find
 from screener.states.fire import FLASH_SPREAD, INSIDE, LEAN, RICH
@@ -47,7 +48,7 @@ def fire_information(context: Context) -> tuple[Information, ...]:
         rows.append(_liquid(context, "heel", heel, HEEL))
         rows.append(_contamination(context, "heel", heel, "receipt", case.blend))
         rows.append(_contamination(context, "receipt", case.blend, "heel", heel))
-    return tuple(row for row in rows if row.facts)
+    return tuple(row for row in rows if row.facts) + hatch_information(context)
 
 
 @lru_cache(maxsize=64)

@@ -9,11 +9,11 @@ import numpy as np
 from screener.screening.context import Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
-from screener.screening.finding import Fact
+from screener.screening.finding import Fact, Information
 from screener.screening.vapour import _barometer_missing
 from screener.screening.wording import lines, say
 from screener.states.fire import HOT
-from screener.states.lanes import BEST, LIQUIDS, SOUR_GAS, method_spread
+from screener.states.lanes import BEST, HEEL, LIQUIDS, RECEIPT, SOUR_GAS, method_spread
 
 JUDGED = ("TWA", "STEL", "ceiling", "peak")  # kinds of limit; IDLH is no limit of exposure and is only shown
 # Mark of a limit in the table of exposure limits -> mark of a finding; anything else counts as remembered.
@@ -107,6 +107,32 @@ def _range(context: Context, k: int) -> tuple[float, float]:
     return 1.0 - s, 1.0 + s
 
 
+def hatch_information(context: Context) -> tuple[Information, ...]:
+    """The same concentrations where nobody is said to open a hatch: numbers without a verdict."""
+    if context.case.tank.open_gauging is True or context.case.tank.kind == "pressure-vessel":
+        return ()
+    rows = []
+    for k in (k for k in context.liquids() if k in (RECEIPT, HEEL)):
+        facts = _substances(context, limits_of(context), _at(context, k))
+        facts = tuple(f for f in facts if math.isfinite(f.value) and f.value > 0.0)
+        if facts:
+            title = say("health", "information", liquid=context.liquid_name(k))
+            rows.append(Information(title, facts, say("note", "hatch")))
+    return tuple(rows)
+
+
+def _substances(context: Context, found, at: int) -> list[Fact]:
+    """Concentrations of the substances named most, each with the limit it passes by most."""
+    facts = []
+    for name in (name for name in SHOWN if any(e.limit.of == name for e in found)):
+        one = max((e for e in found if e.limit.of == name), key=lambda e: float(e.ratio[at]))
+        limit = one.limit
+        note = f"{limit.kind} {limit.ppm:g} ppm, {limit.agency}, {limit.date}, {limit.evidence}"
+        facts.append(Fact(f"{name}, by volume", float(one.ppm[at]), "ppm", note))
+        facts.append(Fact(f"{name}, by mass", float(one.mg_m3[at]), "mg/m3", f"limit {limit.mg_m3:.3g} mg/m3"))
+    return facts
+
+
 def _facts(context: Context, worst, found, at: int) -> tuple[Fact, ...]:
     """The worst limit, and with a full screening the concentrations of the substances named most."""
     limit = worst.limit
@@ -117,12 +143,7 @@ def _facts(context: Context, worst, found, at: int) -> tuple[Fact, ...]:
         Fact("volumes of air and vapour that bring it to the limit", float(worst.dilution[at]), "-"),
     ]
     if context.full:
-        shown = [name for name in SHOWN if any(e.limit.of == name for e in found)]
-        for name in shown:
-            one = max((e for e in found if e.limit.of == name), key=lambda e: float(e.ratio[at]))
-            note = f"{one.limit.kind} {one.limit.ppm:g} ppm, {one.limit.agency}, {one.limit.date}, {one.limit.evidence}"
-            facts.append(Fact(f"{name}, by volume", float(one.ppm[at]), "ppm", note))
-            facts.append(Fact(f"{name}, by mass", float(one.mg_m3[at]), "mg/m3", f"limit {one.limit.mg_m3:.3g} mg/m3"))
+        facts += _substances(context, found, at)
         if not states_sour_gas(context):
             facts.append(Fact(SOUR_GAS, say("health", "sour-not-stated")))
     return tuple(f for f in facts if not isinstance(f.value, float) or math.isfinite(f.value))

@@ -264,6 +264,10 @@ def test_the_hatch_is_judged_only_where_somebody_opens_it():
     closed, unsaid = (of(case(tank=tank(open_gauging=said)))[HATCH] for said in (False, None))
     assert closed.verdict == unsaid.verdict == "skipped"
     assert "tank.open_gauging" in unsaid.reason
+    shown = [i for i in screen(case(tank=tank(open_gauging=False))).information if "undiluted" in i.title]
+    assert [i.title.partition(":")[0] for i in shown] == ["receipt", "heel"]
+    assert {"n-hexane, by volume", "toluene, by mass"} <= {fact.label for fact in shown[0].facts}
+    assert not [i for i in screen(case()).information if "undiluted" in i.title]
 
 
 def test_a_contaminated_distillate_is_judged_though_its_mixture_flashes_cold():
