@@ -125,14 +125,14 @@ class Desk:
 
     def sections(self, step: str) -> list[fields.Section]:
         """Sections of an input step; below the inputs of a liquid what the liquid amounts to."""
-        made = fields.sections(step, self.text, self.known)
         liquid = {"blend": "receipt", "tank": "heel"}.get(step)
         revision, screening = self._told
         lines = information(screening, liquid) if liquid and self.session.screening else []
+        told = []
         if lines:
             note = say("information", "note" if revision == self.session.revision else "stale")
-            made.append(fields.told(say("information", "heading"), note, lines))
-        return made
+            told.append(fields.told(say("information", "heading"), note, lines))
+        return fields.sections(step, self.text, self.known, told)
 
     # how the steps stand
 

@@ -16,6 +16,7 @@ from screener.app.words import say, table
 from screener.casefile import keys as schema
 
 PREFIX = {"blend": "blend", "tank": "tank", "site": "site", "line": "line"}
+LAB = "blend.lab"
 PART_COLUMNS = ("share", "quality")
 _VALUE_COLUMNS = (
     Column("", least=18),
@@ -46,15 +47,16 @@ class Known:
 NOTHING = Known({}, {})
 
 
-def sections(step: str, text, known: Known) -> list[Section]:
-    """All sections of an input step."""
+def sections(step: str, text, known: Known, told: Iterable[Section] = ()) -> list[Section]:
+    """All sections of an input step; those that are only told stand before the long laboratory sheet."""
     if step == "blend":
-        return [part_section("blend", text, known), *_groups("blend", text, known)]
+        made = [part_section("blend", text, known), *_groups("blend", text, known)]
+        return [*made, *told, *_groups(LAB, text, known)]
     prefix = PREFIX[step]
     made = _groups(prefix, text, known)
     if step == "site":
         made += _groups("screening", text, known)
-    return made
+    return [*made, *told]
 
 
 def label(key) -> str:
@@ -66,7 +68,7 @@ def _groups(prefix: str, text, known: Known) -> list[Section]:
     """Sections of every table below a prefix, in the order of the keys."""
     order: dict[str, list] = {}
     for key in schema.all_keys().values():
-        if key.path.split(".")[0] != prefix or key.kind in (schema.TABLE, schema.LATER):
+        if _place(key.path) != prefix or key.kind in (schema.TABLE, schema.LATER):
             continue
         parent = key.path if key.kind == schema.ROWS else key.parent
         if parent.endswith("parts[]") and key.kind != schema.ROWS:
@@ -86,6 +88,11 @@ def _groups(prefix: str, text, known: Known) -> list[Section]:
         elif group:
             made.append(_values(parent, group, text, known))
     return made
+
+
+def _place(path: str) -> str:
+    """Prefix under which a key is shown."""
+    return LAB if path.startswith(LAB) else path.split(".")[0]
 
 
 def heading(parent: str) -> str:
@@ -162,7 +169,8 @@ def _row_groups(parent: str, text, known: Known) -> list[Section]:
     for i in range(count):
         title = f"{heading(parent)} {i + 1}"
         made.append(_values(parent, group, text, known, at=f"{base}[{i}]", title=title))
-    made.append(_adder(f"{base}[+]", say("sheet", "add_row"), heading(parent) if not count else "", known.faults.get(base)))
+    words = say("sheet", "add_line" if base.startswith(LAB) else "add_row")
+    made.append(_adder(f"{base}[+]", words, heading(parent) if not count else "", known.faults.get(base)))
     return made
 
 

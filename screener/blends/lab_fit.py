@@ -17,6 +17,7 @@ from screener.blends.lab_numbers import Laboratory, Number, numbers_of
 from screener.blends.lab_sheet import LabSheet
 from screener.blends.lab_start import Start, start_of
 from screener.equilibrium import Fluid
+from screener.ground.constants import ZERO_CELSIUS
 from screener.ground.errors import InputError
 from screener.species import columns
 from screener.volatility import dvpe, dvpe_equation, reid_vapour_pressure
@@ -211,7 +212,7 @@ def _refuse(fitted: Fitted) -> None:
 
 def _shown(number: Number, value: float) -> str:
     if number.key in ("distillation", "ibp", "fbp", "flash_point"):
-        return f"{value - 273.15:.4g} degC"
+        return f"{value - ZERO_CELSIUS:.4g} degC"
     if number.key == "density_15":
         return f"{value:.5g} kg/m3"
     if number.key in ("h2s", "water"):
@@ -222,6 +223,12 @@ def _shown(number: Number, value: float) -> str:
 
 def _notes(sheet, start, numbers, computed):
     notes = list(start.notes)
+    for one, value in zip(numbers, computed, strict=True):
+        misfit = (value - one.value) / one.R
+        notes.append(
+            f"laboratory sheet, {one.name}: measured {_shown(one, one.value)}, computed {_shown(one, value)}, "
+            f"{misfit:+.2f} of its reproducibility"
+        )
     if not sheet.vapour_pressure_known:
         notes.append("the sheet holds no vapour pressure: that of the fitted composition is not known")
     if sheet.viscosity is not None:

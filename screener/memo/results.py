@@ -193,6 +193,7 @@ def report_lines(blend) -> tuple[str, ...]:
             allowed=f"{allowed:.3g}",
         )
         for name, value, computed, allowed in report.residuals
+        if not any(line.startswith(f"laboratory sheet, {name}:") for line in report.assumed)
     )
     return report.assumed + origins + fits
 

@@ -52,6 +52,9 @@ def test_report_holds_measured_computed_and_reproducibility(gasoline):
     )  # same test, same liquid
     assert gasoline.report.misfits["dvpe"] == pytest.approx((computed - measured) / R)
     assert rows["density at 15 degC"][1] == pytest.approx(gasoline.density_15, rel=1e-9)
+    told = [line for line in gasoline.report.assumed if line.startswith("laboratory sheet, dvpe")]
+    shown = f"computed {computed / 1e3:.4g} kPa, {(computed - measured) / R:+.2f} of its reproducibility"
+    assert told == [f"laboratory sheet, dvpe: measured 62 kPa, {shown}"]
     assert sum(gasoline.volume_fractions) == pytest.approx(1.0)
     assert gasoline.oxygenates["ethanol"] == pytest.approx(rows["ethanol"][1], rel=1e-6)
 

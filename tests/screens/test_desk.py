@@ -112,9 +112,16 @@ def test_choices(desk):
     assert desk.choices("tank.shell_diameter") == ()
 
 
+def told_of(desk):
+    """What is told of the receipt: behind its parts, before the long laboratory sheet."""
+    made = desk.sections("blend")
+    place = [section.columns[0].heading for section in made].index("Laboratory sheet")
+    return made[place - 1]
+
+
 def test_what_a_liquid_amounts_to_stands_below_its_parts(desk):
     worked(desk)
-    told = desk.sections("blend")[-1]
+    told = told_of(desk)
     assert told.columns[0].heading == "What it amounts to"
     assert [tuple(cell.text for cell in record.cells) for record in told.records] == [
         ("DVPE", "59.8 kPa", ""),
@@ -122,4 +129,4 @@ def test_what_a_liquid_amounts_to_stands_below_its_parts(desk):
     ]
     assert "earlier" not in told.note
     desk.session.edit("blend.parts[0].share", "80 %")
-    assert "of earlier inputs" in desk.sections("blend")[-1].note
+    assert "of earlier inputs" in told_of(desk).note
