@@ -50,8 +50,7 @@ class AtTemperature:
         with np.errstate(all="ignore"):
             b = x @ self.b_i
             alpha, abar = self.mixing.mix(x, b, self.b_i)
-            shift = np.einsum("nc,nc->n", *np.broadcast_arrays(x, self.shift_i))
-        return Mixture(self.fluid.equation.d, R * self.T, alpha, abar, b, self.b_i, shift)
+        return Mixture(self.fluid.equation.d, R * self.T, alpha, abar, b, self.b_i, x, self.shift_i)
 
     def slopes(self, x, mixture: Mixture) -> Slopes:
         """How the mixtures `mix(x)` change with temperature at fixed composition x (n, c)."""

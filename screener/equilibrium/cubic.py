@@ -122,28 +122,34 @@ def _coefficients(A, B, d):
 
 def _largest(c2, c1, c0):
     """Largest real root: in closed form, good to some 1e-8, then polished."""
-    w = _closed_form(c2, c1, c0)
-    return _polish(_polish(w, c2, c1, c0), c2, c1, c0)
+    return _polish(_closed_form(c2, c1, c0), c2, c1, c0)
 
 
 def _closed_form(c2, c1, c0):
     shift = c2 / 3.0
-    Q = shift * shift - c1 / 3.0
-    R = shift * (shift * shift - 0.5 * c1) + 0.5 * c0
-    QQQ = Q * Q * Q
-    three = R * R < QQQ
-    root = np.sqrt(np.where(three, Q, 1.0))
-    angle = np.arccos(np.clip(R / np.where(three, root**3, np.inf), -1.0, 1.0))
-    w = -2.0 * root * np.cos((angle + 2.0 * np.pi) / 3.0) - shift
-    if three.all():
-        return w
-    S = -np.sign(R) * np.cbrt(np.abs(R) + np.sqrt(np.where(three, 0.0, R * R - QQQ)))
-    return np.where(three, w, S + np.where(S == 0.0, 0.0, Q / S) - shift)
+    square = shift * shift
+    Q = square - c1 / 3.0
+    R = shift * (square - 0.5 * c1) + 0.5 * c0
+    bend = Q * Q * Q - R * R
+    three = bend > 0.0
+    every = three.all()
+    if every:
+        return _largest_of_three(Q, R, bend) - shift
+    root = np.sqrt(np.maximum(-bend, 0.0))
+    S = np.cbrt(np.where(R > 0.0, -R - root, root - R))
+    w = S + Q / np.where(S == 0.0, np.inf, S) - shift
+    if three.any():
+        w = np.where(three, _largest_of_three(Q, R, np.maximum(bend, 0.0)) - shift, w)
+    return w
+
+
+def _largest_of_three(Q, R, bend):
+    return -2.0 * np.sqrt(Q) * np.cos((np.arctan2(np.sqrt(bend), R) + 2.0 * np.pi) / 3.0)
 
 
 def _polish(w, c2, c1, c0):
     """One Newton step, taken only where it is small: a step that is large marks a multiple root."""
-    value = ((w + c2) * w + c1) * w + c0
-    slope = (3.0 * w + 2.0 * c2) * w + c1
-    step = value / slope
+    a = w + c2
+    b = a * w + c1
+    step = (b * w + c0) / ((w + a) * w + b)
     return np.where(np.abs(step) < 0.05 * np.abs(w), w - step, w)

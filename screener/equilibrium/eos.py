@@ -20,7 +20,8 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.equilibrium.cubic import PENG_ROBINSON, SOAVE_REDLICH_KWONG, Z_of_phase
+from screener.equilibrium.cubic import PENG_ROBINSON, SOAVE_REDLICH_KWONG, Z_of_phase, roots
+from screener.equilibrium.rows import row_sum
 from screener.ground.constants import R
 
 
@@ -55,7 +56,8 @@ class Mixture:
     """A mixture at one temperature and composition per lane: all that pressure does not change.
 
     alpha (n,) and b (n,) [m3/mol], abar (n, c) = d(n alpha)/dn_i, b_i (c,),
-    RT (n,) [J/mol], and the volume translation shift (n,) [m3/mol].
+    RT (n,) [J/mol]; x (n, c) and shift_i (n, c) [m3/mol] of the components
+    give the volume translation where it is asked for.
     """
 
     d: tuple[float, float]
@@ -64,7 +66,13 @@ class Mixture:
     abar: np.ndarray
     b: np.ndarray
     b_i: np.ndarray
-    shift: np.ndarray
+    x: np.ndarray
+    shift_i: np.ndarray
+
+    @property
+    def shift(self):
+        """Volume translation (n,). [m3/mol]"""
+        return row_sum(self.x * self.shift_i)
 
     def Z(self, P, phase: str):
         """Compressibility factor (n,) [-] of one phase, untranslated."""
@@ -81,19 +89,26 @@ class Mixture:
 
     def ln_phi_and_Z(self, P, phase: str):
         """ln phi (n, c) [-] and the compressibility factor (n,) [-] it belongs to."""
-        d1, d2 = self.d
-        B = self.b * P / self.RT
         with np.errstate(all="ignore"):
+            B = self.b * P / self.RT
             Z = Z_of_phase(self.alpha * B, B, phase, self.d)
-            attraction = np.log((Z + d2 * B) / (Z + d1 * B)) / (d2 - d1)
-            ln_phi = self.abar * (-attraction)[:, None]
-            ln_phi += ((Z - 1.0) / self.b)[:, None] * self.b_i
-            ln_phi -= np.log(Z - B)[:, None]
-        return ln_phi, Z
+            return self.ln_phi_at(Z, B), Z
+
+    def ln_phi_at(self, Z, B):
+        """ln phi (n, c) [-] at compressibility factors Z (n,) and B = b P / RT (n,). [-]"""
+        d1, d2 = self.d
+        attraction = np.log((Z + d2 * B) / (Z + d1 * B)) / (d1 - d2)
+        # the two other terms are one product of small matrices: half the passes over (n, c)
+        of_lane, of_species = np.empty((Z.size, 2)), np.empty((2, self.b_i.size))
+        of_lane[:, 0], of_lane[:, 1] = (Z - 1.0) / self.b, np.log(Z - B)
+        of_species[0], of_species[1] = self.b_i, -1.0
+        ln_phi = of_lane @ of_species
+        ln_phi += self.abar * attraction[:, None]
+        return ln_phi
 
     def gibbs_departure(self, P, x, phase: str):
         """Residual Gibbs energy over RT (n,) [-]: sum of x_i ln phi_i."""
-        return np.einsum("nc,nc->n", np.broadcast_to(x, self.abar.shape), self.ln_phi(P, phase))
+        return row_sum(x * self.ln_phi(P, phase))
 
     def helmholtz_residual(self, v):
         """Residual Helmholtz energy over RT (n,) [-] at untranslated molar volume v [m3/mol]."""
@@ -101,6 +116,24 @@ class Mixture:
         with np.errstate(all="ignore"):
             ratio = np.log((v + d2 * self.b) / (v + d1 * self.b))
             return -np.log1p(-self.b / v) - self.alpha / (d2 - d1) * ratio
+
+
+FEW_LANES = 32  # up to here the overhead of a call outweighs the work in it
+
+
+def both_phases(liquid, vapour, P):
+    """ln phi (n, c) and Z (n,) of a liquid, then of a vapour, at one pressure P (n,) [Pa].
+
+    Of few lanes the roots of both are found in one call.
+    """
+    if P.size > FEW_LANES or not isinstance(liquid, Mixture):
+        return *liquid.ln_phi_and_Z(P, "L"), *vapour.ln_phi_and_Z(P, "V")
+    n = P.size
+    with np.errstate(all="ignore"):
+        B_L, B_V = liquid.b * P / liquid.RT, vapour.b * P / vapour.RT
+        found = roots(np.concatenate([liquid.alpha * B_L, vapour.alpha * B_V]), np.concatenate([B_L, B_V]), liquid.d)
+        Z_L, Z_V = found.Z_L[:n], found.Z_V[n:]
+        return liquid.ln_phi_at(Z_L, B_L), Z_L, vapour.ln_phi_at(Z_V, B_V), Z_V
 
 
 def covolume(equation: Equation, Tc, Pc):

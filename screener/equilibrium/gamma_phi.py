@@ -75,7 +75,7 @@ class GammaPhiAt:
         with np.errstate(all="ignore"):
             alpha, abar = self.vapour.mix(x, liquid.b, s.b_i)
             ln_f = self.ln_f + s.ln_gamma(x)
-        vapour = Mixture(liquid.d, liquid.RT, alpha, abar, liquid.b, s.b_i, liquid.shift)
+        vapour = Mixture(liquid.d, liquid.RT, alpha, abar, liquid.b, s.b_i, liquid.x, liquid.shift_i)
         return GammaPhiMixture(liquid, vapour, ln_f, self.v_RT)
 
     def ln_phi(self, P, x, phase: str):

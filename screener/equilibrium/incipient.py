@@ -16,6 +16,7 @@ from __future__ import annotations
 
 import numpy as np
 
+from screener.equilibrium.eos import both_phases
 from screener.equilibrium.phase import DENSE, reduced_volume
 from screener.equilibrium.rows import row_max, row_sum
 
@@ -27,10 +28,30 @@ NUDGE = 0.4  # step of u where the root asked for does not exist
 TRIES = 8  # pressures tried for a liquid root of the feed, each ten times the last
 
 
-class AtTemperature:
-    """Unknown pressure. `nudged` is switched off to look at a point known to be one."""
+class Incipient:
+    """What the two problems share. `nudged` is switched off to look at a point known to be one."""
 
     nudged = True
+    seen = None  # u of the last image, and what it found on the way
+
+    def image(self, u):
+        """ln phi_L - ln phi_V + the shift between ln K and u."""
+        found, other = self.close(u)
+        P, shift, feed, new = self.phases(found, other)
+        image, volume_L, volume_V = step_and_volumes(feed, new, P, self.bubble, u, shift, self.nudged)
+        self.seen = u, (found, other, volume_L, volume_V)
+        return image
+
+    def look(self, u):
+        """Unknown (n,), composition of the new phase (n, c) and v/b (n,) of liquid and vapour at u."""
+        if self.seen is None or self.seen[0].shape != u.shape or not np.array_equal(self.seen[0], u):
+            with np.errstate(all="ignore"):
+                self.image(u)
+        return self.seen[1]
+
+
+class AtTemperature(Incipient):
+    """Unknown pressure."""
 
     def __init__(self, state, feed, bubble: bool):
         self.state, self.feed, self.bubble = state, feed, bubble
@@ -45,25 +66,17 @@ class AtTemperature:
         """Pressure (n,) [Pa] and composition of the new phase (n, c)."""
         sign = 1.0 if self.bubble else -1.0
         part, ln_sum = weighted(self.feed, sign * u)
-        return np.exp(np.clip(sign * ln_sum, -300.0, 300.0)), part
+        return np.exp(np.minimum(np.maximum(sign * ln_sum, -300.0), 300.0)), part
 
-    def image(self, u):
-        """ln phi_L - ln phi_V + ln P."""
-        P, other = self.close(u)
-        state, feed = self.feed_at(None)
-        return step(feed, state.mix(other), P, self.bubble, u, np.log(P)[:, None], self.nudged)
-
-    def feed_at(self, T):
-        """The fluid at the temperatures given from the start, and the feed in it."""
+    def phases(self, P, other):
+        """Pressure, shift, and the mixtures of feed and new phase."""
         if self.mixture is None:
             self.mixture = self.state.mix(self.feed)
-        return self.state, self.mixture
+        return P, np.log(P)[:, None], self.mixture, self.state.mix(other)
 
 
-class AtPressure:
-    """Unknown temperature. h (c,) [K] slopes of ln K in 1/T; tau (n,) [1/K] the last 1/T; `nudged` as above."""
-
-    nudged = True
+class AtPressure(Incipient):
+    """Unknown temperature. h (c,) [K] slopes of ln K in 1/T; tau (n,) [1/K] the last 1/T."""
 
     def __init__(self, fluid, P, feed, bubble: bool, tau=None):
         self.fluid, self.P, self.feed, self.bubble = fluid, P, feed, bubble
@@ -82,7 +95,7 @@ class AtPressure:
         for _ in range(60):
             part, ln_sum = weighted(self.feed, sign * (u - self.h * tau[:, None]))
             slope = -sign * (part @ self.h)
-            new = np.clip(tau - ln_sum / slope, 1.0 / HIGHEST_T, 1.0 / LOWEST_T)
+            new = np.minimum(np.maximum(tau - ln_sum / slope, 1.0 / HIGHEST_T), 1.0 / LOWEST_T)
             small = np.abs(new - tau) <= 1e-13 * tau
             tau = np.where(np.isfinite(new), new, tau)
             if small.all():
@@ -90,49 +103,49 @@ class AtPressure:
         self.tau = tau
         return 1.0 / tau, weighted(self.feed, sign * (u - self.h * tau[:, None]))[0]
 
-    def image(self, u):
-        """ln phi_L - ln phi_V + h / T."""
-        T, other = self.close(u)
-        state, feed = self.feed_at(T)
-        return step(feed, state.mix(other), self.P, self.bubble, u, self.h / T[:, None], self.nudged)
-
-    def feed_at(self, T):
-        """The fluid at T (n,) [K], and the feed in it."""
+    def phases(self, T, other):
+        """Pressure, shift, and the mixtures of feed and new phase."""
         state = self.fluid.at(T)
-        return state, state.mix(self.feed)
+        return self.P, self.h / T[:, None], state.mix(self.feed), state.mix(other)
 
 
-def step(feed, other, P, bubble: bool, u, shift, nudged=True):
-    """The image of u; where a phase is not of its kind, a nudge to where it is.
+def step(feed, other, P, bubble: bool, u, shift):
+    """The image of u, as `step_and_volumes` gives it."""
+    return step_and_volumes(feed, other, P, bubble, u, shift)[0]
+
+
+def step_and_volumes(feed, other, P, bubble: bool, u, shift, nudged=True):
+    """The image of u, and v/b (n,) of liquid and vapour; where a phase is not of its kind, a nudge to where it is.
 
     A larger u means a higher pressure, or a lower temperature: either way the
     liquid comes back.
     """
     liquid, vapour = (feed, other) if bubble else (other, feed)
-    ln_phi_L, Z_L = liquid.ln_phi_and_Z(P, "L")
-    ln_phi_V, Z_V = vapour.ln_phi_and_Z(P, "V")
+    ln_phi_L, Z_L, ln_phi_V, Z_V = both_phases(liquid, vapour, P)
     image = ln_phi_L - ln_phi_V + shift
-    if not nudged:
-        return image
+    volume_L, volume_V = reduced_volume(liquid, P, Z_L), reduced_volume(vapour, P, Z_V)
     with np.errstate(invalid="ignore"):
-        thin = reduced_volume(liquid, P, Z_L) > NO_LIQUID
-        thick = reduced_volume(vapour, P, Z_V) < NO_VAPOUR
+        thin, thick = volume_L > NO_LIQUID, volume_V < NO_VAPOUR
     wrong = thin | thick
-    if wrong.any():
+    if nudged and wrong.any():
         nudge = np.where(thin & ~thick, NUDGE, -NUDGE)
         image = np.where(wrong[:, None], u + nudge[:, None], image)
-    return image
+    return image, volume_L, volume_V
 
 
 def weighted(share, exponent):
     """share exp(exponent) scaled to sum 1 (n, c), and ln of its sum (n,); share zero counts for nothing."""
-    top = row_max(np.where(share > 0.0, exponent, -np.inf))
-    part = share * np.exp(np.where(share > 0.0, exponent - top[:, None], 0.0))
+    present = share > 0.0
+    top = row_max(np.where(present, exponent, -np.inf))
+    part = np.where(present, exponent - top[:, None], 0.0)
+    np.exp(part, out=part)
+    part *= share
     total = row_sum(part)
-    return part / total[:, None], top + np.log(total)
+    part /= total[:, None]
+    return part, top + np.log(total)
 
 
-def start(fluid, name: str, value, feed, bubble: bool):
+def start(fluid, name: str, value, feed, bubble: bool, warm=None):
     """The fixed-point problem of a chunk and its blind start.
 
     Parameters
@@ -147,6 +160,8 @@ def start(fluid, name: str, value, feed, bubble: bool):
         Liquid (bubble) or vapour (dew). [-]
     bubble : bool
         Which of the two.
+    warm : array, shape (n, c), optional
+        u where it is known, NaN in the other lanes. [-]
 
     Returns
     -------
@@ -158,17 +173,24 @@ def start(fluid, name: str, value, feed, bubble: bool):
     Wilson's K; at given T the bubble starts from the fugacities of the liquid
     itself, which holds for dissolved gases and non-ideal liquids as well.
     """
+    problem = AtPressure(fluid, value, feed, bubble) if name == "P" else AtTemperature(fluid.at(value), feed, bubble)
+    if warm is None:
+        u = _blind(fluid, problem, name, value, bubble)
+    else:
+        cold = np.isnan(warm[:, 0])
+        u = np.where(cold[:, None], _blind(fluid, problem, name, value, bubble), warm) if cold.any() else warm
+    return problem, np.where(problem.present, u, 0.0)
+
+
+def _blind(fluid, problem, name, value, bubble):
+    """u (n, c) from nothing but the question."""
     if name == "P":
-        problem = AtPressure(fluid, value, feed, bubble)
-        u = np.log(fluid.Pc / value[:, None]) + problem.h / fluid.Tc
-        return problem, np.where(problem.present, u, 0.0)
-    state = fluid.at(value)
-    problem = AtTemperature(state, feed, bubble)
+        return np.log(fluid.Pc / value[:, None]) + problem.h / fluid.Tc
     u = np.log(fluid.wilson_K(value, 1.0))
     if bubble:
         P, _ = problem.close(np.where(problem.present, u, 0.0))
-        u = _liquid_fugacity(problem, np.clip(P, 1.0, 1e7), u)
-    return problem, np.where(problem.present, u, 0.0)
+        u = _liquid_fugacity(problem, np.minimum(np.maximum(P, 1.0), 1e7), u)
+    return u
 
 
 def _liquid_fugacity(problem, P, u):

@@ -16,7 +16,7 @@ from screener.equilibrium.fixed_point import solve
 from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_T
 from screener.equilibrium.phase import DENSE, critical_ratio, reduced_volume
 from screener.equilibrium.results import TPD_ZERO
-from screener.equilibrium.rows import row_max
+from screener.equilibrium.rows import row_max, row_sum
 from screener.equilibrium.stability import FEW, PURE, REACH, Trials
 from screener.ground.status import Status
 
@@ -141,7 +141,7 @@ def _starts(fluid, T, P, ln_z, ln_phi, present, bubble: bool):
 
 
 def _deepest(trials, starts, ln_z):
-    """Largest ln sum W (n,) over the starts, its ln W (n, c), and whether all of them settled (n,).
+    """Largest negative distance (n,) [-] over the starts, ln sum W at rest; its ln W (n, c), and whether all of them settled (n,).
 
     A trial that came back to the feed says nothing and counts as stable.
     """
@@ -151,7 +151,11 @@ def _deepest(trials, starts, ln_z):
         fixed = solve(trials, np.where(trials.present, start, 0.0), trials.present, newton=0, reach=REACH)
         ok = fixed.residual < 1e-3
         away = np.where(trials.present, np.abs(fixed.u - ln_z), 0.0).max(axis=1) > 1e-3
-        found = np.where(away, trials.share(fixed.u)[1], 0.0)
+        # exact at any composition, also where the trial has not come to rest: a value above zero is a proof
+        w, ln_total = trials.share(fixed.u)
+        with np.errstate(invalid="ignore"):
+            rest = row_sum(np.where(trials.present, w * (trials.image(fixed.u) - fixed.u), 0.0))
+        found = np.where(away, ln_total + rest, 0.0)
         better = ok & (found > ln_sum)
         ln_sum = np.where(better, found, ln_sum)
         ln_W = np.where(better[:, None], fixed.u, ln_W)

@@ -6,6 +6,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from screener.equilibrium.rows import row_sum
 from screener.ground.errors import InputError, ShapeError
 
 
@@ -39,12 +40,14 @@ class VanDerWaalsAt:
         """alpha (n,) [-] and abar (n, c) [-] of mixtures x (n, c) with covolume b (n,)."""
         s = x * self.root
         if self.kij is None:
-            field = self.root * s.sum(axis=1, keepdims=True)
+            field = self.root * row_sum(s)[:, None]
         else:
-            field = self.root * (s.sum(axis=1, keepdims=True) - s @ self.kij)
-        alpha = np.einsum("nc,nc->n", np.broadcast_to(x, field.shape), field) / b
-        abar = (2.0 * field - alpha[:, None] * b_i) / b[:, None]
-        return alpha, abar
+            field = self.root * (row_sum(s)[:, None] - s @ self.kij)
+        alpha = row_sum(x * field) / b
+        field *= 2.0
+        field -= alpha[:, None] * b_i
+        field /= b[:, None]
+        return alpha, field
 
     def slopes(self, x, mixture, alpha_i):
         """Derivatives in T of alpha, alpha again and abar: (n,) [1/K], (n,) [1/K2], (n, c) [1/K].
@@ -57,14 +60,14 @@ class VanDerWaalsAt:
         s, s_1, s_2 = x * root, x * root_1, x * (self.root * second)
         pull, pull_1 = self._pull(s), self._pull(s_1)
         b = mixture.b
-        alpha_1 = 2.0 * (s_1 * pull).sum(axis=1) / b
-        alpha_2 = 2.0 * ((s_2 * pull).sum(axis=1) + (s_1 * pull_1).sum(axis=1)) / b
+        alpha_1 = 2.0 * row_sum(s_1 * pull) / b
+        alpha_2 = 2.0 * (row_sum(s_2 * pull) + row_sum(s_1 * pull_1)) / b
         abar_1 = (2.0 * (root_1 * pull + root * pull_1) - alpha_1[:, None] * mixture.b_i) / b[:, None]
         return alpha_1, alpha_2, abar_1
 
     def _pull(self, s):
         """sum_j (1 - k_ij) s_j, (n, 1) where every k_ij is zero, else (n, c)."""
-        total = s.sum(axis=1, keepdims=True)
+        total = row_sum(s)[:, None]
         return total if self.kij is None else total - s @ self.kij
 
     def ln_gamma(self, x):

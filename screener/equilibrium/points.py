@@ -17,7 +17,7 @@ from screener.equilibrium.fixed_point import Fixed, solve
 from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_P, LOWEST_T, start
 from screener.equilibrium.ladder import seek
 from screener.equilibrium.one_species import saturation
-from screener.equilibrium.phase import DENSE, reduced_volume
+from screener.equilibrium.phase import DENSE
 from screener.equilibrium.rows import row_max
 from screener.equilibrium.second_liquid import NOT_TESTED, SPLITS, full_check, splits_anyway
 from screener.equilibrium.stability import FEW
@@ -48,9 +48,9 @@ class Points:
         self.value[lanes], self.other[lanes], self.ln_K[lanes] = np.nan, np.nan, np.nan
 
 
-def solve_points(out, lanes, fluid, name: str, value, feed, bubble: bool):
-    """One chunk of valid lanes: a blind start, then the slower ways for those it fails."""
-    problem, u = start(fluid, name, value, feed, bubble)
+def solve_points(out, lanes, fluid, name: str, value, feed, bubble: bool, warm=None):
+    """One chunk of valid lanes: a blind or warm start (n, c), then the slower ways for those it fails."""
+    problem, u = start(fluid, name, value, feed, bubble, warm)
     fixed = solve(problem, u, problem.present, reach=REACH)
     chunk = Chunk(out, lanes, fluid, name, value, feed, problem)
     status = chunk.take_in(np.arange(lanes.size), problem, fixed)
@@ -83,14 +83,15 @@ class Chunk:
             open_, absent[open_] = self._from_envelope(open_)
         for finer in (COARSE, FINE):
             open_, sought = self._from_ladder(open_, finer)
-            say = np.where(sought == Status.OUT_OF_RANGE, sought, int(Status.OUT_OF_STEPS))
-            unseen = np.isin(sought, (Status.NO_SOLUTION, Status.TRIVIAL))
-            say = np.where(unseen, absent[open_], say)
             before = self.out.status[self.lanes[open_]]
+            say = np.where(sought == Status.OUT_OF_RANGE, sought, int(Status.OUT_OF_STEPS))
+            # a crossing of phases that are nearly one, or that become one when solved, is no sign of a point
+            unseen = np.isin(sought, (Status.NO_SOLUTION, Status.TRIVIAL)) | (before == Status.TRIVIAL)
+            say = np.where(unseen, absent[open_], say)
             # two dense phases that meet stand; two that became one say more than an iteration that went nowhere
             stands = (before == Status.LIQUID_SPLITS) | (before == Status.TRIVIAL) & (say == Status.OUT_OF_STEPS)
             self.out.status[self.lanes[open_]] = np.where(stands, before, say)
-            open_ = open_[sought == Status.CONVERGED]
+            open_ = open_[(sought == Status.CONVERGED) & (say == Status.OUT_OF_STEPS)]
 
     def _as_one_species(self, open_):
         """Lanes that hold one species: found up to the critical point, none beyond."""
@@ -144,20 +145,15 @@ class Chunk:
     def take_in(self, some, problem, fixed, proven=False):
         """Judge what an iteration found, write down the lanes that stand, return the status of all."""
         out, lanes = self.out, self.lanes[some]
-        found, other = problem.close(fixed.u)
+        found, other, volume_L, volume_V = problem.look(fixed.u)
         T, P = (self.value[some], found) if self.name == "T" else (found, self.value[some])
         shift = np.log(P)[:, None] if self.name == "T" else problem.h / T[:, None]
         ln_K = np.where(problem.present, fixed.u - shift, 0.0)
-        state, feed = problem.feed_at(T)
-        new = state.mix(other)
-        kinds = "LV" if problem.bubble else "VL"
-        ratio = reduced_volume(feed, P, feed.Z(P, kinds[0])), reduced_volume(new, P, new.Z(P, kinds[1]))
-        volume_L, volume_V = ratio[:: 1 if problem.bubble else -1]
         apart, swollen = (TRIVIAL, TRIVIAL) if proven else (SUSPECT, SWOLLEN)
         with np.errstate(invalid="ignore"):
             status = np.where(fixed.converged, int(Status.CONVERGED), int(Status.OUT_OF_STEPS))
             alike = (row_max(np.abs(ln_K)) < apart) & ~(np.abs(volume_V / volume_L - 1.0) > swollen)
-            dense = (ratio[0] < DENSE) & (ratio[1] < DENSE)
+            dense = (volume_L < DENSE) & (volume_V < DENSE)
             low, high = (LOWEST_P, HIGHEST_P) if self.name == "T" else (LOWEST_T, HIGHEST_T)
             outside = ~((found > low * 1.000001) & (found < high * 0.999999))
         status = np.where(fixed.converged & (volume_V <= volume_L), int(Status.NO_SOLUTION), status)

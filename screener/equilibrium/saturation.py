@@ -7,10 +7,11 @@ import numpy as np
 from screener.equilibrium.points import Points, check_points, solve_points
 from screener.equilibrium.results import Saturation, bad_status
 from screener.equilibrium.second_liquid import known_check
+from screener.equilibrium.warm_start import warm_starts
 from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
 
-MOST_NUMBERS = 40_000  # lanes times components handled at once: keeps the working arrays in cache
+MOST_NUMBERS = 16_000  # lanes times components handled at once: keeps the working arrays in cache
 
 
 def bubble_pressure(fluid, T, x, *, check="vapour-liquid") -> Saturation:
@@ -163,9 +164,11 @@ def _saturation(fluid, feed, bubble: bool, check: str, **given) -> Saturation:
     status[good & fluid.lacks(feed)] = Status.NO_PARAMETERS
     out = Points(n, c, status)
     work = np.flatnonzero(status == Status.OUT_OF_STEPS)
-    for some in np.array_split(work, max(1, -(-work.size * c // MOST_NUMBERS))):
+    warm = warm_starts(fluid, name, value[work], feed[work], bubble) if work.size else None
+    for some in np.array_split(np.arange(work.size), max(1, -(-work.size * c // MOST_NUMBERS))):
         if some.size:
-            solve_points(out, some, fluid, name, value[some], feed[some], bubble)
+            u, some = None if warm is None else warm[some], work[some]
+            solve_points(out, some, fluid, name, value[some], feed[some], bubble, u)
             if full:
                 check_points(out, some, fluid, name, value[some], feed[some], bubble)
     T, P = (value, out.value) if name == "T" else (out.value, value)

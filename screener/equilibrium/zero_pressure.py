@@ -27,6 +27,7 @@ from functools import lru_cache
 import numpy as np
 
 from screener.equilibrium.cubic import PENG_ROBINSON
+from screener.equilibrium.rows import row_sum
 
 JOINT = 7.6  # [-] where the continuation begins; own choice, about 0.84 Tc, where q still bends little
 SLOPE_BELOW = -0.30  # [-] slope of q far below the joint; own choice
@@ -172,7 +173,7 @@ class ZeroPressureAt:
         """alpha (n,) [-] and abar (n, c) [-] of mixtures x (n, c) with covolume b (n,)."""
         term = self.excess.ln_gamma(x) + self.reference
         ln_b = np.log(b)
-        q = np.einsum("nc,nc->n", np.broadcast_to(x, term.shape), term) + ln_b
+        q = row_sum(x * term) + ln_b
         alpha, slope = alpha_of_q(q)
         term += (ln_b - 1.0 - q)[:, None]
         term += b_i / b[:, None]
@@ -191,8 +192,8 @@ class ZeroPressureAt:
         slope_i = q_and_slope(value)[1]
         term = ln_gamma_1 + slope_i * first
         bend = curvature_of_q(value) * first**2 + slope_i * second
-        q_1 = (x * term).sum(axis=1)
-        q_2 = excess_2 + (x * bend).sum(axis=1)
+        q_1 = row_sum(x * term)
+        q_2 = excess_2 + row_sum(x * bend)
         slope, curvature = q_and_slope(mixture.alpha)[1], curvature_of_q(mixture.alpha)
         alpha_1 = q_1 / slope
         alpha_2 = (q_2 - curvature * alpha_1**2) / slope
