@@ -126,7 +126,7 @@ def test_oils_with_a_known_light_end(record_property):
     miss = {
         f"{row['oil_id']} {row['sample']}": study["computed"](row)[0] - float(row["flash_C"]) for row in rows
     }
-    record_property("computed_minus_measured_K", {name: round(m, 1) for name, m in miss.items()})
+    record_property("computed_minus_measured_K", {name: round(float(m), 1) for name, m in miss.items()})
     assert len(miss) == 5
     # Reproducibility of the tester 4 to 8 K, and 5 K for what the curve leaves open.
     assert max(abs(m) for m in miss.values()) <= 10.0
