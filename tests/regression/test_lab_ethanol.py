@@ -150,7 +150,7 @@ def test_first_five_percent_lost_by_e10(record_property):
     """
     as_one = [100.0 * first_lost(target) for target in BASES]
     diffusing = [100.0 * first_lost(target, diffusing=True) for target in BASES]
-    record_property("ethanol_mass_percent", [float(as_one), float(diffusing)])
+    record_property("ethanol_mass_percent", [[float(v) for v in row] for row in (as_one, diffusing)])
     assert (np.diff(as_one) < 0.0).all() and (np.diff(diffusing) < 0.0).all()
     assert all(5.0 < v < 13.0 for v in as_one)
     assert min(diffusing) < 13.0 < max(diffusing)
