@@ -12,6 +12,7 @@ from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Fact, Information
 from screener.screening.vapour import _barometer_missing
 from screener.screening.wording import lines, say
+from screener.species.pseudo import is_cut
 from screener.states.fire import HOT
 from screener.states.lanes import BEST, HEEL, LIQUIDS, RECEIPT, SOUR_GAS, method_spread
 
@@ -31,6 +32,7 @@ def hatch(context: Context) -> Draft:
     if context.case.tank.open_gauging is not True and not sour_unknown(context):
         said = "hatch-not-stated" if context.case.tank.open_gauging is None else "hatch-closed"
         return Draft(criterion(key), skip=say("skip", said), **fields)
+    unknown = unknown or _unnamed(context)
     found = limits_of(context)
     if not found:
         return Draft(criterion(key), skip="" if unknown else say("skip", "no-exposure-limit"), unknown=unknown, **fields)
@@ -44,6 +46,14 @@ def sour_unknown(context: Context) -> str:
     if context.case.tank.sour_service is not True or states_sour_gas(context):
         return ""
     return say("unknown", "sour", paths="blend.h2s_in_liquid")
+
+
+def _unnamed(context: Context) -> str:
+    """A liquid described by cuts hides what it is made of."""
+    lanes, i = context.lanes, context.i
+    there = (lanes.z[i, context.liquids()] > 0.0).any(axis=0)
+    hidden = any(is_cut(name) for name, is_there in zip(lanes.names, there.tolist()) if is_there)
+    return say("unknown", "unnamed-substances") if hidden else ""
 
 
 def states_sour_gas(context: Context) -> bool:

@@ -260,6 +260,16 @@ def test_no_hydrogen_sulfide_stated_is_not_none_where_the_tank_is_sour():
     assert of(zero)[HATCH].verdict == "room"
 
 
+def test_cuts_hide_substances_so_nothing_good_follows():
+    from screener.species import cut
+
+    heavy = cut(500.0, 800.0).name
+    trace = Blend.of({f"species:{heavy}": 1.0 - 1e-4, "species:n-heptane": 1e-4})
+    assert of(case(blend=trace, tank=BARE, site=JANUARY))[HATCH].verdict == "unknown"
+    loaded = Blend.of({f"species:{heavy}": 0.9, "species:benzene": 0.1})
+    assert of(case(blend=loaded, tank=BARE, site=JANUARY))[HATCH].verdict == "beyond"
+
+
 def test_the_hatch_is_judged_only_where_somebody_opens_it():
     closed, unsaid = (of(case(tank=tank(open_gauging=said)))[HATCH] for said in (False, None))
     assert closed.verdict == unsaid.verdict == "skipped"
