@@ -152,7 +152,9 @@ def wet_and_half() -> tuple[float, float]:
         fluid = Fluid.of([hydrocarbon, "ethanol", "water"])
         excess = fluid.mixing.excess
         for wet, half in misses:
-            term = replace(excess.water, W=np.where(excess.water.W != 0.0, wet, 0.0), half=half)
+            columns = excess.water.columns.copy()
+            columns[:, 4] = np.where(columns[:, 4] != 0.0, wet, 0.0)
+            term = replace(excess.water, columns=columns, half=half)
             found = water_tolerance(replace(fluid, mixing=ZeroPressure(replace(excess, water=term))), T, z)
             misses[wet, half] += float(np.abs(np.log(found.water / (1.0 - ethanol - other))).mean()) / len(CURVES)
     for half in HALVES:

@@ -42,14 +42,17 @@ def flash_tp(fluid, T, P, z, *, check="vapour-liquid") -> Flash:
         Feed mole fractions; each row sums to 1. [-]
     check : str
         "vapour-liquid", or "full": also the tangent plane of the answer from
-        every pure component, which finds second liquids.
+        every pure component, which finds second liquids; the phases it finds
+        are added and solved, a vapour over two liquids among them.
 
     Returns
     -------
     Flash
         beta, x, y, K, phases, status and the proofs: residual, balance, tpd,
-        checks. LIQUID_SPLITS where the phases found are two liquids (x and
-        x_W), or where the full check finds a second liquid.
+        checks. LIQUID_SPLITS where a second liquid was found (x and x_W, with y
+        where there is a vapour too). Two liquids of dry ethanol and light
+        hydrocarbon are held not to exist: one liquid stands in their place, and
+        checks says so.
 
     Raises
     ------
@@ -60,7 +63,8 @@ def flash_tp(fluid, T, P, z, *, check="vapour-liquid") -> Flash:
 
     Source
     ------
-    Michelsen, Fluid Phase Equilib. 9 (1982) 1 and 21 (method).
+    Michelsen, Fluid Phase Equilib. 9 (1982) 1 and 21 (method); three phases:
+    Michelsen, Comput. Chem. Eng. 18 (1994) 545.
     """
     full = known_check(check)
     z, T, P, good = as_lanes(fluid.c, z, T=T, P=P)

@@ -119,7 +119,8 @@ class Saturation(LaneAnswer):
     species present; tpd (n,) [-] the smallest tangent-plane distance of the
     feed at the point, NaN where no test ran; checks, one line per lane, what
     was tested. Under LIQUID_SPLITS a bubble point is that of one liquid held
-    together: an upper bound of the pressure.
+    together: an upper bound of the pressure where water settles, good to some
+    percent otherwise; `first_vapour` gives the point of the two.
     """
 
     T: np.ndarray
@@ -138,14 +139,17 @@ class Saturation(LaneAnswer):
 class Flash(LaneAnswer):
     """Flash at given temperature and pressure.
 
-    beta (n,) [-] vapour fraction by moles, phases (n,) 1 or 2, x and y (n, c)
-    [-] with K = y/x; beta_W, x_W the second liquid, NaN where none was found.
-    A single phase has beta 0 or 1, its own composition on its side and NaN on
-    the other. residual (n,) [-] is the largest |ln f_V - ln f_L| over species
-    present, zero for a single phase; balance (n,) [-] the largest
-    |z - (1 - beta) x - beta y|; tpd (n,) [-] the smallest tangent-plane
-    distance found, NaN where no test ran; checks, one line per lane, what was
-    tested.
+    beta (n,) [-] vapour fraction by moles, phases (n,) how many, x and y
+    (n, c) [-] with K = y/x; beta_W, x_W share and composition of a second, the
+    denser liquid, NaN where none was found. A single phase has beta 0 or 1, its
+    own composition on its side and NaN on the other; two liquids have beta 0
+    and no y, three phases everything. residual (n,) [-] is the largest |ln f|
+    between phases over species present, zero for a single phase; balance (n,)
+    [-] the largest |z - (1 - beta - beta_W) x - beta y - beta_W x_W|; tpd (n,)
+    [-] the smallest tangent-plane distance found, NaN where no test ran;
+    checks, one line per lane, what was tested. LIQUID_SPLITS names a second
+    liquid: solved where checks says two liquids, or a vapour and two liquids,
+    were found.
     """
 
     T: np.ndarray

@@ -23,16 +23,13 @@ ANCHORS = np.array([273.15, 323.15, 298.15])  # [K] A is exact at the first two,
 
 @dataclass(frozen=True)
 class WaterTerm:
-    """Masks water and alcohol (c,); A0, E0, W [-] and A1, E1 [K] (c,), zero where a species takes no part."""
+    """Columns A0 [-], A1 [K], E0 [-], E1 [K], W [-] and the masks water and alcohol side by side, (c, 7).
 
-    water: np.ndarray
-    alcohol: np.ndarray
+    A = A0 + A1/T and E = E0 + E1/T; a species that takes no part holds zeros.
+    """
+
+    columns: np.ndarray
     half: float
-    A0: np.ndarray
-    A1: np.ndarray
-    E0: np.ndarray
-    E1: np.ndarray
-    W: np.ndarray
 
     @classmethod
     def of(cls, unifac, targets) -> WaterTerm | None:
@@ -53,32 +50,36 @@ class WaterTerm:
         A1 = (A[1] - A[0]) / (1.0 / T[1] - 1.0 / T[0])
         A0 = A[0] - A1 / T[0]
         W = np.where(hydrocarbon, targets.wet, 0.0)
-        return cls(water.astype(float), targets.alcohol.astype(float), targets.half, A0, A1, both - A0, -A1, W)
+        return cls(np.column_stack([A0, A1, both - A0, -A1, W, water, targets.alcohol]), targets.half)
 
     def ln_gamma(self, x, T):
         """Its part of ln gamma (n, c) [-] at mole fractions x (n, c) and T (n,). [K]"""
-        return self._partial(x, *(0.0 + c0 + c1 / T[:, None] for c0, c1 in self._pairs()), self.W)[1]
+        return self.term(x, 1.0, 1.0 / T, 1.0)[1]
 
     def slopes(self, x, T):
         """d ln gamma / dT (n, c) [1/K] and the second derivative in T of G^E/RT (n,) [1/K2] at fixed x."""
-        T = T[:, None]
-        first = self._partial(x, *(-c1 / T**2 for _, c1 in self._pairs()), np.zeros_like(self.W))[1]
-        second = self._partial(x, *(2.0 * c1 / T**3 for _, c1 in self._pairs()), np.zeros_like(self.W))[0]
-        return first, second
+        return self.term(x, 0.0, -1.0 / T**2, 0.0)[1], self.term(x, 0.0, 2.0 / T**3, 0.0)[0]
 
-    def _pairs(self):
-        return (self.A0, self.A1), (self.E0, self.E1)
+    def term(self, x, constant, tau, wet):
+        """The term g (n,) and ln gamma (n, c) = g + dg/dx_k - sum_j x_j dg/dx_j.
 
-    def _partial(self, x, A, E, W):
-        """The term g (n,) and ln gamma (n, c) = g + dg/dx_k - sum_j x_j dg/dx_j at coefficients (n, c)."""
-        x_w, s = x @ self.water, x @ self.alcohol
+        Its coefficients are constant * A0 + tau * A1, the same of E, and wet * W:
+        (1, 1/T, 1) gives the term itself, their derivatives in T its slopes.
+        """
+        sums = x @ self.columns
+        if np.size(tau) > sums.shape[0] == 1:  # one composition at many temperatures
+            sums = np.broadcast_to(sums, (np.size(tau), sums.shape[1]))
+        x_w, s = sums[:, 5], sums[:, 6]
         f, f_1 = s / (s + self.half), self.half / (s + self.half) ** 2
-        H_A, H_E, H_W = (x * A).sum(axis=1), (x * E).sum(axis=1), x @ W
-        dry = H_A + x_w * H_E
-        inner = (1.0 - f) * dry + f * H_W
-        by_water = inner + (1.0 - f) * x_w * H_E
-        by_alcohol = x_w * f_1 * (H_W - dry)
-        slope = (x_w * (1.0 - f))[:, None] * (A + x_w[:, None] * E) + (x_w * f)[:, None] * W
-        slope += by_water[:, None] * self.water + by_alcohol[:, None] * self.alcohol
+        H_E = constant * sums[:, 2] + tau * sums[:, 3]
+        dry = constant * sums[:, 0] + tau * sums[:, 1] + x_w * H_E
+        H_W = wet * sums[:, 4]
+        inner, by_dry = (1.0 - f) * dry + f * H_W, x_w * (1.0 - f)
+        weight = np.empty(sums.shape)
+        weight[:, 0], weight[:, 1] = by_dry * constant, by_dry * tau
+        weight[:, 2], weight[:, 3] = by_dry * x_w * constant, by_dry * x_w * tau
+        weight[:, 4], weight[:, 5], weight[:, 6] = x_w * f * wet, inner + by_dry * H_E, x_w * f_1 * (H_W - dry)
         g = x_w * inner
-        return g, slope + (g - (x * slope).sum(axis=1))[:, None]
+        slope = weight @ self.columns.T
+        slope += (g - np.einsum("nk,nk->n", weight, sums))[:, None]
+        return g, slope
