@@ -259,5 +259,5 @@ def _pressures(sheet, fitted: Fitted, fluid):
         found.append(
             MeasuredPressure(one.name, one.value, one.T, float(computed), float(1.0 + change / own), one.R)
         )
-    rank = ("true", "VPCR", "dvpe", "rvp", "rvpe")
+    rank = ("true", "VPCR", "DVPE", "RVP")
     return sorted(found, key=lambda m: next(i for i, r in enumerate(rank) if m.what.startswith(r)))

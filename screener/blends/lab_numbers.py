@@ -59,7 +59,7 @@ def numbers_of(sheet: LabSheet) -> tuple[Number, ...]:
     for key in ("density_15", "dvpe", "rvp", "rvpe"):
         if getattr(sheet, key) is not None:
             argument = {"dvpe": sheet.dvpe_equation, "rvp": sheet.rvp_chamber}.get(key)
-            add(key.replace("_15", " at 15 degC"), key, getattr(sheet, key), argument)
+            add("density at 15 degC" if key == "density_15" else key.upper(), key, getattr(sheet, key), argument)
     for ratio, T, P in sheet.vpcr:
         key = "vpcr_4" if ratio >= 1.0 else "vpcr_low"
         add(f"VPCR{ratio:g} at {T - ZERO_CELSIUS:.4g} degC", key, P, (ratio, T), T=T, own_key="vpcr")

@@ -44,17 +44,17 @@ def test_a_hidden_recipe_comes_back(i):
 
 def test_report_holds_measured_computed_and_reproducibility(gasoline):
     rows = {name: row for name, *row in gasoline.report.residuals}
-    assert set(rows) == {"density at 15 degC", "dvpe", "T10", "T50", "T90", "FBP", "ethanol", "benzene"}
-    measured, computed, R = rows["dvpe"]
+    assert set(rows) == {"density at 15 degC", "DVPE", "T10", "T50", "T90", "FBP", "ethanol", "benzene"}
+    measured, computed, R = rows["DVPE"]
     assert measured == 62e3
     assert computed == pytest.approx(
         dvpe(gasoline.fluid, gasoline.z).P[0], rel=1e-6
     )  # same test, same liquid
-    assert gasoline.report.misfits["dvpe"] == pytest.approx((computed - measured) / R)
+    assert gasoline.report.misfits["DVPE"] == pytest.approx((computed - measured) / R)
     assert rows["density at 15 degC"][1] == pytest.approx(gasoline.density_15, rel=1e-9)
-    told = [line for line in gasoline.report.assumed if line.startswith("laboratory sheet, dvpe")]
+    told = [line for line in gasoline.report.assumed if line.startswith("laboratory sheet, DVPE")]
     shown = f"computed {computed / 1e3:.4g} kPa, {(computed - measured) / R:+.2f} of its reproducibility"
-    assert told == [f"laboratory sheet, dvpe: measured 62 kPa, {shown}"]
+    assert told == [f"laboratory sheet, DVPE: measured 62 kPa, {shown}"]
     assert sum(gasoline.volume_fractions) == pytest.approx(1.0)
     assert gasoline.oxygenates["ethanol"] == pytest.approx(rows["ethanol"][1], rel=1e-6)
 
@@ -64,7 +64,7 @@ def test_measured_pressure_and_its_ratio(gasoline):
     one = gasoline.measured[0]
     test = dvpe(gasoline.fluid, gasoline.z)
     own = (62.0e3 + 3.78e3) / 0.965 - test.P_air[0]
-    assert (one.what, one.value, one.T) == ("dvpe", 62e3, pytest.approx(310.928, abs=1e-3))
+    assert (one.what, one.value, one.T) == ("DVPE", 62e3, pytest.approx(310.928, abs=1e-3))
     assert one.ratio == pytest.approx(own / test.P_vapour[0], rel=1e-6)
 
 
@@ -96,7 +96,7 @@ def test_numbers_no_liquid_has_together_are_named():
         dvpe=95e3,
         distillation=((0.05, 65 + C), (0.1, 72 + C), (0.5, 105 + C), (0.9, 165 + C)),
     )
-    with pytest.raises(InputError, match=r"contradict.*T5: sheet 65 degC.*dvpe: sheet 95 kPa"):
+    with pytest.raises(InputError, match=r"contradict.*T5: sheet 65 degC.*DVPE: sheet 95 kPa"):
         Blend.from_lab(sheet)
 
 

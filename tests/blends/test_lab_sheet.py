@@ -103,7 +103,7 @@ def test_numbers_carry_their_reproducibility_in_si():
     numbers = {one.name: one for one in numbers_of(sheet)}
     assert numbers["density at 15 degC"].R == 0.2
     assert numbers["VPCR4 at 37.78 degC"].R == 900.0
-    assert numbers["dvpe"].R == pytest.approx(1886.0, abs=1.0)
+    assert numbers["DVPE"].R == pytest.approx(1886.0, abs=1.0)
     assert numbers["benzene"].R == pytest.approx(0.00154)
     assert numbers["FBP"].guide and not numbers["T90"].guide
     # middle of the slopes 43 degC over 40 % and 67 degC over 40 %: equal spacing, so their mean

@@ -151,7 +151,7 @@ def test_a_sheet_survives_being_written():
 
 def test_the_sheet_of_a_real_case_is_fitted():
     blend = read_case(PARTS + SHEET + TANK).blend
-    assert blend.vapour_pressure_known and blend.measured[0].what == "dvpe"
+    assert blend.vapour_pressure_known and blend.measured[0].what == "DVPE"
     misfits = blend.report.misfits
     # well inside the reproducibility of every method: six numbers against eighteen groups that may move
     assert len(misfits) == 8 and max(abs(v) for v in misfits.values()) < 1.0, misfits
