@@ -364,6 +364,25 @@ def test_the_result_is_plain_data_with_the_ladder_in_it():
     assert {row["not_saturated"] for row in months} == {"passes through the flammable range"}
 
 
+@pytest.mark.parametrize(
+    ("recipe", "month", "words"),
+    [(e85(), "Jan", "margin = value - upper limit"), (DECANE, "Jan", "margin = lower limit - value"),
+     (stock("winter gasoline base"), "Jul", "margin = value - upper limit")],
+    ids=["inside", "lean", "rich"],
+)  # fmt: skip
+def test_the_memo_subtracts_the_nearest_end_and_prints_the_ladder(recipe, month, words):
+    answer = screen(case(blend=recipe, tank=BARE, site=site(month=month)))
+    found = {f.id: f for f in answer.findings}[SPACE]
+    memo = write_markdown(build_memo(answer, **memo_arguments()))
+    assert f"Vapour space, flammable: {words}" in memo
+    ends = {"margin = value - upper limit": found.value - found.limit_high,
+            "margin = lower limit - value": found.limit_low - found.value}  # fmt: skip
+    assert found.margin == pytest.approx(ends[words])
+    ladder = memo.partition("Vapour space through the year: receipt")[2].partition("Fuel share")[0]
+    assert len(re.findall(r"^\| [A-Z][a-z]{2} ", ladder, re.MULTILINE)) == 12
+    assert "passes through the flammable range" in ladder or "too lean at any degree of saturation" in ladder
+
+
 def test_classes_and_contamination_are_information():
     screening = screen(case(blend=stock("diesel")))  # on a heel of gasoline-like species
     facts = {fact.label: fact for item in screening.information for fact in item.facts}
