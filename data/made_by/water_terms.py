@@ -100,7 +100,9 @@ def henry(family: str) -> tuple[float, float, int]:
         if one.family != family or not 3.5 <= one.MW / M_CH2 <= 10.5:
             continue
         for table in ("Sander T dep", "Sander Const"):
-            pair = next((k for k in (f"{one.cas} 7732-18-5", f"7732-18-5 {one.cas}") if k in IPDB.tables[table]), None)
+            pair = next(
+                (k for k in (f"{one.cas} 7732-18-5", f"7732-18-5 {one.cas}") if k in IPDB.tables[table]), None
+            )
             if pair:
                 constants = IPDB.tables[table][pair]
                 n.append(longer)
@@ -146,7 +148,11 @@ def wet_and_half() -> tuple[float, float]:
     """The pair of `wet` and the half that misses the saturation curves of ethanol, hydrocarbon and water least."""
     misses = {pair: 0.0 for pair in itertools.product(WET, HALVES)}
     for hydrocarbon, T in CURVES:
-        rows = [r for r in rows_of("ethanol_hydrocarbon_water.csv") if (r["hydrocarbon"], float(r["T_K"])) == (hydrocarbon, T)]
+        rows = [
+            r
+            for r in rows_of("ethanol_hydrocarbon_water.csv")
+            if (r["hydrocarbon"], float(r["T_K"])) == (hydrocarbon, T)
+        ]
         ethanol, other = (np.array([float(row[k]) for row in rows]) for k in ("x_ethanol", "x_hydrocarbon"))
         z = np.stack([other, ethanol, np.zeros_like(ethanol)], axis=1) / (other + ethanol)[:, None]
         fluid = Fluid.of([hydrocarbon, "ethanol", "water"])
@@ -156,7 +162,9 @@ def wet_and_half() -> tuple[float, float]:
             columns[:, 4] = np.where(columns[:, 4] != 0.0, wet, 0.0)
             term = replace(excess.water, columns=columns, half=half)
             found = water_tolerance(replace(fluid, mixing=ZeroPressure(replace(excess, water=term))), T, z)
-            misses[wet, half] += float(np.abs(np.log(found.water / (1.0 - ethanol - other))).mean()) / len(CURVES)
+            misses[wet, half] += float(np.abs(np.log(found.water / (1.0 - ethanol - other))).mean()) / len(
+                CURVES
+            )
     for half in HALVES:
         print(f"half {half}: mean |ln| " + " ".join(f"{wet:.2f}:{misses[wet, half]:.3f}" for wet in WET))
     return min(misses, key=misses.get)
@@ -164,12 +172,25 @@ def wet_and_half() -> tuple[float, float]:
 
 def write(wet: float) -> None:
     """Write the table."""
-    lines = ["# ln gamma at infinite dilution of water in a hydrocarbon (g) and of it in water (h); see the passport"]
+    lines = [
+        "# ln gamma at infinite dilution of water in a hydrocarbon (g) and of it in water (h); see the passport"
+    ]
     lines.append(",".join(HEADER))
     for family, (g0, g1, gn) in g_rows().items():
         h0, hn, count = henry(family)
-        print(f"{family:12s} g0 {g0:.3f} g1 {g1:.0f} K gn {gn:.3f}   h0 {h0:.3f} hn {hn:.3f} from {count} constants")
-        row = [family, f"{g0:.4g}", f"{g1:.4g}", f"{gn:.3g}", f"{h0:.4g}", f"{hn:.3g}", f"{wet:.4g}", *NOTES[family]]
+        print(
+            f"{family:12s} g0 {g0:.3f} g1 {g1:.0f} K gn {gn:.3f}   h0 {h0:.3f} hn {hn:.3f} from {count} constants"
+        )
+        row = [
+            family,
+            f"{g0:.4g}",
+            f"{g1:.4g}",
+            f"{gn:.3g}",
+            f"{h0:.4g}",
+            f"{hn:.3g}",
+            f"{wet:.4g}",
+            *NOTES[family],
+        ]
         lines.append(",".join(row))
     (DATA / "pairs" / "water_terms.csv").write_text("\n".join(lines) + "\n", encoding="utf-8")
 

@@ -99,7 +99,12 @@ def first_vapour(fluid, T, z) -> FirstVapour:
     n, c = z.shape
     out = {name: np.full(n, np.nan) for name in ("beta_W", "balance")} | {"x_W": np.full((n, c), np.nan)}
     known = one.ok | (one.status == Status.LIQUID_SPLITS) & np.isfinite(one.P)
-    out |= {"P": one.P.copy(), "y": one.y.copy(), "x": np.where(known[:, None], z, np.nan), "liquids": known.astype(int)}
+    out |= {
+        "P": one.P.copy(),
+        "y": one.y.copy(),
+        "x": np.where(known[:, None], z, np.nan),
+        "liquids": known.astype(int),
+    }
     out |= {name: getattr(one, name).copy() for name in ("status", "iterations", "residual", "tpd", "checks")}
     out["balance"][known] = 0.0
     split = np.flatnonzero(one.status == Status.LIQUID_SPLITS)
@@ -138,7 +143,13 @@ class Settled:
 def _settle(out, lanes, fluid, T, z, P_one):
     """Feeds that split: the two liquids near the pressure of one, then the bubble point of both together."""
     state, n = fluid.at(T), lanes.size
-    for name, value in (("P", np.nan), ("y", np.nan), ("x", np.nan), ("residual", np.nan), ("balance", np.nan)):
+    for name, value in (
+        ("P", np.nan),
+        ("y", np.nan),
+        ("x", np.nan),
+        ("residual", np.nan),
+        ("balance", np.nan),
+    ):
         out[name][lanes] = value
     out["liquids"][lanes] = 0
     P = np.where(np.isfinite(P_one), P_one, NO_VAPOUR_LEFT)
@@ -155,7 +166,13 @@ def _settle(out, lanes, fluid, T, z, P_one):
     v = held.ln_phi(P[two], x, "L") + np.log(P[two])[:, None]
     present = np.tile(z[two] > 0.0, (1, 2))
     problem = Settled(held, z[two], pair.beta_W[two])
-    fixed = solve(problem, np.where(present, np.concatenate([u, v], axis=1), 0.0), present, plain=MOST_PLAIN, reach=REACH)
+    fixed = solve(
+        problem,
+        np.where(present, np.concatenate([u, v], axis=1), 0.0),
+        present,
+        plain=MOST_PLAIN,
+        reach=REACH,
+    )
     out["iterations"][lanes[two]] += fixed.iterations
     _take_in(out, lanes[two], fluid, T[two], problem, fixed)
 
@@ -175,12 +192,19 @@ def _take_in(out, lanes, fluid, T, problem, fixed):
     row = swap[:, None]
     x, x_W, beta = np.where(row, x_W, x), np.where(row, x, x_W), np.where(swap, 1.0 - beta, beta)
     ln_phi = held.state.ln_phi(held.P, x, "L")
-    found, splits, text = full_check(fluid, held.state, held.P, z[good], x, ln_phi, fluid.wilson_K(T[good], held.P))
+    found, splits, text = full_check(
+        fluid, held.state, held.P, z[good], x, ln_phi, fluid.wilson_K(T[good], held.P)
+    )
     stands = ~splits & np.isfinite(found.tpd)
     here = lanes[good]
     out["tpd"][here], out["checks"][here] = found.tpd, np.where(stands & found.converged, TWO_LIQUIDS, text)
     some, here = np.flatnonzero(stands), here[stands]
-    out["P"][here], out["y"][here], out["x"][here], out["x_W"][here] = held.P[some], y[some], x[some], x_W[some]
+    out["P"][here], out["y"][here], out["x"][here], out["x_W"][here] = (
+        held.P[some],
+        y[some],
+        x[some],
+        x_W[some],
+    )
     out["beta_W"][here], out["liquids"][here], out["status"][here] = beta[some], 2, Status.CONVERGED
     out["residual"][here] = fixed.residual[good][some]
     left = (1.0 - beta)[:, None] * x + beta[:, None] * x_W

@@ -120,7 +120,11 @@ def _judge(answer, lanes, open_, problem, feed, wilson):
     unstable = found.tpd < -TPD_ZERO
     stable = found.converged & ~unstable
     some = np.flatnonzero(stable)
-    K = np.where((held.z > 0.0) & (found.tpd > 0.0)[:, None], np.exp(np.where(light[:, None], 1, -1) * ln_ratio), np.nan)
+    K = np.where(
+        (held.z > 0.0) & (found.tpd > 0.0)[:, None],
+        np.exp(np.where(light[:, None], 1, -1) * ln_ratio),
+        np.nan,
+    )
     answer.one_phase(lanes[open_[some]], held.z[some], liquid[some], K[some], found.tpd[some])
     for kinds, mask in (("LV", unstable & ~(liquid & ~light)), ("LL", unstable & liquid & ~light)):
         some = np.flatnonzero(mask)
@@ -137,7 +141,9 @@ def _hold_together(answer, lanes, doubtful, problem, wilson):
     found = trials_from(held.state, held.P, held.z, ln_phi, (ln_z + np.log(wilson[doubtful]))[None], "V")
     answer.forget(here)
     trial = held.state.mix(np.where(np.isfinite(found.w), found.w, held.z))
-    vapour = reduced_volume(trial, held.P, trial.Z(held.P, "V")) > DENSE  # else it is the liquid held not to exist
+    vapour = (
+        reduced_volume(trial, held.P, trial.Z(held.P, "V")) > DENSE
+    )  # else it is the liquid held not to exist
     light = (found.tpd < -TPD_ZERO) & vapour
     some = np.flatnonzero((found.converged | ~vapour) & ~light)
     K = np.where((held.z > 0.0) & (found.tpd > 0.0)[:, None], np.exp(found.ln_W - ln_z), np.nan)
@@ -147,6 +153,15 @@ def _hold_together(answer, lanes, doubtful, problem, wilson):
         pair, present = held.take(some), held.z[some] > 0.0
         fixed = solve(pair, np.where(present, (found.ln_W - ln_z)[some], 0.0), present, reach=REACH)
         beta, x, y = pair.phases(fixed.u)
-        put_two(answer, here[some], np.flatnonzero(fixed.converged & (beta > 0.0) & (beta < 1.0)), pair, beta, x, y, fixed)
+        put_two(
+            answer,
+            here[some],
+            np.flatnonzero(fixed.converged & (beta > 0.0) & (beta < 1.0)),
+            pair,
+            beta,
+            x,
+            y,
+            fixed,
+        )
         answer.forget(here[some][np.isfinite(answer.beta_W[here[some]])])
     answer.checks[here[answer.phases[here] > 0]] = DOUBTFUL

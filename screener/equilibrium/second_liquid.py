@@ -24,12 +24,16 @@ from screener.ground.shapes import lanes as as_lanes
 from screener.ground.status import Status
 
 DEPTH = 1e-8  # [-] tangent-plane distance over RT that counts: a hundred times the residual of the answer
-DRY = 0.05  # [-] water to ethanol by moles; on the measured saturation curves with hexane, cyclohexane and toluene at
-# 273 and 298 K (IUPAC-NIST Solubility Database, systems 69_76, 69_80, 69_86, 69_87) no blend with less than 0.059 splits
+# [-] water to ethanol by moles: on the measured saturation curves with hexane, cyclohexane and toluene at 273 and
+# 298 K (IUPAC-NIST Solubility Database, systems 69_76, 69_80, 69_86, 69_87) no blend with less than 0.059 splits
+DRY = 0.05
 LIGHT = 0.125  # [kg/mol] mean molar mass of the rest, below which it is gasoline: C8 is 0.114; own choice
-NO_VAPOUR_LEFT = 1e7  # [Pa] above the bubble pressure of any liquid stored near ambient temperature; own choice
+NO_VAPOUR_LEFT = (
+    1e7  # [Pa] above the bubble pressure of any liquid stored near ambient temperature; own choice
+)
 POLAR = (  # species whose pure liquid may stand beside hydrocarbon
-    "water", "methanol", "ethanol", "1-propanol", "2-propanol", "1-butanol", "2-butanol", "isobutanol", "tert-butanol",
+    "water", "methanol", "ethanol", "1-propanol", "2-propanol", "1-butanol", "2-butanol", "isobutanol",
+    "tert-butanol",
 )  # fmt: skip
 MOST_NUMBERS = 20_000  # lanes times components handled at once: some ten trials each
 NOT_TESTED = "not tested for a second liquid"
@@ -40,8 +44,10 @@ THREE_PHASES = "a vapour and two liquids found"
 DOUBTFUL = "tangent plane: the model splits dry ethanol and hydrocarbon, held not to exist"
 UNSETTLED = "tangent plane: a trial did not converge"
 NONE_FOUND = "tested for a second liquid: none found"
-TWO_BY_THE_CHECK = (  # of 358 seeded feeds with free water none above, of 862 with methanol 100 below, by 2.2 % at most
-    "the liquid splits: a number for one liquid is an upper bound where water settles, good to some percent otherwise"
+# of 358 seeded feeds with free water none lay above the number for one liquid, of 862 with methanol 100, by 2.2 %
+TWO_BY_THE_CHECK = (
+    "the liquid splits: a number for one liquid is an upper bound where water settles, "
+    "good to some percent otherwise"
 )
 NO_LIQUID = "not tested for a second liquid: no liquid at this state"
 VAPOUR_FIRST = "not tested for a second liquid: a vapour forms at this pressure"
@@ -112,7 +118,7 @@ def share_of(fluid, z, name: str):
 
 
 def dry_ethanol(fluid, z):
-    """Mask (n,) of lanes z (n, c) [-] that hold ethanol in light hydrocarbon, next to no water, and no methanol."""
+    """Mask (n,) of lanes z (n, c) [-] with ethanol in light hydrocarbon, next to no water, and no methanol."""
     ethanol, water = share_of(fluid, z, "ethanol"), share_of(fluid, z, "water")
     dry = (ethanol > 0.0) & (water <= DRY * ethanol) & (share_of(fluid, z, "methanol") == 0.0)
     if not dry.any():
@@ -122,7 +128,7 @@ def dry_ethanol(fluid, z):
 
 
 def liquid_starts(fluid, T, z):
-    """Starts (k, n, c) of liquid trials beside a liquid z (n, c) at T (n,) [K]: few, and all that a stored liquid needs.
+    """Starts (k, n, c) of liquid trials beside a liquid z (n, c) at T (n,) [K]: few, and enough for stored liquids.
 
     Every polar species pure, the rest of the feed without them, and the two
     ends of that rest, lightest and heaviest; all pure species where none is
@@ -222,9 +228,17 @@ def second_liquid_check(fluid, T, P, z, *, where=None) -> SecondLiquid:
     status[good & fluid.lacks(z)] = Status.NO_PARAMETERS
     asked = np.ones(n, dtype=bool) if where is None else np.broadcast_to(np.asarray(where, dtype=bool), (n,))
     idle = (status == Status.OUT_OF_STEPS) & ~asked
-    out = {"verdict": np.full(n, NOT_TESTED, dtype=object), "splits": np.zeros(n, dtype=bool), "status": status}
+    out = {
+        "verdict": np.full(n, NOT_TESTED, dtype=object),
+        "splits": np.zeros(n, dtype=bool),
+        "status": status,
+    }
     out |= {name: np.full(n, np.nan) for name in ("tpd", "residual")}
-    out |= {"w": np.full((n, c), np.nan), "iterations": np.zeros(n, dtype=int), "tested": np.zeros(n, dtype=bool)}
+    out |= {
+        "w": np.full((n, c), np.nan),
+        "iterations": np.zeros(n, dtype=int),
+        "tested": np.zeros(n, dtype=bool),
+    }
     work = np.flatnonzero((status == Status.OUT_OF_STEPS) & asked)
     for some in np.array_split(work, max(1, -(-work.size * c // MOST_NUMBERS))):
         if some.size:

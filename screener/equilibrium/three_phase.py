@@ -79,7 +79,9 @@ def shares_of_phases(z, ln_e, beta):
 def _newton(bend, slope, free):
     """Newton step (n, k) in the shares that are free."""
     matrix = np.where(free[:, :, None] & free[:, None, :], bend, 0.0)
-    matrix += np.eye(free.shape[1]) * np.where(free, 1e-13 * (1.0 + np.einsum("njj->nj", bend)), 1.0)[:, None, :]
+    matrix += (
+        np.eye(free.shape[1]) * np.where(free, 1e-13 * (1.0 + np.einsum("njj->nj", bend)), 1.0)[:, None, :]
+    )
     return np.linalg.solve(matrix, -np.where(free, slope, 0.0)[:, :, None])[:, :, 0]
 
 
@@ -232,6 +234,12 @@ def _put_three(answer, lanes, triple, beta, x, fixed, settled):
     swap = density(held, x[:, L], "L") > density(held, x[:, W], "L")
     row = swap[:, None]
     answer.three_phases(
-        lanes[some], held.z, beta[:, V], np.where(swap, beta[:, L], beta[:, W]), np.where(row, x[:, W], x[:, L]),
-        x[:, V], np.where(row, x[:, L], x[:, W]), fixed.residual[some],
+        lanes[some],
+        held.z,
+        beta[:, V],
+        np.where(swap, beta[:, L], beta[:, W]),
+        np.where(row, x[:, W], x[:, L]),
+        x[:, V],
+        np.where(row, x[:, L], x[:, W]),
+        fixed.residual[some],
     )

@@ -59,7 +59,9 @@ class Split:
     def image(self, ln_K):
         """ln phi(x) - ln phi(y)."""
         self.beta, x, y = self.phases(ln_K, rough=True)
-        return self.state.mix(x).ln_phi(self.P, self.kinds[0]) - self.state.mix(y).ln_phi(self.P, self.kinds[1])
+        return self.state.mix(x).ln_phi(self.P, self.kinds[0]) - self.state.mix(y).ln_phi(
+            self.P, self.kinds[1]
+        )
 
 
 class DescendingSplit(Split):
@@ -70,7 +72,9 @@ class DescendingSplit(Split):
 
     def take(self, lanes) -> DescendingSplit:
         """Some of the lanes."""
-        return DescendingSplit(self.state.take(lanes), self.P[lanes], self.z[lanes], self.beta[lanes], self.kinds)
+        return DescendingSplit(
+            self.state.take(lanes), self.P[lanes], self.z[lanes], self.beta[lanes], self.kinds
+        )
 
     def image(self, ln_K):
         """ln phi(x) - ln phi(y); keeps the Gibbs energy over RT on the way."""
@@ -141,7 +145,7 @@ class Answer:
 
 
 def put_two(answer, lanes, some, problem, beta, x, y, fixed):
-    """Two phases that converged; the lighter one is the vapour, or of two dense ones the denser the second liquid."""
+    """Two phases that converged: the lighter is the vapour; of two dense ones the denser is the second liquid."""
     if some.size == 0:
         return
     held = problem.take(some)
@@ -153,13 +157,19 @@ def put_two(answer, lanes, some, problem, beta, x, y, fixed):
     swap = np.where(both, heavier, ratio_x * first.b > ratio_y * second.b)
     row = swap[:, None]
     answer.two_phases(
-        lanes[some], held.z, np.where(swap, 1.0 - beta[some], beta[some]), np.where(row, y[some], x[some]),
-        np.where(row, x[some], y[some]), np.where(row, -fixed.u[some], fixed.u[some]), fixed.residual[some], both,
+        lanes[some],
+        held.z,
+        np.where(swap, 1.0 - beta[some], beta[some]),
+        np.where(row, y[some], x[some]),
+        np.where(row, x[some], y[some]),
+        np.where(row, -fixed.u[some], fixed.u[some]),
+        fixed.residual[some],
+        both,
     )
 
 
 def density(problem, x, kind: str):
-    """Mass density (n,) [kg/m3] of phases x (n, c) at the states of a problem: of two liquids the denser settles."""
+    """Mass density (n,) [kg/m3] of phases x (n, c) at the states of a problem: the denser liquid settles."""
     return (x @ problem.state.fluid.MW) / problem.state.mix(x).volume(problem.P, kind)
 
 
@@ -173,4 +183,13 @@ def again(answer, lanes, problem, kinds, start):
     apart = row_max(np.abs(np.where(present, fixed.u, 0.0))) > TRIVIAL
     answer.status[lanes[fixed.converged & ~apart]] = Status.TRIVIAL
     answer.residual[lanes] = fixed.residual
-    put_two(answer, lanes, np.flatnonzero(fixed.converged & apart & (beta > 0.0) & (beta < 1.0)), problem, beta, x, y, fixed)
+    put_two(
+        answer,
+        lanes,
+        np.flatnonzero(fixed.converged & apart & (beta > 0.0) & (beta < 1.0)),
+        problem,
+        beta,
+        x,
+        y,
+        fixed,
+    )

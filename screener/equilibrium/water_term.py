@@ -78,7 +78,11 @@ class WaterTerm:
         weight = np.empty(sums.shape)
         weight[:, 0], weight[:, 1] = by_dry * constant, by_dry * tau
         weight[:, 2], weight[:, 3] = by_dry * x_w * constant, by_dry * x_w * tau
-        weight[:, 4], weight[:, 5], weight[:, 6] = x_w * f * wet, inner + by_dry * H_E, x_w * f_1 * (H_W - dry)
+        weight[:, 4], weight[:, 5], weight[:, 6] = (
+            x_w * f * wet,
+            inner + by_dry * H_E,
+            x_w * f_1 * (H_W - dry),
+        )
         g = x_w * inner
         slope = weight @ self.columns.T
         slope += (g - np.einsum("nk,nk->n", weight, sums))[:, None]

@@ -32,7 +32,9 @@ from screener.ground.status import Status
 LEAST_WATER = 1e-6  # [-] first rung: below the water any stored hydrocarbon holds; own choice
 RUNGS = 1.0 - np.concatenate([[1.0], 1.0 - np.geomspace(LEAST_WATER, 0.5, 20), np.geomspace(0.4, 0.001, 8)])
 NEAR = 1e-9  # [-] tangent-plane distance over RT taken as touching: ten times its rounding
-NARROW = 1e-4  # relative width of a bracket that is narrow enough where two liquids become one and distances drown
+NARROW = (
+    1e-4  # relative width of a bracket that is narrow enough where two liquids become one and distances drown
+)
 MOST_STEPS = 60
 BACK = 2.0 * NARROW  # how far below the crossing, relative to it, every start is tried again
 MOST_BRANCHES = 3  # liquids that may split off before the one followed
@@ -101,7 +103,9 @@ def water_tolerance(fluid, T, z) -> WaterTolerance:
     (1982) 1.
     """
     if "water" not in fluid.names:
-        raise InputError("fluid", fluid.names, "the fluid holds no water", "name water among its species, share zero")
+        raise InputError(
+            "fluid", fluid.names, "the fluid holds no water", "name water among its species, share zero"
+        )
     z, T, good = as_lanes(fluid.c, z, T=T)
     i = fluid.names.index("water")
     z[:, i] = 0.0
@@ -136,7 +140,7 @@ def _with_water(z, w, i: int):
 
 
 def _look(fluid, T, x, start=None):
-    """Liquid trials beside x (n, c) at T (n,), on the liquid root at one atmosphere; start (n, c), ln W, or all."""
+    """Liquid trials beside x (n, c) at T (n,) and one atmosphere, from start (n, c), ln W, or every start."""
     state, P = fluid.at(T), np.full(T.shape, ATMOSPHERE)
     starts = liquid_starts(fluid, T, x) if start is None else start[None]
     return trials_from(state, P, x, state.ln_phi(P, x, "L"), starts, "L")
@@ -165,7 +169,14 @@ def _hold(out, lanes, fluid, T, z, i: int):
             return
         row = some * k + first[some]
         w, ln_W, left, steps = _crossing(
-            fluid, T[some], z[some], i, RUNGS[holds[some]], RUNGS[first[some]], found.ln_W[row], found.tpd[row]
+            fluid,
+            T[some],
+            z[some],
+            i,
+            RUNGS[holds[some]],
+            RUNGS[first[some]],
+            found.ln_W[row],
+            found.tpd[row],
         )
         out["iterations"][lanes[some]] += steps
         below = _look(fluid, T[some], _with_water(z[some], w * (1.0 - BACK), i))
@@ -188,7 +199,7 @@ def _take_in(out, lanes, fluid, z, i: int, w, ln_W, left, stands):
 
 
 def _crossing(fluid, T, z, i: int, low, high, ln_W, f_high):
-    """Share of water (n,) where a liquid, ln W (n, c), begins to split off; the distance left, and how many steps.
+    """Share of water (n,) where a liquid, ln W (n, c), begins to split off, the distance left, and steps.
 
     Below the crossing the trial stands at a positive distance, or has become
     the blend itself; the step is the secant of the two ends as far as they

@@ -21,7 +21,7 @@ import numpy as np
 from screener.ground.files import read_table
 from screener.species.catalogue import find
 
-HALF = 0.05  # [-] mole fraction of alcohols; chosen with column wet on measured points, data/made_by/water_terms.py
+HALF = 0.05  # [-] mole fraction of alcohols; chosen with column wet, data/made_by/water_terms.py
 T_REFERENCE = 298.15  # [K] to which the table refers
 M_CH2 = 0.014027  # [kg/mol] from the standard atomic weights of C and H
 N_REFERENCE = 6.0  # carbon number to which the table refers

@@ -52,16 +52,28 @@ def slow(monkeypatch, *modules):
 
     for name in modules:
         module = importlib.import_module(f"screener.equilibrium.{name}")
-        monkeypatch.setattr(module, "solve", lambda *a, **k: engine.solve(*a, **{**k, "plain": 1, "newton": 0}))
+        monkeypatch.setattr(
+            module, "solve", lambda *a, **k: engine.solve(*a, **{**k, "plain": 1, "newton": 0})
+        )
 
 
 def test_the_verdict_in_words(blend):
-    z = [with_shares(), with_shares(water=2e-3), with_shares(methanol=0.3), with_shares(ethanol=0.2, water=0.005)]
+    z = [
+        with_shares(),
+        with_shares(water=2e-3),
+        with_shares(methanol=0.3),
+        with_shares(ethanol=0.2, water=0.005),
+    ]
     found = second_liquid_check(blend, 280.0, 3e5, z)
     assert found.verdict.tolist() == [NONE_FOUND, TWO_BY_THE_CHECK, TWO_BY_THE_CHECK, NONE_FOUND]
     assert found.splits.tolist() == [False, True, True, False] and found.tested.all()
     assert found.w[1, 6] > 0.999 and found.w[2, 5] > 0.5  # the liquid that settles: water, methanol
-    assert found.status.tolist() == [Status.CONVERGED, Status.LIQUID_SPLITS, Status.LIQUID_SPLITS, Status.CONVERGED]
+    assert found.status.tolist() == [
+        Status.CONVERGED,
+        Status.LIQUID_SPLITS,
+        Status.LIQUID_SPLITS,
+        Status.CONVERGED,
+    ]
 
 
 def test_the_cheap_check_agrees_with_the_full_one(blend):
@@ -162,7 +174,12 @@ def test_heavy_hydrocarbon_water_and_methanol_take_the_doubt_away():
 def test_water_tolerance_lies_on_the_edge(blend):
     T = np.array([270.0, 280.0, 300.0])
     found = water_tolerance(blend, T, with_shares(ethanol=0.2))
-    assert found.ok.all() and (found.checks == TESTED).all() and (np.diff(found.water) > 0.0).all() and (found.residual < 1e-9).all()
+    assert (
+        found.ok.all()
+        and (found.checks == TESTED).all()
+        and (np.diff(found.water) > 0.0).all()
+        and (found.residual < 1e-9).all()
+    )
     for factor, splits in ((0.99, False), (1.01, True)):  # within 1 %: the distance is shallow at the edge
         x = with_shares(ethanol=0.2) * (1.0 - factor * found.water)[:, None]
         x[:, 6] = factor * found.water
@@ -170,7 +187,9 @@ def test_water_tolerance_lies_on_the_edge(blend):
     assert found.x[:, 6] == pytest.approx(found.water, rel=1e-12)
     ln_f = np.log(found.x[:, [1, 4, 6]]) + blend.ln_phi(T, ATM, found.x, "L")[:, [1, 4, 6]]
     other = np.log(found.x_W[:, [1, 4, 6]]) + blend.ln_phi(T, ATM, found.x_W, "L")[:, [1, 4, 6]]
-    assert ln_f == pytest.approx(other, abs=1e-7)  # both are distances of 1e-9, over the slope of a shallow trial
+    assert ln_f == pytest.approx(
+        other, abs=1e-7
+    )  # both are distances of 1e-9, over the slope of a shallow trial
 
 
 def test_a_tolerance_below_what_measured_blends_hold_is_marked_doubtful(blend):
@@ -184,7 +203,11 @@ def test_water_tolerance_leaves_the_water_of_the_blend_out_of_account(blend):
     wet[:4] = dry[:4] * 0.97
     one, two = water_tolerance(blend, 280.0, dry), water_tolerance(blend, 280.0, wet)
     assert two.water == pytest.approx(one.water, rel=1e-7)  # one crossing found from one ladder
-    volume = one.water[0] * blend.v_15[6] / (one.water[0] * blend.v_15[6] + (1.0 - one.water[0]) * (dry @ blend.v_15))
+    volume = (
+        one.water[0]
+        * blend.v_15[6]
+        / (one.water[0] * blend.v_15[6] + (1.0 - one.water[0]) * (dry @ blend.v_15))
+    )
     assert one.water_volume[0] == pytest.approx(volume, rel=1e-12)
 
 
@@ -193,14 +216,23 @@ def test_more_ethanol_and_warmth_hold_more_water(blend):
     z = np.stack([with_shares(ethanol=s) for s in share])
     cold, warm = water_tolerance(blend, 265.0, z), water_tolerance(blend, 300.0, z)
     assert cold.ok.all() and warm.ok.all()
-    assert (np.diff(cold.water) > 0.0).all() and (np.diff(warm.water) > 0.0).all() and (warm.water > cold.water).all()
+    assert (
+        (np.diff(cold.water) > 0.0).all()
+        and (np.diff(warm.water) > 0.0).all()
+        and (warm.water > cold.water).all()
+    )
 
 
 def test_every_status_of_the_tolerance_in_one_batch(blend, monkeypatch):
     lacking = replace(blend, missing=(("n-butane", "water"),))
     z = np.stack([with_shares(ethanol=0.2), np.eye(7)[4], with_shares(methanol=0.3), np.eye(7)[6]])
     found = water_tolerance(blend, 280.0, z)
-    assert found.status.tolist() == [Status.CONVERGED, Status.NO_SOLUTION, Status.LIQUID_SPLITS, Status.BAD_INPUT]
+    assert found.status.tolist() == [
+        Status.CONVERGED,
+        Status.NO_SOLUTION,
+        Status.LIQUID_SPLITS,
+        Status.BAD_INPUT,
+    ]
     assert np.isnan(found.water[1:]).all()
     assert water_tolerance(lacking, 280.0, z[:1]).status[0] == Status.NO_PARAMETERS
     slow(monkeypatch, "stability")
@@ -209,7 +241,9 @@ def test_every_status_of_the_tolerance_in_one_batch(blend, monkeypatch):
 
 def test_a_blend_the_model_alone_splits_has_no_tolerance_and_says_why():
     found = water_tolerance(Fluid.of(["isooctane", "ethanol", "water"]), 280.0, [0.5, 0.5, 0.0])
-    assert found.status[0] == Status.LIQUID_SPLITS and found.checks[0] == DOUBTFUL and np.isnan(found.water[0])
+    assert (
+        found.status[0] == Status.LIQUID_SPLITS and found.checks[0] == DOUBTFUL and np.isnan(found.water[0])
+    )
 
 
 def test_arguments_that_cannot_be_meant(blend):

@@ -13,13 +13,17 @@ from screener.equilibrium import fixed_point as engine
 from screener.equilibrium.second_liquid import SPLITS, TESTED, TWO_LIQUIDS
 from screener.ground.status import Status
 
-FUELS = json.loads((Path(__file__).parent / "data" / "fuel_bubble_points.json").read_text(encoding="utf-8"))["fuels"]
+FUELS = json.loads((Path(__file__).parent / "data" / "fuel_bubble_points.json").read_text(encoding="utf-8"))[
+    "fuels"
+]
 WET = FUELS[-1]
 
 
 @pytest.fixture(scope="module")
 def wet_gasoline():
-    return Fluid.from_constants(WET["Tc"], WET["Pc"], WET["omega"], np.full(9, 0.1), WET["kij"]), np.array(WET["z"])
+    return Fluid.from_constants(WET["Tc"], WET["Pc"], WET["omega"], np.full(9, 0.1), WET["kij"]), np.array(
+        WET["z"]
+    )
 
 
 @pytest.fixture(scope="module")
@@ -44,7 +48,9 @@ def test_gasoline_with_800_ppm_water_as_found_by_a_solver_of_many_starts(wet_gas
     assert found.one_liquid == pytest.approx([9300.0, 33000.0], abs=50.0)  # given to 0.1 kPa
     assert found.P == pytest.approx([6200.0, 29000.0], abs=50.0)
     one = bubble_pressure(fluid, [253.15, 288.15], z, check="full")
-    assert (one.status == Status.LIQUID_SPLITS).all() and one.P == pytest.approx(found.one_liquid)  # an upper bound
+    assert (one.status == Status.LIQUID_SPLITS).all() and one.P == pytest.approx(
+        found.one_liquid
+    )  # an upper bound
 
 
 def test_the_point_is_the_bubble_point_of_each_of_its_liquids(wet_gasoline):
@@ -82,7 +88,11 @@ def test_a_liquid_that_is_one_keeps_its_bubble_point(gasoline):
     z = np.stack([DRY, settled(5e-5), settled(0.9999999)])
     found, plain = first_vapour(gasoline, 288.15, z), bubble_pressure(gasoline, 288.15, z)
     assert found.liquids.tolist() == [1, 1, 1] and found.checks.tolist() == [TESTED] * 3
-    assert found.P == pytest.approx(plain.P, rel=1e-12) and np.isnan(found.beta_W).all() and np.isnan(found.x_W).all()
+    assert (
+        found.P == pytest.approx(plain.P, rel=1e-12)
+        and np.isnan(found.beta_W).all()
+        and np.isnan(found.x_W).all()
+    )
 
 
 def test_nothing_jumps_where_the_second_liquid_goes(gasoline):

@@ -107,5 +107,8 @@ def test_a_cut_stands_between_its_families():
 def test_ethers_and_dry_blends_keep_their_pressures():
     """A trace of water moves the bubble pressure by its own partial pressure, no more."""
     fluid = Fluid.of(["n-hexane", "toluene", "water"])
-    dry, damp = bubble_pressure(fluid, 300.0, [0.6, 0.4, 0.0]), bubble_pressure(fluid, 300.0, [0.6, 0.39999, 1e-5])
+    dry, damp = (
+        bubble_pressure(fluid, 300.0, [0.6, 0.4, 0.0]),
+        bubble_pressure(fluid, 300.0, [0.6, 0.39999, 1e-5]),
+    )
     assert damp.P[0] - dry.P[0] == pytest.approx(damp.P[0] * damp.y[0, 2], rel=0.01)  # 1e-5 toluene less

@@ -34,15 +34,24 @@ def wet():
 
 def proofs(fluid, found):
     """Largest |ln f| between phases and largest miss of the balance, from the model and nothing else."""
-    highest, lowest, left = np.full(found.z.shape, -np.inf), np.full(found.z.shape, np.inf), np.zeros(found.z.shape)
+    highest, lowest, left = (
+        np.full(found.z.shape, -np.inf),
+        np.full(found.z.shape, np.inf),
+        np.zeros(found.z.shape),
+    )
     second = np.where(np.isfinite(found.beta_W), found.beta_W, 0.0)
     for x, kind, share in (
         (found.x, "L", 1.0 - found.beta - second), (found.y, "V", found.beta), (found.x_W, "L", second)
     ):  # fmt: skip
         there = np.isfinite(x).all(axis=1)[:, None]
         with np.errstate(divide="ignore"):
-            ln_f = np.log(np.where(there, x, 1.0)) + fluid.ln_phi(found.T, found.P, np.where(there, x, found.z), kind)
-        highest, lowest = np.where(there, np.fmax(highest, ln_f), highest), np.where(there, np.fmin(lowest, ln_f), lowest)
+            ln_f = np.log(np.where(there, x, 1.0)) + fluid.ln_phi(
+                found.T, found.P, np.where(there, x, found.z), kind
+            )
+        highest, lowest = (
+            np.where(there, np.fmax(highest, ln_f), highest),
+            np.where(there, np.fmin(lowest, ln_f), lowest),
+        )
         left += np.where(there, share[:, None] * x, 0.0)
     spread = np.subtract(highest, lowest, out=np.zeros_like(left), where=found.z > 0.0)
     return spread.max(axis=1), np.abs(left - found.z).max(axis=1)
@@ -57,7 +66,9 @@ def test_shares_of_two_phases_are_those_of_rachford_and_rice():
     absent = np.full_like(z, -50.0)  # a third phase that never pays
     beta, x = shares_of_phases(z, np.stack([0.0 * z, ln_K, absent], axis=1), np.full((200, 3), 1.0 / 3.0))
     assert inside.sum() > 50 and (beta[:, 2] == 0.0).all()
-    assert beta[inside, 1] == pytest.approx(expected.beta[inside], abs=1e-11)  # flat minimum: slope 1e-14 of Q
+    assert beta[inside, 1] == pytest.approx(
+        expected.beta[inside], abs=1e-11
+    )  # flat minimum: slope 1e-14 of Q
     assert x[inside, 0] == pytest.approx(expected.x[inside], abs=1e-11)
     assert (beta[~inside] > 0.0).sum(axis=1).tolist() == [1] * int((~inside).sum())
 
@@ -70,7 +81,9 @@ def test_shares_of_three_phases_meet_the_conditions_of_the_minimum():
     assert set((beta > 0.0).sum(axis=1)) == {1, 2, 3}  # every number of phases occurs
     e = np.exp(ln_e)
     sums = np.einsum("nc,nkc->nk", z / np.einsum("nk,nkc->nc", beta, e), e)
-    assert np.abs(np.where(beta > 0.0, sums - 1.0, 0.0)).max() < 1e-12  # compositions of phases that exist sum to 1
+    assert (
+        np.abs(np.where(beta > 0.0, sums - 1.0, 0.0)).max() < 1e-12
+    )  # compositions of phases that exist sum to 1
     assert (sums <= 1.0 + 1e-12).all()  # those of the others to less
     assert np.abs(np.einsum("nk,nkc->nc", beta, x) - z).max() < 1e-12
 
@@ -92,7 +105,11 @@ def test_pressure_takes_a_wet_feed_through_its_phases(wet):
 def test_water_that_drops_out_of_a_gas_is_found():
     """Carbon dioxide with a little water, inside the dew line: a vapour-liquid pair starts from the feed alone."""
     fluid = Fluid.from_constants(
-        [304.1, 647.1], [7.38e6, 22.064e6], [0.2239, 0.3443], [0.044, 0.018], np.array([[0.0, 0.19], [0.19, 0.0]])
+        [304.1, 647.1],
+        [7.38e6, 22.064e6],
+        [0.2239, 0.3443],
+        [0.044, 0.018],
+        np.array([[0.0, 0.19], [0.19, 0.0]]),
     )
     found = flash_tp(fluid, 300.0, 3e6, [0.995, 0.005], check="full")
     assert found.ok[0] and found.phases[0] == 2 and found.x[0, 1] > 0.99 and 0.99 < found.beta[0] < 1.0
@@ -104,13 +121,17 @@ def test_gasoline_on_settled_water_just_below_its_first_vapour():
     point = first_vapour(fluid, T, z)
     found = flash_tp(fluid, T, point.P * (1.0 - 1e-5), z, check="full")
     assert found.phases.tolist() == [3, 3] and (found.beta < 1e-4).all()
-    assert found.y == pytest.approx(point.y, abs=1e-4)  # 1e-5 below the point, over the slope of the vapour fraction
+    assert found.y == pytest.approx(
+        point.y, abs=1e-4
+    )  # 1e-5 below the point, over the slope of the vapour fraction
     assert found.beta_W == pytest.approx(point.beta_W, abs=1e-5)
     above = flash_tp(fluid, T, point.P * (1.0 + 1e-5), z, check="full")
     assert above.phases.tolist() == [2, 2] and above.checks.tolist() == [TWO_LIQUIDS, TWO_LIQUIDS]
 
 
-@pytest.mark.parametrize("case", [case for case in CASES if case["phases"] == 3], ids=lambda case: case["name"])
+@pytest.mark.parametrize(
+    "case", [case for case in CASES if case["phases"] == 3], ids=lambda case: case["name"]
+)
 def test_three_phases_have_less_energy_than_the_two_of_the_reference(case):
     fluid = from_case(case)
     found = flash_tp(fluid, case["T"], case["P"], case["z"], check="full")
@@ -149,7 +170,9 @@ def test_wet_mixtures_are_solved_or_say_that_they_are_not(kind):
     T, P = generator.uniform(250.0, 380.0, n), np.exp(generator.uniform(np.log(2e4), np.log(3e6), n))
     found = flash_tp(fluid, T, P, z, check="full")
     assert (found.phases > 0).all()
-    assert ((found.checks == SPLITS) == (found.tpd < -1e-8)).sum() >= n - 3  # doubtful lanes are said in other words
+    assert (
+        (found.checks == SPLITS) == (found.tpd < -1e-8)
+    ).sum() >= n - 3  # doubtful lanes are said in other words
     done = np.isin(found.checks, (TESTED, TWO_LIQUIDS, THREE_PHASES))
     assert done.sum() >= n - 3 and {2, 3} <= set(found.phases[done])  # at most 5 % left open or doubtful
     spread, balance = proofs(fluid, found)
@@ -168,7 +191,9 @@ def test_lane_of_a_batch_equals_the_single_run(wet):
         alone = flash_tp(wet, 300.0, P[i], [0.3, 0.4, 0.3], check="full")
         for name in ("beta", "beta_W", "x", "y", "x_W"):
             # the same steps but for the order of sums; a residual of 1e-10 moves a share by 1e-9
-            assert getattr(batch, name)[i] == pytest.approx(getattr(alone, name)[0], rel=1e-8, abs=1e-10, nan_ok=True)
+            assert getattr(batch, name)[i] == pytest.approx(
+                getattr(alone, name)[0], rel=1e-8, abs=1e-10, nan_ok=True
+            )
 
 
 def test_a_third_phase_that_is_not_found_leaves_the_two_and_says_so(wet, monkeypatch):

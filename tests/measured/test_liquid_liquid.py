@@ -45,7 +45,10 @@ def methanol_gaps():
     for hydrocarbon, gaps in measured.items():
         rich, poor, found = two_liquids(hydrocarbon, "methanol", list(gaps))
         assert (np.isfinite(rich) == (found.checks == TWO_LIQUIDS)).all()
-        out += [(hydrocarbon, T, min(x), max(x), p, r) for (T, x), p, r in zip(gaps.items(), poor, rich, strict=True)]
+        out += [
+            (hydrocarbon, T, min(x), max(x), p, r)
+            for (T, x), p, r in zip(gaps.items(), poor, rich, strict=True)
+        ]
     return out
 
 
@@ -84,7 +87,9 @@ def solubilities():
         assert (found.checks == TWO_LIQUIDS).all()
         for i, row in enumerate(some):  # the second liquid is water: the denser
             x = found.x[i, 1] if row["solute"] == "water" else found.x_W[i, 0]
-            out.append((row["solute"], row["solvent"], float(row["T_K"]), float(row["x"]), float(x), row["kind"]))
+            out.append(
+                (row["solute"], row["solvent"], float(row["T_K"]), float(row["x"]), float(x), row["kind"])
+            )
     return out
 
 
@@ -92,10 +97,14 @@ def test_mutual_solubilities_of_water_and_hydrocarbons():
     print("\nsolute in solvent              T/K      measured  computed  ratio  kind")
     ratios = defaultdict(list)
     for solute, solvent, T, x, computed, kind in solubilities():
-        print(f"{solute + ' in ' + solvent:28s} {T:7.2f} {x:10.3g} {computed:9.3g} {computed / x:6.2f}  {kind}")
+        print(
+            f"{solute + ' in ' + solvent:28s} {T:7.2f} {x:10.3g} {computed:9.3g} {computed / x:6.2f}  {kind}"
+        )
         ratios[solute == "water"].append(computed / x)
-    print(f"mean |ln| water in hydrocarbon {np.abs(np.log(ratios[True])).mean():.2f}, "
-          f"hydrocarbon in water {np.abs(np.log(ratios[False])).mean():.2f}")
+    print(
+        f"mean |ln| water in hydrocarbon {np.abs(np.log(ratios[True])).mean():.2f}, "
+        f"hydrocarbon in water {np.abs(np.log(ratios[False])).mean():.2f}"
+    )
     # water in hydrocarbon: two sources of one pair differ by 40 % at 313 K; modified UNIFAC alone is 15 times too high
     assert max(np.abs(np.log(ratios[True]))) < np.log(1.5) and np.abs(np.log(ratios[True])).mean() < 0.15
     # hydrocarbon in water: one straight line a family, and the slope of modified UNIFAC; alone it is 60 times too high

@@ -33,7 +33,13 @@ def test_w1_hexane_and_water():
 
 @pytest.mark.parametrize(
     ("hydrocarbon", "T"),
-    [("n-hexane", 298.2), ("isooctane", 278.15), ("isooctane", 298.15), ("isooctane", 313.15), ("toluene", 278.15)],
+    [
+        ("n-hexane", 298.2),
+        ("isooctane", 278.15),
+        ("isooctane", 298.15),
+        ("isooctane", 313.15),
+        ("toluene", 278.15),
+    ],
 )
 def test_w2_w3_dry_ethanol_is_one_liquid_and_water_below_it_is_not(hydrocarbon, T):
     """One gap only: the dry pair is never called two liquids; with water it is."""
