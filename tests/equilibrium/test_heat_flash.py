@@ -225,6 +225,21 @@ def test_two_liquids_share_the_enthalpy():
     assert H == pytest.approx(-4.0e4, abs=1e-4) and found.H[0] == pytest.approx(H, abs=1e-6)
 
 
+def test_three_phases_share_the_enthalpy():
+    """Steam distillation: two liquids and their vapour, T nearly still while all the water boils off."""
+    fluid, z = Fluid.of(["n-hexane", "toluene", "water"]), np.array([0.4, 0.3, 0.3])
+    H = np.linspace(-2.9e4, -8.0e3, 7)
+    found = flash_ph(fluid, 1e5, H, z, check="full")
+    assert (found.status == Status.LIQUID_SPLITS).all() and (found.phases == 3).all()
+    assert found.miss.max() <= PROMISED and found.balance.max() <= 1e-9
+    assert np.all(np.diff(found.beta) > 0.0) and np.all(np.diff(found.beta_W) < 0.0)
+    assert np.all(np.diff(found.T) > 0.0) and found.T[-1] - found.T[0] < 6.0
+    share = (1.0 - found.beta - found.beta_W, found.beta, found.beta_W)
+    parts = zip(share, (found.x, found.y, found.x_W), "LVL", strict=True)
+    total = sum(amount * caloric(fluid, found.T, found.P, part, phase).H for amount, part, phase in parts)
+    assert total == pytest.approx(H, abs=1e-3)  # 1e-8 of RT
+
+
 def test_beyond_the_critical_point():
     fluid, z = Fluid.of(["propane", "n-butane"]), [0.5, 0.5]
     T, P = np.array([420.0, 470.0, 300.0]), np.array([8e6, 8e6, 2e7])
