@@ -20,7 +20,7 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.fixed_point import solve
-from screener.equilibrium.phase import Feed
+from screener.equilibrium.phase import DENSE, Feed, reduced_volume
 from screener.equilibrium.rows import row_max
 from screener.equilibrium.second_liquid import THREE_PHASES, TWO_LIQUIDS, full_check
 from screener.equilibrium.stability import FEW
@@ -179,7 +179,7 @@ def _say(answer, here, found, splits, text):
 def _add(answer, lanes, problem, phase, from_x, found):
     """Add the phase a trial found; mask (n,) of the lanes whose answer changed."""
     ln_ratio = found.ln_W - np.log(np.maximum(phase, FEW))
-    before, light = answer.phases[lanes].copy(), found.kind == "V"
+    before, light = answer.phases[lanes].copy(), _light(problem, found)
     single = before == 1
     moved = np.zeros(lanes.size, dtype=bool)
     for kinds, mask in (("LL", single & from_x & ~light), ("LV", single & (from_x == light))):
@@ -194,7 +194,23 @@ def _add(answer, lanes, problem, phase, from_x, found):
     some = np.flatnonzero((before == 2) & (~liquids | light))
     if some.size:
         moved[some] = _triple(answer, lanes[some], problem.take(some), found.ln_W[some], liquids[some])
+    some = np.flatnonzero((before == 2) & ~liquids & ~light & ~moved)
+    if some.size:  # three at once were not found: the two liquids first, their vapour at the next look
+        held = problem.take(some)
+        status, residual = answer.status[lanes[some]].copy(), answer.residual[lanes[some]].copy()
+        start = found.ln_W[some] - np.log(np.maximum(held.z, FEW))
+        again(answer, lanes[some], held, "LL", start)
+        moved[some] = np.isfinite(answer.beta_W[lanes[some]])
+        lost = ~moved[some]
+        answer.status[lanes[some[lost]]], answer.residual[lanes[some[lost]]] = status[lost], residual[lost]
     return moved
+
+
+def _light(problem, found):
+    """Mask (n,) of trials that are no liquid: by their density, since a trial of either kind may have one root."""
+    trial = problem.state.mix(found.w)
+    Z = np.where(found.kind == "V", trial.Z(problem.P, "V"), trial.Z(problem.P, "L"))
+    return reduced_volume(trial, problem.P, Z) > DENSE
 
 
 def _triple(answer, lanes, problem, ln_W, liquids):
