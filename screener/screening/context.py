@@ -90,11 +90,22 @@ class Context:
             names += ["heel_volume", "shell_diameter", ("level_low", "level_normal", "level_high")[k - 2]]
         return self.missing(*names)
 
+    def unmeasured(self, k: int) -> str:
+        """Why no vapour pressure of liquid k counts, '' if it does.
+
+        A composition fitted to a laboratory sheet that holds no vapour pressure
+        reproduces the rest of the sheet, not its light end.
+        """
+        blends = [self.case.blend] if k != 1 else []
+        if k != 0 and self.case.tank.contents is not None:
+            blends.append(self.case.tank.contents.blend)
+        return "" if all(blend.vapour_pressure_known for blend in blends) else say("unknown", "unmeasured")
+
     def why_no_hot_pressure(self, k: int) -> str:
         """Why the bubble pressure of the hottest liquid is not known, '' if it is."""
         P = self.lanes.P_hot[self.i, k, 1]
         if math.isfinite(P):
-            return ""
+            return self.unmeasured(k)
         paths = self.surface_missing() + self.own_missing(k)
         if paths:
             return say("unknown", "missing", paths=", ".join(dict.fromkeys(paths)))

@@ -81,6 +81,8 @@ def _lane_unknown(context: Context, k: int, T: float, status: int) -> str:
     paths = span_missing(context, k)
     if paths:
         why = say("unknown", "missing", paths=", ".join(paths))
+    elif context.unmeasured(k):
+        why = context.unmeasured(k)
     elif math.isnan(T):
         why = say("unknown", "no-surface")
     else:
@@ -100,7 +102,7 @@ def _space_lane(context: Context, k: int) -> Lane:
         context.condition(k, when, "vapour space"), fuel, float(s.low[i, k]), float(s.high[i, k]),
         float(s.LFL[i, k]), upper=float(s.UFL[i, k]), rich_caps=(say("fire", "rich", ways=ways_in(context)),),
         beyond=say("fire", "inside", T=f"{T - ZERO_CELSIUS:.1f} degC") if told else "",
-        unknown="" if told else _lane_unknown(context, k, T, status), caps=caps,
+        unknown="" if told and not context.unmeasured(k) else _lane_unknown(context, k, T, status), caps=caps,
         facts=_space_facts(context, k) if told else (), tag=k,
     )  # fmt: skip
 

@@ -92,7 +92,7 @@ def _lane(context: Context, k: int, found, ratios) -> Lane:
     low, high = _range(context, k)
     beyond = say("health", "beyond", substance=limit.of, kind=limit.kind, agency=limit.agency, date=limit.date)
     return Lane(
-        condition, value, value * low, value * high, 1.0, evidence=MARKS.get(limit.evidence, "memory"),
+        condition, value, value * low, value * high, 1.0, unknown=context.unmeasured(k), evidence=MARKS.get(limit.evidence, "memory"),
         beyond=beyond, caps=context.typical_cap(), facts=_facts(context, worst, found, at), tag=k,
     )  # fmt: skip
 

@@ -103,7 +103,8 @@ def legal(context: Context, rule: Rule | None) -> Draft:
     rows = []
     for k in context.liquids():
         low, value, high = lanes.P_legal[i, k]
-        unknown = ""
+        why = context.unmeasured(k)
+        unknown = say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else ""
         if not math.isfinite(value):
             paths = [p for p in context.own_missing(k) if not p.endswith("temperature")]
             why = say("unknown", "missing", paths=", ".join(paths)) if paths else say(
@@ -157,6 +158,7 @@ def receipt(context: Context) -> Draft:
     lanes, i = context.lanes, context.i
     low, value, high = lanes.arrival.P[i]
     unknown, caps = _gas_state(context)
+    unknown = context.unmeasured(RECEIPT) or unknown
     if not math.isfinite(value):
         paths = context.missing("receipt_temperature")
         unknown = say("unknown", "missing", paths=", ".join(paths)) if paths else say(
