@@ -17,7 +17,7 @@ from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_T
 from screener.equilibrium.phase import DENSE, critical_ratio, reduced_volume
 from screener.equilibrium.results import TPD_ZERO
 from screener.equilibrium.rows import row_max, row_sum
-from screener.equilibrium.stability import FEW, PURE, REACH, Trials
+from screener.equilibrium.stability import FEW, MOST_TRIAL, PURE, REACH, Trials
 from screener.ground.status import Status
 
 RUNGS = 48
@@ -148,7 +148,7 @@ def _deepest(trials, starts, ln_z):
     n = ln_z.shape[0]
     ln_sum, ln_W, settled = np.full(n, -np.inf), np.zeros_like(ln_z), np.zeros(n, dtype=bool)
     for start in starts:
-        fixed = solve(trials, np.where(trials.present, start, 0.0), trials.present, newton=0, reach=REACH)
+        fixed = solve(trials, np.where(trials.present, start, 0.0), trials.present, plain=MOST_TRIAL, newton=0, reach=REACH)
         ok = fixed.residual < 1e-3
         away = np.where(trials.present, np.abs(fixed.u - ln_z), 0.0).max(axis=1) > 1e-3
         # exact at any composition, also where the trial has not come to rest: a value above zero is a proof

@@ -19,7 +19,7 @@ from screener.equilibrium.ladder import seek
 from screener.equilibrium.one_species import saturation
 from screener.equilibrium.phase import DENSE
 from screener.equilibrium.rows import row_max
-from screener.equilibrium.second_liquid import NOT_TESTED, SPLITS, full_check, splits_anyway
+from screener.equilibrium.second_liquid import NO_VAPOUR_LEFT, NOT_TESTED, SPLITS, full_check, splits_anyway
 from screener.equilibrium.stability import FEW
 from screener.ground.constants import T_15C
 from screener.ground.status import Status
@@ -114,8 +114,9 @@ class Chunk:
         shift = at.X[some, P_, None] if self.name == "T" else self.problem.h / np.exp(at.X[some, T_, None])
         left, absent = np.ones(open_.size, dtype=bool), at.absent
         status = self._put(open_[some], ln_K + shift)
-        left[some] = status != Status.CONVERGED
-        absent[some] = np.where(status == Status.OUT_OF_RANGE, status, int(Status.OUT_OF_STEPS))
+        # a point past the range or of two dense phases is as good an answer
+        left[some] = ~np.isin(status, (Status.CONVERGED, Status.OUT_OF_RANGE, Status.LIQUID_SPLITS))
+        absent[some] = Status.OUT_OF_STEPS
         return open_[left], absent[left]
 
     def _from_ladder(self, open_, finer: int):
@@ -154,6 +155,8 @@ class Chunk:
             status = np.where(fixed.converged, int(Status.CONVERGED), int(Status.OUT_OF_STEPS))
             alike = (row_max(np.abs(ln_K)) < apart) & ~(np.abs(volume_V / volume_L - 1.0) > swollen)
             dense = (volume_L < DENSE) & (volume_V < DENSE)
+            if proven:  # a gas under such a pressure is as dense as a liquid
+                dense &= P <= NO_VAPOUR_LEFT
             low, high = (LOWEST_P, HIGHEST_P) if self.name == "T" else (LOWEST_T, HIGHEST_T)
             outside = ~((found > low * 1.000001) & (found < high * 0.999999))
         status = np.where(fixed.converged & (volume_V <= volume_L), int(Status.NO_SOLUTION), status)
