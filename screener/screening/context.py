@@ -90,6 +90,10 @@ class Context:
             names += ["heel_volume", "shell_diameter", ("level_low", "level_normal", "level_high")[k - 2]]
         return self.missing(*names)
 
+    def split_cap(self, k: int) -> tuple[str, ...]:
+        """A liquid that splits in two is not the one liquid whose bubble point was worked out."""
+        return (say("cap", "splits"),) if self.lanes.second.splits[self.i, k] else ()
+
     def unmeasured(self, k: int) -> str:
         """Why no vapour pressure of liquid k counts, '' if it does.
 

@@ -69,7 +69,7 @@ def suction(context: Context, stream) -> Draft:
         rows.append(Lane(
             context.condition(k, context.hottest_day, place, _level(k)), value, low, high, 0.0,
             reference=context.barometer, unknown=_lane_unknown(context, stream, k),
-                caps=context.typical_cap(), facts=_facts(context, stream, k),
+                caps=context.typical_cap() + context.split_cap(k), facts=_facts(context, stream, k),
             tag=k,
         ))  # fmt: skip
     return _draft(key, lanes=tuple(rows), unknown=_unknown(context, stream),
@@ -88,7 +88,7 @@ def npsh(context: Context, stream) -> Draft:
         rows.append(Lane(
             context.condition(k, context.hottest_day, "pump inlet", _level(k)), value, low, high, required,
             reference=float(s.head[i, k]), unknown=_lane_unknown(context, stream, k),
-                caps=context.typical_cap(),
+                caps=context.typical_cap() + context.split_cap(k),
             facts=_facts(context, stream, k) + (Fact("NPSH to ask for", float(asked_npsh(required)), "m"),)
             if math.isfinite(required) else _facts(context, stream, k), tag=k,
         ))  # fmt: skip

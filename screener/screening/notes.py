@@ -56,11 +56,21 @@ def reservations(context: Context) -> tuple[str, ...]:
         rows.append(say("reserved", "failed", count=lanes.failed))
     if lanes.fluid.gaps:
         rows.append(say("reserved", "gaps", pairs="; ".join(lanes.fluid.gaps[:12])))
-    rows.append(say("reserved", "second-liquid"))
+    rows.append(_second_liquid(context))
     if not states_sour_gas(context) and case.tank.sour_service is None:
         rows.append(say("reserved", "sour-gas"))
     rows.append(say("reserved", "residual", value=f"{lanes.worst_residual:.1e}"))
     return tuple(rows)
+
+
+def _second_liquid(context: Context) -> str:
+    """What is known of a second liquid in this case."""
+    second, i = context.lanes.second, context.i
+    mine = context.liquids()
+    split = [context.condition(k, "", "").sentence() for k in mine if second.splits[i, k]]
+    if split:
+        return say("reserved", "splits", liquids="; ".join(split))
+    return say("reserved", "one-liquid" if second.tested[i, mine].all() else "second-liquid")
 
 
 def sources(context: Context, findings: tuple[Finding, ...]) -> tuple[str, ...]:

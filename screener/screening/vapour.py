@@ -46,7 +46,7 @@ def _hot_lane(context: Context, k: int, limit: float, where: str, caps=()) -> La
         context.condition(k, context.hottest_day, where), value, low, high, limit,
         unknown=say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else "",
         facts=tuple(f for f in facts if math.isfinite(f.value)) + vapour_facts(context, lanes.y_hot[i, k]), tag=k,
-        caps=context.typical_cap() + tuple(caps),
+        caps=context.typical_cap() + context.split_cap(k) + tuple(caps),
     )  # fmt: skip
 
 
@@ -115,7 +115,7 @@ def legal(context: Context, rule: Rule | None) -> Draft:
         if own > lanes.T_legal[i]:
             facts += (Fact("temperature the liquid brings along, the high end", own, "K"),)
         rows.append(Lane(context.condition(k, when, "tank"), value, low, high, rule.limit, unknown=unknown,
-                         caps=rule.caps, facts=facts if month else (), tag=k))  # fmt: skip
+                         caps=rule.caps + context.split_cap(k), facts=facts if month else (), tag=k))  # fmt: skip
     unknown = rule.unknown or ("" if month else say("unknown", "months"))
     return _draft("vapour-pressure.legal", lanes=tuple(rows), unknown=unknown, range_covers=("inputs", "method"),
                   facts=rule.facts + _other_roof_fact(rule), **fields)  # fmt: skip
@@ -158,6 +158,7 @@ def receipt(context: Context) -> Draft:
     lanes, i = context.lanes, context.i
     low, value, high = lanes.arrival.P[i]
     unknown, caps = _gas_state(context)
+    caps += context.split_cap(RECEIPT)
     unknown = context.unmeasured(RECEIPT) or unknown
     if not math.isfinite(value):
         paths = context.missing("receipt_temperature")

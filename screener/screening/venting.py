@@ -75,7 +75,7 @@ def outbreathing(context: Context, stream) -> Draft:
 def _out_lane(context: Context, b, k: int) -> Lane:
     i, lanes = context.i, context.lanes
     Pv = float(lanes.P_hot[i, k, BEST])
-    unknown, caps = context.why_no_hot_pressure(k), context.typical_cap()
+    unknown, caps = context.why_no_hot_pressure(k), context.typical_cap() + context.split_cap(k)
     growth = float(b.growth[i, k])
     if not unknown and math.isnan(growth):
         unknown = say("unknown", "boils")

@@ -20,6 +20,7 @@ from screener.species import find
 from screener.states.arrival import AIR, Arrival, arrival, vapour_with_air
 from screener.states.inputs import Inputs
 from screener.states.pressures import bubble, psat_errors, relative_spread, with_edges
+from screener.states.second_liquid import SecondLiquids, second_liquids
 from screener.states.volumes import density_15, expansion
 from screener.states.weather import Weather
 from screener.tank import horizontal_liquid_volume, vertical_liquid_volume
@@ -63,6 +64,7 @@ class Lanes:
     beta_gas: np.ndarray
     worst_residual: float
     failed: int
+    second: SecondLiquids
 
 
 def _any_air(cases) -> bool:
@@ -184,10 +186,13 @@ def evaluate(inputs: Inputs, weather: Weather) -> Lanes:
     level = np.column_stack(
         [inputs[k] for k in ("level_low", "level_low", "level_low", "level_normal", "level_high")]
     )
+    second = second_liquids(
+        fluid, z, present, T_hot[:, :, BEST], P_hot[:, :, BEST], weather.T_cold[:, BEST], weather.barometer
+    )
     return Lanes(
         inputs, weather, fluid, names, z, level, present, T_own, T_hot, P_hot, y[:, :, BEST],
         status_hot, weather.T_legal, P_legal, status_legal[:, :, 0], came, beta_gas,
-        float(np.nanmax(residuals, initial=0.0)), int((statuses != Status.CONVERGED).sum()),
+        float(np.nanmax(residuals, initial=0.0)), int((statuses != Status.CONVERGED).sum()), second,
     )  # fmt: skip
 
 

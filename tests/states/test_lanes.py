@@ -88,3 +88,16 @@ def test_a_lane_without_numbers_stays_alone():
     table = lanes(case(), broken, case(blend=blend(HEAVY)))
     assert np.isfinite(table.P_hot[[0, 2]]).all()
     assert np.isnan(table.P_hot[1, LOW:]).all() and np.isfinite(table.P_hot[1, :LOW]).all()
+
+
+def test_a_liquid_that_splits_is_named_and_never_has_room():
+    """Methanol and n-hexane part below about 306 K (measured gap); a dry gasoline does not."""
+    parted = lanes(case(blend=blend({"methanol": 0.3, "n-hexane": 0.7}), tank=tank(contents=None)), case())
+    assert list(parted.second.splits[:, RECEIPT]) == [True, False]
+    assert parted.second.tested[1].all()
+    from screener.screening import screen_many
+
+    one = screen_many((case(blend=blend({"methanol": 0.3, "n-hexane": 0.7}), tank=tank(contents=None)),))[0]
+    found = {f.id: f.verdict for f in one.findings}
+    assert "room" not in (found["boiling.surface"], found["receipt.flash"], found["vapour-lock.suction"])
+    assert any("second liquid" in text for text in one.reservations)
