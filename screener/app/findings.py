@@ -14,6 +14,7 @@ from screener.app import judged as view
 from screener.app.curve import draw
 from screener.app.desk import paths_named
 from screener.app.glyphs import Glyphs
+from screener.app.ladder import ladder
 from screener.app.lines import Block, Lines, Toned
 from screener.app.pictures import gap_bars
 from screener.app.rows import Row, Span, paragraph
@@ -181,8 +182,16 @@ class FindingsPane(Container):
         item = self.items.get(self.query_one("#bars", Bars).key)
         if item:
             rows += view.card(item, width, self.marks)
+            rows += self._ladder(item, width)
             rows += [(Span(""),), *view.reservation_rows(self.screening, width, self.marks)]
         return (), [Block((row,)) for row in rows]
+
+    def _ladder(self, item: view.Judged, width: int) -> list[Row]:
+        """The vapour ladder under the card of the vapour space, once a full result has brought it."""
+        months = self.screening.curve.get("ladder", {}).get("months", ())
+        if item.finding.id != "vapour-space.flammable" or not months:
+            return []
+        return [(Span(""),), *ladder(months, width, self.marks)]
 
     def _follow(self) -> None:
         """Card and hint follow the row under the cursor."""
