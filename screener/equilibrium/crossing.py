@@ -97,6 +97,8 @@ def _look(out, lanes, fluid, lines: Envelopes, which, name, value, feed, bubble)
         failed[here[~good]] = True
     beyond = _beyond(lines, which, column, other, target)
     known = lines.closed[which] & ~failed
+    if not bubble:  # the dew line goes on below its first point
+        known &= target > lines.X[which, 0, column]
     out.absent[lanes] = np.where(beyond, int(Status.OUT_OF_RANGE), int(Status.NO_SOLUTION))
     out.absent[lanes[~known]] = Status.OUT_OF_STEPS
 

@@ -17,18 +17,21 @@ import numpy as np
 
 from screener.equilibrium.curve import P_, T_, W_, Z_, Curve
 from screener.equilibrium.fixed_point import solve
-from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_T, start
+from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, lowest_T, start
 from screener.equilibrium.rows import row_max
 from screener.ground.constants import R
 
-FIRST_P = 1e3  # [Pa] where the dew line begins: a good vacuum, below any vent setting and far from critical
 LAST_P = 0.5  # [Pa] where the bubble line ends
+DENSE_FEED = 3.0  # g = ln(v/b - 1) of a feed that is no vapour at LAST_P: v/b below 21
 MOST_POINTS = 300
 FIRST, LEAST, LONGEST = 0.1, 1e-5, 0.6  # steps of the variable held, each a logarithm
 LONGEST_T = 0.08  # step of ln T: along a dew line ln K runs ten times as fast
 ALIKE = 0.5  # distance of the phases below which one of its parts is held
-CLOSE = (0.06, 0.3)  # the same, from which the critical point is stepped over: nearer is more exact, wider is safer
-CLOSEST = 1e-3  # where that is given up
+# Where the dew line begins [Pa], and the same distance from which the critical point is stepped over. A good vacuum
+# comes first; where liquids split in the cold a line may loop there, and a warmer start is tried. A near step over
+# the critical point is more exact, a wide one safer.
+TRIES = ((1e3, 0.06), (1e5, 0.3), (1e6, 0.3))
+CLOSEST = 1e-3  # where stepping over the critical point is given up
 
 
 @dataclass(frozen=True)
@@ -62,19 +65,21 @@ def envelopes(fluid, feed) -> Envelopes:
     ------
     Michelsen, Fluid Phase Equilib. 4 (1980) 1.
     """
-    store = _follow(fluid, feed, CLOSE[0])
-    broken = np.flatnonzero(~store.closed & (store.count > 0))
-    if broken.size:
-        again = _follow(fluid, feed[broken], CLOSE[1])
+    store = _follow(fluid, feed, *TRIES[0])
+    for other in TRIES[1:]:
+        broken = np.flatnonzero(~store.closed)
+        if broken.size == 0:
+            break
+        again = _follow(fluid, feed[broken], *other)
         store.replace(broken[again.closed], again, again.closed)
     return store.envelopes()
 
 
-def _follow(fluid, feed, across_from):
+def _follow(fluid, feed, first_P, across_from):
     """The points of the curves, as far as they can be followed."""
     n, c = feed.shape
     curve = Curve(fluid, feed)
-    X, alive = _first_points(fluid, feed)
+    X, alive = _first_points(fluid, feed, first_P)
     first = curve.newton(X, np.full(n, P_))
     alive &= first.good
     X, tangent = first.X, first.tangent
@@ -101,8 +106,9 @@ def _follow(fluid, feed, across_from):
         step[some] = np.minimum(np.abs(dS) * np.where(good, faster, 0.4), longest)
         step[some[good & across]] = FIRST
         close[some[~good & across]] *= 0.5
-        store.closed[here] = _outside(X[here])
-        alive[here] = ~store.closed[here]
+        outside, ended = _ends(X[here], lowest_T(fluid))
+        store.closed[here] = ended
+        alive[here] = ~outside
         alive[some[(step[some] < LEAST) | (close[some] < CLOSEST)]] = False
     return store
 
@@ -148,9 +154,9 @@ class _Store:
         return Envelopes(*(a[:, :most] for a in (self.X, self.leave, self.arrive)), self.count, self.closed)
 
 
-def _first_points(fluid, feed):
-    """X (n, c+4) on the dew lines at FIRST_P, the mask (n,) of those found."""
-    P = np.full(feed.shape[0], FIRST_P)
+def _first_points(fluid, feed, first_P):
+    """X (n, c+4) on the dew lines at first_P [Pa], the mask (n,) of those found."""
+    P = np.full(feed.shape[0], first_P)
     problem, u = start(fluid, "P", P, feed, False)
     fixed = solve(problem, u, problem.present, reach=1.0)
     T, w = problem.close(fixed.u)
@@ -221,7 +227,12 @@ def _goes_on(X, new, guess, present, across):
     return near & np.where(across, turned & (share < 3.0) & (share > 0.3), share > 0.1)
 
 
-def _outside(X):
-    """Mask (n,) of the points past the end of the range."""
+def _ends(X, coldest):
+    """Masks (n,) of points past the end of the range, and of those where the curve has come to its own end.
+
+    At low pressure that is the bubble line, or a liquid beside another; a dew line that came back has looped.
+    """
     T, P = np.exp(X[:, T_]), np.exp(X[:, P_])
-    return (P > HIGHEST_P) | (T < LOWEST_T) | (T > HIGHEST_T) | (P < LAST_P)
+    far = (P > HIGHEST_P) | (T < coldest) | (T > HIGHEST_T)
+    liquid = (X[:, W_] > X[:, Z_]) | (X[:, Z_] < DENSE_FEED)
+    return far | (P < LAST_P), far | (P < LAST_P) & liquid

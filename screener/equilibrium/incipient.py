@@ -22,10 +22,16 @@ from screener.equilibrium.rows import row_max, row_sum
 
 LOWEST_P, HIGHEST_P = 1e-9, 1e8  # [Pa] beyond these no answer is given: no use of stored liquids comes near
 LOWEST_T, HIGHEST_T = 50.0, 1500.0  # [K] likewise
+COLDEST_BLEND = 150.0  # [K] the same of models with group contributions: their terms in 1/T run away below; own choice
 NO_LIQUID = 8.0  # v/b above which a root is no liquid: twice the critical volume; own choice
 NO_VAPOUR = 1.6  # v/b below which a root is no vapour: the density of liquids at 0.85 Tc; own choice
 NUDGE = 0.4  # step of u where the root asked for does not exist
 TRIES = 8  # pressures tried for a liquid root of the feed, each ten times the last
+
+
+def lowest_T(fluid) -> float:
+    """Lowest temperature [K] given as an answer."""
+    return COLDEST_BLEND if fluid.model in ("PR-GE", "gamma-phi") else LOWEST_T
 
 
 class Incipient:
@@ -95,7 +101,7 @@ class AtPressure(Incipient):
         for _ in range(60):
             part, ln_sum = weighted(self.feed, sign * (u - self.h * tau[:, None]))
             slope = -sign * (part @ self.h)
-            new = np.minimum(np.maximum(tau - ln_sum / slope, 1.0 / HIGHEST_T), 1.0 / LOWEST_T)
+            new = np.minimum(np.maximum(tau - ln_sum / slope, 1.0 / HIGHEST_T), 1.0 / lowest_T(self.fluid))
             small = np.abs(new - tau) <= 1e-13 * tau
             tau = np.where(np.isfinite(new), new, tau)
             if small.all():

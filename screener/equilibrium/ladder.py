@@ -13,7 +13,7 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.fixed_point import solve
-from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_T
+from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, lowest_T
 from screener.equilibrium.phase import DENSE, critical_ratio, reduced_volume
 from screener.equilibrium.results import TPD_ZERO
 from screener.equilibrium.rows import row_max, row_sum
@@ -23,7 +23,7 @@ from screener.ground.status import Status
 RUNGS = 48
 FINE_RUNGS = 9  # a crossing is narrowed eightfold each time
 PRESSURES = (1.0, HIGHEST_P)  # [Pa] ends of the ladder; stored liquids lie far inside
-TEMPERATURES = (LOWEST_T, 0.8 * HIGHEST_T)  # [K]
+WARMEST = 0.8 * HIGHEST_T  # [K] the same, from `lowest_T` on
 ALIKE = 0.05  # [-] |ln w/z| of a crossing that may be a limit of material stability: no point where two phases meet
 MOST_ROWS = 20_000
 
@@ -60,7 +60,7 @@ def seek(fluid, name: str, value, feed, bubble: bool, finer: int):
     n, c = feed.shape
     status, u = np.zeros(n, dtype=int), np.zeros((n, c))
     for some in np.array_split(np.arange(n), max(1, -(-n * RUNGS // MOST_ROWS))):
-        rungs = np.tile(_rungs(name, bubble), (some.size, 1))
+        rungs = np.tile(_rungs(fluid, name, bubble), (some.size, 1))
         status[some], ends, u[some] = _climb(fluid, name, value[some], feed[some], bubble, rungs)
         crossed = status[some] == Status.CONVERGED
         for _ in range(finer):
@@ -77,9 +77,9 @@ def seek(fluid, name: str, value, feed, bubble: bool, finer: int):
     return status, u
 
 
-def _rungs(name: str, bubble: bool):
+def _rungs(fluid, name: str, bubble: bool):
     """States from the stable side on: high pressure or low temperature for a liquid, the opposite for a vapour."""
-    low, high = np.log(PRESSURES) if name == "T" else -np.log(TEMPERATURES[::-1])
+    low, high = np.log(PRESSURES) if name == "T" else -np.log((WARMEST, lowest_T(fluid)))
     ladder = np.linspace(high, low, RUNGS)  # falling ln P, or falling -ln T
     return ladder if bubble else ladder[::-1]
 

@@ -11,7 +11,7 @@ from __future__ import annotations
 
 import numpy as np
 
-from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_P, LOWEST_T
+from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_P, lowest_T
 from screener.equilibrium.phase import critical_ratio, reduced_volume
 
 MOST_PASSES = 200  # a bisection from one end of the range to rounding takes 60
@@ -43,7 +43,7 @@ def saturation(fluid, name: str, value, feed):
     Equal Gibbs energies; bisection with Newton steps in ln P and secant steps in ln T.
     """
     known_T = name == "T"
-    low, high = np.log((LOWEST_P, HIGHEST_P) if known_T else (LOWEST_T, HIGHEST_T))
+    low, high = np.log((LOWEST_P, HIGHEST_P) if known_T else (lowest_T(fluid), HIGHEST_T))
     a, b = np.full(value.shape, low), np.full(value.shape, high)
     at = 0.5 * (a + b)
     last, f_last = np.full(value.shape, np.nan), np.full(value.shape, np.nan)

@@ -14,7 +14,7 @@ import numpy as np
 from screener.equilibrium.crossing import crossings
 from screener.equilibrium.curve import P_, T_
 from screener.equilibrium.fixed_point import Fixed, solve
-from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_P, LOWEST_T, start
+from screener.equilibrium.incipient import HIGHEST_P, HIGHEST_T, LOWEST_P, lowest_T, start
 from screener.equilibrium.ladder import seek
 from screener.equilibrium.one_species import saturation
 from screener.equilibrium.phase import DENSE
@@ -57,7 +57,7 @@ def solve_points(out, lanes, fluid, name: str, value, feed, bubble: bool, warm=N
     if (status == Status.CONVERGED).all():
         return
     # past the upper end a start above the critical point may have gone astray, past the lower end none does
-    below = fixed.converged & (problem.close(fixed.u)[0] <= 1.000001 * (LOWEST_P if name == "T" else LOWEST_T))
+    below = fixed.converged & (problem.close(fixed.u)[0] <= 1.000001 * (LOWEST_P if name == "T" else lowest_T(fluid)))
     chunk.look_again(np.flatnonzero((status != Status.CONVERGED) & ~below))
     if bubble:
         _say_where_it_splits(out, lanes, fluid, name, value, feed)
@@ -157,7 +157,7 @@ class Chunk:
             dense = (volume_L < DENSE) & (volume_V < DENSE)
             if proven:  # a gas under such a pressure is as dense as a liquid
                 dense &= P <= NO_VAPOUR_LEFT
-            low, high = (LOWEST_P, HIGHEST_P) if self.name == "T" else (LOWEST_T, HIGHEST_T)
+            low, high = (LOWEST_P, HIGHEST_P) if self.name == "T" else (lowest_T(self.fluid), HIGHEST_T)
             outside = ~((found > low * 1.000001) & (found < high * 0.999999))
         status = np.where(fixed.converged & (volume_V <= volume_L), int(Status.NO_SOLUTION), status)
         status = np.where(fixed.converged & dense, int(Status.LIQUID_SPLITS), status)

@@ -20,7 +20,7 @@ from pathlib import Path
 import numpy as np
 
 from screener.equilibrium import bubble_pressure, bubble_temperature, dew_pressure, dew_temperature, flash_tp
-from screener.equilibrium.second_liquid import DOUBTFUL
+from screener.equilibrium.second_liquid import DOUBTFUL, THREE_PHASES, TWO_LIQUIDS
 from screener.ground.status import Status
 from tests.studies.stress_absent import exists
 from tests.studies.stress_cases import SEED, Cases, blend_pool, stress_cases
@@ -39,10 +39,10 @@ NAMES = {
 
 
 def flash_faults(equation, cases: Cases, found, generator):
-    """Faults (n,) of the lanes of a flash that say converged or show a second liquid, and the distance found."""
+    """Faults (n,) of the lanes of a flash that say converged or that two liquids were found, and the distance found."""
     shares = np.stack([1.0 - found.beta - np.nan_to_num(found.beta_W), found.beta, np.nan_to_num(found.beta_W)])
     phases = np.stack([found.x, found.y, found.x_W])
-    some = np.flatnonzero(found.ok | (found.status == Status.LIQUID_SPLITS) & np.isfinite(found.beta))
+    some = np.flatnonzero(found.ok | np.isin(found.checks, (TWO_LIQUIDS, THREE_PHASES)))
     fault, tpd = np.full(cases.T.size, "", dtype=object), np.full(cases.T.size, np.nan)
     held = cases.take(some)
     fault[some], tpd[some], _ = judge_phases(
@@ -54,17 +54,20 @@ def flash_faults(equation, cases: Cases, found, generator):
 
 
 def point_faults(equation, cases: Cases, found, bubble: bool, generator):
-    """As `flash_faults`, of saturation points; a second liquid under LIQUID_SPLITS is no fault."""
-    some = np.flatnonzero(found.ok)
-    fault = np.full(cases.T.size, "", dtype=object)
+    """As `flash_faults`, of saturation points. Where a number stands under LIQUID_SPLITS, it has to be the point of
+    one liquid held together, and a dense phase has to lie below the tangent plane: else 'no second liquid'."""
+    split = found.status == Status.LIQUID_SPLITS
+    some = np.flatnonzero((found.ok | split) & np.isfinite(found.P) & np.isfinite(found.T))
+    fault, split = np.full(cases.T.size, "", dtype=object), split[some]
     other = (found.y if bubble else found.x)[some]
-    fault[some], tpd, ratio = judge_points(
+    said, tpd, ratio = judge_points(
         equation(found.T[some], found.P[some]), cases.z[some], other, bubble, generator, OWN
     )
-    fault[(found.checks == DOUBTFUL) & (fault == "tangent plane")] = ""
-    second = np.zeros(cases.T.size, dtype=bool)
-    second[some] = (tpd < -OWN["below"]) & (ratio < DENSE)
-    return fault, second
+    doubtful = found.checks[some] == DOUBTFUL
+    said[(split | doubtful) & (said == "tangent plane")] = ""
+    said[split & ~((tpd < 0.0) & (ratio < DENSE))] = "no second liquid"
+    fault[some] = said
+    return fault, int(split.sum())
 
 
 def tally(status):
@@ -96,7 +99,7 @@ def model_part(report, title, cases: Cases, equation, generator):
     """All five questions of one model."""
     n = cases.T.size
     report.say(f"## {title}", "", f"{n} feeds; the full check of every answer.", "")
-    rows, worst, lost, all_lanes = [], [], 0, 0
+    rows, worst, lost, all_lanes, numbered = [], [], 0, 0, 0
     started = time.perf_counter()
     found = flash_tp(cases.fluid, cases.T, cases.P, cases.z, check="full")
     spent = time.perf_counter() - started
@@ -111,7 +114,8 @@ def model_part(report, title, cases: Cases, equation, generator):
         started = time.perf_counter()
         found = function(cases.fluid, value, cases.z, check="full")
         spent = time.perf_counter() - started
-        fault, _ = point_faults(equation, cases, found, bubble, generator)
+        fault, held = point_faults(equation, cases, found, bubble, generator)
+        numbered += held
         none = np.flatnonzero(found.status == Status.NO_SOLUTION)
         there = exists(equation, name, value[none], cases.z[none], bubble, generator)
         fault[none[there]] = "exists"
@@ -120,7 +124,12 @@ def model_part(report, title, cases: Cases, equation, generator):
         lost, all_lanes = lost + rows[-1][-4], all_lanes + n
     head = ["question", *NAMES.values(), "not converged", "converged but false", "'none exists' but found", "s"]
     report.table(head, rows)
-    report.say(f"Not converged: {lost} of {all_lanes} lanes, {100.0 * lost / all_lanes:.3f} %.", "")
+    report.say(
+        f"Not converged: {lost} of {all_lanes} lanes, {100.0 * lost / all_lanes:.3f} %. Of the saturation points named",
+        f"'second liquid' {numbered} carry the number of one liquid held together; those are judged too (equal fugacity,",
+        "and the second liquid has to be there).",
+        "",
+    )
     report.table(["phases of the flash", "check", "feeds"], [(p, c, k) for (p, c), k in sorted(phases.items())])
     if worst:
         report.table(["question", "feed", "family", "fault"], worst)

@@ -10,6 +10,7 @@ RUNGS = 60
 PRESSURES, TEMPERATURES = (1e3, 9e7), (60.0, 1200.0)  # [Pa], [K] ends of the ladder
 BELOW = 1e-9  # [-] distance over RT of an unstable feed
 HALVINGS = 22  # of a rung: to 1e-7 of its length
+LIQUID, VAPOUR = 6.0, 2.0  # v/b below and above which the feed can be a liquid and a vapour: 1.5 and 0.5 of critical
 APART = 0.02  # [-] difference of ln v/b of phases that are two beyond doubt
 
 
@@ -26,7 +27,7 @@ def exists(equation, name: str, value, feed, bubble: bool, generator):
         eos, x = equation(T, P), feed[lane]
         ln_phi, v_x = lower(eos, x)
         tpd, _, v_w = tangent_plane(eos, x, ln_f(ln_phi, x), generator, wide=False)
-        return tpd < -BELOW, np.log(v_w / v_x)
+        return tpd < -BELOW, np.log(v_w / v_x), v_x
 
     lane, rung = np.repeat(np.arange(n), RUNGS), np.tile(rungs, n)
     unstable = look(lane, rung)[0].reshape(n, RUNGS)
@@ -37,9 +38,11 @@ def exists(equation, name: str, value, feed, bubble: bool, generator):
         if lane.size == 0:
             break
         middle = 0.5 * (good + bad)
-        splits, lighter = look(lane, middle)
+        splits, lighter, v_x = look(lane, middle)
         good, bad = np.where(splits, good, middle), np.where(splits, middle, bad)
         way = np.where(splits, lighter, way)
     found = np.zeros(n, dtype=bool)
-    found[lane[(way > APART) if bubble else (way < -APART)]] = True
+    if lane.size:
+        kind = v_x < LIQUID if bubble else v_x > VAPOUR
+        found[lane[kind & ((way > APART) if bubble else (way < -APART))]] = True
     return found

@@ -14,6 +14,7 @@ EXACT = 0.45723552892138218, 0.077796073903888453  # critical constants of the e
 PRINTED = 0.45724, 0.07780  # as printed by Peng and Robinson, Ind. Eng. Chem. Fundam. 15 (1976) 59
 OWN = {"unequal": 1e-8, "unbalanced": 1e-11, "below": 1e-7}  # accepted of ours: ten times what the answers promise
 PEER = {"unequal": 1e-4, "unbalanced": 1e-6, "below": 1e-6}  # accepted of the libraries, which promise nothing
+NOTHING = 1e-100  # share below which a species has left a phase: the answers bound |ln K| at 300
 ONE = 1e-4  # |ln K| and difference of volume of two phases that are one
 DENSE = 1.75  # v/b below which a phase is a liquid
 PLAIN = 300  # substitutions of each trial
@@ -113,6 +114,11 @@ def ln_f(ln_phi, x):
     return np.where(x > 0.0, np.log(np.where(x > 0.0, x, 1.0)) + ln_phi, 0.0)
 
 
+def unequal(one, x, other, w):
+    """Largest difference (n,) of ln f of two phases, over species of which both hold more than nothing."""
+    return np.where(np.minimum(x, w) > NOTHING, np.abs(one - other), 0.0).max(axis=1)
+
+
 def tangent_plane(eos, x, d, generator, wide=True):
     """Smallest distance over RT (n,) from d = ln x + ln phi of a phase x, the composition it belongs to, its v/b."""
     best, where, ratio = np.full(x.shape[0], np.inf), np.array(x), np.zeros(x.shape[0])
@@ -188,7 +194,7 @@ def judge_phases(eos, z, shares, phases, generator, accept):
             if row.any():
                 w = np.where(row[:, None], phases[k], x)
                 phi_w, _ = eos.both(w)
-                apart = np.min([np.abs(mine - ln_f(phi_w[r], w)).max(axis=1) for r in range(2)], axis=0)
+                apart = np.min([unequal(mine, x, ln_f(phi_w[r], w), w) for r in range(2)], axis=0)
                 gap = np.where(row, np.maximum(gap, apart), gap)
         better = (gap < best) & (there.sum(axis=0) > 1)
         best = np.where(better, gap, best)
@@ -207,13 +213,13 @@ def judge_points(eos, feed, other, bubble: bool, generator, accept):
     phi_w, v_w = eos.both(other)
     old, new = (0, 1) if bubble else (1, 0)
     d = ln_f(phi_z[old], feed)
-    unequal = np.abs(d - ln_f(phi_w[new], other)).max(axis=1)
+    apart = unequal(d, feed, ln_f(phi_w[new], other), other)
     tpd, _, ratio = tangent_plane(eos, feed, d, generator)
     fault[tpd < -accept["below"]] = "tangent plane"
     fault[(v_w[new] > v_z[old]) != bubble] = "kind"
     both = (feed > 0.0) & (other > 0.0)
     ratio_x = np.abs(np.log(np.where(both, other, 1.0) / np.where(both, feed, 1.0))).max(axis=1)
     fault[(ratio_x < ONE) & (np.abs(v_w[new] / v_z[old] - 1.0) < ONE)] = "one phase"
-    fault[~(unequal < accept["unequal"])] = "fugacity"
+    fault[~(apart < accept["unequal"])] = "fugacity"
     fault[~(np.abs(other.sum(axis=1) - 1.0) < accept["unbalanced"])] = "balance"
     return fault, tpd, ratio
