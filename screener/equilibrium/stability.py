@@ -30,6 +30,9 @@ REACH = 0.3  # longest accelerated step of a trial in ln W: a longer one can lea
 MOST_TRIAL = 80  # substitutions: next to a vanishing minimum they crawl, and Newton cannot help
 MOST_ALONE, FEW_NEWTON = 120, 12  # substitutions and Newton steps of a trial from a given start
 ENOUGH = 1e-6  # residual of a trial whose distance counts: it is of second order next to a stationary point
+EARLY = 4  # substitutions after which the trials of a lane are compared
+MET = 0.1  # [-] largest difference of ln W of trials on their way to one point; own choice, see the stress study
+MOST_NUMBERS = 160_000  # trial lanes times components handled at once: keeps the working arrays in cache
 MOST_ROWS = 20_000  # trial lanes handled at once: bounds memory
 FEW = 1e-150  # a share below this would leave double precision in products
 
@@ -261,8 +264,18 @@ def trials_from(state, P, z, ln_phi, starts, kind: str) -> Found:
 
 
 def _try(found, lanes, trials, start, ln_z):
-    """Run trials of one kind to their stationary points and take in what they found."""
-    fixed = solve(trials, start, trials.present, plain=MOST_TRIAL, reach=REACH)
+    """Run trials of one kind to their stationary points and take in what they found, some of them at a time."""
+    order = np.argsort(lanes, kind="stable")  # the trials of a lane side by side
+    for some in np.array_split(order, max(1, -(-start.size // MOST_NUMBERS))):
+        if some.size:
+            _try_some(found, lanes[some], trials.take(some), start[some], ln_z)
+
+
+def _try_some(found, lanes, trials, start, ln_z):
+    early = solve(trials, start, trials.present, plain=EARLY, newton=0, reach=REACH)
+    apart = _distinct(lanes, np.where(trials.present, early.u, 0.0))
+    lanes, trials, start = lanes[apart], trials.take(apart), start[apart]
+    fixed = solve(trials, early.u[apart], trials.present, plain=MOST_TRIAL, reach=REACH)
     lost = np.flatnonzero(~fixed.converged)
     if lost.size:
         lower = trials.take(lost)
@@ -270,6 +283,7 @@ def _try(found, lanes, trials, start, ln_z):
         again = solve(lower, start[lost], lower.present, plain=4 * MOST_TRIAL, reach=REACH)
         for old, new in zip(fixed, again):
             old[lost] = new
+    fixed.iterations[:] += EARLY
 
     def liquid(w):
         mask = trials.liquid(w)
@@ -278,6 +292,20 @@ def _try(found, lanes, trials, start, ln_z):
         return mask
 
     _join(found, lanes, trials, fixed, liquid, ln_z)
+
+
+def _distinct(lanes, u):
+    """Trials (k,) that go on: of those of a lane that have come next to each other, the first."""
+    begin = np.flatnonzero(np.concatenate([[True], lanes[1:] != lanes[:-1]]))
+    nth = np.arange(lanes.size) - np.repeat(begin, np.diff(np.append(begin, lanes.size)))
+    goes_on = np.ones(lanes.size, dtype=bool)
+    for k in range(int(nth.max())):  # each trial in turn drops the later ones of its lane that are next to it
+        for other in range(k + 1, int(nth.max()) + 1):
+            row = np.flatnonzero(nth == other)
+            first = row - (other - k)
+            near = goes_on[first] & (row_max(np.abs(u[row] - u[first])) < MET)
+            goes_on[row[near]] = False
+    return np.flatnonzero(goes_on)
 
 
 def _join(found, lanes, trials, fixed, liquid, ln_z):
