@@ -21,8 +21,6 @@ from screener.ground.errors import ShapeError
 from screener.ground.status import Status
 
 MOST_PASSES = 80
-KEEP = 0.5  # share of lanes still moving below which the others are dropped
-ROUGH = 1e-6  # last relative step inside an iteration: the error left is its square
 EPS = np.finfo(float).eps
 LEAST, MOST = 1e-305, 1e305  # bounds of a: next to the ends of double precision
 
@@ -89,7 +87,7 @@ def split(z, K, K_minus_1=None, start=None, rough=False):
     start : array, shape (n,), optional
         A vapour fraction to start from. [-]
     rough : bool
-        For use inside an iteration: the root to 1e-12 or so, fractions not refined.
+        For use inside an iteration: the root to 1e-12, fractions not refined.
 
     Returns
     -------
@@ -111,7 +109,7 @@ def split(z, K, K_minus_1=None, start=None, rough=False):
         q = np.where((KN > 0.5)[:, None], e - eN[:, None], K - KN[:, None]) / -eN[:, None]
         width = 1.0 / e1 - 1.0 / eN
         a = _first(z, e, p, q, e1, eN, start)
-        a, step, passes = _iterate(z, e, p, q, width, np.where(found, a, 1.0), found, ROUGH if rough else 4.0 * EPS)
+        a, step, passes = _iterate(z, e, p, q, width, np.where(found, a, 1.0), found, 1e-12 if rough else 4.0 * EPS)
         # (1 + a) / (p + a q), scaled so that neither end overflows
         scale = 1.0 + np.minimum(a, 1.0 / a)
         low, high = np.minimum(1.0, 1.0 / a)[:, None], np.minimum(1.0, a)[:, None]
@@ -149,29 +147,25 @@ def _iterate(z, e, p, q, width, a, found, enough):
     zA, eA, pA, qA, wA, aA = z, e, p, q, width, a
     if active.size < a.size:
         zA, eA, pA, qA, wA, aA = (v[active] for v in (z, e, p, q, width, a))
-    last, going = np.full(active.shape, np.inf), np.ones(active.shape, dtype=bool)
+    last = np.full(active.shape, np.inf)
     for _ in range(MOST_PASSES):
         if active.size == 0:
             break
         low, high = np.minimum(1.0, 1.0 / aA), np.minimum(1.0, aA)
         # t is (K-1)/(p + a q), times a where a < 1: neither end of a then overflows its square
-        t = pA * (1.0 / high)[:, None]
-        t += qA * (1.0 / low)[:, None]
-        np.divide(eA, t, out=t)
+        t = eA * (low * high)[:, None] / (pA * low[:, None] + qA * high[:, None])
         zt = zA * t
         r = (low + high) * row_sum(zt) / (wA * np.einsum("nc,nc->n", zt, t))
         new = np.where(r > 0.0, aA * (1.0 + r), aA / (1.0 - r))
-        new = np.where(np.isfinite(new) & going, np.minimum(np.maximum(new, LEAST), MOST), aA)
-        size = np.where(going, np.abs(new - aA) / aA, last)
-        passes[active] += going
+        new = np.where(np.isfinite(new), np.clip(new, LEAST, MOST), aA)
+        size = np.abs(new - aA) / aA
+        passes[active] += 1
         a[active], step[active] = new, size
-        going &= (size > enough) & ~((size < 1e-9) & (size >= 0.5 * last))
+        going = (size > enough) & ~((size < 1e-9) & (size >= 0.5 * last))
         aA, last = new, size
-        left = np.count_nonzero(going)
-        if left < KEEP * going.size:  # copying the rest costs as much as a pass
-            active, last, aA, wA = active[going], last[going], aA[going], wA[going]
-            zA, eA, pA, qA = (v[going] for v in (zA, eA, pA, qA))
-            going = np.ones(left, dtype=bool)
+        if not going.all():
+            active, last = active[going], last[going]
+            zA, eA, pA, qA, wA, aA = (v[going] for v in (zA, eA, pA, qA, wA, aA))
     return a, step, passes
 
 
