@@ -50,8 +50,8 @@ def seek(fluid, name: str, value, feed, bubble: bool, finer: int):
     -------
     tuple
         Status (n,): CONVERGED where it exists, NO_SOLUTION where no two rungs
-        show it, TRIVIAL where the phases that cross are nearly one, OUT_OF_RANGE where it lies beyond the ladder; and u (n, c) to
-        start from.
+        show it, TRIVIAL where the phases that cross are nearly one,
+        OUT_OF_RANGE where it lies beyond the ladder; and u (n, c) to start from.
 
     Source
     ------
@@ -117,7 +117,9 @@ def _climb(fluid, name, value, feed, bubble, rungs):
     new = state.take(row).mix(trials.take(row).share(ln_W[row])[0])
     with np.errstate(invalid="ignore"):  # another liquid at the first rung says nothing of bubbles
         first = unstable[np.arange(n), begin] & ~(bubble & (reduced_volume(new, P[row], new.Z(P[row], "V")) < DENSE))
-    status = np.where(first, int(Status.OUT_OF_RANGE), int(Status.NO_SOLUTION))
+    # nor does a ladder that begins with a feed of the other kind know what lies before it
+    begun = of_kind.reshape(n, m)[:, 0]
+    status = np.where(first | ~begun, int(Status.OUT_OF_RANGE), int(Status.NO_SOLUTION))
     status = np.where(crossing.any(axis=1), int(Status.CONVERGED), status)
     row = np.arange(n) * m + rung + 1
     apart = row_max(np.where(present[row], np.abs(ln_W - ln_z)[row], 0.0))
@@ -141,14 +143,15 @@ def _starts(fluid, T, P, ln_z, ln_phi, present, bubble: bool):
 
 
 def _deepest(trials, starts, ln_z):
-    """Largest negative distance (n,) [-] over the starts, ln sum W at rest; its ln W (n, c), and whether all of them settled (n,).
+    """Largest negative distance (n,) [-] over the starts, its ln W (n, c), and whether any of them settled (n,).
 
-    A trial that came back to the feed says nothing and counts as stable.
+    The distance is ln sum W of a trial at rest. A trial that came back to the feed says nothing and counts as stable.
     """
     n = ln_z.shape[0]
     ln_sum, ln_W, settled = np.full(n, -np.inf), np.zeros_like(ln_z), np.zeros(n, dtype=bool)
     for start in starts:
-        fixed = solve(trials, np.where(trials.present, start, 0.0), trials.present, plain=MOST_TRIAL, newton=0, reach=REACH)
+        start = np.where(trials.present, start, 0.0)
+        fixed = solve(trials, start, trials.present, plain=MOST_TRIAL, newton=0, reach=REACH)
         ok = fixed.residual < 1e-3
         away = np.where(trials.present, np.abs(fixed.u - ln_z), 0.0).max(axis=1) > 1e-3
         # exact at any composition, also where the trial has not come to rest: a value above zero is a proof

@@ -18,7 +18,7 @@ from __future__ import annotations
 import numpy as np
 
 from screener.equilibrium.fixed_point import solve
-from screener.equilibrium.phase import Feed
+from screener.equilibrium.phase import Feed, critical_ratio, reduced_volume
 from screener.equilibrium.results import TPD_ZERO, Stability, bad_status
 from screener.equilibrium.rows import row_max, row_sum
 from screener.ground.shapes import lanes as as_lanes
@@ -63,7 +63,8 @@ class Trials:
         mixture = self.state.mix(w)
         if self.kind != "lower":
             return self.d - mixture.ln_phi(self.P, self.kind)
-        return self.d - np.where(self.liquid(w)[:, None], mixture.ln_phi(self.P, "L"), mixture.ln_phi(self.P, "V"))
+        ln_L, ln_V = mixture.ln_phi(self.P, "L"), mixture.ln_phi(self.P, "V")
+        return self.d - np.where((row_sum(w * (ln_L - ln_V)) <= 0.0)[:, None], ln_L, ln_V)
 
     def descent(self, ln_W, image):
         """Michelsen's modified distance 1 + sum W (ln W + ln phi - d - 1), and W."""
@@ -71,12 +72,13 @@ class Trials:
         return 1.0 - np.einsum("nc,nc->n", W, image - ln_W + 1.0), W
 
     def liquid(self, w):
-        """Mask (n,) of the lanes whose root is the smaller one."""
-        if self.kind != "lower":
-            return np.full(w.shape[0], self.kind == "L")
+        """Mask (n,) of the lanes that are a liquid: on the smaller root, or by density where there is only one."""
         mixture = self.state.mix(w)
-        difference = mixture.ln_phi(self.P, "L") - mixture.ln_phi(self.P, "V")
-        return np.einsum("nc,nc->n", w, difference) <= 0.0
+        (ln_L, Z_L), (ln_V, Z_V) = (mixture.ln_phi_and_Z(self.P, kind) for kind in "LV")
+        with np.errstate(invalid="ignore"):
+            one = ~(np.abs(Z_V - Z_L) > 1e-9 * Z_V)
+            smaller = row_sum(w * (ln_L - ln_V)) <= 0.0 if self.kind == "lower" else self.kind == "L"
+            return np.where(one, reduced_volume(mixture, self.P, Z_L) < critical_ratio(mixture), smaller)
 
 
 def stability(fluid, T, P, z, *, pures=True) -> Stability:

@@ -154,7 +154,7 @@ def cubic_rows(table, fluid, T, some):
     each = np.random.default_rng(9).dirichlet(60.0 * Z, HOURS)
     table.row("PR bubble pressure, every hour its own", HOURS, lambda: bubble_pressure(fluid, T, each), {}, settled)
     full, _ = table.row(
-        "PR bubble pressure, full check", HOURS, lambda: bubble_pressure(fluid, T, Z, check="full"), {}, settled, repeat=2
+        "PR bubble pressure, full check", HOURS, lambda: bubble_pressure(fluid, T, Z, check="full"), {}, settled, 2
     )
     half = HOURS // 2
     with ThreadPoolExecutor(2) as pool:
@@ -228,39 +228,49 @@ def main():
         P = 0.5 * bubble_pressure(many, T, z).P
         table.row(
             f"PR TP flash, {count} species", HOURS, lambda f=many, z=z, P=P: flash_tp(f, T, P, z),
-            asked(many, {"thermo": 20, "feos": 10}, "flash", z, [(T[0], P[0])] * 20), lambda f: f"all converged: {f.ok.all()}",
+            asked(many, {"thermo": 20, "feos": 10}, "flash", z, [(T[0], P[0])] * 20),
+            lambda f: f"all converged: {f.ok.all()}",
         )  # fmt: skip
     once = [(300.0,)] * 60
     one, _ = table.row(
         "PR bubble pressure, one call", 1, lambda: bubble_pressure(fluid, 300.0, Z),
         asked(fluid, {"thermo": 60, "feos": 60, "CoolProp": 20}, "bubble", Z, once), repeat=300,
     )  # fmt: skip
-    table.row("PR TP flash, one call", 1, lambda: flash_tp(fluid, 300.0, 5e4, Z),
-              asked(fluid, {"thermo": 60, "feos": 60, "CoolProp": 20}, "flash", Z, [(300.0, 5e4)] * 60), repeat=300)  # fmt: skip
+    few = {"thermo": 60, "feos": 60, "CoolProp": 20}
+    table.row(
+        "PR TP flash, one call", 1, lambda: flash_tp(fluid, 300.0, 5e4, Z),
+        asked(fluid, few, "flash", Z, [(300.0, 5e4)] * 60), repeat=300,
+    )  # fmt: skip
     table.row("PR-GE bubble pressure, one call", 1, lambda: bubble_pressure(blend, 300.0, share), {}, repeat=200)
     peak = resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1024
     cost = (
         f"Full check over plain: bubble pressure {bubble_full / bubble:.0f} x, TP flash {flash_full / flash:.0f} x, TP"
-        f" flash with ethanol {blend_full / blend_flash:.0f} x. Peak memory of the process, libraries included: {peak:.0f} MB."
+        f" flash with ethanol {blend_full / blend_flash:.0f} x. Peak memory of the process, libraries included:"
+        f" {peak:.0f} MB."
     )
-    year = f"{HOURS * bubble:.2f} s, its full check {HOURS * bubble_full:.1f} s, that of the flash with ethanol {HOURS * blend_full:.1f} s"
+    year = (
+        f"{HOURS * bubble:.2f} s, its full check {HOURS * bubble_full:.1f} s, that of the flash with ethanol"
+        f" {HOURS * blend_full:.1f} s"
+    )
     tail = ["", cost, "", VERDICT.format(year=year, one=f"{1e3 * one:.1f} ms")]
     print(*tail, sep="\n")
     if given.write:
         where = (
-            f"`python -m tests.bench.bench_flash --write`: {platform.machine()}, {os.cpu_count()} shared cores, one thread"
-            f" but where said, Python {platform.python_version()}, NumPy {np.__version__}. Libraries: a loop over up to"
-            f" {given.sample} of the {HOURS:,} hours, same equation and constants, median per point; x is their time over ours."
+            f"`python -m tests.bench.bench_flash --write`: {platform.machine()}, {os.cpu_count()} shared cores, one"
+            f" thread but where said, Python {platform.python_version()}, NumPy {np.__version__}. Libraries: a loop over"
+            f" up to {given.sample} of the {HOURS:,} hours, same equation and constants, median per point; x is their"
+            " time over ours."
         )
-        PAGE.write_text("\n".join(["# Last run of the bench", "", where, "", *table.lines, *tail]) + "\n", encoding="utf-8")
+        page = ["# Last run of the bench", "", where, "", *table.lines, *tail]
+        PAGE.write_text("\n".join(page) + "\n", encoding="utf-8")
 
 
 VERDICT = (
-    "Is a compiled backend worth its weight? A year of hours takes {year}; a single call {one}. Batching meets every need"
-    " there is. A compiler could shorten the single call and the full check; neither holds anybody up (a case makes a few"
-    " dozen calls and full checks of a few hundred lanes), while a compiler or a wheel per platform would hold up every"
-    " installation. Two threads gain nothing: the arrays of a chunk are too small to be worth sharing. The default stays"
-    " plain NumPy, one thread."
+    "Is a compiled backend worth its weight? A year of hours takes {year}; a single call {one}. Batching meets every"
+    " need there is. A compiler could shorten the single call and the full check; neither holds anybody up (a case makes"
+    " a few dozen calls and full checks of a few hundred lanes), while a compiler or a wheel per platform would hold up"
+    " every installation. Two threads gain nothing: the arrays of a chunk are too small to be worth sharing. The default"
+    " stays plain NumPy, one thread."
 )
 
 

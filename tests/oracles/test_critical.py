@@ -25,7 +25,7 @@ def ours():
 
 
 def test_critical_line(model, ours):
-    """Just below the temperature of the critical line there is a bubble point at its pressure, just above there is none."""
+    """Just below the critical line in temperature a bubble point at its pressure, just above it none."""
     import teqp
 
     options = teqp.TCABOptions()

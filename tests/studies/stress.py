@@ -24,7 +24,7 @@ from screener.equilibrium.second_liquid import DOUBTFUL, THREE_PHASES, TWO_LIQUI
 from screener.ground.status import Status
 from tests.studies.stress_absent import exists
 from tests.studies.stress_cases import SEED, Cases, blend_pool, stress_cases
-from tests.studies.stress_judge import DENSE, OWN, ModelPhases, PlainPR, judge_phases, judge_points
+from tests.studies.stress_judge import LIQUID, OWN, ModelPhases, PlainPR, judge_phases, judge_points
 
 PAGE = Path(__file__).with_suffix(".md")
 POINTS = {
@@ -39,7 +39,7 @@ NAMES = {
 
 
 def flash_faults(equation, cases: Cases, found, generator):
-    """Faults (n,) of the lanes of a flash that say converged or that two liquids were found, and the distance found."""
+    """Faults (n,) of the lanes of a flash that converged or found two liquids, and the distance found (n,)."""
     shares = np.stack([1.0 - found.beta - np.nan_to_num(found.beta_W), found.beta, np.nan_to_num(found.beta_W)])
     phases = np.stack([found.x, found.y, found.x_W])
     some = np.flatnonzero(found.ok | np.isin(found.checks, (TWO_LIQUIDS, THREE_PHASES)))
@@ -65,7 +65,7 @@ def point_faults(equation, cases: Cases, found, bubble: bool, generator):
     )
     doubtful = found.checks[some] == DOUBTFUL
     said[(split | doubtful) & (said == "tangent plane")] = ""
-    said[split & ~((tpd < 0.0) & (ratio < DENSE))] = "no second liquid"
+    said[split & ~((tpd < 0.0) & (ratio < LIQUID))] = "no second liquid"
     fault[some] = said
     return fault, int(split.sum())
 
@@ -95,8 +95,8 @@ class Report:
         self.say("")
 
 
-def model_part(report, title, cases: Cases, equation, generator):
-    """All five questions of one model."""
+def model_part(report, title, cases: Cases, equation, generator, coldest=60.0):
+    """All five questions of one model; coldest [K] is where its range ends."""
     n = cases.T.size
     report.say(f"## {title}", "", f"{n} feeds; the full check of every answer.", "")
     rows, worst, lost, all_lanes, numbered = [], [], 0, 0, 0
@@ -117,7 +117,7 @@ def model_part(report, title, cases: Cases, equation, generator):
         fault, held = point_faults(equation, cases, found, bubble, generator)
         numbered += held
         none = np.flatnonzero(found.status == Status.NO_SOLUTION)
-        there = exists(equation, name, value[none], cases.z[none], bubble, generator)
+        there = exists(equation, name, value[none], cases.z[none], bubble, generator, coldest)
         fault[none[there]] = "exists"
         rows.append(_row(what, found, fault, int(there.sum()), spent))
         worst += _faults(what, cases, fault)
@@ -152,7 +152,8 @@ def by_family(report, cases: Cases, flashed):
     for family in dict.fromkeys(cases.family):
         here = cases.family == family
         answered, lost = tally(flashed.status[here])
-        rows.append((family, int(here.sum()), answered[0], answered[1], lost, f"{flashed.iterations[here].mean():.0f}"))
+        steps = f"{flashed.iterations[here].mean():.0f}"
+        rows.append((family, int(here.sum()), answered[0], answered[1], lost, steps))
     report.table(["family", "feeds", "converged", "second liquid", "not converged", "mean steps"], rows)
 
 
@@ -170,7 +171,7 @@ def main():
     flashed = model_part(report, "Peng-Robinson", cases, lambda T, P: PlainPR(cases.fluid, T, P), generator)
     by_family(report, cases, flashed)
     blends = stress_cases(n // 5, blend_pool())
-    model_part(report, "Model of the blends", blends, lambda T, P: ModelPhases(blends.fluid, T, P), generator)
+    model_part(report, "Model of the blends", blends, lambda T, P: ModelPhases(blends.fluid, T, P), generator, 155.0)
     if not asked.no_peers:
         from tests.studies.stress_peers import peers_part
 

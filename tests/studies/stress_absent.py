@@ -14,12 +14,13 @@ LIQUID, VAPOUR = 6.0, 2.0  # v/b below and above which the feed can be a liquid 
 APART = 0.02  # [-] difference of ln v/b of phases that are two beyond doubt
 
 
-def exists(equation, name: str, value, feed, bubble: bool, generator):
-    """Mask (n,) of lanes with a point of the kind; equation(T, P) gives the equation of state of lanes."""
+def exists(equation, name: str, value, feed, bubble: bool, generator, coldest=TEMPERATURES[0]):
+    """Mask (n,) of lanes with a point of the kind; equation(T, P) gives the equation of state of lanes, coldest is
+    the lowest temperature looked at. [K]"""
     n = value.size
     if n == 0:
         return np.zeros(0, dtype=bool)
-    ends = np.log(PRESSURES if name == "T" else TEMPERATURES)
+    ends = np.log(PRESSURES if name == "T" else (coldest, TEMPERATURES[1]))
     rungs = np.linspace(*ends, RUNGS)[:: -1 if bubble == (name == "T") else 1]  # from the stable side
 
     def look(lane, at):

@@ -34,8 +34,11 @@ SMALLEST = 1e-12  # [-] smallest share
 
 @dataclass(frozen=True)
 class Pool:
-    """A fluid of many species and which of them are what: numbers of gases (first), lights (first) and wet ones (last);
-    heavy, the index from which on the dry ones are heavy ends."""
+    """A fluid of many species and which of them are what.
+
+    gases and lights, how many of the first; wet, how many of the last; heavy,
+    the index from which on the dry ones are heavy ends.
+    """
 
     fluid: Fluid
     gases: int
@@ -114,15 +117,18 @@ def _feed(generator, family: str, pool: Pool):
     """One composition (c,)."""
     count = int(generator.integers(2, 16))
     if family == "gas and heavy ends":
-        gases = generator.choice(pool.gases, min(1 + count // 4, pool.gases), replace=False)
-        heavy = generator.choice(np.arange(pool.heavy, pool.dry), min(1 + count // 4, pool.dry - pool.heavy), replace=False)
+        few = 1 + count // 4
+        gases = generator.choice(pool.gases, min(few, pool.gases), replace=False)
+        heavy = np.arange(pool.heavy, pool.dry)
+        heavy = generator.choice(heavy, min(few, heavy.size), replace=False)
         between = np.arange(pool.gases, pool.heavy)
         rest = generator.choice(between, max(0, min(count - gases.size - heavy.size, between.size)), replace=False)
         chosen = np.concatenate([gases, heavy, rest])
     elif family == "near-critical":
         chosen = generator.choice(pool.lights, min(count, pool.lights), replace=False)
     elif family == "water or methanol":
-        wet = generator.choice(np.arange(pool.dry, pool.fluid.c), int(generator.integers(1, pool.wet + 1)), replace=False)
+        wet = np.arange(pool.dry, pool.fluid.c)
+        wet = generator.choice(wet, int(generator.integers(1, pool.wet + 1)), replace=False)
         chosen = np.concatenate([wet, generator.choice(pool.dry, max(1, count - wet.size), replace=False)])
     else:
         chosen = generator.choice(pool.dry, count, replace=False)
