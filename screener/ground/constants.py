@@ -3,6 +3,7 @@
 R = 8.31446261815324  # molar gas constant [J/(mol K)]; CODATA 2018, exact since the 2019 SI
 STEFAN_BOLTZMANN = 5.670374419e-8  # [W/(m2 K4)]; CODATA 2018, exact
 GRAVITY = 9.80665  # standard gravity [m/s2]; CGPM 1901, resolution 2
+PSI = 0.45359237 * GRAVITY / 0.0254**2  # pound-force per square inch [Pa]; yard and pound agreement of 1959, exact
 ATMOSPHERE = 101325.0  # standard atmosphere [Pa]; CGPM 1954, resolution 4
 ZERO_CELSIUS = 273.15  # 0 degC [K]; SI Brochure, 9th edition, 2.3.1
 T_15C = 288.15  # base temperature of ISO 5024 [K]

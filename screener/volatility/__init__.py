@@ -9,6 +9,7 @@ from screener.volatility.classes import (
     vapour_lock_classes,
     volatility_classes,
 )
+from screener.volatility.compression import petroleum_compressibility, shut_in_pressure_rise
 from screener.volatility.crude_pressure import CrudePressure, reid_equivalent_crude, vapour_pressure_crude
 from screener.volatility.cutting import Cuts, pseudo_components
 from screener.volatility.distillation import Distillation, distillation, distillation_d86
@@ -75,6 +76,7 @@ __all__ = [
     "liquid_molar_volume",
     "open_evaporation",
     "ostwald_air",
+    "petroleum_compressibility",
     "petroleum_expansion",
     "pseudo_components",
     "ratio_20_temperature_d4814",
@@ -82,6 +84,7 @@ __all__ = [
     "reid_equivalent_crude",
     "reid_vapour_pressure",
     "season_limits",
+    "shut_in_pressure_rise",
     "standard_density",
     "standard_molar_volume",
     "tbp_from_d86_daubert_1994",
