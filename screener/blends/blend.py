@@ -18,8 +18,8 @@ from screener.species import columns, find
 from screener.volatility import liquid_expansion
 
 if TYPE_CHECKING:
-    from screener.blends.lab_fit import MeasuredPressure
     from screener.blends.lab_sheet import LabSheet
+    from screener.blends.measured import MeasuredFigure, MeasuredPressure
 
 
 @dataclass(frozen=True)
@@ -49,7 +49,8 @@ class Blend:
     product the commodity group for volume correction ('' when the density chooses).
     Standard volumes at 15 degC add without shrinkage. measured holds the vapour pressures of the
     laboratory sheet a blend was fitted to, the most direct first, each with its ratio to the computed
-    one; vapour_pressure_known is False when that sheet had none. A mixture measures nothing.
+    one; vapour_pressure_known is False when that sheet had none; figures holds every number of the
+    sheet in its order. A mixture measures nothing.
     """
 
     names: tuple[str, ...]
@@ -60,6 +61,7 @@ class Blend:
     report: Report = field(default_factory=Report)
     measured: tuple[MeasuredPressure, ...] = ()
     vapour_pressure_known: bool = True
+    figures: tuple[MeasuredFigure, ...] = ()
 
     @classmethod
     def of(
@@ -184,6 +186,27 @@ class Blend:
     def density_15(self) -> float:
         """Density at 15 degC. [kg/m3]"""
         return self.MW / self.v_15
+
+    def figure(self, key: str, at: float = 0.0) -> MeasuredFigure | None:
+        """The measured number of a laboratory sheet, None where there is none.
+
+        Parameters
+        ----------
+        key : str
+            As in data/volatility/reproducibility.csv: "density_15", "flash_point", "h2s".
+        at : float
+            Volume fraction evaporated of a "distillation" point. [-]
+
+        Returns
+        -------
+        MeasuredFigure or None
+            The first with this key.
+
+        Source
+        ------
+        The laboratory sheet; nothing is computed.
+        """
+        return next((one for one in self.figures if one.key == key and one.at == at), None)
 
     @property
     def oxygenates(self) -> dict[str, float]:

@@ -16,6 +16,7 @@ from screener.blends.blend import Blend, Report
 from screener.blends.lab_numbers import Laboratory, Number, numbers_of
 from screener.blends.lab_sheet import LabSheet
 from screener.blends.lab_start import Start, start_of
+from screener.blends.measured import MeasuredFigure, MeasuredPressure
 from screener.equilibrium import Fluid
 from screener.ground.constants import ZERO_CELSIUS
 from screener.ground.errors import InputError
@@ -31,23 +32,6 @@ CLOSE = 0.05  # largest misfit in units of R at which the search stops
 ENOUGH = 0.01  # mean square misfit, in R, below which slopes are not worked out again; our choice
 CONTRADICTION = 3.0  # misfit in units of R from which a sheet is refused; common practice, no source
 TRIES = np.array([1.0, 0.6, 0.3, 0.1])  # parts of a step that are tried side by side
-
-
-@dataclass(frozen=True)
-class MeasuredPressure:
-    """A vapour pressure of the sheet beside the computed one of the fitted composition.
-
-    what in words; value and computed [Pa] as the method reports them; T [K]; ratio [-] measured over
-    computed pressure of the fuel's own vapour in the test: the factor for a computed vapour pressure at
-    another temperature, the equation supplying the slope.
-    """
-
-    what: str
-    value: float
-    T: float
-    computed: float
-    ratio: float
-    reproducibility: float
 
 
 @dataclass(frozen=True)
@@ -109,7 +93,14 @@ def fitted_blend(sheet: LabSheet, start: Blend | None = None) -> Blend:
         Report((*before.assumed, *fitted.notes), before.sources, residuals),
         fitted.measured,
         sheet.vapour_pressure_known,
-    )
+        tuple(
+            MeasuredFigure(
+                one.key, one.name, float(one.value), float(computed), float(one.R),
+                float(one.argument) if one.key == "distillation" else 0.0,
+            )
+            for one, computed in zip(fitted.numbers, fitted.computed, strict=True)
+        ),
+    )  # fmt: skip
 
 
 def _values(numbers):
@@ -244,20 +235,19 @@ def _pressures(sheet, fitted: Fitted, fluid):
     found = []
     for one, computed in zip(fitted.numbers, fitted.computed, strict=True):
         if one.key in ("tvp", "vpcr_4", "vpcr_low", "rvpe"):
-            own, change = computed, one.value - computed
+            own, change, R = computed, one.value - computed, one.R
         elif one.key == "dvpe":
             own = dvpe(fluid, z, equation=one.argument, product=sheet.product or None).P_vapour[0]
             rule = dvpe_equation(one.argument)
-            change = float(rule.total(one.value) - rule.total(computed))
+            change, R = float(rule.total(one.value) - rule.total(computed)), one.R / rule.slope
         elif one.key == "rvp":
             own = reid_vapour_pressure(
                 fluid, z, chamber=one.argument, product=sheet.product or None
             ).P_vapour[0]
-            change = one.value - computed
+            change, R = one.value - computed, one.R
         else:
             continue
-        found.append(
-            MeasuredPressure(one.name, one.value, one.T, float(computed), float(1.0 + change / own), one.R)
-        )
+        ratio, doubt = float(1.0 + change / own), float(R / own)
+        found.append(MeasuredPressure(one.name, one.value, one.T, float(computed), ratio, one.R, doubt))
     rank = ("true", "VPCR", "DVPE", "RVP")
     return sorted(found, key=lambda m: next(i for i, r in enumerate(rank) if m.what.startswith(r)))
