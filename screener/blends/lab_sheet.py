@@ -162,6 +162,7 @@ def _rows(sheet):
                 f"oxygenates[{i}]", share, f"{name}: {100 * share:g} % {what}", "allowed: 0 to 100 %"
             )
     known = {*reproducibilities(), *(field.name for field in fields(sheet))}
+    known |= {name for name, _ in sheet.oxygenates}
     for i, (name, R) in enumerate(sheet.reproducibility):
         if name not in known:
             yield UnknownName(f"reproducibility[{i}]", name, "number of a sheet", reproducibilities())

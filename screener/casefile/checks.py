@@ -38,6 +38,7 @@ def check(values: Values) -> None:
         _barometer,
         _suction,
         _basis_of_shares,
+        _sour_once,
     ):
         one(values)
     _not_used(values)
@@ -196,6 +197,14 @@ def _basis_of_shares(values: Values) -> None:
         if taken is not None and taken.mark not in wanted:
             problem = f"'{taken.entered}' does not say that it counts {'mass' if 'mass' in wanted else 'volume'}"
             values.complain(InputError(path, taken.entered, problem, f'write it as "{text}"'))
+
+
+def _sour_once(values: Values) -> None:
+    """Hydrogen sulfide of the receipt stands on its sheet or beside its parts, not in both places."""
+    path, other = "blend.h2s_in_liquid", "blend.lab.h2s"
+    if values.value(path) is not None and values.value(other) is not None:
+        problem = f"hydrogen sulfide is given twice, here and in {other}"
+        values.complain(InputError(path, values.entered(path), problem, "give it in one of the two places"))
 
 
 def _not_used(values: Values) -> None:

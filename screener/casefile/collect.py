@@ -60,7 +60,9 @@ def _table(values: Values, declared: str, path: str, table: Mapping, tables: Tab
     values.present.add(path)
     for name, key in known.items():
         place = join(path, name)
-        if name in table:
+        # An empty list beside what takes its place says as much as no list.
+        spared = bool(key.unless) and key.unless in table and table.get(name) == []
+        if name in table and not spared:
             _entry(values, key, place, table[name], tables)
         elif not key.unless or key.unless not in table:
             _absent(values, key, place, tables)

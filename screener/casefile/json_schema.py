@@ -73,7 +73,7 @@ def _description(key: Key) -> str:
     parts = [f"{key.meaning}."]
     if key.kind == k.LATER:
         parts.append(f"Known and refused for now: {key.problem}.")
-    if key.kind == "pressure difference":
+    if key.kind == "pressure difference" and key.unit != "Pa":
         parts.append(_GAUGE)
     if key.kind in KINDS:
         parts.append(f"{key.kind.capitalize()} as text ({KINDS[key.kind].accepted}), {key.allowed}.")

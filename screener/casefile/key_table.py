@@ -19,7 +19,7 @@ from screener.casefile.keys import (
     TEXT,
     Key,
 )
-from screener.casefile.lab_keys import LAB_KEYS
+from screener.casefile.lab_keys import lab_keys
 
 OVER, UNDER = "Pa over barometer", "Pa under barometer"
 ROOFS = ("fixed-roof", "internal-floating-roof", "external-floating-roof", "domed-floating-roof")
@@ -65,7 +65,7 @@ _BLEND = (
     Key("blend.h2s_in_liquid", "share", "Hydrogen sulfide dissolved in the receipt, by mass, beside its parts",
         "20 ppm mass", unit="-", low="0 ppm", high="5 %", usual="0 to 100 ppm mass in crude and condensate",
         where="certificate of analysis"),
-    *LAB_KEYS,
+    *lab_keys("blend.lab"),
 )  # fmt: skip
 
 _SHELL = (
@@ -143,11 +143,12 @@ _ROOF_AND_HEEL = (
     Key("tank.sour_service", FLAG, "The tank holds liquid with hydrogen sulfide, now or before", "false",
         where="tank log"),
     Key("tank.contents", TABLE, "What is in the tank now; leave out if it is empty", section=True),
-    *_parts("tank.contents", "the liquid in the tank"),
+    *_parts("tank.contents", "the liquid in the tank", unless="lab"),
     Key("tank.contents.volume", "volume", "Volume in the tank now, at its own temperature", "2100 m3",
         unit="m3", low="0 m3", low_open=True, high="300000 m3", where="tank gauging"),
     Key("tank.contents.temperature", "temperature", "Temperature of the liquid in the tank now", "24 degC",
         unit="K", low="-60 degC", high="120 degC", where="tank gauging"),
+    *lab_keys("tank.contents.lab"),
 )  # fmt: skip
 
 _SITE = (

@@ -1,76 +1,133 @@
-"""The values of [blend.lab] to a `LabSheet`, and the sheet to the blend that reproduces it."""
+"""The values of a laboratory sheet to a `LabSheet`, and the sheet to the blend that reproduces it."""
 
 from __future__ import annotations
 
 import re
+from functools import lru_cache
 
 from screener.casefile.collect import Values
-from screener.casefile.lab_keys import OXYGENATES, POINTS
+from screener.casefile.lab_keys import BY_MASS, BY_VOLUME, OWN_R, OXYGENATES, POINTS
+from screener.casefile.parts import read_blend
 from screener.casefile.values import Tables
 from screener.ground.errors import CaseErrors, InputError
 
-_PATH = "blend.lab"
-_BY_MASS = ("water",)
-_BY_VOLUME = ("e70", "e100", "e150", *OXYGENATES, "benzene", "aromatics", "olefins")
 # Fields of the sheet whose key has another name.
 _NAMES = {"density_15": "density", "tvp": "true_vapour_pressure", "ibp": "distillation.IBP",
           "fbp": "distillation.FBP", "viscosity_T": "viscosity_temperature"}  # fmt: skip
+_PLAIN = ("title", "dvpe", "rvp", "rvpe", "e70", "e100", "e150", "benzene", "aromatics", "olefins",
+          "flash_point", "viscosity", "h2s", "water")  # fmt: skip
+_ROWS = {"vpcr": ("vpcr", "ratio", "temperature", "pressure"),
+         "tvp": ("true_vapour_pressure", "temperature", "pressure")}  # fmt: skip
+# A method that says nothing where its number is not given.
+_METHODS = {"dvpe_equation": "dvpe", "rvp_chamber": "rvp"}
 
 
-def read_sheet(values: Values):
-    """The sheet of a case; None without one or, its faults noted, when it cannot be used."""
-    if _PATH not in values.present:
+def read_liquid(values: Values, path: str, tables: Tables):
+    """The liquid of `blend` or `tank.contents`: its parts, its sheet, or the parts corrected to the sheet.
+
+    None where there is none or it cannot be used; the faults are noted.
+    """
+    start = read_blend(values, path, tables)
+    sheet = read_sheet(values, f"{path}.lab")
+    # Parts that were given and cannot be read are not passed over: the sheet alone is another question.
+    heads = (f"{path}.parts", f"{path}.basis", f"{path}.at", f"{path}.scale")
+    given = f"{path}.parts" in values.present or any(f.path.startswith(heads) for f in values.faults)
+    if sheet is None or (start is None and given):
+        return start
+    try:
+        return _fit(values, path, sheet, start, tables)
+    except InputError as error:
+        values.complain(error)
+        return None
+
+
+def _fit(values: Values, path: str, sheet, start, tables: Tables):
+    """The blend that reproduces the sheet; InputError when its numbers contradict each other."""
+    made = _fitted(tables.lab, sheet, start)
+    if not isinstance(made, InputError):
+        return made
+    density = values.entered(f"{path}.lab.density") if isinstance(made.value, float) else ""
+    place = f"{path}.lab.density" if density else f"{path}.lab"
+    raise InputError(place, density or "the sheet", made.problem, made.hint)
+
+
+@lru_cache(maxsize=32)
+def _fitted(fit, sheet, start):
+    """The blend or the refusal: a refusal takes as long as a fit and is kept as well."""
+    try:
+        return fit(sheet, start)
+    except InputError as error:
+        return error
+
+
+def read_sheet(values: Values, base: str):
+    """The sheet at a path; None without one or, its faults noted, when it cannot be used."""
+    if base not in values.present:
         return None
     from screener.blends import LabSheet
 
-    before = len(values.faults)
-    wrong = _bases(values)
-    faulty = any(fault.path.startswith(_PATH) for fault in values.faults)
-
-    def v(name: str):
-        return None if name in wrong else values.value(f"{_PATH}.{name}")
-
-    points = ((p / 100.0, v(f'distillation."{p} %"')) for p in POINTS)
-    given = {
-        "density_15": v("density"),
-        **{name: v(name) for name in ("dvpe", "rvp", "rvpe", "e70", "e100", "e150", "benzene", "aromatics")},
-        **{name: v(name) for name in ("olefins", "flash_point", "viscosity", "water")},
-        "viscosity_T": v("viscosity_temperature"),
-        "ibp": v("distillation.IBP"),
-        "fbp": v("distillation.FBP"),
-        "distillation": tuple((f, T) for f, T in points if T is not None),
-        "oxygenates": tuple((name, v(key)) for key, name in OXYGENATES.items() if v(key) is not None),
-        "vpcr": _rows(values, "vpcr", "ratio", "temperature", "pressure"),
-        "tvp": _rows(values, "true_vapour_pressure", "temperature", "pressure"),
-    }
-    kind = v("kind")
-    if faulty and not any(value not in (None, ()) for value in given.values()):
+    _forget_methods(values, base)
+    wrong = _bases(values, base)
+    faulty = {fault.path for fault in values.faults if fault.path.startswith(base)}
+    given = _given(values, base, wrong)
+    if faulty and not any(value not in (None, "", ()) for name, value in given.items() if name != "title"):
         return None
+    own = ((name, values.value(f"{base}.reproducibility.{key}")) for key, name in OWN_R.items())
+    kind = values.value(f"{base}.kind")
     try:
-        return LabSheet(**given, product="crude" if kind == "crude" else "")
+        sheet = LabSheet(
+            **given,
+            product="crude" if kind == "crude" else "",
+            reproducibility=tuple((name, R) for name, R in own if R is not None),
+            dvpe_equation=values.value(f"{base}.dvpe_equation") or "ASTM D5191",
+            rvp_chamber=values.value(f"{base}.rvp_chamber") or "dry",
+        )
+        return None if faulty or wrong else sheet  # a sheet with holes is another sheet
     except CaseErrors as error:
         for fault in error.faults:
-            path = _path(fault.path, given)
-            if not (faulty and any(f.path == path for f in values.faults[:before])):
+            path = _path(values, base, fault.path, given)
+            if not _told(path, faulty):
                 value = fault.value if fault.value is not None else values.entered(path) or "the sheet"
                 values.complain(InputError(path, value, fault.problem, fault.hint))
         return None
 
 
-def fit_blend(sheet, start, tables: Tables):
-    """The blend that reproduces the sheet; CaseErrors when its numbers contradict each other."""
-    try:
-        return tables.lab(sheet, start)
-    except InputError as error:
-        raise CaseErrors([InputError(_PATH, "the sheet", error.problem, error.hint)]) from error
+def _given(values: Values, base: str, wrong: set[str]) -> dict:
+    """Fields of the sheet by name, None or () where the sheet is silent."""
+
+    def v(name: str):
+        return None if name in wrong else values.value(f"{base}.{name}")
+
+    points = ((p / 100.0, v(f'distillation."{p} %"')) for p in POINTS)
+    return {
+        **{name: v(name) for name in _PLAIN},
+        "title": v("title") or "",
+        **{field: v(_NAMES[field]) for field in ("density_15", "viscosity_T", "ibp", "fbp")},
+        "distillation": tuple((f, T) for f, T in points if T is not None),
+        "oxygenates": tuple((name, v(key)) for key, name in OXYGENATES.items() if v(key) is not None),
+        **{field: tuple(row for _, row in _rows(values, base, field)) for field in _ROWS},
+    }
 
 
-def _bases(values: Values) -> set[str]:
+def _told(path: str, faulty: set[str]) -> bool:
+    """Whether a fault only follows from one that was noted when the values were read."""
+    return path in faulty or (path.endswith(".viscosity") and f"{path}_temperature" in faulty)
+
+
+def _forget_methods(values: Values, base: str) -> None:
+    """The default of a method is no input where its number is not given."""
+    for method, number in _METHODS.items():
+        taken = values.taken.get(f"{base}.{method}")
+        if taken is not None and taken.quality == "default" and f"{base}.{number}" not in values.taken:
+            del values.taken[taken.path]
+
+
+def _bases(values: Values, base: str) -> set[str]:
     """Names of shares that count something else than their key; the faults noted."""
     wrong = set()
-    for names, allowed, text in ((_BY_VOLUME, ("", "volume"), "vol%"), (_BY_MASS, ("mass",), "ppm mass")):
-        for name in names:
-            taken = values.taken.get(f"{_PATH}.{name}")
+    for names, allowed, text in ((BY_VOLUME, ("", "volume"), "vol%"), (BY_MASS, ("mass",), "ppm mass")):
+        for name in (*names, *(f"reproducibility.{name}" for name in names)):
+            taken = values.taken.get(f"{base}.{name}")
             if taken is not None and taken.mark not in allowed:
                 wrong.add(name)
                 problem = f"'{taken.entered}' does not count {'mass' if text == 'ppm mass' else 'volume'}"
@@ -78,22 +135,25 @@ def _bases(values: Values) -> set[str]:
     return wrong
 
 
-def _rows(values: Values, name: str, *columns: str):
-    """Rows of a small table of the sheet that could be read whole."""
+def _rows(values: Values, base: str, field: str) -> list[tuple[str, tuple]]:
+    """Rows of a small table of the sheet that could be read whole, each with its path."""
+    name, *columns = _ROWS[field]
     rows = []
-    for row in values.rows(f"{_PATH}.{name}"):
+    for row in values.rows(f"{base}.{name}"):
         cells = tuple(values.value(f"{row}.{column}") for column in columns)
         if None not in cells:
-            rows.append(cells)
-    return tuple(rows)
+            rows.append((row, cells))
+    return rows
 
 
-def _path(field: str, given) -> str:
+def _path(values: Values, base: str, field: str, given) -> str:
     """Place in the case of a field of the sheet."""
     name, row = re.fullmatch(r"(\w+)(?:\[(\d+)\])?", field).groups()
     if name == "lab":
-        return _PATH
+        return base
+    if name in _ROWS and row is not None:
+        return _rows(values, base, name)[int(row)][0]
     if name == "oxygenates":
         species = given["oxygenates"][int(row or 0)][0]
-        return f"{_PATH}.{next(key for key, one in OXYGENATES.items() if one == species)}"
-    return f"{_PATH}.{_NAMES.get(name, name)}" + (f"[{row}]" if row else "")
+        return f"{base}.{next(key for key, one in OXYGENATES.items() if one == species)}"
+    return f"{base}.{_NAMES.get(name, name)}" + (f"[{row}]" if row else "")

@@ -39,7 +39,7 @@ def _shown(taken: Taken, system: str) -> str:
     if key.kind in KINDS:
         text = show(value, key.kind, system)
         if key.kind == "pressure difference":
-            return f"{text} {_BAROMETER[key.unit]}"
+            return f"{text} {_BAROMETER.get(key.unit, '')}".rstrip()
         return f"{text} by {taken.mark}" if key.kind == "share" and taken.mark else text
     if isinstance(value, bool):
         return "yes" if value else "no"

@@ -11,8 +11,7 @@ from screener.casefile.checks import check
 from screener.casefile.collect import collect
 from screener.casefile.files import read_file, write_file
 from screener.casefile.keys import order
-from screener.casefile.lab import fit_blend, read_sheet
-from screener.casefile.parts import read_blend
+from screener.casefile.lab import read_liquid
 from screener.casefile.toml_text import parse_toml
 from screener.casefile.values import Tables, shipped_tables
 from screener.ground.errors import CaseErrors, InputError
@@ -35,14 +34,11 @@ def read_case(source: str | Path | CaseText, *, tables: Tables | None = None) ->
         raise CaseErrors([error]) from error
     tables = tables or shipped_tables()
     values = collect(document, tables)
-    blend = read_blend(values, "blend", tables)
-    heel = read_blend(values, "tank.contents", tables) if "tank.contents" in values.present else None
-    sheet = read_sheet(values)
+    blend = read_liquid(values, "blend", tables)
+    heel = read_liquid(values, "tank.contents", tables) if "tank.contents" in values.present else None
     check(values)
     if values.faults:
         raise CaseErrors(sorted(values.faults, key=lambda fault: order(fault.path)))
-    if sheet is not None:
-        blend = fit_blend(sheet, blend, tables)
     from screener.casefile.build import build
 
     return build(values, blend, heel, source=place, digest=hashlib.sha256(text.encode("utf-8")).hexdigest())

@@ -130,7 +130,8 @@ def test_every_entered_value_is_echoed_as_entered_and_as_used(whole):
     assert all(text.get(path) == value.strip() for path, value in entered.items())
     used = {pattern(path) for path in entered}
     values = {path for path, key in all_keys().items() if key.kind not in (TABLE, ROWS, LATER)}
-    left_out = {"site.ambient.meaning", "tank.contents.parts[].species", "tank.contents.parts[].quality"}
+    left_out = {"site.ambient.meaning", "tank.contents.parts[].species", "tank.contents.parts[].quality",
+                "blend.lab.h2s"}  # fmt: skip  (the last stands in blend.h2s_in_liquid)
     assert used == values - left_out - {f"tank.contents.{name}" for name in ("basis", "at", "scale")}
     assert _echo(whole, "tank.shell_diameter").unit == "m"
     assert _echo(whole, "tank.vents[0].vacuum_set").unit == "Pa under barometer"
