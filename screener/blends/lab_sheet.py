@@ -115,8 +115,10 @@ def sheet_faults(sheet: LabSheet):
     bad = list(_numbers(sheet)) + list(_rows(sheet))
     yield from bad
     wrong = {fault.path.partition("[")[0] for fault in bad}
-    for check in (_curve, _evaporated, _shares, _pressures, _enough):
-        yield from check(sheet, wrong)
+    for check in (_curve, _rising, _evaporated, _shares, _pressures, _enough):
+        found = list(check(sheet, wrong))
+        wrong |= {fault.path.partition("[")[0] for fault in found}  # what follows from a fault is no second one
+        yield from found
 
 
 def _numbers(sheet):
@@ -191,18 +193,27 @@ def _curve(sheet, wrong):
             )
 
 
-def _evaporated(sheet, wrong):
-    """E70, E100 and E150 rise and go with the curve."""
-    if wrong & {"distillation", "ibp", "fbp", "e70", "e100", "e150"}:
-        return
-    at = {"e70": 70.0, "e100": 100.0, "e150": 150.0}
-    given = [(name, getattr(sheet, name)) for name in at if getattr(sheet, name) is not None]
+_EVAPORATED = {"e70": 70.0, "e100": 100.0, "e150": 150.0}  # [degC]
+
+
+def _rising(sheet, wrong):
+    """E70, E100 and E150 rise."""
+    given = [(n, getattr(sheet, n)) for n in _EVAPORATED if getattr(sheet, n) is not None and n not in wrong]
     for (low, a), (high, b) in pairwise(given):
         if b < a:
             yield InputError(high, b, f"{high.upper()} ({100 * b:g} %) is below {low.upper()} ({100 * a:g} %)",
                              f"allowed: at least {100 * a:g} %")  # fmt: skip
-    for name, value in given:
-        T = ZERO_CELSIUS + at[name]
+
+
+def _evaporated(sheet, wrong):
+    """E70, E100 and E150 go with the curve."""
+    if wrong & {"distillation", "ibp", "fbp"}:
+        return
+    for name, at in _EVAPORATED.items():
+        value = getattr(sheet, name)
+        if value is None or name in wrong:
+            continue
+        T = ZERO_CELSIUS + at
         below = [f for f, temperature in sheet.distillation if temperature <= T]
         above = [f for f, temperature in sheet.distillation if temperature >= T]
         least, most = max(below, default=0.0), min(above, default=1.0)

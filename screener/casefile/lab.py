@@ -72,13 +72,13 @@ def read_sheet(values: Values, base: str):
     given = _given(values, base, wrong)
     if faulty and not any(value not in (None, "", ()) for name, value in given.items() if name != "title"):
         return None
-    own = ((name, values.value(f"{base}.reproducibility.{key}")) for key, name in OWN_R.items())
+    own = _own_R(values, base)
     kind = values.value(f"{base}.kind")
     try:
         sheet = LabSheet(
             **given,
             product="crude" if kind == "crude" else "",
-            reproducibility=tuple((name, R) for name, R in own if R is not None),
+            reproducibility=own,
             dvpe_equation=values.value(f"{base}.dvpe_equation") or "ASTM D5191",
             rvp_chamber=values.value(f"{base}.rvp_chamber") or "dry",
         )
@@ -107,6 +107,21 @@ def _given(values: Values, base: str, wrong: set[str]) -> dict:
         "oxygenates": tuple((name, v(key)) for key, name in OXYGENATES.items() if v(key) is not None),
         **{field: tuple(row for _, row in _rows(values, base, field)) for field in _ROWS},
     }
+
+
+def _own_R(values: Values, base: str) -> tuple[tuple[str, float], ...]:
+    """Reproducibilities the laboratory states, of the numbers the sheet gives."""
+    made = []
+    for key, name in OWN_R.items():
+        path = f"{base}.reproducibility.{key}"
+        numbers = [f"{base}.{key}", f"{base}.distillation.{key.upper()}"]
+        if values.value(path) is None:
+            continue
+        if any(number in values.taken or number in values.present for number in numbers):
+            made.append((name, values.value(path)))
+        else:
+            values.annotate(path, "not used: the sheet does not give this number")
+    return tuple(made)
 
 
 def _told(path: str, faulty: set[str]) -> bool:

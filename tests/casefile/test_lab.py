@@ -1,8 +1,13 @@
 """[blend.lab]: the numbers of a certificate to a sheet in SI, with or without parts."""
 
+from dataclasses import fields, replace
+from pathlib import Path
+
 import pytest
 
+from screener.blends import LabSheet
 from screener.casefile import CaseText, read_case
+from screener.casefile.lab import _fitted
 from screener.casefile.lab_keys import OXYGENATES
 from screener.ground.errors import CaseErrors, InputError
 from screener.species import find
@@ -25,6 +30,17 @@ def faults(text, tables):
     return {fault.path: str(fault) for fault in caught.value.faults}
 
 
+def telling(tables, answer=lambda sheet, start: start or sheet):
+    """Tables whose fit writes down what it was asked for."""
+    asked = []
+
+    def fit(sheet, start):
+        asked.append((sheet, start))
+        return answer(sheet, start)
+
+    return replace(tables, lab=fit), asked
+
+
 def sheet_of(lines, tables):
     return read_case(f"[blend.lab]\n{lines}\n{TANK}", tables=tables).blend.sheet
 
@@ -44,14 +60,95 @@ def test_a_sheet_alone_is_a_blend(tables):
 
 
 def test_parts_and_sheet_go_to_the_fit_together(tables):
-    got = []
-    own = type(tables)(
-        tables.species, tables.stock, tables.blend, tables.packs, lambda *both: got.append(both) or both[1]
-    )
+    own, asked = telling(tables)
     read_case(PARTS + SHEET + TANK, tables=own)
-    ((sheet, start),) = got
+    ((sheet, start),) = asked
     assert sheet.dvpe == pytest.approx(62e3)
     assert start.shares == (("stock:summer gasoline base", 0.9), ("species:ethanol", 0.1))
+
+
+HEEL = """
+[tank.contents]
+{parts}volume = "100 m3"
+temperature = "20 degC"
+[tank.contents.lab]
+density = "735 kg/m3"
+dvpe = "61 kPa"
+"""
+
+
+@pytest.mark.parametrize("parts", ["", 'parts = [{ stock = "summer gasoline base", share = "100 %" }]\n'])
+def test_the_heel_has_a_sheet_of_its_own(parts, tables):
+    own, asked = telling(tables)
+    case = read_case(SHEET + TANK + HEEL.format(parts=parts), tables=own)
+    assert [sheet.density_15 for sheet, _ in asked] == [742.0, 735.0]
+    assert (asked[1][1] is None) == (not parts)
+    assert case.tank.contents.blend is (asked[1][1] or asked[1][0]) and case.tank.contents.volume == 100.0
+    echo = {one.path: one for one in case.inputs}
+    assert echo["tank.contents.lab.dvpe"].quality == "certificate"
+    assert echo["tank.contents.lab.dvpe_equation"].quality == "default"
+    assert "tank.contents.lab.rvp_chamber" not in echo, "a method of a number that is not given is no input"
+
+
+def test_refusals_of_both_sheets_come_at_once_with_all_other_faults(tables):
+    def refuse(sheet, start):
+        raise InputError("lab", None, f"numbers contradict each other at {sheet.density_15:g}", "each within 3")
+
+    own, asked = telling(tables, refuse)
+    text = SHEET + TANK.replace("white paint", "white paint").replace(
+        '[tank]', '[tank]\nshell_diameter = "2 km"') + HEEL.format(parts="")  # fmt: skip
+    with pytest.raises(CaseErrors, match="blend") as caught:
+        read_case(text, tables=own)
+    found = {fault.path: fault for fault in caught.value.faults}
+    assert set(found) == {"blend.lab", "tank.contents.lab", "tank.shell_diameter"}
+    assert "at 742" in found["blend.lab"].problem and "at 735" in found["tank.contents.lab"].problem
+
+
+def test_a_sheet_is_fitted_once_and_a_refusal_is_remembered_too(tables):
+    def refuse(sheet, start):
+        raise InputError("lab", None, "numbers contradict each other", "each within 3")
+
+    own, asked = telling(tables, refuse)
+    for _ in range(2):
+        with pytest.raises(CaseErrors, match="contradict each other"):
+            read_case(SHEET + TANK, tables=own)
+    assert len(asked) == 1 and _fitted.cache_info().maxsize
+
+
+def test_parts_that_cannot_be_read_are_not_passed_over_for_the_sheet(tables):
+    own, asked = telling(tables)
+    for bad in ("95 %", "ten"):
+        with pytest.raises(CaseErrors, match="blend.parts"):
+            read_case(PARTS.replace("90 %", bad) + SHEET + TANK, tables=own)
+    assert not asked
+
+
+def test_an_empty_list_of_parts_beside_a_sheet_says_nothing(tables):
+    own, asked = telling(tables)
+    read_case("[blend]\nparts = []\n" + SHEET + TANK, tables=own)
+    assert [start for _, start in asked] == [None]
+
+
+def test_every_field_of_a_sheet_can_be_given(tables):
+    """The case with every key has a full sheet for its heel."""
+    own, asked = telling(tables)
+    read_case(Path(__file__).parent / "cases" / "whole.toml", tables=own)
+    sheet = asked[1][0]
+    left_out = {one.name for one in fields(LabSheet) if getattr(sheet, one.name) == one.default}
+    assert not left_out
+    assert (sheet.title, sheet.dvpe_equation, sheet.rvp_chamber) == ("certificate 26-098", "EN 13016-1", "wet")
+    assert sheet.h2s == pytest.approx(1e-5) and sheet.viscosity_T == pytest.approx(293.15)
+    R = dict(sheet.reproducibility)
+    assert R["density_15"] == pytest.approx(0.5) and R["tvp"] == pytest.approx(2e3) and R["MTBE"] == pytest.approx(0.005)
+    assert R["fbp"] == pytest.approx(12 / 1.8) and R["h2s"] == pytest.approx(5e-6)
+    assert len(R) == 25
+
+
+def test_a_reproducibility_without_its_number_is_marked_not_used(tables):
+    case = read_case(SHEET + 'reproducibility = { mtbe = "0.5 %", dvpe = "1.5 kPa", fbp = "5 K" }\n' + TANK, tables=tables)
+    assert case.blend.sheet.reproducibility == (("dvpe", pytest.approx(1.5e3)), ("fbp", pytest.approx(5.0)))
+    echo = {one.path: one for one in case.inputs}
+    assert "not used" in echo["blend.lab.reproducibility.mtbe"].note
 
 
 def test_without_parts_and_sheet_the_parts_are_missing(tables):
@@ -110,8 +207,18 @@ def test_a_sheet_no_liquid_fits_is_a_fault_of_the_sheet(tables):
     def refuse(sheet, start):
         raise InputError("lab", None, "numbers of the sheet contradict each other: dvpe, T10", "each within 3")
 
-    own = type(tables)(tables.species, tables.stock, tables.blend, tables.packs, refuse)
+    own, _ = telling(tables, refuse)
     assert "contradict each other: dvpe, T10" in faults(SHEET, own)["blend.lab"]
+
+
+def test_a_bare_sheet_says_what_it_lacks_and_what_its_density_contradicts():
+    lacking = '[blend.lab]\ndensity = "742 kg/m3"\n' + TANK
+    with pytest.raises(CaseErrors, match="blend.lab: .*needs a density and three points"):
+        read_case(lacking)
+    heavy = SHEET.replace("742 kg/m^3 at 15 degC", "842 kg/m3") + 'aromatics = "5 vol%"\nolefins = "0 %"\n' + TANK
+    with pytest.raises(CaseErrors, match=r"blend\.lab\.density: the density of 842 kg/m3 contradicts") as caught:
+        read_case(heavy)
+    assert caught.value.faults[0].value == "842 kg/m3"
 
 
 def test_densities_at_60_degF_are_brought_to_15_degC(tables):
@@ -150,7 +257,8 @@ def test_a_sheet_survives_being_written():
 
 
 def test_the_sheet_of_a_real_case_is_fitted():
-    blend = read_case(PARTS + SHEET + TANK).blend
+    blend = read_case(PARTS + SHEET + 'reproducibility = { dvpe = "1.5 kPa" }\n' + TANK).blend
+    assert next(row for row in blend.report.residuals if row[0] == "DVPE")[3] == pytest.approx(1.5e3)
     assert blend.vapour_pressure_known and blend.measured[0].what == "DVPE"
     misfits = blend.report.misfits
     # well inside the reproducibility of every method: six numbers against eighteen groups that may move
