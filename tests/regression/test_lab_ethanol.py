@@ -18,6 +18,7 @@ from screener.volatility import (
     true_vapour_pressure,
     vapour_pressure_at_ratio,
 )
+from tests.studies import ethanol_sweep_bases as real
 from tests.studies.ethanol_sweep import BASES, first_lost, sweep
 from tests.studies.splash import SHARES, Splash
 
@@ -154,3 +155,39 @@ def test_first_five_percent_lost_by_e10(record_property):
     assert (np.diff(as_one) < 0.0).all() and (np.diff(diffusing) < 0.0).all()
     assert all(5.0 < v < 13.0 for v in as_one)
     assert min(diffusing) < 13.0 < max(diffusing)
+
+
+def test_ten_percent_ethanol_on_every_real_base(record_property):
+    """+7 to +9 kPa on every hydrocarbon base of 55 to 70 kPa of 43 published analyses (band of calculations; about 1 psi read).
+
+    As they are, and with their butane set to both ends and the middle of the band. One base, a test fuel
+    of 9 vol% aromatics that lies below the band until butane is added, is 0.06 kPa above at 55 kPa:
+    ethanol deviates most among paraffins. Whole table and reasons: tests/studies/ethanol_sweep_bases.md.
+    """
+    g = real.gasolines()
+    alone = real.as_they_are(g)
+    assert alone.size >= 8
+    assert ((alone >= 7e3) & (alone <= 9e3)).all(), alone
+    rise = real.rises(g.fluid, g.base)
+    known = np.isfinite(rise)
+    assert known.any(axis=1).all() and known.sum() > 110  # every fuel takes part, most at all three pressures
+    record_property("kPa", [float(np.nanmin(rise)) / 1e3, float(np.nanmean(rise)) / 1e3, float(np.nanmax(rise)) / 1e3])
+    outside = {(g.fuels[i], real.TARGETS[j]) for i, j in np.argwhere(known & ((rise < 7e3) | (rise > 9e3)))}
+    assert outside <= {("5495", 55e3)}, outside
+
+
+def test_ethers_left_in_lower_the_rise():
+    """Ethers take up the hydroxyl group: finished ether gasolines rise less than the base they were made from.
+
+    Published as a direction only (J. Energy Eng. 140(3), 2013, abstract). The term of ethanol with ethers,
+    fitted to MTBE + ethanol, takes no more than 0.1 kPa off: the effect is the model's own.
+    """
+    g = real.gasolines()
+    rich, kept = real.with_ethers()
+    full, bare, base = (real.rises(*one) for one in ((g.fluid, kept), (real.without_ether_term(g.fluid), kept), (g.fluid, g.base[rich])))  # fmt: skip
+    known = np.isfinite(full)
+    assert rich.sum() >= 10 and known.sum() >= 30
+    assert (full[known] < base[known]).all() and (full[known] > 5e3).all()
+    per_percent = (base - full)[known] / (100.0 * np.broadcast_to(g.family(kept, "ether")[:, None], full.shape)[known])
+    assert ((per_percent > 100.0) & (per_percent < 220.0)).all(), per_percent  # 0.16 kPa a vol% on average
+    assert ((bare - full)[known] > 0.0).all() and ((bare - full)[known] < 100.0).all()
