@@ -12,9 +12,11 @@ import re
 from dataclasses import dataclass
 from functools import lru_cache
 
+from screener.ground.constants import PSI, ZERO_CELSIUS
 from screener.ground.errors import DataError, UnknownName
 from screener.ground.files import data_folder, read_table, read_toml
 from screener.species import find
+from screener.species.cut_families import CH2
 
 
 @dataclass(frozen=True)
@@ -29,12 +31,34 @@ class StockRow:
 
 
 @dataclass(frozen=True)
+class Published:
+    """A measured number printed with the composition: number ("density_15", "dvpe", "rvp", "T10", "T50",
+    "T90", "flash_point", "tvp"), value in SI, unit and printed as the source has them, source with edition.
+    at [K] is the temperature of a vapour pressure, None otherwise.
+    """
+
+    number: str
+    value: float
+    unit: str
+    printed: float
+    source: str
+    at: float | None = None
+
+
+# unit of a published number: SI unit, factor and offset
+_UNITS = {"kg/m3": ("kg/m3", 1.0, 0.0), "kPa": ("Pa", 1e3, 0.0), "psi": ("Pa", PSI, 0.0), "degC": ("K", 1.0, ZERO_CELSIUS)}
+PUBLISHED_NUMBERS = {"density_15": "kg/m3", "dvpe": "Pa", "rvp": "Pa", "tvp": "Pa", "T10": "K", "T50": "K", "T90": "K",
+                     "flash_point": "K"}  # fmt: skip
+
+
+@dataclass(frozen=True)
 class Stock:
     """A blendstock.
 
     obtained is 'published' or 'invented'; product the commodity group for volume
     correction, '' when the density chooses; claims the class or cut it is meant to be.
-    masses (name, share of mass) add to 1 over the species.
+    masses (name, share of mass) add to 1 over the species. published are measured numbers of the same
+    liquid: nothing here is fitted to them.
     """
 
     name: str
@@ -48,6 +72,7 @@ class Stock:
     note: str
     rows: tuple[StockRow, ...]
     masses: tuple[tuple[str, float], ...]
+    published: tuple[Published, ...] = ()
 
     @property
     def unnamed(self) -> float:
@@ -154,7 +179,19 @@ def _read(stem: str) -> Stock:
         note=passport.get("note", ""),
         rows=rows,
         masses=mass,
+        published=tuple(_published(file, item) for item in passport.get("published", ())),
     )
+
+
+def _published(file: str, item: dict) -> Published:
+    number, unit, printed = item["number"], item["unit"], float(item["value"])
+    if number not in PUBLISHED_NUMBERS or unit not in _UNITS or _UNITS[unit][0] != PUBLISHED_NUMBERS[number]:
+        raise DataError(file, None, f"published {number} in {unit}")
+    if (number == "tvp") != ("at" in item):
+        raise DataError(file, None, f"published {number}: 'at' belongs to a vapour pressure and to nothing else")
+    _, factor, offset = _UNITS[unit]
+    at = float(item["at"]) + ZERO_CELSIUS if "at" in item else None
+    return Published(number, printed * factor + offset, unit, printed, item["source"], at)
 
 
 def _masses(file: str, rows: tuple[StockRow, ...], from_carbon: int) -> tuple[tuple[str, float], ...]:
@@ -173,8 +210,11 @@ def _masses(file: str, rows: tuple[StockRow, ...], from_carbon: int) -> tuple[tu
 
 
 def carbon_atoms(name: str) -> int:
-    """Carbon atoms in a molecule of a species."""
-    found = re.match(r"C(\d*)(?![a-z])", find(name).formula)
+    """Carbon atoms in a molecule of a species; of a cut, as many CH2 as its molar mass holds."""
+    one = find(name)
+    if one.family == "cut":
+        return round(one.MW / CH2)
+    found = re.match(r"C(\d*)(?![a-z])", one.formula)
     return 0 if found is None else int(found.group(1) or 1)
 
 
