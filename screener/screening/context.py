@@ -7,6 +7,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
+from screener.blends import Blend
 from screener.ground.status import Status, words
 from screener.screening.finding import Condition
 from screener.screening.wording import say
@@ -90,9 +91,33 @@ class Context:
             names += ["heel_volume", "shell_diameter", ("level_low", "level_normal", "level_high")[k - 2]]
         return self.missing(*names)
 
-    def split_cap(self, k: int) -> tuple[str, ...]:
-        """A liquid that splits in two is not the one liquid whose bubble point was worked out."""
-        return (say("cap", "splits"),) if self.lanes.second.splits[self.i, k] else ()
+    def liquid_caps(self, k: int) -> tuple[str, ...]:
+        """What keeps every vapour pressure of liquid k from giving room: a second liquid, a measured one not met.
+
+        A liquid that splits in two is not the one liquid whose bubble point was worked out.
+        """
+        split = (say("cap", "splits"),) if self.lanes.second.splits[self.i, k] else ()
+        return split + self.misfit_caps(k)
+
+    def misfit_caps(self, k: int) -> tuple[str, ...]:
+        """A composition that misses a measured vapour pressure by more than its reproducibility gives no room.
+
+        The measured value is taken, but its slope and its vapour are those of a composition that the
+        sheet contradicts: one of its numbers, the start or the sample is not of this liquid, and
+        which one a computation cannot tell.
+        """
+        for name, blend in self.parts(k):
+            worst = max(blend.measured, key=lambda m: abs(m.misfit), default=None)
+            if worst is not None and not abs(worst.misfit) <= 1.0:
+                return (say("cap", "misfit", liquid=name, what=worst.what, R=f"{abs(worst.misfit):.1f}"),)
+        return ()
+
+    def parts(self, k: int) -> list[tuple[str, Blend]]:
+        """The blends of which liquid k may hold some, each with its name."""
+        named = [(self.liquid_name(0), self.case.blend)] if k != 1 else []
+        if k != 0 and self.case.tank.contents is not None:
+            named.append(("heel", self.case.tank.contents.blend))
+        return named
 
     def unmeasured(self, k: int) -> str:
         """Why no vapour pressure of liquid k counts, '' if it does.
@@ -100,10 +125,11 @@ class Context:
         A composition fitted to a laboratory sheet that holds no vapour pressure
         reproduces the rest of the sheet, not its light end.
         """
-        blends = [self.case.blend] if k != 1 else []
-        if k != 0 and self.case.tank.contents is not None:
-            blends.append(self.case.tank.contents.blend)
-        return "" if all(blend.vapour_pressure_known for blend in blends) else say("unknown", "unmeasured")
+        blends = [blend for _, blend in self.parts(k)]
+        if not all(blend.vapour_pressure_known for blend in blends):
+            return say("unknown", "unmeasured")
+        factor = self.lanes.measured.factor[self.i, k]
+        return "" if math.isfinite(factor) or not any(b.measured for b in blends) else say("unknown", "no-factor")
 
     def why_no_hot_pressure(self, k: int) -> str:
         """Why the bubble pressure of the hottest liquid is not known, '' if it is."""
@@ -115,7 +141,11 @@ class Context:
             return say("unknown", "missing", paths=", ".join(dict.fromkeys(paths)))
         if np.isnan(self.lanes.T_hot[self.i, k, 1]):
             return say("unknown", "no-surface")
-        return say("unknown", "no-bubble", why=self._status_words(self.lanes.status_hot[self.i, k, 1]))
+        return self.no_pressure(k, self.lanes.status_hot[self.i, k, 1])
+
+    def no_pressure(self, k: int, status) -> str:
+        """Why a vapour pressure of liquid k could not be worked out, where no input is missing."""
+        return self.unmeasured(k) or say("unknown", "no-bubble", why=self._status_words(status))
 
     def _status_words(self, status) -> str:
         gaps = self.lanes.fluid.missing

@@ -12,6 +12,7 @@ from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Condition, Fact
 from screener.screening.fire_words import ways_in
+from screener.screening.measured import flash_caps, flash_facts, measured_note, pressure_facts
 from screener.screening.vapour import FLOATING, _barometer_missing
 from screener.screening.wording import lines, say
 from screener.states.fire import COLD, FLASH_SPREAD, HOT, INSIDE, RICH
@@ -94,7 +95,7 @@ def _space_lane(context: Context, k: int) -> Lane:
     s, i = context.fire.space, context.i
     T, fuel, status = float(s.T[i, k]), float(s.fuel[i, k]), int(s.status[i, k])
     told = status == Status.CONVERGED and math.isfinite(fuel)
-    caps, share = typical_span_cap(context), float(s.estimated[i, k])
+    caps, share = typical_span_cap(context) + context.misfit_caps(k), float(s.estimated[i, k])
     if share > ESTIMATES_CARRIED:
         caps += (say("cap", "estimates", share=f"{100.0 * share:.0f} %"),)
     when = _when(context, int(s.place[i, k])) if told else ""
@@ -103,7 +104,7 @@ def _space_lane(context: Context, k: int) -> Lane:
         float(s.LFL[i, k]), upper=float(s.UFL[i, k]), rich_caps=(say("fire", "rich", ways=ways_in(context)),),
         beyond=say("fire", "inside", T=f"{T - ZERO_CELSIUS:.1f} degC") if told else "",
         unknown="" if told and not context.unmeasured(k) else _lane_unknown(context, k, T, status), caps=caps,
-        facts=_space_facts(context, k) if told else (), tag=k,
+        facts=_space_facts(context, k) + pressure_facts(context, k) if told else (), tag=k,
     )  # fmt: skip
 
 
@@ -213,7 +214,7 @@ def _flash_lane(context: Context, k: int) -> Lane:
     lanes, f, i = context.lanes, context.fire.flash, context.i
     low, T, high = (float(v) for v in lanes.T_hot[i, k])
     limit, status = float(f.T[i, k]), int(f.status[i, k])
-    unknown, caps = "", context.typical_cap()
+    unknown, caps = "", context.typical_cap() + flash_caps(context, k)
     if math.isnan(T) or math.isnan(limit):
         paths = context.surface_missing() + context.own_missing(k)
         why = say("unknown", "no-flash", why=context._status_words(status))
@@ -232,7 +233,7 @@ def _flash_lane(context: Context, k: int) -> Lane:
         context.condition(k, context.hottest_day, "liquid surface"), T,
         low - FLASH_SPREAD - (float(f.T_high[i, k]) - limit), high + FLASH_SPREAD + (limit - float(f.T_low[i, k])),
         limit, reference=limit - FLASH_REFERENCE, unknown=unknown, caps=caps, beyond=say("fire", "above-flash-point"),
-        facts=tuple(fact for fact in facts if math.isfinite(fact.value)), tag=k,
+        facts=tuple(fact for fact in facts if math.isfinite(fact.value)) + flash_facts(context, k), tag=k,
     )  # fmt: skip
 
 
@@ -246,9 +247,10 @@ def switch_loading(context: Context) -> Draft:
         Fact("vapour class of the previous contents", old.static, "", old.title),
         Fact("vapour class of the receipt", old.static_receipt),
         Fact("flash point of the previous contents", old.T_flash, "K"),
-        Fact("flash point of the receipt", old.T_flash_receipt, "K"),
+        Fact("flash point of the receipt", old.T_flash_receipt, "K", measured_note(context.case.blend, "flash_point")),
         Fact("Reid vapour pressure of the previous contents", old.P_reid, "Pa"),
-        Fact("Reid vapour pressure of the receipt", old.P_reid_receipt, "Pa"),
+        Fact("Reid vapour pressure of the receipt", old.P_reid_receipt, "Pa",
+             measured_note(context.case.blend, "dvpe", "rvp")),
     )
     facts = tuple(f for f in facts if not isinstance(f.value, float) or math.isfinite(f.value))
     classes = old.static, old.static_receipt

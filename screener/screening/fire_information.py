@@ -11,15 +11,10 @@ from screener.blends import union
 from screener.equilibrium import Fluid
 from screener.fire import (
     SpaceState,
-    contaminated_flash_point,
-    contaminated_space,
-    flammable_window,
-    flash_point,
+    contaminated,
     hazard_class,
     hazard_systems,
-    headspace,
     limiting_oxygen,
-    static_class,
     vapour_density_ratio,
 )
 from screener.ground.constants import ZERO_CELSIUS
@@ -31,6 +26,9 @@ from screener.species import find
 from screener.states.fire import FLASH_SPREAD, INSIDE, LEAN, RICH
 from screener.states.ladder import vapour_ladder
 from screener.states.lanes import BEST, HEEL, LIQUIDS, RECEIPT
+from screener.states.measured import mixed, own
+from screener.states.previous import classed
+from screener.states.scaled import flammable_window, flash_point, headspace, vapour_space
 from screener.volatility import distillation_d86
 
 SHARES = (0.001, 0.005, 0.01, 0.02, 0.05)  # of a second liquid by volume
@@ -53,7 +51,10 @@ def fire_information(context: Context) -> tuple[Information, ...]:
 
 @lru_cache(maxsize=64)
 def _boiling_points(blend) -> tuple[float, float, float, float]:
-    """Initial, 10 % and 20 % recovered of a computed D86 curve, and the boiling point of a pure liquid. [K]"""
+    """Initial, 10 % and 20 % recovered of a computed D86 curve, and the boiling point of a pure liquid. [K]
+
+    A distillation is a test of its own, whose points a fit reproduces: no factor of a vapour pressure is on it.
+    """
     curve = distillation_d86(blend.fluid, blend.z, steps=D86_STEPS)
     pure = find(blend.names[0]).Tb if len(blend.names) == 1 else math.nan
     points = curve.T[0, 0], curve.temperature_recovered(0.10)[0], curve.temperature_recovered(0.20)[0]
@@ -63,9 +64,12 @@ def _boiling_points(blend) -> tuple[float, float, float, float]:
 def _liquid(context: Context, name: str, blend, k: int) -> Information:
     fluid, z = blend.fluid, blend.z
     P = context.barometer if math.isfinite(context.barometer) else 101325.0
-    flash, limits = flash_point(fluid, z), flash_point(fluid, z, method="le-chatelier")
-    window = flammable_window(fluid, z, P=P)
+    factor = float(context.lanes.measured.factor[context.i, k])
+    flash, limits = flash_point(fluid, z, factor), flash_point(fluid, z, factor, method="le-chatelier")
+    window = flammable_window(fluid, z, factor, P=P)
+    found = blend.figure("flash_point")
     facts = [
+        *([Fact("flash point, measured", found.value, "K", say("note", "measured-flash"))] if found else []),
         Fact("flash point by equilibrium (Liaw)", float(flash.T[0]), "K"),
         Fact("flash point by lower limits (Le Chatelier)", float(limits.T[0]), "K"),
         Fact("vapour space flammable from", float(window.T_lower[0]), "K", say("note", "window")),
@@ -73,15 +77,15 @@ def _liquid(context: Context, name: str, blend, k: int) -> Information:
     ]
     ratio = float(context.fire.space.ratio[context.i, k])
     if math.isfinite(ratio):
-        filled = flammable_window(fluid, z, P=P, ratio=ratio)
+        filled = flammable_window(fluid, z, factor, P=P, ratio=ratio)
         facts.append(Fact("the same at the lowest level, up to", float(filled.T_upper[0]), "K",
                           say("note", "depleted")))  # fmt: skip
     T_hot = float(context.lanes.T_hot[context.i, k, BEST])
     if math.isfinite(T_hot):
-        y = headspace(fluid, T_hot, z, P=P).y
+        y = headspace(fluid, T_hot, z, factor, P=P)
         facts.append(Fact("density of the undiluted vapour over that of air", float(vapour_density_ratio(fluid, y)[0]), "-"))
         facts += _oxygen_facts(fluid, y)
-    facts += _class_facts(context, blend, float(flash.T[0]))
+    facts += _class_facts(context, blend, found, float(flash.T[0]))
     return Information(f"{name}: {say('fire', 'information')}", _known(facts), say("note", "fire-information"))
 
 
@@ -94,9 +98,12 @@ def _oxygen_facts(fluid, y) -> list[Fact]:
     return facts
 
 
-def _class_facts(context: Context, blend, T_flash: float) -> list[Fact]:
+def _class_facts(context: Context, blend, found, T_flash: float) -> list[Fact]:
     """Hazard classes with the boiling point each text uses, and the class for static electricity."""
     initial, at_10, at_20, pure = _boiling_points(blend)
+    doubt = FLASH_SPREAD
+    if found:
+        T_flash, doubt = found.value, max(doubt, found.reproducibility)
     facts = [
         Fact("initial boiling point, computed D86", initial, "K"),
         Fact("10 % point, computed D86", at_10, "K"),
@@ -104,15 +111,12 @@ def _class_facts(context: Context, blend, T_flash: float) -> list[Fact]:
     ]
     for system in hazard_systems():
         found = hazard_class(system, T_flash, initial=initial, at_10=at_10, at_20=at_20, constant=pure,
-                             flash_doubt=FLASH_SPREAD)  # fmt: skip
+                             flash_doubt=doubt)  # fmt: skip
         means = f"{found.boiling_rule.point} point" if math.isnan(pure) else say("note", "pure-boiling-point")
         note = say("note", "boiling-used", means=means, T=f"{found.boiling[0] - ZERO_CELSIUS:.1f} degC",
                    evidence=found.evidence)  # fmt: skip
         facts.append(Fact(f"{system} class", str(found.name[0]), "", note))
-    from screener.blends import volatility_sheet
-
-    P = float(volatility_sheet(blend).DVPE)
-    facts.append(Fact("vapour class for static electricity", str(static_class(T_flash, P)[0])))
+    facts.append(Fact("vapour class for static electricity", classed(blend)[2]))
     return facts
 
 
@@ -121,23 +125,40 @@ def _contamination(context: Context, name: str, blend, other_name: str, other) -
     names, Z = union([blend, other])
     fluid = Fluid.of(names)
     share = np.array((0.0, *SHARES))
-    flash = contaminated_flash_point(fluid, Z[0], Z[1], share)
+    z, factor = contaminated(fluid, Z[0], Z[1], share), _contaminated_factor(fluid, Z, share, blend, other)
+    flash = _contaminated_flash(flash_point(fluid, z, factor).T, blend.figure("flash_point"))
     T = float(context.lanes.weather.T_surface[context.i, BEST])
     state = [""] * share.size
     if math.isfinite(T) and math.isfinite(context.barometer):
-        space = contaminated_space(fluid, T, Z[0], Z[1], share, P=context.barometer)
+        space = vapour_space(fluid, T, z, factor, P=context.barometer)
         state = [
             say("note", "space-at", state=SpaceState(int(s)).label, T=f"{T - ZERO_CELSIUS:.1f} degC")
             for s in space.state
         ]
-    if np.nanmax(np.abs(flash.T - flash.T[0]), initial=0.0) < CONTAMINATION_SHOWN and len(set(state)) == 1:
+    if np.nanmax(np.abs(flash - flash[0]), initial=0.0) < CONTAMINATION_SHOWN and len(set(state)) == 1:
         return Information(say("fire", "contamination", name=name, other=other_name), ())
     facts = [
         Fact(say("fire", "contaminated", other=other_name, share=f"{100.0 * s:g}"), float(T_f), "K", note)
-        for s, T_f, note in zip(share, flash.T, state)
+        for s, T_f, note in zip(share, flash, state)
     ]
     title = say("fire", "contamination", name=name, other=other_name)
     return Information(title, _known(facts), say("note", "contamination"))
+
+
+def _contaminated_factor(fluid, Z, share, blend, other) -> np.ndarray:
+    """Factor (n,) of what was measured of both liquids, at the shares of the second by volume."""
+    v = [np.where(fluid.v_15 > 0.0, fluid.v_15, 0.0) @ z for z in Z]
+    one, two = own([blend] * share.size), own([other] * share.size)
+    both = (np.broadcast_to(z, (share.size, z.size)) for z in Z)
+    return mixed(fluid, next(both), (1.0 - share) / v[0], next(both), share / v[1], one, two)[0]
+
+
+def _contaminated_flash(T, found) -> np.ndarray:
+    """Flash points (n,) against the share, none first: as measured there, and on as computed or lower by what the
+    measured one is lower."""
+    if found is None:
+        return T
+    return np.concatenate([[found.value], T[1:] + min(found.value - T[0], 0.0)])
 
 
 def _known(facts) -> tuple[Fact, ...]:

@@ -9,6 +9,7 @@ from screener.screening.context import Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Fact
+from screener.screening.measured import pressure_facts
 from screener.screening.wording import lines, say
 from screener.states.lanes import BEST, LIQUIDS
 
@@ -49,7 +50,7 @@ def _facts(context: Context, stream, k: int) -> tuple[Fact, ...]:
         Fact("velocity", float(s.velocity[i, k]), "m/s"),
         Fact("friction head", float(s.friction[i, k]), "m"),
     )
-    return tuple(fact for fact in facts if math.isfinite(fact.value))
+    return tuple(fact for fact in facts if math.isfinite(fact.value)) + pressure_facts(context, k)
 
 
 def _level(k: int) -> str:
@@ -69,7 +70,7 @@ def suction(context: Context, stream) -> Draft:
         rows.append(Lane(
             context.condition(k, context.hottest_day, place, _level(k)), value, low, high, 0.0,
             reference=context.barometer, unknown=_lane_unknown(context, stream, k),
-                caps=context.typical_cap() + context.split_cap(k), facts=_facts(context, stream, k),
+                caps=context.typical_cap() + context.liquid_caps(k), facts=_facts(context, stream, k),
             tag=k,
         ))  # fmt: skip
     return _draft(key, lanes=tuple(rows), unknown=_unknown(context, stream),
@@ -88,7 +89,7 @@ def npsh(context: Context, stream) -> Draft:
         rows.append(Lane(
             context.condition(k, context.hottest_day, "pump inlet", _level(k)), value, low, high, required,
             reference=float(s.head[i, k]), unknown=_lane_unknown(context, stream, k),
-                caps=context.typical_cap() + context.split_cap(k),
+                caps=context.typical_cap() + context.liquid_caps(k),
             facts=_facts(context, stream, k) + (Fact("NPSH to ask for", float(asked_npsh(required)), "m"),)
             if math.isfinite(required) else _facts(context, stream, k), tag=k,
         ))  # fmt: skip

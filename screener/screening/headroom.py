@@ -11,7 +11,6 @@ from dataclasses import replace
 
 import numpy as np
 
-from screener.equilibrium import bubble_pressure, bubble_temperature
 from screener.ground.constants import GRAVITY, ZERO_CELSIUS
 from screener.screening.context import Context
 from screener.screening.criteria import criterion
@@ -21,6 +20,7 @@ from screener.screening.vapour import OTHER_ROOF
 from screener.screening.wording import say
 from screener.states.lanes import LIQUIDS, method_spread
 from screener.states.quantities import flows, table
+from screener.states.scaled import bubble_pressure, bubble_temperature
 
 _PRESSURE = ("boiling.surface", "vapour-pressure.legal", "vapour-pressure.hottest", "receipt.flash")
 _FIRE = ("vapour-space.flammable", "fire.flash-point")
@@ -92,12 +92,12 @@ def _pressure(context: Context, finding: Finding, family: str):
     T = _fact(finding, "highest of its range", "highest monthly mean air temperature", "arrival temperature")
     if math.isnan(T):
         return (), ()
-    z, fluid = lanes.z[i, k], lanes.fluid
-    here = bubble_pressure(fluid, T, z)
+    z, fluid, factor = lanes.z[i, k], lanes.fluid, lanes.measured.factor[i, k]
+    here = bubble_pressure(fluid, T, z, factor)
     if not here.ok[0]:
         return (), ()
     light = _lightest(lanes, z, here.y[0])
-    spread = float(method_spread(lanes, here.y)[0])
+    spread = float(method_spread(lanes, here.y, i, k)[0])
     target = (finding.limit_high - finding.asked_gap) / (1.0 + spread)
     more = z.copy()
     more[light] += 0.01
@@ -106,11 +106,11 @@ def _pressure(context: Context, finding: Finding, family: str):
     knobs[:, light] = shares
     with np.errstate(invalid="ignore"):  # a liquid of one species without that species is no liquid
         batch = np.vstack([z, more / more.sum(), knobs / knobs.sum(axis=1, keepdims=True)])
-    answer = bubble_pressure(fluid, np.concatenate([[T + 1.0, T], np.full(len(shares), T)]), batch)
+    answer = bubble_pressure(fluid, np.concatenate([[T + 1.0, T], np.full(len(shares), T)]), batch, factor)
     name = fluid.names[light]
     moved = _moved(here.P[0], answer.P[:2], name)
     rooms = _other_roof(finding, family)
-    limit_T = bubble_temperature(fluid, target, z)
+    limit_T = bubble_temperature(fluid, target, z, factor)
     if limit_T.ok[0] and not limit_T.T[0] < _coldest_useful(context):
         knob = "receipt-temperature" if family == "receipt.flash" else "surface-temperature"
         if family == "vapour-pressure.legal":
@@ -175,7 +175,7 @@ def _suction(context: Context, stream, finding: Finding, knobs):
     s, lock = stream.suction, finding.id == "vapour-lock.suction"
     weight = float(s.density[i, k]) * GRAVITY
     wanted = finding.limit_low + finding.asked_gap
-    spread = float(method_spread(lanes, lanes.y_hot[i, k][None, :])[0])
+    spread = float(method_spread(lanes, lanes.y_hot[i, k][None, :], i, k)[0])
     rooms = []
     metres = (wanted - _number(finding.low)) / (weight if lock else 1.0)
     level = context.input("level_low") + metres
@@ -184,7 +184,7 @@ def _suction(context: Context, stream, finding: Finding, knobs):
     lowest = float(s.lowest[i, k]) if lock else float(s.npsh[i, k, 1]) * weight + float(lanes.P_hot[i, k, 1])
     target = (lowest - wanted * (1.0 if lock else weight)) / (1.0 + spread)
     if math.isfinite(target) and target > 0.0:
-        answer = bubble_temperature(lanes.fluid, target, lanes.z[i, k])
+        answer = bubble_temperature(lanes.fluid, target, lanes.z[i, k], lanes.measured.factor[i, k])
         if answer.ok[0]:
             rooms.append(
                 _room("liquid-temperature", float(answer.T[0]), "K", f"{answer.T[0] - ZERO_CELSIUS:.1f} degC")
@@ -234,7 +234,7 @@ def _suction_moved(context: Context, reached, weight: float, k: int, lock: bool)
     """Sensitivities of a suction finding, largest first: warmer liquid, lower level, faster draw."""
     lanes, i = context.lanes, context.i
     T = float(lanes.T_hot[i, k, 1])
-    warmer = bubble_pressure(lanes.fluid, np.array([T, T + 1.0]), lanes.z[i, k])
+    warmer = bubble_pressure(lanes.fluid, np.array([T, T + 1.0]), lanes.z[i, k], lanes.measured.factor[i, k])
     per = 1.0e-3 if lock else 1.0 / weight
     unit = "kPa" if lock else "m"
     steps = (

@@ -10,11 +10,13 @@ from screener.screening.context import Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Fact, Information
+from screener.screening.measured import pressure_facts
 from screener.screening.vapour import _barometer_missing
 from screener.screening.wording import lines, say
 from screener.species.pseudo import is_cut
 from screener.states.fire import HOT
 from screener.states.lanes import BEST, HEEL, LIQUIDS, RECEIPT, SOUR_GAS, method_spread
+from screener.states.pressures import LEAST_LEFT
 
 JUDGED = ("TWA", "STEL", "ceiling", "peak")  # kinds of limit; IDLH is no limit of exposure and is only shown
 # Mark of a limit in the table of exposure limits -> mark of a finding; anything else counts as remembered.
@@ -60,7 +62,7 @@ def states_sour_gas(context: Context) -> bool:
     """Whether the case says how much hydrogen sulfide is dissolved, by a number or among the parts."""
     case = context.case
     blends = [case.blend] + ([case.tank.contents.blend] if case.tank.contents is not None else [])
-    return case.hydrogen_sulfide is not None or any(SOUR_GAS in blend.names for blend in blends)
+    return case.hydrogen_sulfide is not None or any(SOUR_GAS in b.names or b.figure("h2s") for b in blends)
 
 
 def limits_of(context: Context):
@@ -93,7 +95,8 @@ def _lane(context: Context, k: int, found, ratios) -> Lane:
     beyond = say("health", "beyond", substance=limit.of, kind=limit.kind, agency=limit.agency, date=limit.date)
     return Lane(
         condition, value, value * low, value * high, 1.0, unknown=context.unmeasured(k), evidence=MARKS.get(limit.evidence, "memory"),
-        beyond=beyond, caps=context.typical_cap(), facts=_facts(context, worst, found, at), tag=k,
+        beyond=beyond, caps=context.typical_cap() + context.misfit_caps(k),
+        facts=_facts(context, worst, found, at) + pressure_facts(context, k), tag=k,
     )  # fmt: skip
 
 
@@ -108,13 +111,22 @@ def _worst(found, ratios):
 
 
 def _range(context: Context, k: int) -> tuple[float, float]:
-    """Factors of the low and high end: range of the temperature and of the method, as on the vapour pressure."""
+    """Factors of the low and high end: range of the temperature and of the method, as on the vapour pressure.
+
+    A measured vapour pressure below the computed one need not be short of this substance: the high
+    end is that of the computed one.
+    """
+    low, high = _method_range(context, k)
+    return low, high / min(float(context.lanes.measured.factor[context.i, k]), 1.0)
+
+
+def _method_range(context: Context, k: int) -> tuple[float, float]:
     lanes, i = context.lanes, context.i
     P = lanes.P_hot[i, k]
     if np.isfinite(P).all() and P[BEST] > 0.0:
         return float(P[0] / P[BEST]), float(P[2] / P[BEST])
-    s = float(method_spread(lanes, context.fire.space.y[i, k, HOT][None, :])[0])
-    return 1.0 - s, 1.0 + s
+    s = float(method_spread(lanes, context.fire.space.y[i, k, HOT][None, :], i, k)[0])
+    return max(1.0 - s, LEAST_LEFT), 1.0 + s
 
 
 def hatch_information(context: Context) -> tuple[Information, ...]:

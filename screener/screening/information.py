@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 
-from screener.blends import volatility_sheet
+from screener.blends.measured import measured_sheet, pressure_factor
 from screener.screening.context import Context
 from screener.screening.finding import Fact, Information
 from screener.screening.wording import say
@@ -23,15 +23,21 @@ def information(context: Context) -> tuple[Information, ...]:
 
 
 def _figures(name: str, blend, claimed: str) -> Information:
-    sheet = volatility_sheet(blend)
+    sheet = measured_sheet(blend)
+    scaled = say("note", "scaled") if pressure_factor(blend.measured)[0] != 1.0 else ""
+
+    def note(key: str, other: str = "", at: float = 0.0) -> str:
+        """Where a figure was measured, the note that says so."""
+        return say("note", "measured") if blend.figure(key, at) else other
+
     facts = [
-        Fact("density at 15 degC", sheet.density_15, "kg/m3"),
-        Fact("DVPE (37.8 degC, ASTM D5191)", sheet.DVPE, "Pa"),
-        Fact("true vapour pressure at 37.8 degC", sheet.TVP, "Pa"),
-        Fact("temperature for V/L 20", sheet.T20, "K", say("note", "information")),
-        Fact("evaporated at 70 degC", sheet.E70, "vol/vol"),
-        Fact("evaporated at 100 degC", sheet.E100, "vol/vol"),
-        Fact("T50", sheet.T50, "K"),
+        Fact("density at 15 degC", sheet.density_15, "kg/m3", note("density_15")),
+        Fact("DVPE (37.8 degC, ASTM D5191)", sheet.DVPE, "Pa", note("dvpe", scaled)),
+        Fact("true vapour pressure at 37.8 degC", sheet.TVP, "Pa", scaled),
+        Fact("temperature for V/L 20", sheet.T20, "K", scaled or say("note", "information")),
+        Fact("evaporated at 70 degC", sheet.E70, "vol/vol", note("e70")),
+        Fact("evaporated at 100 degC", sheet.E100, "vol/vol", note("e100")),
+        Fact("T50", sheet.T50, "K", note("distillation", at=0.5)),
     ]
     facts = [fact for fact in facts if math.isfinite(fact.value)]
     if GASOLINE_LIKE[0] < sheet.DVPE < GASOLINE_LIKE[1]:

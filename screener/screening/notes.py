@@ -7,7 +7,9 @@ import math
 from screener.screening.context import Context
 from screener.screening.finding import Finding
 from screener.screening.health import states_sour_gas
+from screener.screening.measured import measured_assumptions
 from screener.screening.wording import say
+from screener.states.lanes import LOW
 
 
 def assumptions(context: Context) -> tuple[str, ...]:
@@ -33,6 +35,12 @@ def assumptions(context: Context) -> tuple[str, ...]:
             rows.append(say("assumed", name))
     if case.tank.surface:
         rows.append(say("assumed", "paint", text=case.tank.surface, note=paint_note(case.tank.surface)))
+    for name, blend in context.parts(LOW):
+        rows += measured_assumptions(name, blend)
+    sour = case.blend.figure("h2s")
+    if sour is not None and case.hydrogen_sulfide is not None:
+        rows.append(say("assumed", "stated-sulfide", value=f"{1e6 * case.hydrogen_sulfide:.3g} ppm",
+                        measured=f"{1e6 * sour.value:.3g} ppm"))  # fmt: skip
     rows += list(case.blend.report.assumed)
     if case.tank.contents is not None:
         rows += [f"heel: {text}" for text in case.tank.contents.blend.report.assumed]

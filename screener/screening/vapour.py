@@ -8,6 +8,7 @@ from screener.screening.context import MONTHS, Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Condition, Fact
+from screener.screening.measured import pressure_facts
 from screener.screening.rules import Rule
 from screener.screening.wording import lines, say
 from screener.states.lanes import BEST, RECEIPT
@@ -45,8 +46,9 @@ def _hot_lane(context: Context, k: int, limit: float, where: str, caps=()) -> La
     return Lane(
         context.condition(k, context.hottest_day, where), value, low, high, limit,
         unknown=say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else "",
-        facts=tuple(f for f in facts if math.isfinite(f.value)) + vapour_facts(context, lanes.y_hot[i, k]), tag=k,
-        caps=context.typical_cap() + context.split_cap(k) + tuple(caps),
+        facts=tuple(f for f in facts if math.isfinite(f.value)) + pressure_facts(context, k)
+            + vapour_facts(context, lanes.y_hot[i, k]), tag=k,
+        caps=context.typical_cap() + context.liquid_caps(k) + tuple(caps),
     )  # fmt: skip
 
 
@@ -107,15 +109,16 @@ def legal(context: Context, rule: Rule | None) -> Draft:
         unknown = say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else ""
         if not math.isfinite(value):
             paths = [p for p in context.own_missing(k) if not p.endswith("temperature")]
-            why = say("unknown", "missing", paths=", ".join(paths)) if paths else say(
-                "unknown", "no-bubble", why=context._status_words(lanes.status_legal[i, k]))  # fmt: skip
+            missing = say("unknown", "missing", paths=", ".join(paths)) if paths else ""
+            why = missing or context.no_pressure(k, lanes.status_legal[i, k])
             unknown = say("unknown", "lane", liquid=context.liquid_name(k), why=why)
         facts = (Fact("highest monthly mean air temperature", float(lanes.T_legal[i]), "K"),)
         own = float(lanes.T_own[i, k])
         if own > lanes.T_legal[i]:
             facts += (Fact("temperature the liquid brings along, the high end", own, "K"),)
+        facts += pressure_facts(context, k)
         rows.append(Lane(context.condition(k, when, "tank"), value, low, high, rule.limit, unknown=unknown,
-                         caps=rule.caps + context.split_cap(k), facts=facts if month else (), tag=k))  # fmt: skip
+                         caps=rule.caps + context.liquid_caps(k), facts=facts if month else (), tag=k))  # fmt: skip
     unknown = rule.unknown or ("" if month else say("unknown", "months"))
     return _draft("vapour-pressure.legal", lanes=tuple(rows), unknown=unknown, range_covers=("inputs", "method"),
                   facts=rule.facts + _other_roof_fact(rule), **fields)  # fmt: skip
@@ -158,12 +161,12 @@ def receipt(context: Context) -> Draft:
     lanes, i = context.lanes, context.i
     low, value, high = lanes.arrival.P[i]
     unknown, caps = _gas_state(context)
-    caps += context.split_cap(RECEIPT)
+    caps += context.liquid_caps(RECEIPT)
     unknown = context.unmeasured(RECEIPT) or unknown
     if not math.isfinite(value):
         paths = context.missing("receipt_temperature")
-        unknown = say("unknown", "missing", paths=", ".join(paths)) if paths else say(
-            "unknown", "no-bubble", why=context._status_words(lanes.arrival.status[i]))  # fmt: skip
+        missing = say("unknown", "missing", paths=", ".join(paths)) if paths else ""
+        unknown = missing or context.no_pressure(RECEIPT, lanes.arrival.status[i])
     lane = Lane(
         Condition("receipt", "", "on arrival", "tank inlet"), value, low, high, context.barometer,
         unknown=unknown, caps=caps, facts=_receipt_facts(context), tag=RECEIPT,
@@ -205,7 +208,7 @@ def _receipt_facts(context: Context) -> tuple[Fact, ...]:
     ]
     if context.case.line.receipt.dissolved_gas == "air-saturated":
         facts.append(Fact("vapour fraction with the dissolved air", float(lanes.beta_gas[i]), "mol/mol"))
-    facts = [f for f in facts if math.isfinite(f.value)]
+    facts = [f for f in facts if math.isfinite(f.value)] + list(pressure_facts(context, RECEIPT))
     if came.beta[i, BEST] > 0.0:
         facts += vapour_facts(context, came.y[i])
     return tuple(facts)

@@ -9,6 +9,7 @@ from screener.screening.context import Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Condition, Fact
+from screener.screening.measured import pressure_facts
 from screener.screening.vapour import FLOATING
 from screener.screening.wording import lines, say
 from screener.states.lanes import BEST
@@ -75,7 +76,7 @@ def outbreathing(context: Context, stream) -> Draft:
 def _out_lane(context: Context, b, k: int) -> Lane:
     i, lanes = context.i, context.lanes
     Pv = float(lanes.P_hot[i, k, BEST])
-    unknown, caps = context.why_no_hot_pressure(k), context.typical_cap() + context.split_cap(k)
+    unknown, caps = context.why_no_hot_pressure(k), context.typical_cap() + context.liquid_caps(k)
     growth = float(b.growth[i, k])
     if not unknown and math.isnan(growth):
         unknown = say("unknown", "boils")
@@ -91,7 +92,7 @@ def _out_lane(context: Context, b, k: int) -> Lane:
     low, value, high = b.out[i, k]
     return Lane(
         context.condition(k, context.hottest_day, "vents", ""), value, low, high, _capacity(b.vents, i, "out"),
-        unknown=unknown, caps=caps, facts=_finite(facts), tag=k,
+        unknown=unknown, caps=caps, facts=_finite(facts) + pressure_facts(context, k), tag=k,
     )  # fmt: skip
 
 
@@ -109,7 +110,8 @@ def inbreathing(context: Context, stream) -> Draft:
             context.condition(k, context.hottest_day, "vents", ""), value, value, value,
             _capacity(b.vents, i, "in"),
             unknown=say("unknown", "lane", liquid=context.liquid_name(k), why=why) if why else "", tag=k,
-            facts=_finite((Fact("thermal", float(b.into_thermal[i, k]), "m3/s air"),)),
+            facts=_finite((Fact("thermal", float(b.into_thermal[i, k]), "m3/s air"),)) + pressure_facts(context, k),
+            caps=context.misfit_caps(k),
         ))  # fmt: skip
     needs = ["shell_diameter", "shell_height", "latitude"]
     if context.case.line.draw_rate is None:

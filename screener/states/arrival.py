@@ -6,9 +6,9 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.equilibrium import bubble_pressure, caloric, flash_ph, flash_tp
 from screener.ground.status import Status
-from screener.states.pressures import SIGNS, bubble, relative_spread
+from screener.states.pressures import bubble, edges, relative_spread
+from screener.states.scaled import bubble_pressure, flash_from_liquid, flash_tp
 
 AIR = ("nitrogen", "oxygen")
 AIR_SHARES = np.array(
@@ -36,8 +36,10 @@ class Arrival:
     status_flash: np.ndarray
 
 
-def arrival(fluid, z, T, barometer, errors, has_receipt):
+def arrival(fluid, z, T, barometer, errors, has_receipt, measured):
     """The receipt on arrival: bubble pressure (n, 3) and its flash at tank pressure.
+
+    measured is that of all liquids of the cases; the receipt is the first of them.
 
     Nothing heats the liquid as it enters, so the flash is isenthalpic: beta low
     and best, y and the temperature it cools to. The isothermal flash gives more
@@ -46,25 +48,27 @@ def arrival(fluid, z, T, barometer, errors, has_receipt):
     the flash what an error of the vapour pressure would.
     """
     n = len(T)
-    P, y, status, residual, asked = bubble(fluid, T, z, has_receipt)
-    spread = relative_spread(y, errors)
-    P = P[:, None] * (1.0 + spread[:, None] * SIGNS)
+    factor = measured.factor[:, 0]
+    P, y, status, residual, asked = bubble(fluid, T, z, has_receipt, factor)
+    spread = measured.wider(relative_spread(y, errors), 0)
+    P = P[:, None] * edges(spread[:, None])
     go = np.isfinite(T) & np.isfinite(barometer) & has_receipt
-    tank = barometer[:, None] / (1.0 + np.where(np.isfinite(spread), spread, 0.0)[:, None] * SIGNS)
+    tank = barometer[:, None] / edges(np.where(np.isfinite(spread), spread, 0.0)[:, None])
     isothermal, y_flash = np.full((n, 3), np.nan), np.full((n, fluid.c), np.nan)
     status_flash = np.full((n, 3), Status.BAD_INPUT, dtype=int)
     if go.any():
-        answer = flash_tp(fluid, np.repeat(T[go], 3), tank[go].ravel(), np.repeat(z[go], 3, axis=0))
+        three = np.repeat(np.flatnonzero(go), 3)
+        answer = flash_tp(fluid, T[three], tank[go].ravel(), z[three], factor[three])
         ok = answer.ok.reshape(-1, 3)
         isothermal[go] = np.where(ok, np.clip(answer.beta.reshape(-1, 3), 0.0, 1.0), np.nan)
         status_flash[go] = answer.status.reshape(-1, 3)
     beta, T_after = isothermal.copy(), np.where(isothermal[:, BEST] == 0.0, T, np.nan)
     boils = np.flatnonzero(isothermal[:, BEST] > 0.0)
     if boils.size:
-        feed = caloric(fluid, T[boils], tank[boils, BEST], z[boils], "L")
-        two = np.repeat(boils, 2)
-        answer = flash_ph(fluid, tank[boils, :2].ravel(), np.repeat(feed.H, 2), z[two])
-        ok = (answer.ok & np.repeat(feed.ok, 2)).reshape(-1, 2)
+        answer, fed = flash_from_liquid(
+            fluid, T[boils], tank[boils, BEST], z[boils], factor[boils], tank[boils, :2]
+        )
+        ok = (answer.ok & np.repeat(fed, 2)).reshape(-1, 2)
         beta[boils, :2] = np.where(ok, np.clip(answer.beta.reshape(-1, 2), 0.0, 1.0), np.nan)
         T_after[boils] = np.where(ok[:, BEST], answer.T.reshape(-1, 2)[:, BEST], np.nan)
         y_flash[boils] = np.where(ok[:, BEST, None], answer.y.reshape(-1, 2, fluid.c)[:, BEST], np.nan)
@@ -72,12 +76,14 @@ def arrival(fluid, z, T, barometer, errors, has_receipt):
     return Arrival(P, status, beta, isothermal[:, BEST], T_after, y_flash, status_flash), residual, asked
 
 
-def vapour_with_air(fluid, z, T, inputs, barometer):
+def vapour_with_air(fluid, z, T, inputs, barometer, factor):
     """Vapour fraction (n,) at arrival of a receipt that was saturated with air at its stated temperature.
 
     Air and vapour shared the barometer where it was saturated; the air that
     dissolved follows from the fugacity coefficients at infinite dilution. A
-    lane whose receipt is not stated to be saturated holds NaN.
+    lane whose receipt is not stated to be saturated holds NaN. The factor (n,) [-] of a measured
+    vapour pressure lies on the air as well, in what dissolves and in what comes out: left out of one of
+    them, a liquid kept at its temperature would give off air it never took up.
     """
     T_sat = np.array([
         case.line.receipt.saturated_at or np.nan
@@ -88,17 +94,17 @@ def vapour_with_air(fluid, z, T, inputs, barometer):
     go = np.isfinite(T_sat) & np.isfinite(T) & np.isfinite(barometer)
     if not go.any():
         return beta
-    z, T, T_sat, P = z[go], T[go], T_sat[go], barometer[go]
-    bubble = bubble_pressure(fluid, T_sat, z)
+    z, T, T_sat, P, factor = z[go], T[go], T_sat[go], barometer[go], factor[go]
+    bubble = bubble_pressure(fluid, T_sat, z, factor)
     air = np.clip(P - bubble.P, 0.0, None) / P
     gas = [fluid.names.index(name) for name in AIR]
     y = np.where(np.isfinite(bubble.y), bubble.y, 0.0) * (1.0 - air)[:, None]
     y[:, gas] += air[:, None] * AIR_SHARES
     y /= y.sum(axis=1, keepdims=True)
-    ln_K = fluid.ln_phi(T_sat, P, z, "L") - fluid.ln_phi(T_sat, P, y, "V")
+    ln_K = fluid.ln_phi(T_sat, P / factor, z, "L") - fluid.ln_phi(T_sat, P / factor, y, "V")
     full = z.copy()
     full[:, gas] += y[:, gas] / np.exp(ln_K[:, gas])
     full /= full.sum(axis=1, keepdims=True)
-    answer = flash_tp(fluid, T, P, np.where(np.isfinite(full), full, np.nan))
+    answer = flash_tp(fluid, T, P, np.where(np.isfinite(full), full, np.nan), factor)
     beta[go] = np.where(answer.ok & bubble.ok, np.clip(answer.beta, 0.0, 1.0), np.nan)
     return beta

@@ -97,7 +97,7 @@ def _flash(lanes: Lanes, fill, filling) -> np.ndarray:
     """Flashed vapour as air (n, 3): the receipt's vapour fraction times its molar flow."""
     inputs = lanes.inputs
     T, z = inputs["receipt_temperature"], lanes.z[:, RECEIPT]
-    v = molar_volume(lanes.fluid, T, z)
+    v = molar_volume(lanes.fluid, T, z) / lanes.measured.density[:, RECEIPT]
     after = lanes.arrival.T_after
     y = np.where(np.isfinite(lanes.arrival.y), lanes.arrival.y, 0.0)
     M = np.where(lanes.arrival.beta[:, BEST] > 0.0, y @ lanes.fluid.MW, z @ lanes.fluid.MW)

@@ -19,13 +19,14 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.fire import Exposure, Headspace, exposure, flash_point, vapour_space
+from screener.fire import Exposure, Headspace, exposure
 from screener.ground.constants import ATMOSPHERE
 from screener.ground.status import Status
 from screener.states.inert import OxygenLanes, oxygen_lanes
 from screener.states.lanes import BEST, Lanes, filled_volumes
-from screener.states.pressures import psat_errors, relative_spread
+from screener.states.pressures import LEAST_LEFT, psat_errors, relative_spread
 from screener.states.previous import Previous, previous_contents
+from screener.states.scaled import flash_point, vapour_space
 
 STEPS = 9  # temperatures from the coldest to the hottest surface
 # Half range of a computed flash point [K]: mixtures read in tables miss by up to 4 K, pure species worked out
@@ -134,6 +135,7 @@ _SCALARS = tuple(name for name in _Rows.__dataclass_fields__ if name != "y")
 def _rows(lanes, T, known, errors, ratio=None) -> _Rows:
     """Vapour space at T (n, 5, m); NaN in lanes that are not known."""
     P = np.broadcast_to(lanes.weather.barometer[:, None, None], T.shape)
+    factor = lanes.measured.factor[:, :, None]
     go = known[:, :, None] & np.isfinite(T) & np.isfinite(P)
     out = {name: np.full(T.shape, np.nan) for name in _SCALARS}
     out["T"], out["status"] = T, np.full(T.shape, int(Status.BAD_INPUT))
@@ -141,14 +143,15 @@ def _rows(lanes, T, known, errors, ratio=None) -> _Rows:
     if go.any():
         z = np.broadcast_to(lanes.z[:, :, None, :], y.shape)[go]
         more = {} if ratio is None else {"ratio": np.broadcast_to(ratio, T.shape)[go]}
-        space = vapour_space(lanes.fluid, T[go], z, P=P[go], **more)
+        space = vapour_space(lanes.fluid, T[go], z, np.broadcast_to(factor, T.shape)[go], P=P[go], **more)
         y[go] = space.y
         vapour = space.y / space.y.sum(axis=1, keepdims=True)
-        s = relative_spread(vapour, errors)
+        s = _wider(lanes, go, relative_spread(vapour, errors))
+        down = np.maximum(1.0 - s, LEAST_LEFT)
         found = {
             "fuel": space.fuel, "LFL": space.LFL, "UFL": space.UFL, "status": space.status,
-            "lower": space.lower_ratio_low * (1.0 - s), "upper": space.upper_ratio_high * (1.0 + s),
-            "low": space.upper_ratio_low * (1.0 - s), "high": space.lower_ratio_high * (1.0 + s),
+            "lower": space.lower_ratio_low * down, "upper": space.upper_ratio_high * (1.0 + s),
+            "low": space.upper_ratio_low * down, "high": space.lower_ratio_high * (1.0 + s),
             "estimated_lower": space.estimated_lower, "estimated_upper": space.estimated_upper,
             "saturation_lower": space.saturation_lower, "saturation_upper": space.saturation_upper,
             "density": space.density_ratio,
@@ -156,6 +159,13 @@ def _rows(lanes, T, known, errors, ratio=None) -> _Rows:
         for name, values in found.items():
             out[name][go] = values
     return _Rows(y=y, **out)
+
+
+def _wider(lanes, go, spread):
+    """The method spread of the lanes in go (n, 5, m), with what was measured of their liquids."""
+    whole = np.zeros(go.shape)
+    whole[go] = spread
+    return lanes.measured.wider(whole)[go]
 
 
 def _side(rows: _Rows) -> np.ndarray:
@@ -249,18 +259,48 @@ class FlashLanes:
 
 
 def flash_lanes(lanes: Lanes) -> FlashLanes:
-    """Closed-cup flash point of every liquid by equilibrium. Equal liquids are worked out once."""
+    """Closed-cup flash point of every liquid by equilibrium. Equal liquids are worked out once.
+
+    A measured one takes the place of the computed one. Its range is the greater of
+    FLASH_SPREAD, which whoever reads these adds, and the reproducibility of its method: that is known from
+    memory and may widen a range, not narrow it. A mixture that holds a liquid whose measured
+    flash point lies below the computed one is lowered as much; above, it stays as computed.
+    """
     shape = lanes.present.shape
     known = lanes.present & np.isfinite(lanes.z).all(axis=-1)
     out = [np.full(shape, np.nan) for _ in range(4)]
     status = np.full(shape, int(Status.BAD_INPUT))
     if known.any():
-        z, back = np.unique(lanes.z[known], axis=0, return_inverse=True)
-        flash = flash_point(lanes.fluid, z, P=ATMOSPHERE)
+        liquids = np.column_stack([lanes.z[known], lanes.measured.factor[known]])
+        z, back = np.unique(liquids, axis=0, return_inverse=True)
+        flash = flash_point(lanes.fluid, z[:, :-1], z[:, -1], P=ATMOSPHERE)
         for values, found in zip(out, (flash.T, flash.T_low, flash.T_high, flash.estimated)):
             values[known] = found[back.ravel()]
         status[known] = flash.status[back.ravel()]
-    return FlashLanes(*out, status)
+    return _measured_flash(lanes, known, FlashLanes(*out, status))
+
+
+def _measured_flash(lanes: Lanes, known, flash: FlashLanes) -> FlashLanes:
+    """Flash points with the measured ones in their place."""
+    measured = lanes.measured
+    if np.isnan(measured.flash).all():
+        return flash
+    T, T_low, T_high = flash.T.copy(), flash.T_low.copy(), flash.T_high.copy()
+    estimated, status = flash.estimated.copy(), flash.status.copy()
+    shift = measured.flash - T[:, :2]
+    # A part without a computed flash point, of which one was measured, shifts its mixtures by an unknown amount.
+    lower = np.where(np.isnan(measured.flash), 0.0, np.minimum(shift, 0.0))[:, None, :]
+    shift = np.where(measured.holds[:, 2:], lower, 0.0).min(axis=-1)
+    T[:, 2:] += shift
+    T_low[:, 2:] += shift
+    own = known[:, :2] & np.isfinite(measured.flash)
+    more = np.fmax(measured.flash_R - FLASH_SPREAD, 0.0)
+    T[:, :2] = np.where(own, measured.flash, T[:, :2])
+    T_low[:, :2] = np.where(own, measured.flash - more, T_low[:, :2])
+    T_high[:, :2] = np.where(own, measured.flash + more, T_high[:, :2])
+    estimated[:, :2] = np.where(own, 0.0, estimated[:, :2])
+    status[:, :2] = np.where(own, int(Status.CONVERGED), status[:, :2])
+    return FlashLanes(T, T_low, T_high, estimated, status)
 
 
 def hottest_headspace(lanes: Lanes, space: SpaceLanes) -> Headspace:

@@ -12,6 +12,13 @@ import numpy as np
 
 from screener.site import month_number
 
+
+def _sulfide(case):
+    """Hydrogen sulfide of the receipt: as the case states it, else as its laboratory sheet has it. [kg/kg]"""
+    found = case.blend.figure("h2s")
+    return found.value if case.hydrogen_sulfide is None and found else case.hydrogen_sulfide
+
+
 # name -> (path in the case file, how to read it from a Case). None reads as NaN.
 _READ = {
     "shell_diameter": ("tank.shell_diameter", lambda c: c.tank.shell_diameter),
@@ -28,7 +35,7 @@ _READ = {
     ),
     "vapour_space_oxygen": ("tank.vapour_space_oxygen", lambda c: c.tank.vapour_space_oxygen),
     "roof_leg_height": ("tank.roof_leg_height", lambda c: c.tank.roof_leg_height),
-    "hydrogen_sulfide": ("blend.h2s_in_liquid", lambda c: c.hydrogen_sulfide),
+    "hydrogen_sulfide": ("blend.h2s_in_liquid", _sulfide),
     "heel_volume": ("tank.contents.volume", lambda c: c.tank.contents and c.tank.contents.volume),
     "heel_temperature": (
         "tank.contents.temperature",

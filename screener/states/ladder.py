@@ -6,10 +6,10 @@ from dataclasses import replace
 
 import numpy as np
 
-from screener.fire import vapour_space
 from screener.states.fire import INSIDE, LEAN, RICH
 from screener.states.inputs import gather
 from screener.states.lanes import BEST, Lanes
+from screener.states.scaled import vapour_space
 from screener.states.weather import weather
 
 _STEPS = 9  # temperatures of a month
@@ -32,7 +32,8 @@ def vapour_ladder(lanes: Lanes, i: int, k: int) -> list[dict]:
     part = np.linspace(0.0, 1.0, _STEPS)
     T_cold, T_hot = sky.T_cold[:, BEST, None], sky.T_surface[:, BEST, None]
     T = 1.0 / ((1.0 - part) / T_cold + part / T_hot)
-    space = vapour_space(lanes.fluid, T.ravel(), z, P=float(lanes.weather.barometer[i]))
+    factor = lanes.measured.factor[i, k]
+    space = vapour_space(lanes.fluid, T.ravel(), z, factor, P=float(lanes.weather.barometer[i]))
     fuel, LFL, UFL, upper = (a.reshape(T.shape) for a in (space.fuel, space.LFL, space.UFL, space.lower_ratio))
     side = np.where(fuel > UFL, RICH, np.where(fuel >= LFL, INSIDE, LEAN))
     rows = [

@@ -7,10 +7,12 @@ from functools import lru_cache
 
 import numpy as np
 
-from screener.blends import Blend, volatility_sheet
-from screener.fire import flash_point, static_class, vapour_space
+from screener.blends import Blend
+from screener.blends.measured import measured_sheet, pressure_factor
+from screener.fire import static_class
 from screener.states.lanes import Lanes
 from screener.states.pressures import psat_errors, relative_spread
+from screener.states.scaled import flash_point, vapour_space
 
 
 @dataclass(frozen=True)
@@ -36,9 +38,11 @@ def _stock(name: str) -> Blend:
     return Blend.of({f"stock:{name}": 1.0})
 
 
-def _classed(blend) -> tuple[float, float, str]:
-    """Flash point [K], DVPE [Pa] taken as the Reid vapour pressure, and vapour class."""
-    T, P = float(flash_point(blend.fluid, blend.z).T[0]), float(volatility_sheet(blend).DVPE)
+def classed(blend) -> tuple[float, float, str]:
+    """Flash point [K], DVPE [Pa] taken as the Reid vapour pressure, and vapour class; measured where a sheet has them."""
+    flash, reid = blend.figure("flash_point"), None if blend.figure("dvpe") else blend.figure("rvp")
+    T = flash.value if flash else float(flash_point(blend.fluid, blend.z, pressure_factor(blend.measured)[0]).T[0])
+    P = reid.value if reid else float(measured_sheet(blend).DVPE)
     return T, P, str(static_class(T, P)[0])
 
 
@@ -52,9 +56,9 @@ def _previous(lanes: Lanes, i: int) -> Previous | None:
     if case.tank.previous_contents is None or case.line.receipt is None:
         return None
     old = _stock(case.tank.previous_contents)
-    (T_old, P_old, class_old), (T_new, P_new, class_new) = _classed(old), _classed(case.blend)
+    (T_old, P_old, class_old), (T_new, P_new, class_new) = classed(old), classed(case.blend)
     T = lanes.weather.T_surface[i]
-    space = vapour_space(old.fluid, T, old.z, P=float(lanes.weather.barometer[i]))
+    space = vapour_space(old.fluid, T, old.z, 1.0, P=float(lanes.weather.barometer[i]))
     with np.errstate(all="ignore"):
         s = relative_spread(space.y / space.y.sum(axis=1, keepdims=True), psat_errors(old.names))
     fuel = np.array([

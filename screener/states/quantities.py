@@ -6,10 +6,10 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.equilibrium import bubble_pressure
 from screener.states.breathing import Breathing, breathing
 from screener.states.inputs import gather
 from screener.states.lanes import Lanes, evaluate
+from screener.states.scaled import bubble_pressure
 from screener.states.suction import SuctionLanes, suction_lanes
 from screener.states.weather import weather
 
@@ -45,6 +45,6 @@ def bubble_curve(lanes: Lanes, i: int, T) -> dict:
         z = lanes.z[i, k]
         if not lanes.present[i, k] or not np.isfinite(z).all():
             continue
-        answer = bubble_pressure(lanes.fluid, T, z)
+        answer = bubble_pressure(lanes.fluid, T, z, lanes.measured.factor[i, k])
         curve["P"][name] = [float(p) if ok else None for p, ok in zip(answer.P, answer.ok)]
     return curve

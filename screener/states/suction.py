@@ -6,9 +6,9 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.equilibrium import bubble_temperature
 from screener.line import DEFAULT_ROUGHNESS, kinematic_viscosity_band, npsh_available, suction_profile
 from screener.states.lanes import BEST, Lanes
+from screener.states.scaled import bubble_temperature
 from screener.states.volumes import density_15, expansion
 
 # Taken where the case does not say; each is listed among the assumptions of the result.
@@ -52,7 +52,7 @@ def suction_lanes(lanes: Lanes, set_under) -> SuctionLanes:
     i, shape = lanes.inputs, lanes.level.shape
     T = lanes.T_hot[:, :, BEST]
     z = lanes.z.reshape(-1, lanes.fluid.c)
-    rho_15 = density_15(lanes.fluid, z)
+    rho_15 = density_15(lanes.fluid, z) * lanes.measured.density.ravel()
     rho = (rho_15 / expansion(lanes.fluid, T.ravel(), z)).reshape(shape)
     band = [nu.reshape(shape) for nu in kinematic_viscosity_band(rho_15)]
     surface = surface_pressure(lanes, set_under)
@@ -105,6 +105,6 @@ def _room_in_kelvin(lanes: Lanes, lowest, T) -> np.ndarray:
     go = np.isfinite(lowest) & (lowest > 0.0) & np.isfinite(T) & lanes.present
     go &= np.isfinite(lanes.z).all(axis=-1)
     if go.any():
-        answer = bubble_temperature(lanes.fluid, lowest[go], lanes.z[go])
+        answer = bubble_temperature(lanes.fluid, lowest[go], lanes.z[go], lanes.measured.factor[go])
         room[go] = np.where(answer.ok, answer.T - T[go], np.nan)
     return room
