@@ -222,9 +222,14 @@ def anything(value, unit: str = "", system: str = "si") -> Quantity | str:
 
 
 def percent(share: float | None) -> Quantity:
-    """A share as whole percent; more decimals where rounding would hide on which side of 100 it lies."""
+    """A share as whole percent; more decimals where rounding would hide on which side of 100 it lies.
+
+    Past 999 % the number says no more than that.
+    """
     if share is None or not math.isfinite(share):
         return Quantity(None, "-", NONE)
+    if share >= 9.995:
+        return Quantity(float(share), "-", "> 999 %")
     value, places = 100.0 * share, 0
     while places < 3 and (float(f"{value:.{places}f}") < 100.0) != (value < 100.0):
         places += 1
