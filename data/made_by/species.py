@@ -27,7 +27,6 @@ sys.path.insert(0, str(DATA.parent))
 import species_passports
 
 from screener.species import build, forms, library
-from screener.species.vapour_pressure import choose_vapour_pressure
 
 PREFER = {  # CAS -> curve taken against the rule
     "95-93-2": "ANTOINE_POLING",  # durene: the other curve below 352 K is of the solid
@@ -95,12 +94,12 @@ def one(row: dict) -> dict[str, dict]:
     _, formula, smiles, inchi_key, MW = library.identity(cas)
     Tc, Pc, words, Tc_spread = library.critical(cas)
     Tb = library.boiling_point(cas)
-    curve = choose_vapour_pressure(cas, Tc, Pc, Tb, PREFER.get(cas))
+    cp, cp_method, cp_source, cp_miss = build.fit_cp(cas, MW)
+    curve = build.choose_curve(cas, MW, Tc, Pc, Tb, cp, PREFER.get(cas))
     alpha, mean, worst = build.fit_alpha(curve, Tc, Pc)
     T, rho, method, source, note = build.choose_density(cas, MW, Tc, Pc)
     shift, shift_mean, shift_worst, density = build.fit_density(T, rho, MW, Tc, Pc, alpha, curve)
     rho_15, rho_note = build.density_at_15(cas, MW, Tc, Pc, Tb, density)
-    cp, cp_method, cp_source, cp_miss = build.fit_cp(cas, MW)
     groups = GROUPS_BY_HAND.get(cas) or library.group_counts(inchi_key)
     head = {"cas": cas, "name": name}
     omega = -np.log10(forms.psat(curve.coefficients, 0.7 * Tc) / Pc) - 1.0
@@ -115,7 +114,7 @@ def one(row: dict) -> dict[str, dict]:
             "source": curve.source, "source_low": round(curve.source_low, 2),
             "source_high": round(curve.source_high, 2), "fit_error": round(curve.fit_error, 6),
             "spread": None if curve.spread is None else round(curve.spread, 5),
-            "extension": round(curve.extension, 5), "note": curve.note,
+            "extension": round(curve.extension, 5), "heats": curve.heats, "note": curve.note,
         },
         "translation": head | {
             "c0": shift[0], "c1": shift[1], "mean_error": round(shift_mean, 6),

@@ -9,10 +9,25 @@ from __future__ import annotations
 import numpy as np
 
 from screener.ground.constants import R
-from screener.species import fits, forms, library, pure
-from screener.species.vapour_pressure import LIGHT, NoData
+from screener.species import fits, forms, heats, library, pure
+from screener.species.vapour_pressure import LIGHT, REFERENCE, NoData, choose_vapour_pressure
 
 PROMISE = 0.005, 0.01  # [-] largest mean and single miss of the vapour pressure a species may have
+
+
+def choose_curve(cas, MW, Tc, Pc, Tb, cp_ideal, prefer=None):
+    """The vapour-pressure curve of a species, its cold end set by the heats of the libraries.
+
+    A species below Tc 340 K has none; one with a reference equation keeps it (but for `cold.REFERENCE`).
+    """
+    if Tc <= LIGHT:
+        return choose_vapour_pressure(cas, Tc, Pc, Tb, prefer)
+    known = heats.thermal(cas, MW, Tc, cp_ideal)
+    curve = choose_vapour_pressure(cas, Tc, Pc, Tb, prefer, known)
+    if curve.source not in REFERENCE:
+        return curve
+    own = heats.Thermal(None, heats.reference_capacity(cas, MW, Tc), known.cp_ideal)
+    return choose_vapour_pressure(cas, Tc, Pc, Tb, prefer, own)
 
 
 def fit_alpha(curve, Tc, Pc):

@@ -9,7 +9,7 @@ from screener.species import build, forms, library
 from screener.species.catalogue import names
 from screener.species.groups import subgroup_table
 from screener.species.record import Curve, Species
-from screener.species.vapour_pressure import NoData, choose_vapour_pressure
+from screener.species.vapour_pressure import NoData
 
 
 def find_live(text: str) -> Species:
@@ -45,12 +45,12 @@ def _build(text, cas) -> Species:
     Tb = library.boiling_point(cas)
     if Tb is None:
         raise NoData("no normal boiling point")
-    curve = choose_vapour_pressure(cas, Tc, Pc, Tb)
+    cp, _, _, _ = build.fit_cp(cas, MW)
+    curve = build.choose_curve(cas, MW, Tc, Pc, Tb, cp)
     alpha, _, _ = build.fit_alpha(curve, Tc, Pc)
     T, rho, _, _, note = build.choose_density(cas, MW, Tc, Pc)
     shift, _, _, density = build.fit_density(T, rho, MW, Tc, Pc, alpha, curve)
     rho_15, rho_note = build.density_at_15(cas, MW, Tc, Pc, Tb, density)
-    cp, _, _, _ = build.fit_cp(cas, MW)
     omega = -np.log10(forms.psat(curve.coefficients, 0.7 * Tc) / Pc) - 1.0
     return Species(
         name=name,

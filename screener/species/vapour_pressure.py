@@ -14,8 +14,11 @@ Rule, in this order:
 
 Where the chosen curve is not valid, it is continued by the geometric mean of two Wagner
 forms through the critical point and the last valid point (upwards also through 1 atm at the
-boiling point); half their distance is the extension band. tests/species/test_continuation.py
-measures both on species whose curve is known.
+boiling point). Where heats of the liquid are known its cold end is then correlated with them
+(`cold`), and the band is what that leaves uncertain; otherwise the band is twice half the
+distance of the two forms, or twice what the blind test finds if that is more.
+tests/species/test_continuation.py measures all of it on species whose curve is known. A
+reference equation keeps its vapour pressure.
 """
 
 from __future__ import annotations
@@ -24,7 +27,7 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.species import fits, forms, library
+from screener.species import cold, fits, forms, heats, library
 
 STORAGE = np.arange(250.0, 350.1, 5.0)  # [K] where disagreement is stated
 COMPARED = np.arange(250.0, 400.1, 5.0)  # [K] where candidates are weighed against each other
@@ -38,6 +41,7 @@ LIGHT = 340.0  # [K] species with Tc below this are fitted on their own saturati
 LOWEST = (
     200.0  # [K] curves are continued down to here (flash points of light species lie near 215 K); our choice
 )
+DENIED = 0.02  # [-] four standard deviations of a handbook heat of vaporisation
 ATMOSPHERE = 101325.0  # [Pa] the boiling points of the library are at 1 atm
 REFERENCE = ("iapws-2007", "helmholtz")
 
@@ -60,6 +64,7 @@ class VapourPressure:
     fit_error: float
     spread: float | None
     extension: float
+    heats: str
     note: str
 
 
@@ -117,10 +122,11 @@ def _pick(kept, table, alive):
     return next(i for i in wide if off[i] <= min(off.values()) + CLOSE)
 
 
-def choose_vapour_pressure(cas, Tc, Pc, Tb=None, prefer=None):
+def choose_vapour_pressure(cas, Tc, Pc, Tb=None, prefer=None, thermal=None):
     """Choose and fit the vapour-pressure curve of a species.
 
-    Tc [K], Pc [Pa], Tb [K] or None. `prefer` names a method to take against the rules; the
+    Tc [K], Pc [Pa], Tb [K] or None; thermal the `heats.Thermal` that sets its cold end, or None.
+    `prefer` names a method to take against the rules; the
     caller keeps the reason. NoData when there is no curve.
     """
     candidates = library.vapour_pressures(cas)
@@ -137,7 +143,7 @@ def choose_vapour_pressure(cas, Tc, Pc, Tb=None, prefer=None):
         chosen = next(c for c in candidates if c.method == prefer)
     rejected = [c.method for c in off] + [kept[i].method for i in bad]
     others = [(kept[i], table[i]) for i in alive if kept[i] is not chosen]
-    return _fit(chosen, others, rejected, Tc, Pc, Tb, prefer is not None)
+    return _fit(chosen, others, rejected, Tc, Pc, Tb, prefer is not None, thermal)
 
 
 def continuations(T, P, Tc, Pc, at, Tb=None):
@@ -167,7 +173,8 @@ def continuations(T, P, Tc, Pc, at, Tb=None):
 
 
 def _points(chosen, Tc, Pc, Tb):
-    """Points T [K], P [Pa] of the chosen curve with its continuations, its first valid T, the band [-]."""
+    """Points T [K], P [Pa] of the chosen curve with its continuations, its first valid T [K], and (n,) [-]
+    half the distance of the two continuations below it."""
     low = max(LOWEST, 0.35 * Tc) if Tc > LIGHT else max(0.5 * Tc, chosen.low)
     high = min(0.98 * Tc, max(450.0, (Tb or 0.0) + 30.0, 0.75 * Tc))
     T = np.linspace(max(low, chosen.low), min(high, chosen.high), 120)
@@ -175,7 +182,7 @@ def _points(chosen, Tc, Pc, Tb):
     T, P = T[np.isfinite(P)], P[np.isfinite(P)]
     if len(T) < 20:
         raise NoData(f"{chosen.method}: too little of the curve lies in the range")
-    first, extension = float(T[0]), 0.0
+    first = float(T[0])
     if T[-1] < high - 0.5:
         at = np.linspace(T[-1] + 1.0, high, 60)
         lines = continuations(T[T >= T[-1] - WINDOW], P[T >= T[-1] - WINDOW], Tc, Pc, at, Tb)
@@ -183,24 +190,43 @@ def _points(chosen, Tc, Pc, Tb):
     if first > low + 0.5:
         at = np.arange(low, first, 2.0)
         lines = continuations(T[T <= first + WINDOW], P[T <= first + WINDOW], Tc, Pc, at)
-        band = 0.5 * np.abs(lines[0] / lines[1] - 1.0)
-        extension = float(np.max(band[at >= STORAGE[0]], initial=0.0))
+        half = np.concatenate([0.5 * np.abs(lines[0] / lines[1] - 1.0), np.zeros(len(T))])
         T, P = np.concatenate([at, T]), np.concatenate([np.sqrt(lines[0] * lines[1]), P])
-    return T, P, first, extension
+        return T, P, first, half
+    return T, P, first, np.zeros(len(T))
 
 
-def _fit(chosen, others, rejected, Tc, Pc, Tb, by_hand):
-    T, P, first, extension = _points(chosen, Tc, Pc, Tb)
+def _with_heats(chosen, others, points, thermal, Tc, Pc):
+    """P [Pa] and the band [-] of points (T, P, first, half), the cold end correlated with heats if there are any."""
+    T, P, first, half = points
+    if thermal is not None and chosen.source in REFERENCE:
+        known = thermal.capacity is not None
+        return (cold.reference_with_capacity(T, P, thermal, Tc, Pc) if known else P), np.zeros(len(T)), False
+    if thermal is not None and (thermal.heat is not None or thermal.capacity is not None):
+        apart = np.full(len(T), np.nan)
+        for c, _ in others:
+            apart = np.fmax(apart, 0.5 * np.abs(c.at(T) / P - 1.0))
+        found = cold.correlated(T, P, first, half, apart, thermal, Tc, Pc)
+        if found is not None:
+            return found.P, found.band, True
+    return P, np.where(first > T, cold.continued_band(T, first, half), 0.0), False
+
+
+def _fit(chosen, others, rejected, Tc, Pc, Tb, by_hand, thermal=None):
+    points = _points(chosen, Tc, Pc, Tb)
+    T, first = points[0], points[2]
+    P, band, by_heats = _with_heats(chosen, others, points, thermal, Tc, Pc)
     coefficients, error = fits.psat_coefficients(T, P)
-    known = (COMPARED >= T[0]) & (COMPARED <= min(T[-1], STORAGE[-1]))
-    reference = np.full(len(COMPARED), np.nan)
-    reference[known] = forms.psat(coefficients, COMPARED[known])
-    gaps = [(gap, c.method) for c, values in others if (gap := _gap(values, reference)) is not None]
+    inside = (STORAGE[0] <= T) & (STORAGE[-1] >= T)
+    extension = float(np.max(band[inside], initial=0.0))
+    if by_heats:
+        others = [(chosen, chosen.at(COMPARED)), *others]  # the curve as published counts among the others
+    gaps, denied = _apart(others, coefficients, T, thermal if by_heats else None)
     spread, worst = max(gaps, default=(None, ""))
     words = []
     if by_hand:
         words.append("chosen by hand")
-    if spread is None:
+    if spread is None or (by_heats and len(gaps) < 2 and not denied):
         words.append("no second curve within 250-350 K")
     elif spread > 0.03:
         words.append(f"{worst} differs by {100 * spread:.1f} %")
@@ -208,9 +234,36 @@ def _fit(chosen, others, rejected, Tc, Pc, Tb, by_hand):
         words.append("no curve reaches below 300 K")
     if first > STORAGE[0] + 0.5:
         words.append(f"continued below {first:.0f} K")
+    if by_heats:
+        words.append("cold end by heats")
+    if denied:
+        words.append("heats deny " + " ".join(denied))
     if rejected:
         words.append("rejected " + " ".join(rejected))
     return VapourPressure(
         coefficients, float(T[0]), float(T[-1]), chosen.method, chosen.source, chosen.low, chosen.high,
-        error, spread, extension, "; ".join(words),
+        error, spread, extension, thermal.words if by_heats else "", "; ".join(words),
     )  # fmt: skip
+
+
+def _apart(others, coefficients, T, thermal):
+    """(largest relative distance [-], method) of other curves within 250-350 K, and those the heats deny.
+
+    Where slope and bend are known, a curve whose slope at 25 degC is more than DENIED off is denied.
+    """
+    known = (COMPARED >= T[0]) & (COMPARED <= min(T[-1], STORAGE[-1]))
+    reference = np.full(len(COMPARED), np.nan)
+    reference[known] = forms.psat(coefficients, COMPARED[known])
+    gaps, denied = [], []
+    for c, values in others:
+        gap = _gap(values, reference)
+        if gap is None:
+            continue
+        ends = np.clip(heats.T_TABLE + np.array([-2.0, 2.0]), c.low, c.high)
+        rise, wanted = np.log(c.at(ends)), np.log(forms.psat(coefficients, ends))
+        off = abs((rise[1] - rise[0]) / (wanted[1] - wanted[0]) - 1.0) if ends[1] > ends[0] else 0.0
+        if thermal is not None and thermal.both and off > DENIED:
+            denied.append(c.method)
+        else:
+            gaps.append((gap, c.method))
+    return gaps, denied
