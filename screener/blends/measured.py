@@ -122,7 +122,8 @@ def measured_sheet(blend: Blend) -> VolatilitySheet:
     factor, _ = pressure_factor(blend.measured)
     if factor != 1.0:
         T20 = ratio_temperature(blend.fluid, blend.z, ratio=20.0, P=ATMOSPHERE / factor, air=True, product=product)
-        sheet = replace(sheet, TVP=factor * sheet.TVP, DVPE=_dvpe(blend, factor, product), T20=float(T20.T[0]))
+        P = _dvpe(blend, factor, product) if math.isfinite(sheet.DVPE) else sheet.DVPE
+        sheet = replace(sheet, TVP=factor * sheet.TVP, DVPE=P, T20=float(T20.T[0]))
     known = {"density_15": "density_15", "dvpe": "DVPE", "e70": "E70", "e100": "E100", "e150": "E150"}
     figures = {known[f.key]: f.value for f in blend.figures if f.key in known}
     points = {0.1: "T10", 0.5: "T50", 0.9: "T90"}

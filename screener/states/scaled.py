@@ -4,11 +4,14 @@ The factor is what a laboratory measured over what the equation computes (`state
 f K_i. A K-value is inverse to the pressure while the vapour is ideal, so every function here works at P/f
 and gives a pressure back times f. The heat, the compositions and the temperature follow from the same state.
 
-What is left out is the vapour's own non-ideality between P/f and P, and the liquid's compressibility.
-Against the exact solution with scaled K (tests/states/test_scaled.py prints it) a bubble pressure
-with f = 1.08 is 0.05 % high for gasoline at 0.3 bar, 0.34 % for butane and pentane at 3 bar: below a tenth of the
-method spread. One function each, and nothing above this floor's `states` and `screening` calls the
-unscaled one (the same tests read their imports).
+Exact for an ideal vapour. The factor is one of pressures, so a bubble pressure times f is the
+measured pressure itself at the temperature of the test; scaled K, solved exactly, go a little beyond it, by
+what the vapour's non-ideality changes between P/f and P. With f = 1.08 that is 0.09 % of a bubble pressure of
+0.23 bar (gasoline) and 0.81 % of one of 3.2 bar (butane and isopentane at 40 degC; tests/states/test_scaled.py
+prints both), beside a method spread of 5 %. In a vapour space it is the liquid's v (P - P/f)/RT, 0.05 %.
+
+One function each, and nothing else in `states`, `screening` or `memo` calls the unscaled one: the same tests read
+their imports.
 """
 
 from __future__ import annotations
