@@ -10,6 +10,7 @@ from screener.casefile.json_schema import help_text, schema
 from screener.casefile.keys import Key, all_keys, key_at
 from screener.casefile.live import check_text
 from screener.casefile.read import read_case, write_case
+from screener.casefile.sheet_file import read_sheet_file
 from screener.casefile.starting import template
 from screener.casefile.units import kinds, quantity, show, shown
 from screener.casefile.values import Tables
@@ -25,6 +26,7 @@ __all__ = [
     "kinds",
     "quantity",
     "read_case",
+    "read_sheet_file",
     "schema",
     "show",
     "shown",

@@ -22,12 +22,12 @@ _ROWS = {"vpcr": ("vpcr", "ratio", "temperature", "pressure"),
 _METHODS = {"dvpe_equation": "dvpe", "rvp_chamber": "rvp"}
 
 
-def read_liquid(values: Values, path: str, tables: Tables):
+def read_liquid(values: Values, path: str, tables: Tables, recipe=None):
     """The liquid of `blend` or `tank.contents`: its parts, its sheet, or the parts corrected to the sheet.
 
-    None where there is none or it cannot be used; the faults are noted.
+    recipe takes the place of parts that are not in the values. None where there is none or it cannot be used; the faults are noted.
     """
-    start = read_blend(values, path, tables)
+    start = recipe if recipe is not None else read_blend(values, path, tables)
     sheet = read_sheet(values, f"{path}.lab")
     # Parts that were given and cannot be read are not passed over: the sheet alone is another question.
     heads = (f"{path}.parts", f"{path}.basis", f"{path}.at", f"{path}.scale")

@@ -72,7 +72,8 @@ def _add_memo(parser) -> None:
 
 
 def _add_quick(parser) -> None:
-    parser.add_argument("blend", metavar="BLEND", help=_help("blend"))
+    parser.add_argument("blend", nargs="?", default=None, metavar="BLEND", help=_help("blend"))
+    parser.add_argument("--lab", default=None, metavar="FILE.toml", help=_help("lab"))
     parser.add_argument("--at", required=True, metavar="TEMPERATURE", help=_help("at"))
     _layout(parser)
 

@@ -1,56 +1,51 @@
-"""`screener quick`: one-line answers for a blend at a temperature."""
+"""`screener quick`: every standard figure of a blend at a temperature, without a case."""
 
 from __future__ import annotations
 
 import math
 import re
-from dataclasses import dataclass
-
-import numpy as np
 
 from screener.cli import streams
-from screener.cli.layout import bullets, paragraph, table
+from screener.cli.quick_answers import Liquid, first_vapour, groups
+from screener.cli.quick_page import page
 from screener.cli.result import as_text, without_nan
-from screener.cli.wording import columns, say
-from screener.ground.constants import ATMOSPHERE, T_100F
+from screener.cli.wording import say
 from screener.ground.errors import CaseErrors, InputError
-from screener.ground.status import Status, words
-from screener.memo import numbers
 
 SCHEMA = "screener.quick/1"
-LARGEST = 8  # species shown of the first vapour
 _SUM = 0.05  # percent by which shares may miss 100
 _PART = re.compile(r"\s*(?P<share>[0-9]+(?:[.,][0-9]+)?)\s*%\s*(?P<name>\S.*?)\s*")
 
 
-@dataclass(frozen=True)
-class Answer:
-    """One number with what it is; value is None with the reason in `why`."""
-
-    key: str
-    label: str
-    value: float | None
-    unit: str
-    why: str = ""
-
-
 def quick(arguments) -> int:
-    """Print the answers; 0 when all exist, 2 when one does not."""
-    from screener.blends import Blend
+    """Print the answers; 0 when those of the first group all exist, else 2."""
     from screener.casefile import quantity
 
     blend, T = gathered(
-        lambda: Blend.of(read_parts(arguments.blend), basis="volume", at="15 degC"),
+        lambda: read_blend(arguments.blend, arguments.lab),
         lambda: quantity(arguments.at, "temperature", "--at"),
     )
-    answers, vapour = answer(blend, T, arguments.units)
-    code = 2 if any(item.value is None for item in answers) else 0
+    liquid = Liquid(blend, T, arguments.units)
+    made = groups(liquid)
+    vapour = [] if liquid.no_pressure else first_vapour(liquid)
+    code = 2 if any(item.value is None for item in made[0].answers) else 0
     if arguments.json:
-        streams.result(as_text(_object(blend, T, answers, vapour, code)))
+        streams.result(as_text(_object(liquid, made, vapour, code)))
     else:
         width = arguments.width or streams.terminal_width()
-        streams.result("\n".join(_page(blend, T, answers, vapour, arguments.units, width)))
+        streams.result("\n".join(page(liquid, made, vapour, width)))
     return code
+
+
+def read_blend(text: str | None, lab: str | None):
+    """The blend of a text, of a laboratory sheet in a file, or of the text corrected to the sheet."""
+    from screener.blends import Blend
+    from screener.casefile import read_sheet_file
+
+    if not text and not lab:
+        raise InputError("blend", None, say("faults", "no_parts"), say("faults", "part_hint"))
+    start = Blend.of(read_parts(text), basis="volume", at="15 degC") if text else None
+    return read_sheet_file(lab, start) if lab else start
 
 
 def gathered(*readers) -> list:
@@ -109,86 +104,26 @@ def _part(text: str, path: str, *, alone: bool) -> tuple[str, float]:
     return found["name"], share
 
 
-def answer(blend, T: float, system: str = "si") -> tuple[list[Answer], list[tuple[str, float, float]]]:
-    """Everything printed: the answers, and the first vapour as (species, y, x), largest first."""
-    from screener.blends import volatility_sheet
-    from screener.equilibrium import bubble_pressure, flash_tp
-
-    at, test = (numbers.quantity(value, "K", system).text for value in (T, T_100F))
-    bubble = bubble_pressure(blend.fluid, T, blend.z, check="full")
-    flash = flash_tp(blend.fluid, T, ATMOSPHERE, blend.z, check="full")
-    sheet = volatility_sheet(blend)
-    # The standard tests take one liquid; where it splits, none of them has an answer.
-    split = words(Status.LIQUID_SPLITS) if bubble.status[0] == Status.LIQUID_SPLITS else ""
-    return [
-        _answer("bubble_pressure", bubble.P[0], "Pa", _why(bubble), temperature=at),
-        _answer("DVPE", sheet.DVPE, "Pa", split, temperature=test),
-        _answer("density_15_degC", blend.density_15, "kg/m3"),
-        _answer("T10", sheet.T10, "K", split),
-        _answer("T50", sheet.T50, "K", split),
-        _answer("E70", sheet.E70, "-", split),
-        _answer("E100", sheet.E100, "-", split),
-        _answer("T_ratio_20", sheet.T20, "K", split),
-        _answer("vapour_fraction", flash.beta[0], "-", _why(flash), temperature=at),
-    ], _vapour(blend, bubble)
-
-
-def _why(result) -> str:
-    return "" if result.ok[0] else words(result.status[0])
-
-
-def _answer(key: str, value: float, unit: str, why: str = "", **fields: str) -> Answer:
-    label = say("quick", key, **fields)
-    if why or not math.isfinite(value):
-        return Answer(key, label, None, unit, why or say("quick", "no_answer"))
-    return Answer(key, label, float(value), unit)
-
-
-def _vapour(blend, bubble) -> list[tuple[str, float, float]]:
-    if not bubble.ok[0]:
-        return []
-    order = np.argsort(-bubble.y[0], kind="stable")[:LARGEST]
-    return [(blend.names[i], float(bubble.y[0, i]), float(blend.z[i])) for i in order]
-
-
-def _printed(item: Answer, system: str) -> str:
-    if item.value is None:
-        return say("quick", "unknown", why=item.why)
-    if item.unit == "-":
-        return f"{100.0 * item.value:.1f} %"
-    return numbers.quantity(item.value, item.unit, system).text
-
-
-def _page(blend, T, answers, vapour, system: str, width: int) -> list[str]:
-    at = numbers.quantity(T, "K", system).text
-    lines = [*paragraph(say("quick", "title", blend=blend.title, temperature=at), width), ""]
-    rows = [(item.label, _printed(item, system)) for item in answers]
-    lines += table(columns("quick", "columns"), rows, width, ("left", "right"))
-    if vapour:
-        head = say("quick", "vapour", temperature=at, count=len(vapour))
-        shares = [(name, f"{100 * y:.2f} %", f"{100 * x:.2f} %") for name, y, x in vapour]
-        lines += ["", *paragraph(head, width)]
-        lines += table(columns("quick", "vapour_columns"), shares, width, ("left", "right", "right"))
-    notes = (*blend.report.assumed, *blend.report.sources)
-    if notes:
-        lines += ["", say("quick", "notes"), *bullets(notes, width)]
-    return [*lines, "", *paragraph(say("quick", "foot"), width)]
-
-
-def _object(blend, T, answers, vapour, code: int) -> dict:
+def _object(liquid: Liquid, made, vapour, code: int) -> dict:
     from screener import __version__
+    from screener.casefile.residuals import residuals
 
+    blend = liquid.blend
+    answers = [
+        {"id": a.key, "group": group.key, "label": a.label, "value": a.value, "unit": a.unit, "text": a.text,
+         "by": a.by, "reason": a.why}
+        for group in made for a in group.answers
+    ]  # fmt: skip
     return without_nan(
         {
             "schema": SCHEMA,
             "software": {"name": "screener", "version": __version__},
             "exit_code": code,
             "blend": {"title": blend.title, "basis": "volume at 15 degC", "report": vars(blend.report)},
-            "temperature": {"value": T, "unit": "K"},
-            "answers": [
-                {"id": a.key, "label": a.label, "value": a.value, "unit": a.unit, "reason": a.why}
-                for a in answers
-            ],
+            "temperature": {"value": liquid.T, "unit": "K"},
+            "groups": [{"id": group.key, "title": group.title} for group in made],
+            "answers": answers,
             "first_vapour": [{"species": name, "y": y, "x": x} for name, y, x in vapour],
+            "sheet": [vars(row) for row in residuals(blend)],
         }
     )

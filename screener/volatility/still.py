@@ -79,7 +79,7 @@ class Still:
             # Newton on the logarithm of the sum, whose slope in ln k is minus the mean of passed/(f + passed)
             slope = (part * passed / (f + passed + TINY)).sum(axis=-1) / part.sum(axis=-1)
             step = np.log(part.sum(axis=-1)) / slope
-            ln_k = ln_k + step
+            ln_k = np.clip(ln_k + step, -500.0, 500.0)  # only a lane without a bubble point comes near
             if not np.nanmax(np.abs(step), initial=0.0) > 1e-12:
                 break
         kK = np.exp(ln_k)[:, None] * K

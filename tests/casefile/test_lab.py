@@ -94,8 +94,8 @@ def test_refusals_of_both_sheets_come_at_once_with_all_other_faults(tables):
     def refuse(sheet, start):
         raise InputError("lab", None, f"numbers contradict each other at {sheet.density_15:g}", "each within 3")
 
-    own, asked = telling(tables, refuse)
-    text = SHEET + TANK.replace("white paint", "white paint").replace(
+    own, _ = telling(tables, refuse)
+    text = SHEET + TANK.replace(
         '[tank]', '[tank]\nshell_diameter = "2 km"') + HEEL.format(parts="")  # fmt: skip
     with pytest.raises(CaseErrors, match="blend") as caught:
         read_case(text, tables=own)
