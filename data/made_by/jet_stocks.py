@@ -17,6 +17,9 @@ same for every fuel and made without looking at any property of a fuel:
    and rise with carbon number as alkylbenzenes or alkylcyclohexanes do.
 4. A species of the bin's formula and class within `NEAR` of that boiling point carries the bin, the nearest one. Else
    a cut does, with that boiling point and density, the families of the class and the molar mass of the formula.
+5. `OF_SPECIES` is the one fuel made of table species alone: there two relatives of the class, of any carbon number, that
+   boil next below and above share the bin in quarters of its mass. Fused naphthenes then become rings with a
+   chain, which are lighter by the litre.
 """
 
 from __future__ import annotations
@@ -32,16 +35,21 @@ from screener.ground.constants import ZERO_CELSIUS
 from screener.species import cut, find, names
 
 STOCKS = Path(__file__).resolve().parents[1] / "stocks"
-FUELS = ("jet-kerosene", "light-jet-fuel", "heavy-jet-fuel", "jet-kerosene-1999", "jet-kerosene-2018",
-         "isoparaffinic-jet-fuel", "hydrotreated-tallow-kerosene")  # fmt: skip
-CH, C, CY_CH, CY_C = 3, 4, 79, 80  # subgroups of data/groups/subgroups.csv; the second and fourth are quaternary
+FUELS = (
+    "average-jet-fuel", "light-jet-fuel", "heavy-jet-fuel", "jet-kerosene-1999", "jet-kerosene-2018",
+    "isoparaffinic-jet-fuel", "hydrotreated-tallow-kerosene",
+)  # fmt: skip
+OF_SPECIES = "jet-kerosene"
+CH, C, CY_CH, CY_C = 3, 4, 79, 80  # subgroups of data/groups/subgroups.csv; C and CY_C are quaternary
 ENOUGH = 6  # isomers in the table; our choice
 NEAR = 3.0  # [K]; our choice
 CARBON, HYDROGEN = 12.0107, 1.00794  # [g/mol]; IUPAC 2001, as the species table has them
 LAST = {"isoparaffin": 20, "monocycloparaffin": 16, "alkylbenzene": 16}  # straight-chain members of the table
 OTHER_RINGS = ("cycloheptane", "cyclooctane")
-STEMS = "meth eth prop but pent hex hept oct non dec undec dodec tridec tetradec pentadec hexadec heptadec".split()
-STEMS += "octadec nonadec eicos".split()
+STEMS = (
+    "meth", "eth", "prop", "but", "pent", "hex", "hept", "oct", "non", "dec", "undec", "dodec", "tridec", "tetradec",
+    "pentadec", "hexadec", "heptadec", "octadec", "nonadec", "eicos",
+)  # fmt: skip
 # class: family in the species table, hydrogen atoms beyond 2 n, families of a cut
 CLASSES = {
     "isoparaffin": ("isoparaffin", 2, {"naphthenes": 0.0, "aromatics": 0.0}),
@@ -58,6 +66,20 @@ PARENTS = {  # class: parents with their carbon number, class whose straight-cha
     "tricycloparaffin": (("trans-decalin", "cis-decalin"), 10, "monocycloparaffin"),
     "diaromatic": (("1-ethylnaphthalene", "2-ethylnaphthalene"), 12, "alkylbenzene"),
 }
+RINGS = tuple(f"{stem}ylcyclohexane" for stem in STEMS[:10])
+FUSED = (
+    "indane",
+    "tetralin",
+    "naphthalene",
+    "2-methylnaphthalene",
+    "1-methylnaphthalene",
+    "1-ethylnaphthalene",
+)
+RELATIVES = {  # species that may share a bin under rule 5
+    "monocycloparaffin": RINGS, "tricycloparaffin": ("trans-decalin", "cis-decalin", *RINGS[5:]),
+    "dicycloparaffin": (*RINGS[:3], "trans-decalin", "cis-decalin", *RINGS[5:]),
+    "alkylbenzene": tuple(f"{stem}ylbenzene" for stem in STEMS[2:10]), "cycloaromatic": FUSED, "diaromatic": FUSED,
+}  # fmt: skip
 KNOWN = {"cycloaromatic C9": ("indane",), "cycloaromatic C10": ("tetralin",), "diaromatic C10": ("naphthalene",),
          "diaromatic C11": ("1-methylnaphthalene", "2-methylnaphthalene"), "alkylbenzene C7": ("toluene",),
          "alkylbenzene C8": ("ethylbenzene", "o-xylene", "m-xylene", "p-xylene"),
@@ -74,7 +96,7 @@ def straight(kind: str, n: int):
     """The straight-chain member of a class as a species."""
     if kind == "isoparaffin":
         return find(normal(n))
-    ring, methyl = ("cyclohexane", "methylcyclohexane") if kind == "monocycloparaffin" else ("benzene", "toluene")
+    ring, methyl = ("benzene", "toluene") if kind == "alkylbenzene" else ("cyclohexane", "methylcyclohexane")
     return find(methyl if n == 7 else f"{STEMS[n - 7]}yl{ring}")
 
 
@@ -122,8 +144,8 @@ def _member(kind: str, n: int) -> np.ndarray:
     return np.array([one.Tb, one.rho_15])
 
 
-def carrier(entry: str) -> tuple[str, str]:
-    """The species of a bin, and why."""
+def carrier(entry: str, cuts: bool) -> tuple[str, str]:
+    """The species of a bin, and why; without cuts by rule 5."""
     kind, n = re.fullmatch(r"([\w-]+) C(\d+)", entry).groups()
     n = int(n)
     if kind == "n-paraffin":
@@ -135,12 +157,33 @@ def carrier(entry: str) -> tuple[str, str]:
     about = f"boils at {Tb - ZERO_CELSIUS:.0f} degC as the mean of the bin does"
     if near is not None and abs(near.Tb - Tb) <= NEAR:
         return near.name, "" if near.name == "toluene" else f"isomer that {about}"
+    if not cuts:
+        return shared(kind, Tb), f"relatives whose mean {about}"
     _, extra, shares = CLASSES[kind]
     MW = (n * CARBON + (2 * n + extra) * HYDROGEN) / 1000.0
     return cut(Tb, rho, MW=MW, **shares).name, f"cut that {about}, with its density and molar mass"
 
 
-def refill(stem: str) -> None:
+def shared(kind: str, Tb: float) -> str:
+    """Two relatives that boil next below and above Tb [K], each named as often as it has quarters of the bin."""
+    if kind == "isoparaffin":
+        found = [find(name) for name in names() if find(name).family == "isoparaffin" and _common(find(name))]
+        found += [find(normal(n)) for n in range(16, 21)]
+    else:
+        found = [find(name) for name in RELATIVES[kind]]
+    low = max((one for one in found if one.Tb <= Tb), key=lambda one: one.Tb, default=None)
+    high = min((one for one in found if one.Tb > Tb), key=lambda one: one.Tb, default=None)
+    if low is None or high is None:
+        return (low or high).name
+    quarters = round(4.0 * (Tb - low.Tb) / (high.Tb - low.Tb))
+    return (
+        "+".join([low.name] * (4 - quarters) + [high.name] * quarters)
+        if quarters % 4
+        else (high if quarters else low).name
+    )
+
+
+def refill(stem: str, cuts: bool = True) -> None:
     """Rewrites one stock; rows that name a molecule (column cas) keep their species."""
     path = STOCKS / f"{stem}.csv"
     lines = path.read_text(encoding="utf-8").splitlines()
@@ -148,7 +191,7 @@ def refill(stem: str) -> None:
     rows = list(csv.DictReader(line for line in lines if not line.startswith("#")))
     for row in rows:
         if not row["cas"]:
-            row["species"], row["stand_in"] = carrier(row["entry"])
+            row["species"], row["stand_in"] = carrier(row["entry"], cuts)
     with path.open("w", encoding="utf-8", newline="") as file:
         file.write("".join(f"{line}\n" for line in head))
         writer = csv.DictWriter(file, rows[0], lineterminator="\n")
@@ -159,3 +202,4 @@ def refill(stem: str) -> None:
 if __name__ == "__main__":
     for fuel in FUELS:
         refill(fuel)
+    refill(OF_SPECIES, cuts=False)

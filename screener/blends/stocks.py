@@ -2,8 +2,9 @@
 
 A stock is a pair of files in data/stocks: NAME.csv with the rows of an analysis (or of
 an invented composition) and NAME.toml, its passport. A row names the species that stands
-for it; `+` between species splits the row evenly by mass. A row without species is left
-out and the rest scaled up; the passport's `unidentified` sentence says which rule holds.
+for it; `+` between species splits the row evenly by mass, and a species named twice takes two of
+the parts. A row without species is left out and the rest scaled up; the passport's `unidentified`
+sentence says which rule holds.
 """
 
 from __future__ import annotations
@@ -46,7 +47,12 @@ class Published:
 
 
 # unit of a published number: SI unit, factor and offset
-_UNITS = {"kg/m3": ("kg/m3", 1.0, 0.0), "kPa": ("Pa", 1e3, 0.0), "psi": ("Pa", PSI, 0.0), "degC": ("K", 1.0, ZERO_CELSIUS)}
+_UNITS = {
+    "kg/m3": ("kg/m3", 1.0, 0.0),
+    "kPa": ("Pa", 1e3, 0.0),
+    "psi": ("Pa", PSI, 0.0),
+    "degC": ("K", 1.0, ZERO_CELSIUS),
+}
 PUBLISHED_NUMBERS = {"density_15": "kg/m3", "dvpe": "Pa", "rvp": "Pa", "tvp": "Pa", "T10": "K", "T50": "K", "T90": "K",
                      "flash_point": "K"}  # fmt: skip
 
@@ -188,7 +194,9 @@ def _published(file: str, item: dict) -> Published:
     if number not in PUBLISHED_NUMBERS or unit not in _UNITS or _UNITS[unit][0] != PUBLISHED_NUMBERS[number]:
         raise DataError(file, None, f"published {number} in {unit}")
     if (number == "tvp") != ("at" in item):
-        raise DataError(file, None, f"published {number}: 'at' belongs to a vapour pressure and to nothing else")
+        raise DataError(
+            file, None, f"published {number}: 'at' belongs to a vapour pressure and to nothing else"
+        )
     _, factor, offset = _UNITS[unit]
     at = float(item["at"]) + ZERO_CELSIUS if "at" in item else None
     return Published(number, printed * factor + offset, unit, printed, item["source"], at)

@@ -2,9 +2,7 @@
 
 from __future__ import annotations
 
-import csv
 from dataclasses import replace
-from pathlib import Path
 
 import numpy as np
 import pytest
@@ -18,10 +16,7 @@ from screener.fire import (
     flash_point_by_distillation,
     vapour_space,
 )
-from screener.ground.files import read_table
 from screener.species import find
-
-HERE = Path(__file__).parent
 
 
 def celsius(T):
@@ -68,28 +63,14 @@ def test_octane_and_ethanol_have_a_minimum():
     assert flash.min() < min(flash[0], flash[-1]) - 5.0
 
 
-def _jet(fuel: str) -> Blend:
-    """A reference jet fuel, each bin carried by the species that the jet stock takes for it."""
-    species = {row["entry"]: row["species"] for row in read_table("stocks/jet-kerosene.csv")}
-    with (HERE / "data" / "jet_reference_fuels.csv").open(encoding="utf-8") as file:
-        rows = [
-            r for r in csv.DictReader(line for line in file if not line.startswith("#")) if r["fuel"] == fuel
-        ]
-    mass: dict[str, float] = {}
-    for row in rows:
-        key = f"species:{species[row['entry']]}"
-        mass[key] = mass.get(key, 0.0) + float(row["mass_percent"])
-    total = sum(mass.values())
-    return Blend.of({key: share / total for key, share in mass.items()}, basis="mass")
-
-
 @pytest.mark.parametrize(
-    ("fuel", "low", "high"), [("10264", 37.0, 47.0), ("10325", 43.0, 53.0), ("10289", 55.0, 65.0)]
+    ("name", "low", "high"),
+    [("light jet fuel", 37.0, 47.0), ("jet kerosene", 43.0, 53.0), ("heavy jet fuel", 55.0, 65.0)],
 )
 @pytest.mark.parametrize("method", ["liaw", "le-chatelier"])
-def test_flash_points_of_reference_jet_fuels(fuel, low, high, method):
-    """42, 48 and 60 degC remembered; bands of 5 K."""
-    blend = Blend.of({"stock:jet kerosene": 1.0}) if fuel == "10325" else _jet(fuel)
+def test_flash_points_of_reference_jet_fuels(name, low, high, method):
+    """POSF 10264, 10325 and 10289: 42, 48 and 60 degC remembered; bands of 5 K."""
+    blend = Blend.of({f"stock:{name}": 1.0})
     flash = flash_point(blend.fluid, blend.z, method=method).require()
     assert low < celsius(flash.T[0]) < high
 
