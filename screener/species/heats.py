@@ -87,7 +87,7 @@ def thermal(cas, MW, Tc, cp_ideal):
         capacity = HeatCapacityLiquid(CASRN=cas, MW=1e3 * MW, Tc=Tc, extrapolation=None)
         solid = (chemicals.Tm(cas) or 0.0) > T_TABLE + SOLID
         sound = _sound(capacity, cp_ideal, solid)
-        known = _first(capacity, {k: v for k, v in CAPACITIES.items() if k in sound})
+        known = _first(capacity, {k: v for k, v in CAPACITIES.items() if k in sound}, cp_ideal)
         return Thermal(
             None if solid else _first(heat, HEATS), known and _continued(known, cp_ideal, shape), tuple(cp_ideal)
         )
@@ -114,8 +114,7 @@ def reference_capacity(cas, MW, Tc):
 def _sound(prop, cp_ideal, solid):
     """Tables that can be used: all recommended ones, and constants no other constant or the vapour denies."""
     constants = {m: float(prop.calculate(T_TABLE, m)) for m in CONSTANTS if m in prop.T_limits and not solid}
-    vapour = float(forms.cp_ideal(cp_ideal, T_TABLE))
-    fair = {m: v for m, v in constants.items() if LIQUID[0] <= v / vapour <= LIQUID[1]}
+    fair = {m: v for m, v in constants.items() if _liquid_like(T_TABLE, v, cp_ideal)}
     if len(fair) > 1 and max(fair.values()) / min(fair.values()) - 1.0 > SLIP:
         fair = {}
     return set(fair) | set(RECOMMENDED)
@@ -130,7 +129,13 @@ def _continued(one, cp_ideal, shape):
     return replace(one, T=T, value=value, deviation=np.array([one.deviation[0], shape, shape]))
 
 
-def _first(prop, sources):
+def _liquid_like(T, value, cp_ideal):
+    """Whether heat capacities can be a liquid's: a spline of ethylbenzene is negative below 320 K."""
+    share = value / forms.cp_ideal(cp_ideal, T)
+    return bool(np.all((LIQUID[0] <= share) & (share <= LIQUID[1])))
+
+
+def _first(prop, sources, cp_ideal=None):
     for method, (source, deviation) in sources.items():
         if method not in prop.T_limits:
             continue
@@ -142,5 +147,7 @@ def _first(prop, sources):
                 continue
             T = np.linspace(low, high, POINTS)
         value = np.array([float(prop.calculate(float(t), method)) for t in T])
+        if cp_ideal is not None and not _liquid_like(T, value, cp_ideal):
+            continue
         return Heat(T, value, np.full(len(T), deviation), method, source)
     return None

@@ -82,7 +82,9 @@ def test_continued_curve_carries_its_band(offer):
     found = offer(candidate("A", low=310.0, high=420.0))
     assert found.T_low == 200.0 and found.T_high > 420.0
     assert "no curve reaches below 300 K" in found.note and "continued below 310 K" in found.note
-    assert 0.0 < found.extension < 0.2
+    # two standard deviations: at least what the blind trials miss by 60 K below a curve, 2 %
+    assert 2.0 * 0.02 * (60.0 / 60.0) ** 2 <= found.extension < 0.4
+    assert found.heats == ""
 
 
 def test_nothing_to_choose_from(offer):
