@@ -3,15 +3,26 @@
 from __future__ import annotations
 
 import re
+from functools import lru_cache
 
 import numpy as np
 import pytest
 
-from screener.blends import Blend, stock, stock_names, stocks, volatility_sheet, volatility_sheets
+from screener.blends import (
+    Blend,
+    published_beside_computed,
+    stock,
+    stock_names,
+    stocks,
+    volatility_sheet,
+    volatility_sheets,
+)
+from screener.equilibrium import Fluid
 from screener.ground.constants import ZERO_CELSIUS
 from screener.ground.errors import UnknownName
 from screener.ground.files import data_folder, read_toml
 from screener.species import find
+from screener.volatility import vapour_pressure_crude
 
 WANTED = {
     "summer gasoline base", "winter gasoline base", "light naphtha", "heavy naphtha", "field butane",
@@ -140,3 +151,76 @@ def test_straight_line_lies_above_the_flash(sheets):
     assert len(WITHOUT_ETHANOL) >= 4
     for name in WITHOUT_ETHANOL:
         assert 0.0 <= sheets[name].T20_line - sheets[name].T20 <= 5.0
+
+
+# What a computed number may differ from the published one: (least, most, relative or in SI units, why).
+BARS = {
+    ("jet", "density_15"): (-0.015, 0.005, True, "bins of isomers take the density of a few of them; fused rings are heavier"),
+    ("jet", "T10"): (0.0, 15.0, False, "the flask reads 3 to 7 K below the still for known molecules; bins add as much again"),
+    ("jet", "T50"): (0.0, 15.0, False, "as T10"),
+    ("jet", "T90"): (0.0, 15.0, False, "as T10"),
+    ("jet", "flash_point"): (-6.0, 3.0, False, "an open moment in the tester loses vapour, so it reads high; R is 3.6 K"),
+    # The band asked of this calculation; what is dissolved in the sample adds to the measurement.
+    ("jet", "tvp"): (-0.45, 0.15, True, "measured values were read off figures and hold some dissolved air"),
+    ("", "dvpe"): (-4e3, 4e3, False, "17.8 % of the mass is not identified: a band of 4 kPa"),
+    ("crude", "density_15"): (-0.005, 0.005, True, "densities of all cuts are printed; half a per cent of shrinkage and gases"),
+    ("crude", "rvp"): (-5.2e3, 5.2e3, False, "method not stated: R of the wet Reid method"),
+}  # fmt: skip
+beside = lru_cache(published_beside_computed)
+PAIRS = [
+    pytest.param(item, i, id=f"{item.name}-{p.number}-{i}")
+    for item in stocks()
+    for i, p in enumerate(item.published)
+]
+
+
+def test_published_numbers_have_a_source():
+    assert len(PAIRS) >= 40
+    for item in stocks():
+        assert not (item.published and item.obtained == "invented")
+        for number in item.published:
+            assert re.search(r"\d{4}|profile \d+", number.source), number
+
+
+@pytest.mark.parametrize(("item", "i"), PAIRS)
+def test_published_number_beside_the_computed_one(item, i):
+    one = beside(item)[i]
+    assert one.published is item.published[i]
+    low, high, relative, _ = BARS[item.product, one.published.number]
+    off = one.difference / (one.published.value if relative else 1.0)
+    assert low <= off <= high, (one.name, one.published.value, one.computed)
+    assert one.in_R == pytest.approx(one.difference / one.R) and one.R > 0.0
+
+
+def test_stock_without_published_numbers_has_nothing_beside():
+    assert published_beside_computed(stock("diesel")) == ()
+
+
+def test_one_jet_fuel_made_in_two_ways():
+    """POSF 10325 with cuts and of table species alone: the same bins, boiling points met in two ways."""
+    cuts, species = (
+        {b.name: b.computed for b in beside(stock(n))} for n in ("average jet fuel", "jet kerosene")
+    )
+    assert any(name.startswith("cut ") for name, _ in stock("average jet fuel").masses)
+    assert not any(name.startswith("cut ") for name, _ in stock("jet kerosene").masses)
+    for name, value in cuts.items():
+        rel = 0.01 if name.startswith("density") else 0.05 if name.startswith("true") else 0.004  # 2 K of 500
+        assert species[name] == pytest.approx(value, rel=rel), name
+
+
+def test_crude_by_the_blend_model_and_by_the_plain_equation():
+    """VPCR4 of the crude: the groups' size term lowers light ends in a residue of 526 g/mol by a tenth.
+
+    39.4 kPa published, method not stated. The plain equation of state meets it within the 4 kPa that leaves; the
+    model of every blend lies lower, within the reproducibility of the wet Reid method (5.2 kPa).
+    """
+    item = stock("medium crude with light ends")
+    published = next(p.value for p in item.published if p.number == "rvp")
+    pressures = {}
+    for model in ("auto", "PR"):
+        fluid = Fluid.of(tuple(name for name, _ in item.masses), model=model)
+        moles = np.array([mass for _, mass in item.masses]) / fluid.MW
+        pressures[model] = vapour_pressure_crude(fluid, moles / moles.sum()).require().P[0]
+    assert pressures["PR"] == pytest.approx(published, abs=4e3)
+    assert pressures["auto"] == pytest.approx(published, abs=5.2e3)
+    assert 0.85 < pressures["auto"] / pressures["PR"] < 0.95
