@@ -106,7 +106,9 @@ def test_table_of_the_other_families(h, record_property):
     for name, mask in groups().items():
         v = ln[:, mask][np.isfinite(ln[:, mask])]
         if v.size:
-            record_property(name, [int(v.size), round(float(np.median(v)), 3), round(float(np.sqrt(np.mean(v**2))), 3)])
+            record_property(
+                name, [int(v.size), round(float(np.median(v)), 3), round(float(np.sqrt(np.mean(v**2))), 3)]
+            )
         if name in ("benzene", "toluene", "naphthenes", "olefins"):
             assert v.size >= 9
             assert abs(np.median(v)) <= PARAFFINS, name

@@ -29,7 +29,9 @@ def test_about_one_psi_at_ten_percent(target):
     """
     rise = trends.rise(target, "ethanol", 0.10)[0]
     assert round(rise / PSI) == 1
-    assert rise == pytest.approx(ethanol_allowance(0.10)[0] / 1e3, abs=1.0)  # the spread of bases, as for the annex
+    assert rise == pytest.approx(
+        ethanol_allowance(0.10)[0] / 1e3, abs=1.0
+    )  # the spread of bases, as for the annex
 
 
 @BASES
@@ -74,7 +76,9 @@ def test_etbe_falls_linearly_and_ethanol_does_not(target):
     share = np.array([0.05, 0.10, 0.15, 0.20])
     etbe, ethanol = trends.rise(target, "ETBE", share) / share, trends.rise(target, "ethanol", share) / share
     assert (etbe < 0.0).all()
-    assert np.ptp(etbe) < 0.03 * abs(etbe.mean())  # a straight line to the 0.1 kPa a test is reported to, at 10 %
+    assert np.ptp(etbe) < 0.03 * abs(
+        etbe.mean()
+    )  # a straight line to the 0.1 kPa a test is reported to, at 10 %
     assert (ethanol > 0.0).all() and ethanol[0] > 3.0 * ethanol[-1]
 
 
@@ -84,7 +88,9 @@ def test_etbe_smooths_the_rise_of_ethanol(target):
     besides smooths that. Michalopoulou and others, Fuels 2(4) (2021) 501, abstract: ETBE to 20.8 % in E10 lowers it.
     """
     ethanol = np.array([0.0, 0.009, 0.02, 0.03, 0.055])
-    P = np.stack([trends.pressure(target, {"ethanol": ethanol, "ETBE": v}) for v in (0.0, 0.020, 0.050, 0.098)])
+    P = np.stack(
+        [trends.pressure(target, {"ethanol": ethanol, "ETBE": v}) for v in (0.0, 0.020, 0.050, 0.098)]
+    )
     assert (np.diff(P, axis=1) > 0.0).all()  # ethanol raises
     assert (np.diff(P, axis=0) < 0.0).all()  # ETBE lowers
     assert (np.diff(P[:, -1] - P[:, 0]) < 0.0).all()  # and takes part of the rise itself away
@@ -132,7 +138,9 @@ def test_classes_of_ethanol_fuel(target):
     """
     shares = np.linspace(0.51, 0.83, 17)
     P = trends.pressure(target, {"ethanol": shares})
-    met = [{c.name for c in ethanol_fuel_classes(1e3 * p, v) if c.met} for p, v in zip(P, shares, strict=True)]
+    met = [
+        {c.name for c in ethanol_fuel_classes(1e3 * p, v) if c.met} for p, v in zip(P, shares, strict=True)
+    ]
     assert any("1" in names for names in met)
     assert "4" not in met[-1]
     bounds = {c.name: (c.low / PSI / 1e3, c.high / PSI / 1e3) for c in ethanol_fuel_classes(1e3 * P[0], 0.51)}
@@ -163,7 +171,7 @@ def pairs():
 
 
 def test_ethanol_in_the_first_five_percent_lost(pairs, record_property):
-    """"Gasoline evaporation: ethanol and nonethanol blends", abstract: about 13 mass% in two hours at about 70 degF.
+    """ "Gasoline evaporation: ethanol and nonethanol blends", abstract: about 13 mass% in two hours at about 70 degF.
 
     The cylinders on balances lose by diffusion through still air. Computed that way, bases of 50 to 60 kPa lie
     around the published number, whose base is not stated; two points are what 10 kPa of it make. Vapour in

@@ -152,7 +152,9 @@ def test_ten_percent_ethanol_on_every_real_base(record_property):
     rise = real.rises(g.fluid, g.base)
     known = np.isfinite(rise)
     assert known.any(axis=1).all() and known.sum() > 110  # every fuel takes part, most at all three pressures
-    record_property("kPa", [float(np.nanmin(rise)) / 1e3, float(np.nanmean(rise)) / 1e3, float(np.nanmax(rise)) / 1e3])
+    record_property(
+        "kPa", [float(np.nanmin(rise)) / 1e3, float(np.nanmean(rise)) / 1e3, float(np.nanmax(rise)) / 1e3]
+    )
     outside = {(g.fuels[i], real.TARGETS[j]) for i, j in np.argwhere(known & ((rise < 7e3) | (rise > 9e3)))}
     assert outside <= {("5495", 55e3)}, outside
 
@@ -169,6 +171,8 @@ def test_ethers_left_in_lower_the_rise():
     known = np.isfinite(full)
     assert rich.sum() >= 10 and known.sum() >= 30
     assert (full[known] < base[known]).all() and (full[known] > 5e3).all()
-    per_percent = (base - full)[known] / (100.0 * np.broadcast_to(g.family(kept, "ether")[:, None], full.shape)[known])
+    per_percent = (base - full)[known] / (
+        100.0 * np.broadcast_to(g.family(kept, "ether")[:, None], full.shape)[known]
+    )
     assert ((per_percent > 100.0) & (per_percent < 220.0)).all(), per_percent  # 0.16 kPa a vol% on average
     assert ((bare - full)[known] > 0.0).all() and ((bare - full)[known] < 100.0).all()

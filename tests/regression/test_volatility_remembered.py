@@ -1,6 +1,29 @@
 """Volatility relations known from memory or from calculation: guards of the code, not proof."""
 
+# Where the acceptance list of the volatility tests is met (number of the list, what is asked, test):
+#  1 DVPE equations to 0.01 kPa, inverse    published/test_volatility_read: test_dvpe_of_astm_d5191 (read);
+#                                           here: test_dvpe_equations, test_inverse (EPA, CARB, EN from memory)
+#  2 triple expansion vector                regression/test_lab_pressures: test_triple_expansion_vector
+#  3 three D5191 fluids within 0.7 kPa      here: test_reference_fluids_of_d5191 (totals from memory)
+#  4 TVP > VP4 > VP10, DVPE < total, T20    regression/test_lab_ethanol: test_invariants; volatility/test_pressure_tests
+#  5 annex III within 1.0 kPa, 1 to 10 %    published/test_volatility_annex_iii: test_rise_follows_the_annex;
+#    and not with a wrong model             the same: test_the_annex_rejects_the_wrong_models
+#  6 E10/E15/E20 alike, E85 16-30 kPa down  regression/test_lab_ethanol: test_e10_e15_e20_cannot_be_told_apart,
+#                                           test_e85_lies_far_below; here: test_heavy_ethanol_shares
+#  7 T20: line less flash 0 to +5 K         regression/test_lab_ethanol: test_straight_line_against_the_flash
+#    pure liquid at its boiling point       volatility/test_cell: test_ratio_temperature_of_a_pure_liquid_is_its_boiling_point
+#    ideal binary by hand within 0.05 K     volatility/test_ideal_pair: test_temperature_for_a_ratio
+#    overfilled ratios refused              volatility/test_cell: test_ratio_temperature_refuses_small_ratios
+#    boils hard at T20; judges nothing      regression/test_lab_ethanol: test_boiling_hard_at_the_ratio_20_temperature;
+#                                           here: test_no_finding_is_judged_by_the_ratio_20_temperature
+#  8 VLI 1250 and 936; annex III at 4.5 %   published/test_volatility_read: test_vapour_lock_index, test_annex_iii
+# 12 D86 to TBP within 0.2 K                published/test_lab_interconversion: test_power_form
+#    API 1994 180.82/197.30, not 184.63     regression/test_lab_interconversion: test_gap_form_with_the_exponent_of_the_procedure;
+#                                           published/test_lab_interconversion: test_the_sheet_worked_with_another_exponent
+
 from __future__ import annotations
+
+from pathlib import Path
 
 import numpy as np
 import pytest
@@ -92,6 +115,17 @@ def test_driveability_index_in_both_units():
     degF = 1.5 * T10 + 3.0 * T50 + T90 + 2.4 * 10.0
     # 1.33 x 1.8 = 2.394 against 2.4: 0.06 degF at 10 % ethanol.
     assert DEGF * degC + 5.5 * 32.0 == pytest.approx(degF, abs=0.07)
+
+
+def test_no_finding_is_judged_by_the_ratio_20_temperature():
+    """At it a gasoline boils hard already: it is printed as information and no criterion, tank or line reads it."""
+    top = Path(__file__).parents[2]
+    judges = [path for floor in ("tank", "line", "site", "states", "screening") for path in (top / "screener" / floor).glob("*.py")]  # fmt: skip
+    users = {path.name for path in judges if any(word in path.read_text("utf-8") for word in ("ratio_temperature", "T20"))}
+    assert len(judges) > 20
+    assert users == {"information.py"}
+    criteria = (top / "data" / "criteria" / "criteria.toml").read_text("utf-8")
+    assert "V/L" not in criteria and "ratio 20" not in criteria
 
 
 THIRTEEN = {

@@ -56,7 +56,9 @@ def sweep(target, shares=ETHANOL, alcohol="ethanol"):
 
 def each(function, sign="+"):
     """A number per base, as text."""
-    return " / ".join("-" if np.isnan(v) else f"{v:{sign}.1f}" for v in (function(target) for target in BASES))
+    return " / ".join(
+        "-" if np.isnan(v) else f"{v:{sign}.1f}" for v in (function(target) for target in BASES)
+    )
 
 
 def trend_numbers():
@@ -113,7 +115,9 @@ def main():
               "| vol% | " + " | ".join(f"{100 * s:.0f}" for s in SHARES_OF_OTHERS) + " |", "|---|" + "---|" * SHARES_OF_OTHERS.size]  # fmt: skip
     for name in OTHERS:
         change = np.stack([trends.rise(target, name, SHARES_OF_OTHERS) for target in BASES])
-        lines.append(f"| {name} | " + " | ".join(" / ".join(f"{v:+.1f}" for v in column) for column in change.T) + " |")
+        lines.append(
+            f"| {name} | " + " | ".join(" / ".join(f"{v:+.1f}" for v in column) for column in change.T) + " |"
+        )
     lines += ["", "Published trends.", *TRENDS.format(**numbers).rstrip().splitlines()]
     FILE.write_text("\n".join(lines) + "\n", encoding="utf-8")
 

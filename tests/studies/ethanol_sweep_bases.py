@@ -114,7 +114,9 @@ def at_dvpe(fluid, volume, target):
     P, P_before = pressure(fluid, with_butane(b)), pressure(fluid, with_butane(before))
     met = P_before <= target
     for _ in range(STEPS):
-        slope = np.where(np.abs(b - before) > 1e-9, (P - P_before) / np.where(b == before, 1.0, b - before), 4e5)
+        slope = np.where(
+            np.abs(b - before) > 1e-9, (P - P_before) / np.where(b == before, 1.0, b - before), 4e5
+        )
         before, P_before = b, P
         b = np.clip(b + (target - P) / slope, 0.0, 0.3)
         P = pressure(fluid, with_butane(b))

@@ -35,7 +35,14 @@ from tests.studies.splash import SHARES, Splash
 FILE = Path(__file__).with_suffix(".md")
 T_ROOM = ZERO_CELSIUS + 21.1  # 70 degF
 BASES = (50e3, 60e3, 70e3)  # DVPE [Pa]
-PROFILES = ("4634", "6004", "2449", "4585", "5495", "4603")  # gasolines of tests/measured/headspace, aromatics 9 to 45 vol%
+PROFILES = (
+    "4634",
+    "6004",
+    "2449",
+    "4585",
+    "5495",
+    "4603",
+)  # gasolines of tests/measured/headspace, aromatics 9 to 45 vol%
 LOST = np.linspace(0.0, 0.08, 17)  # mass lost over mass charged, points of the weighing
 WAYS = ("all at once", "as one gas", "diffusing", "diffusing with drift")
 
@@ -130,7 +137,9 @@ def ethanol_lost(pair, way, lost=0.05):
     """Mass share of ethanol [-] in the first mass `lost` by the E10."""
     if way == "all at once":
         return float(at_once(pair, lost)[pair.ethanol])
-    found = open_evaporation(pair.fluid, T_ROOM, pair.blend, lost, mobility=mobility(pair, pair.blend, way)).require()
+    found = open_evaporation(
+        pair.fluid, T_ROOM, pair.blend, lost, mobility=mobility(pair, pair.blend, way)
+    ).require()
     return float(found.w_lost[0, pair.ethanol])
 
 
@@ -202,7 +211,9 @@ it is 1 to 3 % less gasoline; the heat of vaporisation of ethanol, taken from th
 def main():
     """Write the tables."""
     made = [("thirteen species", target, thirteen(target)) for target in BASES]
-    made += [(profile, target, published_gasoline(profile, target)) for target in BASES for profile in PROFILES]
+    made += [
+        (profile, target, published_gasoline(profile, target)) for target in BASES for profile in PROFILES
+    ]
     made = [one for one in made if one[2] is not None]
     lines = ["# What E10 loses first", "", "Made by `python -m tests.studies.ethanol_sweep_loss`.", "", *__doc__.splitlines()[6:], "",
              "Ethanol in the first 5 mass% lost, percent.", "", "| base | DVPE, kPa | " + " | ".join(WAYS) + " |", "|---|---|---|---|---|---|"]  # fmt: skip

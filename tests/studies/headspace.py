@@ -243,7 +243,9 @@ def fuel_lines(h, ln, index):
         number = np.isfinite(ln[i][h.light()]).sum()
         extra = [ln[i, h.names.index(n)] for n in ("MTBE", "ethanol")]
         cells = ["" if np.isnan(v) else f"{100 * np.expm1(v):+.0f}" for v in extra]
-        chosen = ("yes" if h.selected()[i] else "") + (" (earlier: yes)" if row["earlier_choice"] == "1" else "")
+        chosen = ("yes" if h.selected()[i] else "") + (
+            " (earlier: yes)" if row["earlier_choice"] == "1" else ""
+        )
         lines.append(f"| {fuel} | {row['region']}, {row['sampled']} | {f[i]:.3f} | {told[i]} | {number} | {100 * ideal[i]:.1f} | "
                      f"{100 * model[i]:.1f} | {chosen} | {cells[0]} | {cells[1]} | {h.P[i] / 1e3:.1f} |")  # fmt: skip
     return lines
