@@ -2,8 +2,8 @@
 
     python data/made_by/jet_stocks.py            rewrites columns species and stand_in of the CSV files named below
 
-A bin of a two-dimensional gas chromatogram holds every isomer of one class and carbon number. The rule, the
-same for every fuel and made without looking at any property of a fuel:
+A bin of a two-dimensional gas chromatogram holds every isomer of one class and carbon number. The rule is the
+same for every fuel and takes no property of a fuel:
 
 1. A bin boils at the mean boiling point, and has the mean density, of the isomers of its class and carbon number
    in the species table, provided the table holds `ENOUGH` of them. Paraffins and naphthenes with a quaternary carbon
