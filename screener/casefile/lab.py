@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Sequence
+from dataclasses import dataclass
 from functools import lru_cache
 
 from screener.casefile.collect import Values
@@ -22,33 +24,73 @@ _ROWS = {"vpcr": ("vpcr", "ratio", "temperature", "pressure"),
 _METHODS = {"dvpe_equation": "dvpe", "rvp_chamber": "rvp"}
 
 
-def read_liquid(values: Values, path: str, tables: Tables, recipe=None):
-    """The liquid of `blend` or `tank.contents`: its parts, its sheet, or the parts corrected to the sheet.
+@dataclass(frozen=True)
+class Stated:
+    """What a case says of one liquid: parts as a blend, a sheet, or both; path is 'blend' or 'tank.contents'."""
 
-    recipe takes the place of parts that are not in the values. None where there is none or it cannot be used; the faults are noted.
-    """
+    path: str
+    start: object | None
+    sheet: object | None
+
+
+def read_liquid(values: Values, path: str, tables: Tables, recipe=None) -> Stated:
+    """What the values say of the liquid at `path`; faults are noted. recipe takes the place of parts."""
     start = recipe if recipe is not None else read_blend(values, path, tables)
     sheet = read_sheet(values, f"{path}.lab")
     # Parts that were given and cannot be read are not passed over: the sheet alone is another question.
     heads = (f"{path}.parts", f"{path}.basis", f"{path}.at", f"{path}.scale")
     given = f"{path}.parts" in values.present or any(f.path.startswith(heads) for f in values.faults)
-    if sheet is None or (start is None and given):
-        return start
+    if not given:
+        for name in ("basis", "at"):  # how shares count says nothing where there are none
+            taken = values.taken.get(f"{path}.{name}")
+            if taken is not None and taken.quality == "default":
+                del values.taken[taken.path]
+    return Stated(path, start, None if start is None and given else sheet)
+
+
+def made_liquids(values: Values, stated: Sequence[Stated], tables: Tables) -> list:
+    """A blend for each; the refusals of all sheets are noted.
+
+    A fit takes seconds, so beside other faults it is not begun: then only what a sheet alone lacks is told.
+    """
+    others = bool(values.faults)
+    made = []
+    for one in stated:
+        try:
+            if one.sheet is None:
+                made.append(one.start)
+            elif not others:
+                made.append(_fit(values, one, tables))
+            elif one.start is None:
+                _begin(values, one)
+        except InputError as error:
+            values.complain(error)
+    return made
+
+
+def _begin(values: Values, one: Stated) -> None:
+    """Only the start of a fit; InputError where the sheet alone does not allow one."""
+    from screener.blends.lab_start import start_of
+
     try:
-        return _fit(values, path, sheet, start, tables)
+        start_of(one.sheet, None)
     except InputError as error:
-        values.complain(error)
-        return None
+        raise _refused(values, one, error) from error
 
 
-def _fit(values: Values, path: str, sheet, start, tables: Tables):
+def _fit(values: Values, one: Stated, tables: Tables):
     """The blend that reproduces the sheet; InputError when its numbers contradict each other."""
-    made = _fitted(tables.lab, sheet, start)
-    if not isinstance(made, InputError):
-        return made
-    density = values.entered(f"{path}.lab.density") if isinstance(made.value, float) else ""
-    place = f"{path}.lab.density" if density else f"{path}.lab"
-    raise InputError(place, density or "the sheet", made.problem, made.hint)
+    made = _fitted(tables.lab, one.sheet, one.start)
+    if isinstance(made, InputError):
+        raise _refused(values, one, made)
+    return made
+
+
+def _refused(values: Values, one: Stated, error: InputError) -> InputError:
+    """The refusal of a sheet with its place in the case."""
+    density = values.entered(f"{one.path}.lab.density") if isinstance(error.value, float) else ""
+    place = f"{one.path}.lab.density" if density else f"{one.path}.lab"
+    return InputError(place, density or "the sheet", error.problem, error.hint)
 
 
 @lru_cache(maxsize=32)

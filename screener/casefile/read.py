@@ -11,7 +11,7 @@ from screener.casefile.checks import check
 from screener.casefile.collect import collect
 from screener.casefile.files import read_file, write_file
 from screener.casefile.keys import order
-from screener.casefile.lab import read_liquid
+from screener.casefile.lab import made_liquids, read_liquid
 from screener.casefile.toml_text import parse_toml
 from screener.casefile.values import Tables, shipped_tables
 from screener.ground.errors import CaseErrors, InputError
@@ -34,11 +34,13 @@ def read_case(source: str | Path | CaseText, *, tables: Tables | None = None) ->
         raise CaseErrors([error]) from error
     tables = tables or shipped_tables()
     values = collect(document, tables)
-    blend = read_liquid(values, "blend", tables)
-    heel = read_liquid(values, "tank.contents", tables) if "tank.contents" in values.present else None
+    paths = ["blend", *(["tank.contents"] if "tank.contents" in values.present else [])]
+    stated = [read_liquid(values, path, tables) for path in paths]
     check(values)
+    liquids = made_liquids(values, stated, tables)
     if values.faults:
         raise CaseErrors(sorted(values.faults, key=lambda fault: order(fault.path)))
+    blend, heel = (*liquids, None)[:2]
     from screener.casefile.build import build
 
     return build(values, blend, heel, source=place, digest=hashlib.sha256(text.encode("utf-8")).hexdigest())

@@ -8,7 +8,7 @@ from pathlib import Path
 from screener.casefile.collect import collect
 from screener.casefile.files import read_file
 from screener.casefile.keys import order
-from screener.casefile.lab import read_liquid
+from screener.casefile.lab import made_liquids, read_liquid
 from screener.casefile.toml_text import parse_toml
 from screener.casefile.values import Tables, shipped_tables
 from screener.ground.errors import CaseErrors, InputError
@@ -39,8 +39,8 @@ def read_sheet_file(path: str | Path, start=None, *, tables: Tables | None = Non
     tables = tables or shipped_tables()
     values = collect({"blend": blend}, tables)
     values.faults = [fault for fault in values.faults if fault.path.startswith("blend")]
-    made = read_liquid(values, "blend", tables, start)
+    made = made_liquids(values, [read_liquid(values, "blend", tables, start)], tables)
     if values.faults:
         faults = sorted(values.faults, key=lambda fault: order(fault.path))
         raise CaseErrors([fault.at(fault.path.removeprefix("blend.")) if alone else fault for fault in faults])
-    return made
+    return made[0]

@@ -261,5 +261,5 @@ def _class(liquid: Liquid, standard: str, why: str) -> Answer:
     if met:
         return Answer(key, label, None, "", by=by, text=", ".join(match.name for match in met))
     nearest = min(found, key=lambda match: len(match.missed))
-    text = say("quick", "no_class", name=nearest.name, missed="; ".join(nearest.missed))
-    return Answer(key, label, None, "", by=by, text=text)
+    missed = say("quick", "no_class", name=nearest.name, missed="; ".join(nearest.missed))
+    return Answer(key, label, None, "", by=f"{missed}; {by}", text=say("quick", "none"))

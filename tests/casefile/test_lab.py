@@ -87,21 +87,30 @@ def test_the_heel_has_a_sheet_of_its_own(parts, tables):
     echo = {one.path: one for one in case.inputs}
     assert echo["tank.contents.lab.dvpe"].quality == "certificate"
     assert echo["tank.contents.lab.dvpe_equation"].quality == "default"
+    assert "blend.at" not in echo and ("tank.contents.basis" in echo) == bool(parts)
     assert "tank.contents.lab.rvp_chamber" not in echo, "a method of a number that is not given is no input"
 
 
-def test_refusals_of_both_sheets_come_at_once_with_all_other_faults(tables):
+def test_refusals_of_both_sheets_come_at_once(tables):
     def refuse(sheet, start):
         raise InputError("lab", None, f"numbers contradict each other at {sheet.density_15:g}", "each within 3")
 
-    own, _ = telling(tables, refuse)
-    text = SHEET + TANK.replace(
-        '[tank]', '[tank]\nshell_diameter = "2 km"') + HEEL.format(parts="")  # fmt: skip
+    own, asked = telling(tables, refuse)
     with pytest.raises(CaseErrors, match="blend") as caught:
-        read_case(text, tables=own)
+        read_case(SHEET + TANK + HEEL.format(parts=""), tables=own)
     found = {fault.path: fault for fault in caught.value.faults}
-    assert set(found) == {"blend.lab", "tank.contents.lab", "tank.shell_diameter"}
+    assert set(found) == {"blend.lab", "tank.contents.lab"} and len(asked) == 2
     assert "at 742" in found["blend.lab"].problem and "at 735" in found["tank.contents.lab"].problem
+
+
+def test_beside_other_faults_no_fit_is_begun_but_what_a_sheet_lacks_is_told(tables):
+    own, asked = telling(tables)
+    tank = TANK.replace("[tank]", '[tank]\nshell_diameter = "2 km"')
+    with pytest.raises(CaseErrors, match="blend|tank") as caught:
+        read_case(SHEET + tank + HEEL.format(parts=""), tables=own)
+    found = {fault.path: fault.problem for fault in caught.value.faults}
+    assert set(found) == {"tank.shell_diameter", "tank.contents.lab"} and not asked
+    assert "three points of the distillation" in found["tank.contents.lab"]
 
 
 def test_a_sheet_is_fitted_once_and_a_refusal_is_remembered_too(tables):
