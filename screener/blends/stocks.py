@@ -106,7 +106,7 @@ def stocks() -> tuple[Stock, ...]:
     data/stocks, one passport per stock.
     """
     folder = data_folder() / "stocks"
-    return tuple(_read(path.stem) for path in sorted(folder.glob("*.csv")))
+    return tuple(_read(path.stem) for path in sorted(folder.glob("*.csv"), key=lambda p: p.stem))
 
 
 def stock_names() -> tuple[str, ...]:

@@ -166,6 +166,38 @@ def _stock_pairs(item, sheet, system: str):
         ("note", item.note),
     )
     yield from ((f"{label}, computed", text) for label, text in _figures(sheet, system))
+    yield from ((f"{label}, computed", text) for label, text in _further_figures(item, sheet, system))
+    yield from _published_pairs(item, system)
+
+
+def _further_figures(item, sheet, system: str):
+    """Label and text of computed figures that the table of all stocks has no room for."""
+    from screener.blends import Blend
+    from screener.fire import flash_point
+
+    blend = Blend.of({f"stock:{item.name}": 1.0})
+    flash = float(flash_point(blend.fluid, blend.z).T[0])
+    for label, value, unit in (
+        ("true vapour pressure at 37.8 degC", sheet.TVP, "Pa"),
+        ("T10", sheet.T10, "K"),
+        ("T90", sheet.T90, "K"),
+        ("flash point", flash, "K"),
+    ):
+        yield label, numbers.quantity(value, unit, system).text
+
+
+def _published_pairs(item, system: str):
+    """Label and text of every published number with the computed one beside it."""
+    from screener.blends import published_beside_computed
+    from screener.blends.stocks import PUBLISHED_NUMBERS
+
+    for one in published_beside_computed(item):
+        unit = PUBLISHED_NUMBERS[one.published.number]
+        value, computed = (
+            numbers.quantity(v, unit, system).text for v in (one.published.value, one.computed)
+        )
+        text = f"{value}; computed {computed}, {one.in_R:+.1f} R ({one.published.source})"
+        yield f"{one.name}, published", text
 
 
 def criteria(arguments) -> int:
