@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 import pytest
 
 from screener.blends import Blend, LabSheet
+from screener.blends.measured import BLIND, pressure_factor, told
 from screener.ground.errors import InputError
 from screener.volatility import dvpe, true_vapour_pressure
 from tests.studies.lab_sheets import hidden
@@ -66,6 +69,30 @@ def test_measured_pressure_and_its_ratio(gasoline):
     own = (62.0e3 + 3.78e3) / 0.965 - test.P_air[0]
     assert (one.what, one.value, one.T) == ("DVPE", 62e3, pytest.approx(310.928, abs=1e-3))
     assert one.ratio == pytest.approx(own / test.P_vapour[0], rel=1e-6)
+    # R of the DVPE, through the slope 0.965 of its equation, over the fuel's own vapour in the cell.
+    assert one.doubt == pytest.approx(one.reproducibility / 0.965 / test.P_vapour[0], rel=1e-6)
+    assert one.misfit == pytest.approx(gasoline.report.misfits["DVPE"])
+
+
+def test_every_number_of_the_sheet_stays_with_the_blend(gasoline):
+    rows = [(f.what, f.value, f.computed, f.reproducibility) for f in gasoline.figures]
+    assert rows == list(gasoline.report.residuals)
+    assert [f.misfit for f in gasoline.figures] == pytest.approx(list(gasoline.report.misfits.values()))
+    assert gasoline.figure("density_15").value == 742.0
+    assert gasoline.figure("distillation", 0.9).value == 165 + C
+    assert gasoline.figure("distillation") is None and gasoline.figure("flash_point") is None
+    assert hash(gasoline) == hash(replace(gasoline)) and gasoline == replace(gasoline)
+    mixed = gasoline.mixed_with(Blend.of({"species:toluene": 1.0}), volume=1.0, other_volume=1.0)
+    assert mixed.figures == ()
+
+
+def test_the_test_of_a_jet_fuel_tells_no_factor():
+    """R of a DVPE of 1.5 kPa is 1.27 kPa: the ratio would be noise, and the range carries R instead."""
+    jet = Blend.of({"stock:jet kerosene": 1.0})
+    fitted = Blend.from_lab(LabSheet(density_15=jet.density_15, dvpe=1.5e3), jet)
+    (one,) = fitted.measured
+    assert one.doubt > BLIND and told(fitted.measured) is None
+    assert pressure_factor(fitted.measured) == (1.0, one.doubt)
 
 
 def test_a_mixture_measures_nothing(gasoline):
