@@ -10,7 +10,7 @@ VOLATILITY = (
     "volume_correction", "own_volume_species", "dvpe_equations",
     "classes", "vapour_lock_classes", "ethanol_allowance",
     "distillation_power", "distillation_gaps", "d6378_bias", "rvpe_factors", "true_from_reid", "d86_slopes",
-    "common_limits", "season_limits", "ethanol_fuel_classes", "reproducibility",
+    "common_limits", "season_limits", "ethanol_fuel_classes", "reproducibility", "compressibility",
 )  # fmt: skip
 TABLES = (
     *(f"volatility/{name}" for name in VOLATILITY),
