@@ -130,17 +130,18 @@ def steps(found) -> dict:
 
 
 @pytest.mark.parametrize(
-    ("shares", "key", "knob"),
+    ("shares", "key", "knob", "R"),
     [
-        ({"n-butane": 0.12, "isopentane": 0.30, "n-hexane": 0.28, "toluene": 0.30}, "boiling.surface", "surface"),
-        (HEAVY, "vapour-pressure.legal.us-40cfr60-kb", "monthly"),
-        ({"n-butane": 0.40, "isopentane": 0.30, "toluene": 0.30}, "receipt.flash", "receipt"),
+        ({"n-butane": 0.12, "isopentane": 0.30, "n-hexane": 0.28, "toluene": 0.30}, "boiling.surface", "surface", 0.01),
+        (HEAVY, "vapour-pressure.legal.us-40cfr60-kb", "monthly", 0.20),
+        ({"n-butane": 0.40, "isopentane": 0.30, "toluene": 0.30}, "receipt.flash", "receipt", 0.01),
     ],
 )
-def test_headroom_of_a_pressure_reaches_what_it_promises(shares, key, knob):
+def test_headroom_of_a_pressure_reaches_what_it_promises(shares, key, knob, R):
+    """R is the reproducibility: the high end lies above the value by that, or by the method spread of 5 %."""
     liquid = blend(shares)
-    f = of(screen(case(blend=with_pressure(liquid, F, R=0.01), tank=BARE)))[key]
-    ways, target = steps(f), (f.limit_high - f.asked_gap) / 1.05
+    f = of(screen(case(blend=with_pressure(liquid, F, R), tank=BARE)))[key]
+    ways, target = steps(f), (f.limit_high - f.asked_gap) / (1.0 + max(R, 0.05))
     T = ways[f"{knob}-temperature"]
     assert F * bubble_pressure(liquid.fluid, T, liquid.z).P[0] == pytest.approx(target, rel=SOLVED)
     if key == "boiling.surface":

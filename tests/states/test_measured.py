@@ -323,3 +323,13 @@ def test_lane_by_lane_equals_the_batch():
             # Rounding, and which lanes iterate together.
             assert getattr(alone.measured, name)[0] == pytest.approx(getattr(together.measured, name)[i], rel=1e-9)
         assert alone.P_hot[0] == pytest.approx(together.P_hot[i], rel=1e-9)
+
+
+def test_the_second_liquid_is_looked_for_where_the_model_itself_is_liquid(monkeypatch):
+    """At its own bubble pressure: below it, as with a measured one of 0.7 of it, the model's liquid would boil."""
+    from screener.states import lanes as floor
+
+    asked, real = [], floor.second_liquids
+    monkeypatch.setattr(floor, "second_liquids", lambda *given: asked.append(given[4]) or real(*given))
+    table([case(blend=b, tank=BARE) for b in (PLAIN, with_pressure(PLAIN, 0.7))])
+    assert asked[0][1, RECEIPT] == pytest.approx(asked[0][0, RECEIPT], rel=EXACT)
