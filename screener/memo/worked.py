@@ -9,6 +9,7 @@ from screener.memo.document import Block, Bullets, Equation, Paragraph, Section,
 from screener.memo.finding_text import finding_numbers
 from screener.memo.frame import Frame
 from screener.memo.wording import fill, words
+from screener.screening.finding import MEASURED
 
 _SYSTEM = "si"  # one system, so that a calculator needs no conversion factors
 _FIELD = re.compile(r"\{([^{}]+)\}")
@@ -33,6 +34,8 @@ def _worked(finding, inputs) -> list[Block]:
     governing = _by_criterion("equations", finding)
     if governing:
         blocks.append(Paragraph(fill("worked", "governing", title=finding.title, text=governing)))
+    if any(fact.label.endswith(MEASURED) for fact in finding.facts):
+        blocks.append(Paragraph(f"{finding.title}: {words('worked', 'measured')}"))
     if finding.facts:
         rows = tuple((f.label, numbers.anything(f.value, f.unit, _SYSTEM), f.note) for f in finding.facts)
         columns = tuple(words("worked", "facts_columns"))

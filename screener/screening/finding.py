@@ -18,6 +18,7 @@ Evidence = Literal[
 ]
 
 WORST_FIRST: tuple[Verdict, ...] = ("beyond", "unknown", "near", "room", "skipped")
+MEASURED = ", measured"  # end of the label of a fact that a laboratory sheet holds
 MARKS: dict[Verdict, str] = {"room": ".", "near": "~", "beyond": "!", "unknown": "?", "skipped": "-"}
 # A limit with one of these marks was read in its source and can give `room`.
 # 'user' is a limit the user entered with the case (a site rule, a data sheet).

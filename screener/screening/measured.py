@@ -5,7 +5,7 @@ from __future__ import annotations
 from screener.blends.measured import pressure_factor, told
 from screener.ground.constants import ZERO_CELSIUS
 from screener.screening.context import Context
-from screener.screening.finding import Fact
+from screener.screening.finding import MEASURED, Fact
 from screener.screening.wording import say
 from screener.states.lanes import HEEL, RECEIPT
 
@@ -33,7 +33,7 @@ def pressure_facts(context: Context, k: int) -> tuple[Fact, ...]:
         taken = one or blend.measured[0]
         note = say("note", "pressure-method", R=_kPa(taken.reproducibility)) if one else say("note", "no-factor-told")
         facts += [
-            Fact(f"{taken.what} of the {name}, measured", taken.value, "Pa", note),
+            Fact(f"{taken.what} of the {name}{MEASURED}", taken.value, "Pa", note),
             Fact(f"{taken.what} of the {name}, computed", taken.computed, "Pa"),
         ]
     if not facts:
@@ -52,7 +52,7 @@ def flash_facts(context: Context, k: int) -> tuple[Fact, ...]:
             continue
         note = say("note", "flash-method", R=f"{found.reproducibility:.1f} K")
         facts += [
-            Fact(f"flash point of the {name}, measured", found.value, "K",
+            Fact(f"flash point of the {name}{MEASURED}", found.value, "K",
                  note if k in (RECEIPT, HEEL) else say("note", "flash-shift")),
             Fact(f"flash point of the {name}, computed", found.computed, "K"),
         ]  # fmt: skip

@@ -340,6 +340,9 @@ def test_memo_and_its_json_carry_the_difference(both):
         assert "factor on computed vapour pressures" in text
         assert "slope of the equation" in text
         assert f"{TEST} of the receipt, measured" in text
+        # Section 14 says so beside the governing equation of each such finding, and of no other.
+        assert text.count("every K_i is the computed one times the factor below") == len(RESTING)
+    assert "times the factor below" not in write_markdown(build_memo(both[0], **memo_arguments()))
 
 
 def test_other_measured_pressures_stand_beside():
