@@ -44,7 +44,11 @@ def equation_at(T, ln_P, Tc, Pc):
     ln_P (3, n) at T - STEP, T and T + STEP.
     """
     three = np.stack([T - STEP, T, T + STEP])
-    alpha, _ = pure.alpha_at_saturation(three / Tc, np.exp(ln_P) / Pc)
+    with np.errstate(all="ignore"):
+        return _equation_at(T, ln_P, *pure.alpha_at_saturation(three / Tc, np.exp(ln_P) / Pc), Tc, Pc)
+
+
+def _equation_at(T, ln_P, alpha, _, Tc, Pc):
     a = pure.OMEGA_A / pure.OMEGA_B * alpha[1] * Tc / T
     B = pure.OMEGA_B * np.exp(ln_P[1]) * Tc / (Pc * T)
     liquid, vapour = pure.liquid_root(a, B), pure.vapour_root(a, B)

@@ -34,10 +34,11 @@ SOLID = 5.0  # [K] a one-value table says nothing of a substance that melts this
 RANGE, POINTS = (240.0, 370.0), 7  # [K] where recommended heat capacities are used, at how many; our choice
 YIELDS = 0.03  # [-] weight of a reference equation's heat capacity beside its vapour pressure; our choice
 SLIP = 0.03  # [-] constants further apart than this are both left out; our choice
-# A one-value table is continued: liquid less ideal-gas heat capacity stays as it is. Two in three hydrocarbons
-# (ethers and ketones likewise) do so within 2 % of the liquid's at 250 K and 1.5 % at 330 K, alcohols within 9 %
+# A one-value table is continued: liquid less ideal-gas heat capacity stays as it is. Two in three hydrocarbons,
+# ethers and ketones do so within 2 % of the liquid's at 250 K and 1.5 % at 330 K, alcohols and esters within 9 %
 CONTINUED_TO = 250.0, 330.0  # [K]
-SHAPE = {"hydrocarbon": 0.02, "other": 0.09}  # [-]
+SHAPE, SHAPE_OTHER = 0.02, 0.09  # [-]
+OTHER = {14, 15, 16, 21, 22, 77, 81, 82}  # subgroups of modified UNIFAC with hydroxyl or ester
 LIQUID = 1.05, 2.6  # [-] a liquid's heat capacity over its vapour's lies within; our choice, 1.2 to 2.3 are met
 
 
@@ -79,8 +80,10 @@ def thermal(cas, MW, Tc, cp_ideal):
     import chemicals
     from thermo import EnthalpyVaporization, HeatCapacityLiquid
 
-    _, formula, *_ = library.identity(cas)
-    shape = SHAPE["other" if "O" in formula else "hydrocarbon"]
+    _, formula, _, inchi_key, _ = library.identity(cas)
+    groups = set(library.group_counts(inchi_key))
+    plain = "O" not in formula or (groups and not groups & OTHER)
+    shape = SHAPE if plain else SHAPE_OTHER
     with warnings.catch_warnings():
         warnings.simplefilter("ignore")
         heat = EnthalpyVaporization(CASRN=cas, Tc=Tc, extrapolation=None)

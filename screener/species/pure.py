@@ -19,6 +19,7 @@ from screener.ground.constants import R
 
 OMEGA_A = 0.457235528921382  # exact root of the critical conditions of Peng and Robinson 1976, recomputed
 OMEGA_B = 0.0777960739038885  # the same
+STILL = 5e-16  # [-] a root that moves by less than this has arrived: two rounding errors
 D1, D2 = 1.0 - np.sqrt(2.0), 1.0 + np.sqrt(2.0)
 U_CRITICAL = 0.307401308698703 / OMEGA_B  # v/b at the critical point, from its exact Zc
 
@@ -50,7 +51,9 @@ def liquid_root(a, B, steps=80):
         p, dp = _pressure(u, a)
         step = (p - B) / dp
         new = np.where(dp < 0.0, u - step, u * 0.9)
-        u = np.clip(new, 1.0 + 0.2 * (u - 1.0), 2.0 * u)
+        last, u = u, np.clip(new, 1.0 + 0.2 * (u - 1.0), 2.0 * u)
+        if not np.any(np.abs(u - last) > STILL * last):
+            break
     p, dp = _pressure(u, a)
     good = (np.abs(p - B) <= 1e-9 * np.maximum(B, 1e-3)) & (dp < 0.0)
     return np.where(good, u, np.nan)
@@ -62,7 +65,9 @@ def vapour_root(a, B, steps=80):
     for _ in range(steps):
         p, dp = _pressure(u, a)
         new = np.where(dp < 0.0, u - (p - B) / dp, 1.3 * u)
-        u = np.clip(new, 1.0 + 0.2 * (u - 1.0), 2.0 * u)
+        last, u = u, np.clip(new, 1.0 + 0.2 * (u - 1.0), 2.0 * u)
+        if not np.any(np.abs(u - last) > STILL * last):
+            break
     p, dp = _pressure(u, a)
     good = (np.abs(p - B) <= 1e-9 * B) & (dp < 0.0)
     return np.where(good, u, np.nan)

@@ -228,7 +228,7 @@ def _fit(chosen, others, rejected, Tc, Pc, Tb, by_hand, thermal=None):
         words.append("chosen by hand")
     if spread is None or (by_heats and len(gaps) < 2 and not denied):
         words.append("no second curve within 250-350 K")
-    elif spread > 0.03:
+    if spread is not None and spread > 0.03:
         words.append(f"{worst} differs by {100 * spread:.1f} %")
     if min([c.low for c, _ in others] + [chosen.low]) >= 300.0:
         words.append("no curve reaches below 300 K")

@@ -1,8 +1,9 @@
 """Heats of vaporisation, liquid heat capacities, pump work and ethanol gasoline against reference values.
 
 *_sat.csv and n-octane_compressed_and_pump.csv hold values computed from the reference
-equation named in each file's head (REFERENCES.md). Run with -s to see the table; the same
-for every species of the tables, with all references there are, is tests/studies/caloric_species.md.
+equation named in each file's head (REFERENCES.md). Run with -s to see the table. Every species of the
+tables is held against all references there are (tests/studies/caloric_species.md lists them): those outside
+an aim are named below, each with the rule that speaks against its reference.
 """
 
 from __future__ import annotations
@@ -17,6 +18,7 @@ from screener.blends import Blend
 from screener.equilibrium import Fluid, caloric, flash_ps, heat_of_vaporisation
 from screener.ground.constants import R
 from screener.species import find
+from tests.studies.caloric_species import cause, lines_of_homologues, rows, short
 
 FOLDER = Path(__file__).parent / "pure"
 TABLES = sorted(path.stem.removesuffix("_sat") for path in FOLDER.glob("*_sat.csv"))
@@ -49,6 +51,57 @@ def test_heat_of_vaporisation_and_liquid_heat_capacity(name):
     )
     assert np.mean(np.abs(heat)) <= HEAT.get(one.family, 2.0)
     assert np.mean(np.abs(capacity)) <= CAPACITY.get(one.family, 4.0)
+
+
+# Species outside an aim, and which rule of tests/studies/caloric_species.py (`cause`) denies the reference; "" where
+# none does and our curve may be the one that is wrong. A species that comes in or leaves must be seen.
+OUTSIDE = {
+    # naphthenes and olefins: published vapour pressures across 25 degC against one heat at 25 degC; the handbook
+    # has the two 3-methyl-2-pentenes exchanged against the vapour pressures
+    "cis-1,3-dimethylcyclohexane": "vapour pressures",
+    "isoprene": "vapour pressures",
+    "trans-3-methyl-2-pentene": "tables, vapour pressures",
+    "hexylcyclohexane": "tables, vapour pressures",
+    "cis-2-octene": "homologues",
+    "trans-2-octene": "homologues",
+    # the collection of a group-contribution paper is 2 to 4 % above the alkylbenzenes of the handbook
+    "o-cymene": "homologues",
+    "2-propyltoluene": "homologues",
+    "3-propyltoluene": "homologues",
+    "4-propyltoluene": "homologues",
+    "1,4-diethylbenzene": "homologues",
+    "1,2-dimethyl-3-ethylbenzene": "homologues",
+    "1,2-dimethyl-4-ethylbenzene": "homologues",
+    "1,3-dimethyl-2-ethylbenzene": "homologues",
+    "1,3-dimethyl-4-ethylbenzene": "homologues",
+    "1,3-dimethyl-5-ethylbenzene": "homologues",
+    "1,4-dimethyl-2-ethylbenzene": "homologues",
+    # the heat of one handbook against its own vapour pressures, or against another table
+    "1,2,3,4-tetramethylbenzene": "homologues, tables, vapour pressures",
+    "1-methylnaphthalene": "vapour pressures",
+    "2-ethylnaphthalene": "vapour pressures",
+    "biphenyl": "solid",
+    # nothing but the one table: the curve may be wrong
+    "1-undecene": "",
+    "m-cymene": "",
+    "1,3-diisopropylbenzene": "",
+    "2-methylnaphthalene": "",
+}
+
+
+def test_every_species_is_within_its_aim_or_named():
+    table = rows()
+    homologues = lines_of_homologues()
+    found = {row[0]: cause(row, homologues) for row in table if short(row)}
+    heat = [row[2][0] for row in table if row[2]]
+    capacity = [row[3][0] for row in table if row[3]]
+    print(f"{len(table)} species: heat of vaporisation known of {len(heat)}, mean {np.mean(heat):.2f} %; "
+          f"liquid heat capacity of {len(capacity)}, mean {np.mean(capacity):.2f} %; {len(found)} outside an aim")  # fmt: skip
+    assert found == OUTSIDE
+    assert len(table) >= 270 and len(heat) >= 260 and len(capacity) >= 150
+    # the misses of those named stay small too: nobody is far off
+    worst = max(row[2][0] for row in table if row[2])
+    assert worst <= 6.0  # 1,3-diisopropylbenzene 5.4 %
 
 
 def test_reversible_pump_work_of_n_octane():

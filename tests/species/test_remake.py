@@ -29,8 +29,13 @@ def stored(table):
         return {row["cas"]: row for row in csv.DictReader(file)}
 
 
-# a reference equation, an alcohol, a continued curve with a handbook density, a gas, one chosen by hand
-@pytest.mark.parametrize("name", ["n-butane", "1-butanol", "3-methyloctane", "nitrogen", "n-tetradecane"])
+# a reference equation, an alcohol, a continued curve with a handbook density, a gas, one chosen by hand; cold ends
+# by both heats, by one, by none
+@pytest.mark.parametrize(
+    "name",
+    ["n-butane", "1-butanol", "3-methyloctane", "nitrogen", "n-tetradecane", "2-methylheptane", "o-cymene", "propylene",
+     "2-methylundecane"],
+)
 def test_rows_are_remade(script, name):
     row = next(r for r in script.identity() if r["name"] == name)
     for table, values in script.one(row).items():

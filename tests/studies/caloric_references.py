@@ -74,3 +74,22 @@ def _first(prop, methods, T):
         if at.size:
             return at, np.array([prop.calculate(t, method) for t in at]), method
     return None
+
+
+@lru_cache
+def _heat_tables(cas, Tc):
+    from thermo import EnthalpyVaporization
+
+    with warnings.catch_warnings():
+        warnings.simplefilter("ignore")
+        return EnthalpyVaporization(CASRN=cas, Tc=Tc, extrapolation=None)
+
+
+def tables_at_25(one):
+    """Heat of vaporisation at 25 degC [J/mol] of every table of HEATS that holds it, by table."""
+    prop, found = _heat_tables(one.cas, one.Tc), {}
+    for method in HEATS:
+        low, high = prop.T_limits.get(method, (1.0, 0.0))
+        if low <= 298.15 <= high:
+            found[method] = float(prop.calculate(298.15, method))
+    return found
