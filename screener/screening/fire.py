@@ -15,7 +15,8 @@ from screener.screening.fire_words import ways_in
 from screener.screening.measured import flash_caps, flash_facts, measured_note, pressure_facts
 from screener.screening.vapour import FLOATING, _barometer_missing
 from screener.screening.wording import lines, say
-from screener.states.fire import COLD, FLASH_SPREAD, HOT, INSIDE, RICH
+from screener.states.fire import COLD, HOT, INSIDE, RICH
+from screener.states.flash import FLASH_SPREAD
 from screener.states.lanes import BEST, HEEL, RECEIPT
 
 ESTIMATES_CARRIED = 0.10  # share of the vapour that may rest on estimated limits before it caps a verdict

@@ -23,7 +23,8 @@ from screener.screening.finding import Fact, Information
 from screener.screening.health import hatch_information
 from screener.screening.wording import say
 from screener.species import find
-from screener.states.fire import FLASH_SPREAD, INSIDE, LEAN, RICH
+from screener.states.fire import INSIDE, LEAN, RICH
+from screener.states.flash import FLASH_SPREAD
 from screener.states.ladder import vapour_ladder
 from screener.states.lanes import BEST, HEEL, LIQUIDS, RECEIPT
 from screener.states.measured import mixed, own

@@ -21,9 +21,9 @@ from screener.states.fire import (
     STEPS,
     coldest_liquid,
     fire_states,
-    flash_lanes,
     space_lanes,
 )
+from screener.states.flash import flash_lanes
 from screener.states.inputs import gather
 from screener.states.ladder import vapour_ladder
 from screener.states.lanes import BEST, HEEL, HIGH, RECEIPT

@@ -12,7 +12,8 @@ from screener.blends.measured import MeasuredPressure, measured_sheet, pressure_
 from screener.fire import flash_point
 from screener.ground.constants import GRAVITY
 from screener.states.breathing import tank_volume
-from screener.states.fire import FLASH_SPREAD, STEPS, flash_lanes, space_lanes
+from screener.states.fire import STEPS, space_lanes
+from screener.states.flash import FLASH_SPREAD, flash_lanes
 from screener.states.inputs import gather
 from screener.states.ladder import vapour_ladder
 from screener.states.lanes import HEEL, HIGH, LOW, NORMAL, RECEIPT, evaluate
@@ -246,6 +247,8 @@ def test_a_mixture_follows_a_lower_flash_point_only():
         assert f.T_low[0, k] == pytest.approx(plain.T_low[0, k] - 6.0, abs=1e-6)
         assert f.T_high[0, k] == pytest.approx(plain.T_high[0, k], abs=1e-6)
         assert f.T[1, k] == pytest.approx(plain.T[0, k], abs=1e-6)
+    wide = flash_lanes(table([jet_case(at, at, 9.0, tank=gas_oil)]))
+    assert wide.T_low[0, 2:] == pytest.approx(plain.T_low[0, 2:] - [0.0, 4.0, 4.0], abs=1e-6)
     assert f.T[:, [HEEL, LOW]] == pytest.approx(np.full((2, 2), plain.T[0, HEEL]), abs=1e-6)  # no receipt in them
 
 
