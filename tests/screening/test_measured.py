@@ -314,6 +314,18 @@ def test_contamination_starts_at_the_measured_flash_point():
     assert all(b < a - 0.02 for a, b in zip(own[2:], shifted[2:]))
 
 
+def test_the_space_over_a_contaminated_liquid_carries_the_factor():
+    """Kerosene at 30 degC with a little of a light liquid: at which share it first burns, from three tables."""
+    read = site(liquid_temperature=Reading(ZERO + 30.0, "2026-07-14"))
+    first = []
+    for f in (0.6, 1.0, 1.45):
+        heel = tank(contents=replace(tank().contents, blend=with_pressure(PLAIN, f, 0.3)))
+        rows = [i.facts for i in screen(replace(kerosene(site=read), tank=heel)).information
+                if i.facts and "%" in i.facts[0].label and i.facts[0].value > ZERO + 20.0]  # fmt: skip
+        first.append([fact.note.endswith("flammable") for fact in rows[0]].index(True))
+    assert first[0] > first[1] > first[2]
+
+
 # What is printed
 
 
