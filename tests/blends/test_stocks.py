@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+import runpy
 from functools import lru_cache
 
 import numpy as np
@@ -227,3 +228,24 @@ def test_crude_by_the_blend_model_and_by_the_plain_equation():
     assert pressures["PR"] == pytest.approx(published, abs=4e3)
     assert pressures["auto"] == pytest.approx(published, abs=5.2e3)
     assert 0.85 < pressures["auto"] / pressures["PR"] < 0.95
+
+
+RULE = data_folder() / "made_by" / "jet_stocks.py"
+
+
+def test_jet_fuels_follow_the_isomer_rule():
+    """The species of every bin are those that data/made_by/jet_stocks.py chooses; a cut to 0.5 K and 1 kg/m3."""
+    rule = runpy.run_path(str(RULE), run_name="not_main")
+    fuels = {**dict.fromkeys(rule["FUELS"], True), rule["OF_SPECIES"]: False}
+    for stem, cuts in fuels.items():
+        for row in stock(stem).rows:
+            if row.cas:
+                continue  # a molecule is named
+            wanted = [find(name) for name in rule["carrier"](row.entry, cuts)[0].split("+")]
+            assert len(wanted) == len(row.species), row
+            for one, name in zip(wanted, row.species, strict=True):
+                here = find(name)
+                assert here.name == one.name or here.family == one.family == "cut", row
+                assert here.Tb == pytest.approx(one.Tb, abs=0.5) and here.rho_15 == pytest.approx(
+                    one.rho_15, abs=1.0
+                )
