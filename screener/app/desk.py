@@ -9,7 +9,9 @@ from screener.app import edits, fields
 from screener.app.chrome_state import StepState
 from screener.app.engine import Engine, Name, Worked
 from screener.app.fields import Echo, Known
+from screener.app.glyphs import Glyphs, glyphs
 from screener.app.judged import information
+from screener.app.residuals import residual_note, residual_section
 from screener.app.session import Result, Session
 from screener.app.words import say, table
 from screener.casefile import keys as schema
@@ -123,16 +125,32 @@ class Desk:
                 found |= set(paths_named(finding.reason))
         return found
 
-    def sections(self, step: str) -> list[fields.Section]:
-        """Sections of an input step; below the inputs of a liquid what the liquid amounts to."""
+    def sections(self, step: str, marks: Glyphs | None = None) -> list[fields.Section]:
+        """Sections of an input step; below the inputs of a liquid how it meets its sheet and what it amounts to."""
         liquid = {"blend": "receipt", "tank": "heel"}.get(step)
+        told = self._residuals(liquid, marks or glyphs("ascii")) if liquid else []
         revision, screening = self._told
         lines = information(screening, liquid) if liquid and self.session.screening else []
-        told = []
         if lines:
             note = say("information", "note" if revision == self.session.revision else "stale")
             told.append(fields.told(say("information", "heading"), note, lines))
         return fields.sections(step, self.text, self.known, told)
+
+    def _residuals(self, liquid: str, marks: Glyphs) -> list[fields.Section]:
+        """How a liquid of the last screening meets its laboratory sheet."""
+        case = getattr(self.session.screening, "case", None)
+        contents = getattr(getattr(case, "tank", None), "contents", None)
+        blend = getattr(case if liquid == "receipt" else contents, "blend", None)
+        base = fields.LAB if liquid == "receipt" else fields.HEEL_LAB
+        if not getattr(blend, "figures", ()) or not self.text.has(base):
+            return []
+        return [residual_section(blend, base, residual_note(blend, self.session.stale), marks)]
+
+    def refusal(self, step: str) -> str:
+        """Why the laboratory sheet of a step is refused as a whole; '' where it is not."""
+        base = {"blend": fields.LAB, "tank": fields.HEEL_LAB}.get(step, "")
+        fault = self.known.faults.get(base, "")
+        return say("residuals", "refused", why=fault) if fault else ""
 
     # how the steps stand
 

@@ -14,6 +14,8 @@ from functools import lru_cache
 from typing import NamedTuple
 
 from screener.app.fields import Echo
+from screener.casefile.lab_keys import LAB_PATHS
+from screener.casefile.paths import join
 from screener.ground.errors import CaseErrors, InputError
 
 
@@ -41,6 +43,13 @@ class Worked:
 
 
 @dataclass(frozen=True)
+class Doing:
+    """What takes its time now: a key of the words about results."""
+
+    what: str
+
+
+@dataclass(frozen=True)
 class MemoAsked:
     """What a memo says about itself besides its screening."""
 
@@ -56,7 +65,7 @@ class Engine:
     """Everything the screens ask of the floors below."""
 
     warm: Callable[[], None]
-    work: Callable[[str, str], Iterable[Worked]]  # TOML text and name of the file -> verdicts, then all of it
+    work: Callable[[str, str], Iterable[Worked | Doing]]  # TOML text, name of the file -> verdicts, then all of it
     check: Callable[[str, str], Echo]  # path and text -> what it is taken as; raises InputError
     names: Callable[[], tuple[Name, ...]]
     packs: Callable[[], tuple[str, ...]]  # names of the rule packs
@@ -83,10 +92,12 @@ def _warm() -> None:
     units.registry()
 
 
-def _work(text: str, source: str) -> Iterator[Worked]:
-    from screener.casefile import read_case
+def _work(text: str, source: str) -> Iterator[Worked | Doing]:
+    from screener.casefile import CaseText, read_case
     from screener.screening import screen, screen_many
 
+    if any(CaseText.parse(text).has(path) for path in LAB_PATHS):
+        yield Doing("fitting")  # a second or two for a sheet that was not fitted before
     try:
         case = read_case(text)
     except InputError as error:
@@ -126,7 +137,7 @@ def paths_in(table, path: str = "") -> list[str]:
     """Paths of all single values in nested tables."""
     found: list[str] = []
     for name, value in table.items():
-        at = f"{path}.{name}" if path else name
+        at = join(path, name)
         rows = value if isinstance(value, list) and any(isinstance(row, dict) for row in value) else None
         if rows is not None:
             for i, row in enumerate(rows):

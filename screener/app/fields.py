@@ -16,7 +16,7 @@ from screener.app.words import say, table
 from screener.casefile import keys as schema
 
 PREFIX = {"blend": "blend", "tank": "tank", "site": "site", "line": "line"}
-LAB = "blend.lab"
+LAB, HEEL_LAB = "blend.lab", "tank.contents.lab"
 PART_COLUMNS = ("share", "quality")
 _VALUE_COLUMNS = (
     Column("", least=18),
@@ -52,16 +52,22 @@ def sections(step: str, text, known: Known, told: Iterable[Section] = ()) -> lis
     if step == "blend":
         made = [part_section("blend", text, known), *_groups("blend", text, known)]
         return [*made, *told, *_groups(LAB, text, known)]
-    prefix = PREFIX[step]
-    made = _groups(prefix, text, known)
+    made = _groups(PREFIX[step], text, known)
+    if step == "tank":
+        return [*made, *told, *_groups(HEEL_LAB, text, known)]
     if step == "site":
         made += _groups("screening", text, known)
     return [*made, *told]
 
 
+def _shared(path: str) -> str:
+    """Path under which the words of a key are kept: both sheets share theirs, a reproducibility those of its number."""
+    return path.replace(HEEL_LAB, LAB).replace(".reproducibility.", ".")
+
+
 def label(key) -> str:
     """Name of a key in words; the wording file may give a better one."""
-    return table("labels").get(key.path, key.label)
+    return table("labels").get(_shared(key.path), key.label)
 
 
 def _groups(prefix: str, text, known: Known) -> list[Section]:
@@ -85,19 +91,31 @@ def _groups(prefix: str, text, known: Known) -> list[Section]:
             made.append(_months(text, known))
         elif parent.endswith("[]"):
             made += _row_groups(parent, text, known)
+        elif parent.endswith(".reproducibility"):
+            # Only of numbers that the sheet gives: a reproducibility of nothing is a row too many.
+            group = [key for key in group if _given(key.path, text)]
+            made += [_values(parent, group, text, known)] if group else []
         elif group:
             made.append(_values(parent, group, text, known))
     return made
 
 
+def _given(path: str, text) -> bool:
+    """Whether a reproducibility, or the number it belongs to, stands in the case."""
+    base, _, name = path.partition(".reproducibility.")
+    return any(text.has(one) for one in (path, f"{base}.{name}", f"{base}.distillation.{name.upper()}"))
+
+
 def _place(path: str) -> str:
     """Prefix under which a key is shown."""
-    return LAB if path.startswith(LAB) else path.split(".")[0]
+    return next((lab for lab in (LAB, HEEL_LAB) if path.startswith(lab)), path.split(".")[0])
 
 
 def heading(parent: str) -> str:
     """Heading of a group."""
-    return table("groups").get(parent) or parent.rpartition(".")[2].replace("_", " ")
+    words = table("groups")
+    found = words.get(parent) or words.get(parent.replace(HEEL_LAB, LAB))
+    return found or parent.rpartition(".")[2].replace("_", " ")
 
 
 def _values(parent: str, group: Iterable, text, known: Known, at: str = "", title: str = "") -> Section:
@@ -109,7 +127,10 @@ def _values(parent: str, group: Iterable, text, known: Known, at: str = "", titl
         if _applies(key, kind) or text.get(path) is not None:
             records.append(value_record(path, key, text, known))
     name = title or heading(parent)
-    return Section((Column(name, least=18), *_VALUE_COLUMNS[1:]), tuple(records))
+    # A sheet refused as a whole is told above all rows, where it stays in sight.
+    fault = "" if parent in (LAB, HEEL_LAB) else known.faults.get(at or parent, "")
+    columns = (Column(name, least=18), *_VALUE_COLUMNS[1:])
+    return Section(columns, tuple(records), fault, "bad") if fault else Section(columns, tuple(records))
 
 
 def value_record(path: str, key, text, known: Known) -> Record:
@@ -169,7 +190,7 @@ def _row_groups(parent: str, text, known: Known) -> list[Section]:
     for i in range(count):
         title = f"{heading(parent)} {i + 1}"
         made.append(_values(parent, group, text, known, at=f"{base}[{i}]", title=title))
-    words = say("sheet", "add_line" if base.startswith(LAB) else "add_row")
+    words = say("sheet", "add_line" if base.startswith((LAB, HEEL_LAB)) else "add_row")
     made.append(_adder(f"{base}[+]", words, heading(parent) if not count else "", known.faults.get(base)))
     return made
 
@@ -207,8 +228,11 @@ def part_section(base: str, text, known: Known) -> Section:
 
 
 def told(title: str, note: str, lines) -> Section:
-    """Lines that are only told: label, value and note; the cursor passes them by."""
-    records = tuple(Record("", (Cell(name), Cell(value), Cell(remark, tone="dim"))) for name, value, remark in lines)
+    """Lines that are only told: label, value and note; the cursor stops at them, so that all come into sight."""
+    records = tuple(
+        Record(f"told:{i}", (Cell(name), Cell(value), Cell(remark, tone="dim")))
+        for i, (name, value, remark) in enumerate(lines)
+    )
     return Section((Column(title, least=18), Column("", least=12), Column("", least=14)), records, note)
 
 

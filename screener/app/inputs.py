@@ -82,7 +82,8 @@ class InputPane(RowActions, Searching, Container):
 
     def update_case(self) -> None:
         """Show the case as it now is; a value being typed stays."""
-        self.sheet.fill(self.desk.sections(self.step), say("intro", self.step))
+        sections = self.desk.sections(self.step, self.marks)
+        self.sheet.fill(sections, say("intro", self.step), self.desk.refusal(self.step), say("residuals", "refused_short"))
         self._tell_sum()
         if not self.strip.editing:
             self._read()
@@ -108,6 +109,9 @@ class InputPane(RowActions, Searching, Container):
         cell, record = self.sheet.cell, self.sheet.record
         if cell is None or record is None:
             self.strip.read("", "")
+            self.point(self.hint)
+            self.query_one(".field-help", Lines).show(self._help)
+            self.refresh_bindings()
             return
         self.strip.read(self.marks.plain(self.label), self.marks.plain(self._value(cell.path)))
         self.point(self.hint)
@@ -132,7 +136,7 @@ class InputPane(RowActions, Searching, Container):
         """Meaning and range of the value under the cursor, or its fault."""
         cell = self.sheet.cell
         if self.news or cell is None:
-            return self.news
+            return self.news or (say("hint", "told") if self.sheet.record else "")
         if self._is_adder:
             return say("hint", "parts_add" if cell.path.endswith("parts[+]") else "row_add")
         if fault := self.desk.known.faults.get(cell.path):

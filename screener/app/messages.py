@@ -13,6 +13,14 @@ class Warmed(Message):
 
 
 @dataclass
+class WorkDoing(Message):
+    """What the thread of a run spends its time on; a key of the words about results."""
+
+    token: int
+    what: str
+
+
+@dataclass
 class WorkDone(Message):
     """A case was worked out; `worked.full` tells whether there is more to come."""
 

@@ -54,6 +54,7 @@ class Section:
     columns: tuple[Column, ...]  # the heading of the first is the name of the section
     records: tuple[Record, ...]
     note: str = ""
+    note_tone: str = "dim"
 
 
 def sheet_blocks(sections: Sequence[Section], width: int, marks: Glyphs, at: tuple[str, int]) -> list[Block]:
@@ -68,7 +69,7 @@ def sheet_blocks(sections: Sequence[Section], width: int, marks: Glyphs, at: tup
         rows: list[Row] = [(Span(""),)] if number else []
         rows += record_rows(heads, widths, section.columns, GAP)
         if section.note:
-            rows += paragraph(marks.plain(section.note), width, "dim")
+            rows += paragraph(marks.plain(section.note), width, section.note_tone)
         blocks.append(Block(tuple(rows)))
         for record in section.records:
             blocks.append(_record_block(record, section, widths, width, marks, at))
@@ -100,17 +101,28 @@ class Sheet(Lines):
         super().__init__(gutter=marks.cursor, **kwargs)
         self.marks = marks
         self.sections: tuple[Section, ...] = ()
-        self.intro = ""
+        self.intro = self.warning = self.short = ""
         self._side = 0  # among the editable cells of the record
 
-    def fill(self, sections: Sequence[Section], intro: str = "") -> None:
-        """New content; the cursor stays on its cell."""
+    def fill(self, sections: Sequence[Section], intro: str = "", warning: str = "", short: str = "") -> None:
+        """New content; the cursor stays on its cell, or goes to another cell of the same value.
+
+        A warning takes the place of the introduction and stays in sight; its short form where it would
+        take more than half of the rows.
+        """
+        path = self.cell.path if self.cell else ""
+        key = self.key
         self.sections = tuple(sections)
-        self.intro = intro
+        self.intro, self.warning, self.short = intro, warning, short
         self.show(self._build)
+        if path and key not in self.keys:
+            self.go_to(path)
 
     def _build(self, width: int):
-        head = paragraph(self.marks.plain(self.intro), width, "dim") if self.intro else []
+        words, tone = (self.warning, "bad") if self.warning else (self.intro, "dim")
+        head = paragraph(self.marks.plain(words), width, tone) if words else []
+        if self.warning and self.short and 2 * len(head) > max(1, self.size.height):
+            head = paragraph(self.marks.plain(self.short), width, tone)
         return head, sheet_blocks(self.sections, width, self.marks, self.at)
 
     def cursor_changed(self) -> None:

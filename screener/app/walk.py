@@ -17,7 +17,7 @@ from screener.app.glyphs import Glyphs
 from screener.app.inputs import InputPane
 from screener.app.lines import Lines
 from screener.app.memo_pane import MemoPane
-from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDone, WorkEnded
+from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDoing, WorkDone, WorkEnded
 from screener.app.pictures import tally
 from screener.app.saving import Saving
 from screener.app.strip import StripInput
@@ -110,7 +110,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
             return self._trouble, "bad"
         if self.working:
             fresh = session.result is not None and not session.stale
-            return say("result", "more" if fresh else "working"), "dim" if fresh else "unknown"
+            return say("result", "more" if fresh else self.doing), "dim" if fresh else "unknown"
         if session.result is None:
             return say("result", "loading" if not self.desk.ready else "none"), "dim"
         if session.stale:
@@ -233,9 +233,15 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         self.begin()
         self.refresh_frame()
 
+    def on_work_doing(self, event: WorkDoing) -> None:
+        if self.wanted(event.token):
+            self.doing = event.what
+            self.refresh_frame()
+
     def on_work_done(self, event: WorkDone) -> None:
         if not self.wanted(event.token):
             return
+        self.doing = "working"
         self.desk.attach(event.revision, event.worked)
         result = self.desk.session.result
         self.query_one(FindingsPane).show(result.screening, result.faults, full=result.full)

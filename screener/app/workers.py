@@ -12,7 +12,8 @@ from pathlib import Path
 
 from textual import work
 
-from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDone, WorkEnded
+from screener.app.engine import Doing
+from screener.app.messages import Broke, MemoBuilt, Warmed, WorkDoing, WorkDone, WorkEnded
 from screener.app.words import say
 
 
@@ -33,6 +34,7 @@ class Workers:
     """Worker half of the walk screen."""
 
     working = False  # a run that is still wanted
+    doing = "working"  # what it spends its time on; a key of the words about results
     _token = 0  # number of the newest run
     _again = False  # inputs changed while working
     _busy = 0  # token of the run in the thread, 0 for none
@@ -45,6 +47,7 @@ class Workers:
             return
         self._token += 1
         self._busy, self._again, self.working = self._token, False, True
+        self.doing = "working"
         session = self.desk.session
         source = str(session.path) if session.path else ""
         self._work(self._token, session.revision, session.text.toml(), source)
@@ -82,6 +85,9 @@ class Workers:
         start = time.perf_counter()
         try:
             for worked in self.desk.engine.work(text, source):
+                if isinstance(worked, Doing):
+                    self.post_message(WorkDoing(token, worked.what))
+                    continue
                 self.post_message(WorkDone(token, revision, worked, time.perf_counter() - start))
                 if self._again or token != self._token:
                     break  # newer inputs wait, or nobody wants this run: the rest of it is left out

@@ -12,6 +12,7 @@ from screener.app.sheet import sheet_blocks
 from screener.app.start import examples
 from screener.casefile import CaseText, all_keys
 from screener.casefile import keys as schema
+from screener.casefile.lab_keys import LAB_PATHS, OWN_R
 
 STEPS = ("blend", "tank", "site", "line")
 EMPTY = CaseText.parse("[blend]\n[tank]\n[site]\n[line]\n")
@@ -49,8 +50,11 @@ def test_every_declared_key_has_its_row_in_some_kind_of_tank():
             text.insert(base, {"species": "ethanol", "share": "1 %"})
             text.insert(base, {"stock": "diesel", "share": "1 %"})
         text.insert("tank.vents", {"count": "1"})
-        text.insert("blend.lab.vpcr", {"ratio": "4"})
-        text.insert("blend.lab.true_vapour_pressure", {"pressure": "38 kPa"})
+        for base in LAB_PATHS:
+            text.insert(f"{base}.vpcr", {"ratio": "4"})
+            text.insert(f"{base}.true_vapour_pressure", {"pressure": "38 kPa"})
+            for name in OWN_R:  # a reproducibility is asked for only where it or its number is given
+                text.set(f"{base}.reproducibility.{name}", "1 K")
         shown |= {schema.pattern(path) for path in paths(text)}
     wanted = {
         key.path
@@ -146,3 +150,24 @@ def test_no_text_of_a_sheet_is_cut(step, width, name):
             for cell in record.cells:
                 for word in cell.text.split():
                     assert word in by_key[record.key] or len(word) > 6, (record.key, word)
+
+
+def test_a_reproducibility_is_asked_for_only_where_its_number_is_given():
+    text = CaseText.parse('[blend]\n[blend.lab]\ndvpe = "62 kPa"\ndistillation = { "FBP" = "200 degC" }\n[tank]\n')
+    asked = {path for path in paths(text) if ".reproducibility." in path}
+    assert asked == {f"blend.lab.reproducibility.{name}" for name in ("dvpe", "distillation", "fbp")}
+
+
+def test_both_sheets_share_their_words():
+    for path in ("blend.lab.dvpe", "blend.lab.mtbe", "blend.lab.reproducibility.dvpe"):
+        heel = path.replace("blend.lab", "tank.contents.lab")
+        assert fields.label(all_keys()[path]) == fields.label(all_keys()[heel])
+    assert fields.heading("tank.contents.lab.distillation") == fields.heading("blend.lab.distillation")
+    assert fields.heading("tank.contents.lab") != fields.heading("blend.lab")
+
+
+def test_a_fault_of_a_table_stands_under_its_heading():
+    text = CaseText.parse('[blend]\n[blend.lab]\ndistillation = { "10 %" = "55 degC", "50 %" = "50 degC" }\n[tank]\n')
+    known = Known({}, {"blend.lab.distillation": "T50 is not above T10", "blend.lab": "refused"})
+    noted = {section.note: section.note_tone for section in fields.sections("blend", text, known) if section.note}
+    assert noted == {"T50 is not above T10": "bad"}, "a sheet refused as a whole is told above all rows instead"

@@ -10,8 +10,9 @@ import threading
 from dataclasses import replace
 from types import SimpleNamespace
 
-from screener.app.engine import Engine, Name, Worked, faults_of, paths_in
+from screener.app.engine import Doing, Engine, Name, Worked, faults_of, paths_in
 from screener.app.fields import Echo
+from screener.blends.measured import MeasuredFigure, MeasuredPressure
 from screener.casefile import CaseText
 from screener.ground.errors import CaseErrors, InputError, UnitError
 from screener.memo.document import Bullets, Document, Paragraph, Section, Table, VerdictRow, Verdicts
@@ -52,6 +53,50 @@ draw = { rate = "450 m3/h" }
 [screening]
 criteria = ["us-40cfr60-kb"]
 """
+
+# The same with a laboratory sheet of the receipt, and one of the heel that stands alone.
+SHEET_CASE = CASE.replace("\n[tank]\n", """
+[blend.lab]
+title = "certificate TH 26-031"
+density = "742 kg/m3"
+dvpe = "62 kPa"
+distillation = { "10 %" = "55 degC", "50 %" = "98 degC", "FBP" = "200 degC" }
+e70 = "32 %"
+benzene = "0.8 vol%"
+h2s = "12 ppm mass"
+vpcr = [{ ratio = "4", temperature = "37.8 degC", pressure = "64 kPa" }]
+
+[tank]
+""", 1).replace("\n[site]\n", """
+[tank.contents]
+volume = "650 m3"
+
+[tank.contents.lab]
+density = "738 kg/m3"
+dvpe = "20 kPa"
+
+[site]
+""", 1)
+REFUSAL = (
+    "numbers of the sheet contradict each other: DVPE: sheet 20 kPa, nearest composition 34.3 kPa (9.8 "
+    "reproducibilities off); T10: sheet 42.5 degC, nearest composition 63.5 degC (5.2 reproducibilities off)"
+)
+# Misfits from nothing to more than the three that are refused, in both directions.
+FITTED = SimpleNamespace(
+    figures=(
+        MeasuredFigure("density_15", "density at 15 degC", 742.0, 742.02, 0.5),
+        MeasuredFigure("dvpe", "DVPE", 62e3, 61.1e3, 1.9e3),
+        MeasuredFigure("vpcr_4", "VPCR4 at 37.8 degC", 64e3, 65.2e3, 2.5e3),
+        MeasuredFigure("distillation", "T10", 328.15, 325.05, 2.1, 0.1),
+        MeasuredFigure("distillation", "T50", 371.15, 378.65, 2.6, 0.5),
+        MeasuredFigure("fbp", "FBP", 473.15, 450.15, 7.0),
+        MeasuredFigure("e70", "E70", 0.32, 0.335, 0.027),
+        MeasuredFigure("benzene", "benzene", 0.008, 0.00801, 0.001),
+        MeasuredFigure("h2s", "h2s", 12e-6, 12e-6, 3e-6),
+    ),
+    measured=(MeasuredPressure("DVPE", 62e3, 310.93, 61.1e3, 1.014, 1.9e3, 0.03),),
+    vapour_pressure_known=True,
+)
 
 
 def _finding(**changes) -> Finding:
@@ -106,14 +151,14 @@ SKIPPED = _finding(
 _TEMPERATURES = tuple(263.15 + 5 * i for i in range(15))
 
 
-def screening(diameter: float = 24.0, findings=None) -> Screening:
-    """One finding of each verdict; the first one's numbers follow the shell diameter."""
+def screening(diameter: float = 24.0, findings=None, fitted: bool = False) -> Screening:
+    """One finding of each verdict; the first one's numbers follow the shell diameter. fitted: with a sheet."""
     boiling = replace(ROOM, value=3000.0 * diameter, margin=97800.0 - 3000.0 * diameter, room_used=diameter * 3.0 / 97.8)
     receipt = tuple(9000.0 * 1.035**i * 1.12**i for i in range(15))
     facts = (Fact("DVPE", 59800.0, "Pa"), Fact("T50", 363.15, "K"))
     return Screening(
         case=SimpleNamespace(
-            title="Tarn Hollow, tank 12", site=SimpleNamespace(ambient=SimpleNamespace(low=265.15, high=310.15, meaning="design"))
+            title="Tarn Hollow, tank 12", blend=FITTED if fitted else None, site=SimpleNamespace(ambient=SimpleNamespace(low=265.15, high=310.15, meaning="design"))
         ),
         findings=tuple(findings or (boiling, BEYOND, NEAR, UNKNOWN, SKIPPED)),
         information=(Information("receipt: 90 % summer gasoline base + 10 % ethanol", facts, "never a judge"),),
@@ -133,6 +178,8 @@ class Playing:
         self.gate.set()
         self.more = threading.Event()  # holds up what follows the verdicts
         self.more.set()
+        self.fit = threading.Event()  # holds up the fit of a laboratory sheet
+        self.fit.set()
         self.bug: Exception | None = None
         self.findings = None
 
@@ -155,11 +202,17 @@ class Playing:
                 faults.append(error)
         if not entered.rows("blend.parts"):
             faults.append(InputError("blend.parts", None, "this is missing: what the receipt is made of"))
+        if entered.has("blend.lab"):
+            yield Doing("fitting")
+            self.fit.wait(5)
+        for base in ("blend.lab", "tank.contents.lab"):
+            if entered.get(f"{base}.dvpe") == "20 kPa":
+                faults.append(InputError(base, "the sheet", REFUSAL, "each within 3 reproducibilities"))
         if faults:
             yield Worked(None, faults_of(CaseErrors(faults)), echoes)
             return
         diameter = float((entered.get("tank.shell_diameter") or "24 m").split()[0])
-        whole = screening(diameter, self.findings)
+        whole = screening(diameter, self.findings, fitted=entered.has("blend.lab"))
         bare = tuple(replace(finding, moved_by=(), headroom=()) for finding in whole.findings)
         yield Worked(replace(whole, findings=bare, information=(), curve={}), (), echoes, full=False)
         self.more.wait(5)

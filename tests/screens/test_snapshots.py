@@ -13,6 +13,7 @@ import pytest
 from screener.app import start
 from screener.app.rows import columns_of
 from tests.screens.driving import grid, opened, pressed, settled, typed, walk, written_case
+from tests.screens.made import SHEET_CASE
 
 FOLDER = Path(__file__).parent / "snapshots"
 SMALL, LARGE = (80, 24), (140, 40)
@@ -44,6 +45,18 @@ VISITS = {
     "small ascii": (SMALL, "ascii", {"findings_curve_ascii_80x24": ["5", "v"]}),
     "large ascii": (LARGE, "ascii", {"findings_ascii_140x40": ["5"]}),
 }  # fmt: skip
+# The same on a case with laboratory sheets; that of the heel is refused until its DVPE is corrected.
+SHEETS = {
+    "refused": (SMALL, "braille", {
+        "sheet_refused_80x24": ["2", "end"],
+    }),
+    "small": (SMALL, "braille", {
+        "sheet_fit_80x24": ["1", *["down"] * 14],
+        "sheet_80x24": ["1", "pagedown", "pagedown"],
+    }),
+    "large": (LARGE, "braille", {"sheet_fit_140x40": ["1", *["down"] * 8]}),
+    "small ascii": (SMALL, "ascii", {"sheet_fit_ascii_80x24": ["1", *["down"] * 14]}),
+}  # fmt: skip
 
 
 async def test_a_window_too_small_says_so(case_file):
@@ -63,7 +76,18 @@ def compared(name: str, text: str) -> None:
 
 @pytest.mark.parametrize("visit", VISITS)
 async def test_the_screens_are_as_reviewed(visit, case_file):
-    size, marks, screens = VISITS[visit]
+    await visited(VISITS[visit], case_file)
+
+
+@pytest.mark.parametrize("visit", SHEETS)
+async def test_the_laboratory_sheets_are_as_reviewed(visit, tmp_path):
+    text = SHEET_CASE if visit == "refused" else SHEET_CASE.replace('dvpe = "20 kPa"', 'dvpe = "60 kPa"')
+    await visited(SHEETS[visit], written_case(tmp_path, text))
+
+
+async def visited(visit, case_file):
+    """Go through the screens of a visit and compare each."""
+    size, marks, screens = visit
     async with opened(case_file, size=size, marks=marks) as pilot:
         for name, keys in screens.items():
             for key in keys:
@@ -85,7 +109,8 @@ async def test_the_start_screen_is_as_reviewed(tmp_path, monkeypatch):
 
 
 def test_no_snapshot_is_left_over():
-    assert {path.stem for path in FOLDER.glob("*.txt")} == {"start_80x24", *(n for *_, screens in VISITS.values() for n in screens)}
+    known = {name for visits in (VISITS, SHEETS) for *_, screens in visits.values() for name in screens}
+    assert {path.stem for path in FOLDER.glob("*.txt")} == {"start_80x24", *known}
 
 
 @pytest.mark.parametrize("size", [(40, 14), (60, 20), (80, 24), (120, 26), (200, 60)])
