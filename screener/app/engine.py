@@ -158,9 +158,9 @@ def _check(path: str, text: str) -> Echo:
 
 def _names() -> tuple[Name, ...]:
     from screener import species
-    from screener.blends import stocks
+    from screener.blends import stock_titles
 
-    found = [Name("stock", stock.name, (), stock.title) for stock in stocks()]
+    found = [Name("stock", name, (), title) for name, _, title in stock_titles()]
     for name in species.names():
         record = species.find(name)
         found.append(Name("species", record.name, (*record.synonyms, record.cas), record.formula))

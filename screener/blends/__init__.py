@@ -6,7 +6,7 @@ from screener.blends.lanes import density, density_at, mix, union
 from screener.blends.parts import Part
 from screener.blends.properties import VolatilitySheet, volatility_sheet, volatility_sheets
 from screener.blends.published import Beside, published_beside_computed
-from screener.blends.stocks import Published, Stock, stock, stock_names, stocks
+from screener.blends.stocks import Published, Stock, stock, stock_names, stock_titles, stocks
 
 __all__ = [
     "Beside",
@@ -23,6 +23,7 @@ __all__ = [
     "published_beside_computed",
     "stock",
     "stock_names",
+    "stock_titles",
     "stocks",
     "union",
     "volatility_sheet",

@@ -7,7 +7,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from functools import lru_cache
 
-from screener.blends.stocks import Stock, stock, stocks
+from screener.blends.stocks import Stock, stock, stock_titles
 from screener.ground.constants import T_15C, T_60F
 from screener.ground.errors import InputError, UnknownName
 from screener.species import columns, find
@@ -131,7 +131,7 @@ def _find(key: str):
 
 @lru_cache(maxsize=1)
 def _known() -> tuple[str, ...]:
-    return tuple(species_names()) + tuple(name for item in stocks() for name in (item.name, *item.also))
+    return tuple(species_names()) + tuple(name for own, also, _ in stock_titles() for name in (own, *also))
 
 
 def _source(item: Stock) -> str:

@@ -105,8 +105,30 @@ def stocks() -> tuple[Stock, ...]:
     ------
     data/stocks, one passport per stock.
     """
+    return tuple(_read(stem) for stem in _passports())
+
+
+@lru_cache(maxsize=1)
+def _passports() -> dict[str, dict]:
+    """Passports by the stem of their file. The rows of a stock are read when it is asked for: cuts take time."""
     folder = data_folder() / "stocks"
-    return tuple(_read(path.stem) for path in sorted(folder.glob("*.csv"), key=lambda p: p.stem))
+    stems = sorted(path.stem for path in folder.glob("*.csv"))
+    return {stem: read_toml(f"stocks/{stem}.toml") for stem in stems}
+
+
+def stock_titles() -> tuple[tuple[str, tuple[str, ...], str], ...]:
+    """Name, other names and title of every stock, without its rows.
+
+    Returns
+    -------
+    tuple of (name, other names, title)
+        In alphabetical order of their files.
+
+    Source
+    ------
+    data/stocks, one passport per stock.
+    """
+    return tuple((p["name"], tuple(p.get("also", ())), p["title"]) for p in _passports().values())
 
 
 def stock_names() -> tuple[str, ...]:
@@ -121,7 +143,7 @@ def stock_names() -> tuple[str, ...]:
     ------
     data/stocks, one passport per stock.
     """
-    return tuple(item.name for item in stocks())
+    return tuple(name for name, _, _ in stock_titles())
 
 
 def stock(name: str) -> Stock:
@@ -150,7 +172,7 @@ def stock(name: str) -> Stock:
     key = _plain(name)
     if key not in table:
         raise UnknownName("", name, "stock", table)
-    return table[key]
+    return _read(table[key])
 
 
 def _plain(name: str) -> str:
@@ -158,19 +180,21 @@ def _plain(name: str) -> str:
 
 
 @lru_cache(maxsize=1)
-def _by_name() -> dict[str, Stock]:
-    table: dict[str, Stock] = {}
-    for item in stocks():
-        for name in (item.name, *item.also):
+def _by_name() -> dict[str, str]:
+    """Stem of the file by name and other name."""
+    table: dict[str, str] = {}
+    for stem, (own, also, _) in zip(_passports(), stock_titles(), strict=True):
+        for name in (own, *also):
             if _plain(name) in table:
                 raise DataError("stocks", None, f"two stocks answer to '{name}'")
-            table[_plain(name)] = item
+            table[_plain(name)] = stem
     return table
 
 
+@lru_cache(maxsize=256)
 def _read(stem: str) -> Stock:
     file = f"stocks/{stem}.csv"
-    passport = read_toml(f"stocks/{stem}.toml")
+    passport = _passports()[stem]
     rows = tuple(_row(file, r) for r in read_table(file))
     mass = _masses(file, rows, int(passport.get("unidentified_from_carbon", 0)))
     return Stock(
