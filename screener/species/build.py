@@ -20,12 +20,13 @@ def choose_curve(cas, MW, Tc, Pc, Tb, cp_ideal, prefer=None):
 
     A species below Tc 340 K has none; one with a reference equation keeps it (but for `cold.REFERENCE`).
     """
+    plain = choose_vapour_pressure(cas, Tc, Pc, Tb, prefer)
     if Tc <= LIGHT:
-        return choose_vapour_pressure(cas, Tc, Pc, Tb, prefer)
-    known = heats.thermal(cas, MW, Tc, cp_ideal)
-    curve = choose_vapour_pressure(cas, Tc, Pc, Tb, prefer, known)
-    if curve.source not in REFERENCE:
-        return curve
+        return plain
+    omega = float(-np.log10(forms.psat(plain.coefficients, 0.7 * Tc) / Pc) - 1.0)
+    known = heats.thermal(cas, MW, Tc, cp_ideal, omega)
+    if plain.source not in REFERENCE:
+        return choose_vapour_pressure(cas, Tc, Pc, Tb, prefer, known)
     own = heats.Thermal(None, heats.reference_capacity(cas, MW, Tc), known.cp_ideal)
     return choose_vapour_pressure(cas, Tc, Pc, Tb, prefer, own)
 

@@ -147,3 +147,28 @@ def test_a_correlation_that_does_not_end_is_none():
     known = heats.thermal(one.cas, one.MW, one.Tc, one.cp_ideal)
     beyond = replace(known, heat=replace(known.heat, T=np.array([600.0])))  # no liquid there
     assert correlate.correlate(T_ALL, one.psat(T_ALL), np.full(len(T_ALL), 1e-3), beyond, one.Tc, one.Pc) is None
+
+
+def test_a_hydrocarbon_without_a_table_has_an_estimate():
+    """Of corresponding states, and far less certain; an alcohol or ether has none."""
+    one = find("2-methylundecane")
+    known = heats.thermal(one.cas, one.MW, one.Tc, one.cp_ideal, one.omega)
+    assert known.words == heats.ESTIMATE and not known.both
+    assert heats.thermal(one.cas, one.MW, one.Tc, one.cp_ideal).capacity is None
+    one = find("n-heptane")  # 224.7 J/(mol K) at 25 degC: from memory, unverified; 3 % as the estimate states
+    found = heats.estimated(one.Tc, one.omega, one.cp_ideal)
+    assert np.interp(298.15, found.T, found.value) == pytest.approx(224.7, rel=0.03)
+    assert np.all(found.deviation >= 4.0 * heats.CAPACITIES["CRCSTD"][1])
+
+
+def test_liquids_take_up_heat_like_liquids():
+    """Heats of vaporisation fall with temperature and heat capacities of liquids exceed their vapours', 255-350 K."""
+    for one in map(find, names()):
+        if one.Tc < 400.0:
+            continue
+        T = np.linspace(max(255.0, one.curve.T_low + 3.0), min(350.0, 0.85 * one.Tc), 12)
+        fluid, P = Fluid.of([one.name]), one.psat(T)
+        liquid, vapour = (caloric(fluid, T, P, [1.0], phase).require() for phase in "LV")
+        assert np.all(np.diff(vapour.H - liquid.H) < 0.0), one.name
+        share = liquid.Cp / forms.cp_ideal(one.cp_ideal, T)
+        assert share.min() > 1.05 and share.max() < 2.6, (one.name, share)

@@ -19,8 +19,12 @@ from screener.species import vapour_pressure as choice
 
 PAGE = Path(__file__).with_suffix(".md")
 NARROW = ("ANTOINE_POLING", "LANDOLT", "WAGNER_MCGARRY", "ANTOINE_WEBBOOK")
+HYDROCARBONS = ("paraffin", "isoparaffin", "naphthene", "olefin", "aromatic")
 AT = np.array([255.0, 280.0])  # [K]
-KINDS = {"": "continued", "h": "with heats of vaporisation", "c": "with heat capacities", "hc": "with both"}
+KINDS = {
+    "": "continued", "h": "with heats of vaporisation", "c": "with heat capacities", "hc": "with both",
+    "e": "with estimated heat capacities", "he": "with heats of vaporisation and estimated heat capacities",
+}  # fmt: skip
 DECADES = ((2e4, 1.2e5), (6e3, 2e4), (2e3, 6e3), (6e2, 2e3), (60.0, 6e2), (6.0, 60.0), (0.6, 6.0))  # [Pa]
 
 
@@ -42,7 +46,8 @@ def liquids():
 def trial(one, curve, reference, cut, kinds):
     """One `Trial` of a published curve without its part below `cut` [K]; None where it teaches nothing.
 
-    kinds: "h" with the heat of vaporisation, "c" with the heat capacity, of the tables that are no reference equation.
+    kinds: "h" with the heat of vaporisation, "c" with the heat capacity, of the tables that are no reference equation;
+    "e" with the estimate of the heat capacity instead (hydrocarbons only).
     """
     first = max(curve.low, cut)
     if curve.high - first < 40.0 or first > cut + 25.0 or choice._misses_boiling(curve, one.Tb):
@@ -56,6 +61,10 @@ def trial(one, curve, reference, cut, kinds):
     )
     if ("h" in kinds and known.heat is None) or ("c" in kinds and known.capacity is None):
         return None
+    if "e" in kinds:
+        if one.family not in HYDROCARBONS:
+            return None
+        known = replace(known, capacity=heats.estimated(one.Tc, one.omega, one.cp_ideal))
     points = choice._points(replace(curve, low=first), one.Tc, one.Pc, one.Tb)
     P, band, _ = choice._with_heats(curve, [], points, known, one.Tc, one.Pc)
     miss = np.exp(np.interp(AT, points[0], np.log(P))) / reference.at(AT) - 1.0
