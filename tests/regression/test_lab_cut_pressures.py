@@ -58,12 +58,12 @@ def test_the_chosen_one_is_the_best_of_four():
 def test_no_family_is_far_off():
     """Means at 300 K by family: gasoline species treated as cuts, within 5 %; normal paraffins within 2 %.
 
-    Aromatics +5.3 %: with their cold ends set by heats the C9 and C10 alkylbenzenes lie 1 to 5 % lower than their
+    Aromatics +5.4 %: with their cold ends set by heats the C9 and C10 alkylbenzenes lie 1 to 5 % lower than their
     curves plainly continued (tests/studies/caloric_correlation.md), and the cut 1 % further above them.
     """
     found = {family: mean for (family, method), (_, mean, _) in by_family().items() if method.startswith("Ambrose")}
     assert all(abs(mean) < 0.05 for family, mean in found.items() if family != "aromatic"), found
-    assert found["aromatic"] == pytest.approx(0.053, abs=0.003)
+    assert found["aromatic"] == pytest.approx(0.054, abs=0.003)
     assert abs(found["paraffin"]) < 0.02
 
 
