@@ -53,9 +53,9 @@ class Species:
     without liquid there an effective one named in rho_note.
 
     psat_spread [-] is the largest relative disagreement of independent vapour-pressure
-    curves within 250-350 K, None with a single curve; psat_extension [-] the band of the
-    part of 250-350 K where no curve is valid and the chosen one was continued, 0 where
-    none was needed. flash_point [K], LFL and UFL [mole fraction in air], each with its source.
+    curves within 250-350 K, None with a single curve; psat_extension [-] the largest
+    band (two standard deviations) within 250-350 K of a curve that is continued or set by heats, 0
+    where neither was needed. flash_point [K], LFL and UFL [mole fraction in air], each with its source.
 
     families holds what a pseudo-component is made of, (family, share of its molecules) [-]; empty
     for a real species, which is all of its own family. A pseudo-component's groups are means.
