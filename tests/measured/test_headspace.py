@@ -67,7 +67,7 @@ def test_paraffins_that_did_not_select_their_fuel(record_property):
 def test_mtbe_on_the_selected_fuels(h, record_property):
     """Within 12 % on every selected fuel but one, whose whole series of analyses is out (next test)."""
     found = {fuel: v for (fuel, v), keep in zip(of(h, "MTBE").items(), h.selected(), strict=True) if keep and np.isfinite(v)}  # fmt: skip
-    record_property("percent", {fuel: round(100.0 * np.expm1(v), 1) for fuel, v in found.items()})
+    record_property("percent", {fuel: round(float(100.0 * np.expm1(v)), 1) for fuel, v in found.items()})
     assert len(found) >= 4
     assert {fuel for fuel, v in found.items() if abs(v) > ETHER} == {"4567"}
     assert abs(np.median(list(found.values()))) <= ETHER
@@ -80,7 +80,7 @@ def test_one_series_misses_mtbe_and_no_other(record_property):
     two chromatographic shares of five species in fuels that no rule has selected.
     """
     found = beside_neighbours()
-    record_property("percent", {fuel: round(100.0 * np.expm1(v), 1) for fuel, v in found.items()})
+    record_property("percent", {fuel: round(float(100.0 * np.expm1(v)), 1) for fuel, v in found.items()})
     others = np.array([v for fuel, v in found.items() if fuel not in HOUSTON])
     assert HOUSTON < set(found) and others.size >= 8
     assert max(found[fuel] for fuel in HOUSTON) < np.log(0.75)

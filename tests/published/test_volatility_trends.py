@@ -178,7 +178,7 @@ def test_ethanol_in_the_first_five_percent_lost(pairs, record_property):
     equilibrium that is carried away whole holds less on every base: the difference is the way it leaves.
     """
     found = {way: [100.0 * loss.ethanol_lost(pair, way) for pair in pairs] for way in loss.WAYS}
-    record_property("mass_percent", {way: [round(v, 1) for v in values] for way, values in found.items()})
+    record_property("mass_percent", {way: [round(float(v), 1) for v in values] for way, values in found.items()})
     drift = found["diffusing with drift"]
     assert all(abs(v - 13.0) <= 2.5 for v in drift)
     assert min(drift) < 13.0 < max(drift)
@@ -196,7 +196,7 @@ def test_weighing_beside_the_base(pairs, record_property):
     """
     for pair in pairs:
         warm, cold = loss.weighing(pair), loss.weighing(pair, cooling=1.0)
-        record_property("total_gasoline_cooled_fall", [round(v, 3) for v in (warm.total, warm.gasoline, cold.gasoline, warm.fall)])  # fmt: skip
+        record_property("total_gasoline_cooled_fall", [round(float(v), 3) for v in (warm.total, warm.gasoline, cold.gasoline, warm.fall)])  # fmt: skip
         assert warm.total > 1.05
         assert cold.gasoline < 0.97 and 0.98 < warm.gasoline < 1.0
         assert warm.fall == pytest.approx(1.05, abs=0.02)  # printed as "approximate 5 %"
