@@ -165,6 +165,11 @@ def ethane_henry(T):
 
 def bubble(mass, T, rows=0, title=""):
     """Bubble pressure [Pa]; prints the `rows` largest shares of it."""
+    return _parts(mass, T, rows, title)[0]
+
+
+def _parts(mass, T, rows=0, title=""):
+    """Bubble pressure [Pa] and its parts."""
     x = moles(mass)
     names, species = list(x), [pure(s) for s in x]
     xs = np.array(list(x.values()))
@@ -196,7 +201,12 @@ def bubble(mass, T, rows=0, title=""):
                   f"{math.exp(v[i] * (P - psat[i]) / R / T):.4f} | {phi[i]:.4f} | {part[i] / 1e3:.3f} |")
         print(f"| the other {len(xs) - rows} | {1 - xs[order].sum():.5f} | | | | | | "
               f"{(P - part[order].sum()) / 1e3:.3f} |")
-    return P
+    return P, part
+
+
+def bubble_parts(mass, T):
+    """Partial pressures [Pa] of the bubble point by species."""
+    return dict(zip(moles(mass), _parts(mass, T)[1], strict=True))
 
 
 def clear_sky(latitude, day, elevation):
@@ -359,8 +369,67 @@ def condensate():
     suction(density(liquid, T), 97600, top, viscosity("n-octane", T), 200, 60, 0.203, 4.5, 1.0, 0.5, 0.2)
 
 
+def ostwald(T, rho_15):
+    """Ostwald coefficient of air [-] by ASTM D2779 (formula from memory, unverified), 0.098 at 0 degC."""
+    L = 0.300 * math.exp(0.639 * (700 - T) / T * math.log(3.333 * 0.098))
+    return 7.70 * L * (0.980 - rho_15 / 1e3)
+
+
+def cell(mass, T, ratio=4.0, filled=273.65):
+    """Fuel's own pressure [Pa] in a cell of 1 + ratio volumes, one of them filled cold with the liquid.
+
+    Partial pressures over the liquid that is left: those of the bubble point, by activity of the whole
+    liquid; the little that evaporates hardly moves the activities.
+    """
+    x = moles(mass)
+    species = [pure(s) for s in x]
+    z = np.array(list(x.values()))
+    v = np.array([s.v(T) for s in species])
+    per_x = np.array([bubble_parts(mass, T)[s] for s in x]) / z
+    volume = (1 + ratio) * sum(n * s.v(filled) for n, s in zip(z, species))
+    left = 1.0
+    for _ in range(200):
+        space = volume - left * float(z @ v)
+        inside = per_x * space / R / T  # moles in the space for each unit of x
+        new = left * float((z / (left + inside)).sum())
+        if abs(new - left) < 1e-12:
+            break
+        left = new
+    return float((per_x * z / (left + inside)).sum())
+
+
+def spring():
+    """Certificate of the receipt: DVPE 89.2 kPa by EN 13016-1, 724.9 kg/m3; its recipe only shapes the slope."""
+    winter, summer = stock("winter-gasoline-base", 7), stock("summer-gasoline-base", 7)
+    recipe = by_volume((winter, 0.58), (summer, 0.37), ({"ethanol": 1.0}, 0.05))
+    T_test, rho_15 = 310.93, 724.9
+    X = (89.2e3 + 3.78e3) / 0.965
+    test, true, cold = cell(recipe, T_test), bubble(recipe, T_test), bubble(recipe, 273.65)
+    swell = density(recipe, 273.65) / density(recipe, T_test)
+    factor = 1.0
+    for _ in range(3):
+        # 1 L charged at 0.5 degC under one atmosphere brings its air into a space of about 4 L at 37.8 degC
+        held = ostwald(273.65, rho_15) * (101325.0 - factor * cold) / R / 273.65
+        P_air = held * R * T_test / (5 - swell + ostwald(T_test, rho_15) * swell)
+        factor = (X - P_air) / test
+    print(f"\n=== spring: X {X:.0f}, air {P_air:.0f}, own vapour {X - P_air:.0f} Pa; recipe in the cell {test:.0f}, "
+          f"true {true:.0f} Pa, at 0.5 degC {cold:.0f} Pa; factor {factor:.4f}, true {factor * true:.0f} Pa; "
+          f"density of the recipe {density(recipe, 288.15):.2f}")
+    ends = weather("spring", 74, 12.6, 3.2, (0.17, 0.25, 0.34), 12.8 / 20, True)
+    asked = {"hottest": ends[1][0], "July": 22.9, "arrival": 11.0, "high": ends[2][1]}
+    for name, T in ((name, degC + 273.15) for name, degC in asked.items()):
+        P = factor * bubble(recipe, T)
+        rho = rho_15 * density(recipe, T) / density(recipe, 288.15)
+        print(f"{name}: {T - 273.15:.2f} degC {P:.0f} Pa, {rho:.1f} kg/m3")
+        if name == "hottest":
+            suction(rho, 97800, P, viscosity("n-hexane", T), 380, 95, 0.255, 5.0, 2.0, 0.5, 0.3)
+        if name == "high":
+            suction(rho, 97800, 1.05 * P, viscosity("n-hexane", T), 380, 95, 0.255, 5.0, 2.0, 0.5, 0.3)
+
+
 if __name__ == "__main__":
     warnings.simplefilter("ignore")
     summer()
     winter()
     condensate()
+    spring()

@@ -16,7 +16,8 @@ EXAMPLES = HERE.parents[1] / "examples"
 HAND = tomllib.loads((HERE / "hand_values.toml").read_text(encoding="utf-8"))
 NOTES = {"summer_e10_floating_roof": "summer_e10.md", "winter_gasoline_fixed_roof": "winter_gasoline.md",
          "warm_condensate_receipt": "warm_condensate.md", "winter_e85_fixed_roof": "winter_e85.md",
-         "summer_gasoline_small_tank": "summer_gasoline.md", "jet_kerosene_after_gasoline": "jet_kerosene.md"}
+         "summer_gasoline_small_tank": "summer_gasoline.md", "jet_kerosene_after_gasoline": "jet_kerosene.md",
+         "spring_e5_by_certificate": "spring_e5.md"}
 ROWS = [(case, finding) for case, findings in HAND.items() for finding in findings]
 # Two routes with the same composition: other vapour-pressure curves, an activity model with a virial gas
 # against an equation of state. The figure is the one asked for; the means differ by 1.4 % at most.
