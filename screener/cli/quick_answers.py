@@ -65,13 +65,18 @@ class Liquid:
         unmeasured = "" if blend.vapour_pressure_known else say("quick", "unmeasured")
         self.no_pressure = self.split or unmeasured
 
+    @property
+    def barometer(self) -> str:
+        """One standard atmosphere in words."""
+        return numbers.quantity(ATMOSPHERE, "Pa", self.system).text
+
     def at(self, T: float) -> str:
         """A temperature [K] in words."""
         return numbers.quantity(T, "K", self.system).text
 
     def answer(self, key: str, value, unit: str, why: str = "", by: str = "", name: str = "", **fields: str):
         """An answer under `key`, or the reason why there is none; name finds its words where they differ."""
-        label = say("quick", name or key, **fields)
+        label = say("quick", name or key, pressure=self.barometer, **fields)
         if why or not math.isfinite(value):
             return Answer(key, label, None, unit, why or say("quick", "no_answer"), by)
         return Answer(key, label, float(value), unit, by=by)

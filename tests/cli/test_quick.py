@@ -104,7 +104,7 @@ def test_the_page_says_what_percent_means(capsys):
     said = capsys.readouterr().out
     assert "percent is volume at 15 degC" in said
     assert "at 95.0 degF" in said
-    assert "psi" in said
+    assert "psi" in said and "flash point at 14.70 psi" in said and "101.3" not in said
 
 
 def test_every_fault_is_listed():
