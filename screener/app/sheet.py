@@ -172,6 +172,10 @@ class Sheet(Lines):
                             return True
         return False
 
+    def check_action(self, action: str, parameters: tuple) -> bool | None:
+        """Enter is no key where there is nothing to edit."""
+        return action != "choose" or self.record is None or self.cell is not None
+
     def action_side(self, by: int) -> None:
         record = self.record
         if record and record.editable:

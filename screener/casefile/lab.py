@@ -127,9 +127,9 @@ def read_sheet(values: Values, base: str):
         return None if faulty or wrong else sheet  # a sheet with holes is another sheet
     except CaseErrors as error:
         for fault in error.faults:
-            path = _path(values, base, fault.path, given)
+            path = _crossed(values, base, fault) or _path(values, base, fault.path, given)
             if not _told(path, faulty):
-                value = fault.value if fault.value is not None else values.entered(path) or "the sheet"
+                value = values.entered(path) or (fault.value if fault.value is not None else "the sheet")
                 values.complain(InputError(path, value, fault.problem, fault.hint))
         return None
 
@@ -201,6 +201,15 @@ def _rows(values: Values, base: str, field: str) -> list[tuple[str, tuple]]:
         if None not in cells:
             rows.append((row, cells))
     return rows
+
+
+def _crossed(values: Values, base: str, fault: InputError) -> str:
+    """Place of the point of a distillation that is not above the one before it; '' for other faults."""
+    found = re.match(r"T(\d+) |the (final) boiling", fault.problem) if fault.path == "distillation" else None
+    if found is None:
+        return ""
+    path = f"{base}.distillation." + ("FBP" if found[2] else f'"{found[1]} %"')
+    return path if path in values.taken else ""
 
 
 def _path(values: Values, base: str, field: str, given) -> str:

@@ -181,7 +181,7 @@ octane = "95"
     )
     assert set(found) == {
         "blend.lab.density", "blend.lab.dvpe", "blend.lab.benzene", "blend.lab.aromatics", "blend.lab.water",
-        "blend.lab.flash_point", "blend.lab.distillation", 'blend.lab.distillation."55 %"',
+        "blend.lab.flash_point", 'blend.lab.distillation."50 %"', 'blend.lab.distillation."55 %"',
         "blend.lab.vpcr[0].ratio", "blend.lab.vpcr[0].pressure", "blend.lab.octane",
     }  # fmt: skip
     assert "has no unit" in found["blend.lab.density"] and "450 kg/m3 to 1100 kg/m3" in found["blend.lab.density"]
@@ -189,12 +189,17 @@ octane = "95"
     assert "allowed: 0 % to 100 %" in found["blend.lab.benzene"]
     assert "does not count volume" in found["blend.lab.aromatics"]
     assert "does not count mass" in found["blend.lab.water"]
-    assert "T50 (55 degC) is not above T10 (98 degC)" in found["blend.lab.distillation"]
+    assert "T50 (55 degC) is not above T10 (98 degC)" in found['blend.lab.distillation."50 %"']
 
 
 @pytest.mark.parametrize(
     ("lines", "path", "words"),
     [
+        (
+            'distillation = { "10 %" = "55 degC", "90 %" = "165 degC", "FBP" = "160 degC" }',
+            "blend.lab.distillation.FBP",
+            "the final boiling point (160 degC) is not above T90 (165 degC)",
+        ),
         ('ethanol = "60 %"\naromatics = "50 %"', "blend.lab.ethanol", "shares sum to 110 %"),
         ('benzene = "3 %"\naromatics = "2 %"', "blend.lab.benzene", "above all aromatics"),
         ('viscosity = "2 cSt"', "blend.lab.viscosity", "needs its temperature"),

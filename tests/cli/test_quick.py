@@ -215,7 +215,7 @@ def test_faults_of_a_sheet_have_their_place_in_its_file(tmp_path, capsys):
     said = capsys.readouterr().err
     assert "4 faults" in said and "--at" in said
     assert "lab.density: '742' has no unit" in said
-    assert "lab.distillation: T50 (48 degC) is not above T10 (55 degC)" in said
+    assert 'lab.distillation."50 %": T50 (48 degC) is not above T10 (55 degC)' in said
     assert "lab.h2s" in said and "blend.lab" not in said
 
 
