@@ -3,6 +3,8 @@
 from __future__ import annotations
 
 import argparse
+import re
+import sys
 from importlib import import_module
 
 from screener import __version__
@@ -141,4 +143,15 @@ def parser() -> argparse.ArgumentParser:
 
 def parse(argv: list[str] | None) -> argparse.Namespace:
     """Arguments with the command to run; InputError for bad ones, SystemExit 0 after help or version."""
-    return parser().parse_args(argv)
+    return parser().parse_args(_below_zero(sys.argv[1:] if argv is None else argv))
+
+
+def _below_zero(argv: list[str]) -> list[str]:
+    """'--at -10degC' as '--at=-10degC': what begins with a dash and a digit is a temperature, no option."""
+    joined: list[str] = []
+    for word in argv:
+        if joined and joined[-1] == "--at" and re.match(r"-\.?\d", word):
+            joined[-1] = f"--at={word}"
+        else:
+            joined.append(word)
+    return joined

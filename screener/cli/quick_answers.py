@@ -81,6 +81,17 @@ class Liquid:
             return Answer(key, label, None, unit, why or say("quick", "no_answer"), by)
         return Answer(key, label, float(value), unit, by=by)
 
+    def no_dvpe(self, value: float) -> str:
+        """Why there is no DVPE; '' where there is one or only the solver knows."""
+        from screener.volatility import dvpe
+
+        if math.isfinite(value):
+            return ""
+        test = dvpe(self.fluid, self.z, product=self.product)
+        if test.status[0] != Status.OUT_OF_RANGE:
+            return words(test.status[0])
+        return say("quick", "dvpe_scope" if math.isfinite(test.P_total[0]) else "dvpe_boils")
+
     @cached_property
     def still(self):
         """The distillation as an ASTM D86 flask reads it; worked out when first asked for."""
@@ -99,6 +110,8 @@ class Liquid:
 
 def groups(liquid: Liquid) -> tuple[Group, ...]:
     """All answers, those asked for most often first."""
+    from screener.cli.quick_classes import classes
+
     made = (main, vapour_pressures, volatility, distillations, from_reid, classes)
     return tuple(Group(one.__name__, say("groups", one.__name__), tuple(one(liquid))) for one in made)
 
@@ -136,8 +149,7 @@ def main(liquid: Liquid):
     why = _why(liquid.bubble) or liquid.no_pressure
     by = _by(liquid, "tvp", "bubble")
     yield liquid.answer("bubble_pressure", liquid.factor * liquid.bubble.P[0], "Pa", why, by, temperature=liquid.at(liquid.T))
-    no_dvpe = say("quick", "dvpe_scope") if math.isfinite(sheet.X) else ""
-    yield liquid.answer("DVPE", sheet.DVPE, "Pa", liquid.no_pressure or no_dvpe * (not math.isfinite(sheet.DVPE)),
+    yield liquid.answer("DVPE", sheet.DVPE, "Pa", liquid.no_pressure or liquid.no_dvpe(sheet.DVPE),
                         _by(liquid, "dvpe", "d5191"), temperature=liquid.at(T_100F))  # fmt: skip
     yield liquid.answer("density_15_degC", sheet.density_15, "kg/m3", by=_by(liquid, "density_15", "volumes"))
     yield liquid.answer("vapour_fraction", flash.beta[0], "mol/mol", _why(flash) or liquid.no_pressure, say("by", "flash"),
@@ -166,12 +178,12 @@ def vapour_pressures(liquid: Liquid):
     for key, i in (("VPCR4", 0), ("VPCR_low", 1)):
         by = say("by", "d6377" if crude.in_scope[i] else "d6377_outside")
         yield liquid.answer(key, crude.P[i], "Pa", why, by, temperature=at, ratio=f"{LOW_RATIO:g}")
-    yield liquid.answer("total_pressure", computed.X, "Pa", why, say("by", "mini"))
+    no_cell = "" if math.isfinite(computed.X) else liquid.no_dvpe(computed.X)
+    yield liquid.answer("total_pressure", computed.X, "Pa", why or no_cell, say("by", "mini"))
     for key, name in DVPE_RULES.items():
         rule = dvpe_equation(name)
-        inside = math.isfinite(computed.DVPE)  # all of them take the cell of ASTM D5191, and its scope
-        yield liquid.answer(key, float(rule.dvpe(computed.X)), "Pa", why or ("" if inside else say("quick", "dvpe_scope")),
-                            _line(rule))  # fmt: skip
+        # all of them take the cell of ASTM D5191, and its scope
+        yield liquid.answer(key, float(rule.dvpe(computed.X)), "Pa", why or liquid.no_dvpe(computed.DVPE), _line(rule))
     for chamber in ("dry", "wet"):
         test = reid_vapour_pressure(fluid, z, chamber=chamber, product=product)
         wet = liquid.alcohol and say("quick", "wet_alcohol") if chamber == "wet" else ""
@@ -235,36 +247,3 @@ def from_reid(liquid: Liquid):
             name = f"true_from_reid_{stock}"
             key = f"{name}_100F" if i else name
             yield liquid.answer(key, found[0], "Pa", why, say("by", "ap42"), name, temperature=liquid.at(T))
-
-
-def classes(liquid: Liquid):
-    """Volatility classes met and the ethanol allowance: information, never a limit."""
-    from screener.volatility import class_standards, ethanol_allowance
-
-    sheet = liquid.sheet
-    gasoline = math.isfinite(sheet.DVPE) and liquid.product != "crude"
-    why = liquid.no_pressure or ("" if gasoline else say("quick", "no_gasoline"))
-    for standard in class_standards():
-        yield _class(liquid, standard, why)
-    ethanol = sheet.ethanol
-    why = say("quick", "no_gasoline") if liquid.product == "crude" else ""
-    why = why or ("" if math.isfinite(ethanol_allowance(ethanol)[0]) else say("quick", "allowance_scope"))
-    yield liquid.answer("ethanol_allowance", ethanol_allowance(ethanol)[0], "Pa", why, say("by", "eu_annex"),
-                        ethanol=f"{100 * ethanol:.1f}")  # fmt: skip
-
-
-def _class(liquid: Liquid, standard: str, why: str) -> Answer:
-    """Classes of one standard that the figures meet, or what the nearest class misses."""
-    key, label = f"classes {standard}", say("quick", "class", standard=standard)
-    if why:
-        return Answer(key, label, None, "", why)
-    found = liquid.sheet.classes(standard)
-    met = [match for match in found if match.met]
-    used = met or found
-    mark = say("quick", "memory") if any(match.evidence == "memory" for match in used) else ""
-    by = ", ".join(text for text in (used[0].edition, mark) if text)
-    if met:
-        return Answer(key, label, None, "", by=by, text=", ".join(match.name for match in met))
-    nearest = min(found, key=lambda match: len(match.missed))
-    missed = say("quick", "no_class", name=nearest.name, missed="; ".join(nearest.missed))
-    return Answer(key, label, None, "", by=f"{missed}; {by}", text=say("quick", "none"))

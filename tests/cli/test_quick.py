@@ -116,6 +116,11 @@ def test_every_fault_is_listed():
 GROUPS = ["main", "vapour_pressures", "volatility", "distillations", "from_reid", "classes"]
 
 
+def texts_of(body) -> dict:
+    """Answers of the last group by id."""
+    return {item["id"]: item for item in body["answers"] if item["group"] == "classes"}
+
+
 def test_all_the_standard_tests_of_a_gasoline(capsys):
     """Relations between the tests, whatever the property tables say; pressures in Pa, shares as fractions."""
     code = main(["quick", "stock:summer gasoline base", "--at", "30degC", "--json"])
@@ -142,8 +147,10 @@ def test_all_the_standard_tests_of_a_gasoline(capsys):
     # the cross-check knows a fuel by two numbers: 15 % is what such fuels scatter by about the correlation
     assert found["true_from_reid_refined_100F"] == pytest.approx(found["TVP_100F"], rel=0.15)
     assert found["ethanol_allowance"] == 0.0 and found["flash_point"] < 273.15
+    assert texts_of(body)["classes ASTM D5798"]["text"] == "none"
+    assert texts_of(body)["classes vapour lock"]["text"]
     assert found["RVPE"] is None and found["true_from_reid_crude"] is None
-    texts = {item["id"]: item for item in body["answers"] if item["group"] == "classes"}
+    texts = texts_of(body)
     assert texts["classes ASTM D4814"]["text"] and "edition" in texts["classes ASTM D4814"]["by"]
     assert all(item["value"] is not None or item["text"] or item["reason"] for item in body["answers"])
     assert all(item["by"] or item["reason"] for item in body["answers"])
@@ -157,6 +164,20 @@ def test_what_a_test_does_not_cover_is_unknown_with_the_reason(capsys):
     ):  # fmt: skip
         assert found[key]["value"] is None and words in found[key]["reason"], key
     assert found["VPCR4"]["value"] > 0.0
+
+
+def test_an_ethanol_fuel_has_its_own_classes(capsys):
+    _, found = quick(capsys, "25% stock:natural gasoline + 75% ethanol", "--at", "20degC")
+    assert found["classes ASTM D5798"]["text"] and found["classes ASTM D5798"]["text"] != "none"
+
+
+def test_what_boils_in_the_ice_bath_has_no_sample(capsys):
+    _, found = quick(capsys, "stock:field butane", "--at", "-10degC")
+    for key in ("DVPE", "total_pressure", "DVPE_EPA"):
+        assert found[key]["value"] is None and "boils at 0 to 1 degC" in found[key]["reason"], key
+    _, found = quick(capsys, "stock:diesel", "--at", "20degC")
+    assert found["DVPE"]["value"] is None and "7 to 130 kPa" in found["DVPE"]["reason"]
+    assert found["total_pressure"]["value"] < 7e3
 
 
 def test_a_condensate_has_its_own_figures(capsys):
