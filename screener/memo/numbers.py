@@ -229,7 +229,7 @@ def percent(share: float | None) -> Quantity:
     if share is None or not math.isfinite(share):
         return Quantity(None, "-", NONE)
     if share >= 9.995:
-        return Quantity(float(share), "-", "> 999 %")
+        return Quantity(float(share), "-", ">999 %")
     value, places = 100.0 * share, 0
     while places < 3 and (float(f"{value:.{places}f}") < 100.0) != (value < 100.0):
         places += 1

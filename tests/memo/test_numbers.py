@@ -70,7 +70,7 @@ def test_a_small_margin_never_reads_as_nothing():
 
 @pytest.mark.parametrize(
     ("share", "text"), [(0.676, "68 %"), (0.996, "99.6 %"), (0.9996, "99.96 %"), (1.0, "100 %"), (1.0004, "100 %"), (1.06, "106 %"),
-     (9.99, "999 %"), (49818.0, "> 999 %")]
+     (9.99, "999 %"), (49818.0, ">999 %")]
 )  # fmt: skip
 def test_percent_shows_the_side_of_the_limit(share, text):
     assert numbers.percent(share).text == text
