@@ -92,6 +92,13 @@ class Liquid:
             return words(test.status[0])
         return say("quick", "dvpe_scope" if math.isfinite(test.P_total[0]) else "dvpe_boils")
 
+    def by_own_vapour(self, key: str) -> str:
+        """What a vapour-pressure test is by, with the factor of the measured one where there is one."""
+        method = say("by", key)
+        if self.factor == 1.0:
+            return method
+        return say("by", "own_vapour", method=method, factor=f"{self.factor:.3f}")
+
     @cached_property
     def still(self):
         """The distillation as an ASTM D86 flask reads it; worked out when first asked for."""
@@ -162,8 +169,9 @@ def main(liquid: Liquid):
 
 
 def vapour_pressures(liquid: Liquid):
-    """The laboratory tests of vapour pressure, as computed."""
+    """The laboratory tests of vapour pressure, as computed; a measured one multiplies the fuel's own vapour in each."""
     from screener.volatility import (
+        dvpe,
         dvpe_equation,
         reid_equivalent_crude,
         reid_vapour_pressure,
@@ -172,27 +180,30 @@ def vapour_pressures(liquid: Liquid):
     )
 
     fluid, z, product, why, computed = liquid.fluid, liquid.z, liquid.product, liquid.no_pressure, liquid.computed
-    at = liquid.at(T_100F)
+    at, more = liquid.at(T_100F), liquid.factor - 1.0
     crude = vapour_pressure_crude(fluid, z, ratio=np.array([4.0, LOW_RATIO]))
-    yield liquid.answer("TVP_100F", computed.TVP, "Pa", why, say("by", "bubble"), temperature=at)
+    yield liquid.answer("TVP_100F", liquid.sheet.TVP, "Pa", why, _by(liquid, "tvp", "bubble"), temperature=at)
     for key, i in (("VPCR4", 0), ("VPCR_low", 1)):
-        by = say("by", "d6377" if crude.in_scope[i] else "d6377_outside")
-        yield liquid.answer(key, crude.P[i], "Pa", why, by, temperature=at, ratio=f"{LOW_RATIO:g}")
+        by = liquid.by_own_vapour("d6377" if crude.in_scope[i] else "d6377_outside")
+        yield liquid.answer(key, liquid.factor * crude.P[i], "Pa", why, by, temperature=at, ratio=f"{LOW_RATIO:g}")
     no_cell = "" if math.isfinite(computed.X) else liquid.no_dvpe(computed.X)
-    yield liquid.answer("total_pressure", computed.X, "Pa", why or no_cell, say("by", "mini"))
+    X = computed.X + (more and more * float(dvpe(fluid, z, product=product).P_vapour[0]))
+    yield liquid.answer("total_pressure", X, "Pa", why or no_cell, liquid.by_own_vapour("mini"))
     for key, name in DVPE_RULES.items():
         rule = dvpe_equation(name)
         # all of them take the cell of ASTM D5191, and its scope
-        yield liquid.answer(key, float(rule.dvpe(computed.X)), "Pa", why or liquid.no_dvpe(computed.DVPE), _line(rule))
+        yield liquid.answer(key, float(rule.dvpe(X)), "Pa", why or liquid.no_dvpe(computed.DVPE), _line(rule))
     for chamber in ("dry", "wet"):
         test = reid_vapour_pressure(fluid, z, chamber=chamber, product=product)
         wet = liquid.alcohol and say("quick", "wet_alcohol") if chamber == "wet" else ""
-        yield liquid.answer(f"Reid_{chamber}", test.P[0], "Pa over barometer", why or wet or _why(test),
-                            say("by", f"reid_{chamber}"))  # fmt: skip
+        yield liquid.answer(f"Reid_{chamber}", test.P[0] + more * test.P_vapour[0], "Pa over barometer",
+                            why or wet or _why(test), liquid.by_own_vapour(f"reid_{chamber}"))  # fmt: skip
     triple = vapour_pressure_d6378(fluid, z, product=product)
-    yield liquid.answer("D6378", triple.P[0], "Pa", why or _why(triple), say("by", "d6378"))
+    yield liquid.answer("D6378", triple.P[0] + more * triple.P_vapour[0], "Pa", why or _why(triple),
+                        liquid.by_own_vapour("d6378"))  # fmt: skip
     is_crude = "" if liquid.product == "crude" else say("quick", "not_crude")
-    yield liquid.answer("RVPE", float(reid_equivalent_crude(crude.P[0])[0]), "Pa", why or is_crude, say("by", "rvpe"))
+    yield liquid.answer("RVPE", float(reid_equivalent_crude(liquid.factor * crude.P[0])[0]), "Pa", why or is_crude,
+                        say("by", "rvpe"))  # fmt: skip
 
 
 def _line(rule) -> str:
@@ -236,7 +247,8 @@ def from_reid(liquid: Liquid):
     from screener.volatility import reid_vapour_pressure, true_from_reid_crude, true_from_reid_refined
 
     curve, is_crude = liquid.still, liquid.product == "crude"
-    reid = reid_vapour_pressure(liquid.fluid, liquid.z, product=liquid.product).P[0]
+    test = reid_vapour_pressure(liquid.fluid, liquid.z, product=liquid.product)
+    reid = test.P[0] + (liquid.factor - 1.0) * test.P_vapour[0]
     slope = (curve.temperature(0.15) - curve.temperature(0.05))[0] / 0.10
     for i, T in enumerate(dict.fromkeys((liquid.T, T_100F))):
         both = {"refined": true_from_reid_refined(T, reid, slope=slope), "crude": true_from_reid_crude(T, reid)}

@@ -9,10 +9,12 @@ from dataclasses import replace
 import pytest
 
 from screener.blends import Blend
+from screener.blends.measured import MeasuredPressure
 from screener.cli import main
 from screener.cli.quick import read_parts
 from screener.cli.quick_answers import Liquid, groups
 from screener.ground.errors import CaseErrors, InputError
+from screener.volatility import dvpe, reid_vapour_pressure
 
 
 @pytest.mark.parametrize(
@@ -196,6 +198,27 @@ def test_a_sheet_without_vapour_pressure_gives_none():
                 "vapour_lock_index", "vapour_fraction", "flash_point", "classes EN 228 E10"):  # fmt: skip
         assert found[key].value is None and "no vapour pressure" in found[key].why, key
     assert found["D86_T50"].value and found["density_15_degC"].value and found["driveability_index"].value
+
+
+def test_a_measured_vapour_pressure_moves_every_test_of_it_and_leaves_the_air_alone():
+    """8 % more vapour of its own: whole figures without air grow by 8 %, those with air by 8 % of the vapour in them."""
+    known = Blend.of({"stock:summer gasoline base": 1.0})
+    seen = MeasuredPressure("true vapour pressure", 1.08, 310.93, 1.0, 1.08, 0.03, 0.03)
+    plain, moved = (
+        {item.key: item for group in groups(Liquid(blend, 303.15, "si")) for item in group.answers}
+        for blend in (known, replace(known, measured=(seen,)))
+    )
+    for key in ("bubble_pressure", "TVP_100F", "VPCR4", "VPCR_low"):
+        assert moved[key].value == pytest.approx(1.08 * plain[key].value, rel=1e-12), key
+        assert "1.080" in moved[key].by, key
+    cell, gas = dvpe(known.fluid, known.z), reid_vapour_pressure(known.fluid, known.z)
+    more = 0.08 * cell.P_vapour[0]
+    assert moved["total_pressure"].value == pytest.approx(plain["total_pressure"].value + more, rel=1e-12)
+    assert moved["DVPE_EN"].value == pytest.approx(plain["DVPE_EN"].value + 0.965 * more, rel=1e-12)
+    assert moved["Reid_dry"].value == pytest.approx(plain["Reid_dry"].value + 0.08 * gas.P_vapour[0], rel=1e-12)
+    assert 1.07 < moved["D6378"].value / plain["D6378"].value < 1.09
+    assert moved["true_from_reid_refined"].value > 1.07 * plain["true_from_reid_refined"].value
+    assert moved["T_ratio_20"].value < plain["T_ratio_20"].value
 
 
 SHEET = """[lab]
