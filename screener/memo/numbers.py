@@ -10,12 +10,11 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass, replace
 
-from screener.ground.constants import T_60F, T_NORMAL
+from screener.ground.constants import PSI, T_60F, T_NORMAL
 
 SYSTEMS = ("si", "us")
 NONE = "none"  # printed where a number does not exist
 
-_PSI = 6894.757293168361  # [Pa]; pound-force 4.4482216152605 N (exact) over 0.0254^2 m2
 _FOOT = 0.3048  # [m]; exact, international foot 1959
 _GALLON = 3.785411784e-3  # US liquid gallon [m3]; exact, 231 in3
 _BARREL = 42 * _GALLON  # petroleum barrel [m3]; 42 US gal
@@ -67,16 +66,16 @@ class Span:
 
 
 _TABLE: dict[str, dict[str, Shown]] = {
-    "Pa": {"si": Shown("kPa", 1e3, decimals=1), "us": Shown("psi", _PSI, decimals=2)},
+    "Pa": {"si": Shown("kPa", 1e3, decimals=1), "us": Shown("psi", PSI, decimals=2)},
     "Pa over barometer": {
         "si": Shown("kPa gauge", 1e3, decimals=2),
-        "us": Shown("psi gauge", _PSI, decimals=3),
+        "us": Shown("psi gauge", PSI, decimals=3),
     },
     "Pa under barometer": {
         "si": Shown("kPa vacuum", 1e3, decimals=2),
-        "us": Shown("psi vacuum", _PSI, decimals=3),
+        "us": Shown("psi vacuum", PSI, decimals=3),
     },
-    "Pa difference": {"si": Shown("kPa", 1e3, decimals=1), "us": Shown("psi", _PSI, decimals=2)},
+    "Pa difference": {"si": Shown("kPa", 1e3, decimals=1), "us": Shown("psi", PSI, decimals=2)},
     "K": {
         "si": Shown("degC", 1.0, 273.15, 1, True),
         "us": Shown("degF", 1 / 1.8, 459.67, 1, True),
