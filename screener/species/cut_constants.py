@@ -12,8 +12,9 @@ from __future__ import annotations
 
 import numpy as np
 
+from screener.ground.constants import PSI
+
 RANKINE = 1.8  # degrees Rankine per kelvin
-PSI = 6894.757293168  # [Pa]; pound-force per square inch, from the international pound, inch and gravity
 BAR = 1.0e5  # [Pa]
 WATER_60F = 999.016  # density of water at 60 degF [kg/m3]; API MPMS 11.4.1, from memory, unverified
 

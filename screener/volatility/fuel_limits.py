@@ -6,10 +6,9 @@ from dataclasses import dataclass
 
 import numpy as np
 
-from screener.ground.constants import ZERO_CELSIUS
+from screener.ground.constants import PSI, ZERO_CELSIUS
 from screener.ground.files import read_table
 
-PSI = 6894.757293168  # [Pa]; pound-force per square inch
 # A value as the tables print it, in SI.
 _SI = {
     "kPa": lambda v: 1000.0 * v,

@@ -11,10 +11,10 @@ from functools import lru_cache
 
 import numpy as np
 
+from screener.ground.constants import PSI
 from screener.ground.errors import UnknownName
 from screener.ground.files import read_table
 
-PSI = 6894.757293168  # [Pa]; pound-force per square inch
 EVIDENCE = "memory"  # of the coefficients, ranges and slopes of this module
 DEGF = 0.0, 140.0  # [degF] span of temperature; from memory, unverified
 _RANKINE = 1.8
