@@ -14,6 +14,7 @@ from screener.screening.wording import say
 from screener.states.case import Case
 from screener.states.fire import FireStates
 from screener.states.lanes import LIQUIDS, Lanes
+from screener.states.measured import flash_known
 
 MONTHS = ("January", "February", "March", "April", "May", "June", "July", "August", "September",
           "October", "November", "December")  # fmt: skip
@@ -130,6 +131,13 @@ class Context:
             return say("unknown", "unmeasured")
         factor = self.lanes.measured.factor[self.i, k]
         return "" if math.isfinite(factor) or not any(b.measured for b in blends) else say("unknown", "no-factor")
+
+    def unmeasured_flash(self, k: int) -> str:
+        """Why no flash point of liquid k counts, '' if it does.
+
+        A sheet with neither a flash point nor a vapour pressure leaves the light end open, which decides both.
+        """
+        return "" if all(flash_known(blend) for _, blend in self.parts(k)) else say("unknown", "unmeasured-flash")
 
     def why_no_hot_pressure(self, k: int) -> str:
         """Why the bubble pressure of the hottest liquid is not known, '' if it is."""

@@ -72,7 +72,9 @@ def _judge_lane(draft: Draft, lane: Lane) -> Judgement:
             caps=lane.caps,
         )  # fmt: skip
     if judged.verdict == "beyond":
-        return replace(judged, reason=lane.beyond or judged.reason)
+        # Beyond outranks unknown, but what makes the number doubtful is said with it.
+        reason = lane.beyond or judged.reason
+        return replace(judged, reason=f"{reason}; {lane.unknown}" if lane.unknown else reason)
     if not (lane.unknown or judged.verdict == "unknown"):
         return judged
     return replace(

@@ -203,7 +203,8 @@ def flash(context: Context) -> Draft:
     if context.case.tank.kind == "pressure-vessel":
         return _draft(key, skip=say("skip", "pressure-vessel"))
     own = [k for k in context.liquids() if k in (RECEIPT, HEEL)]
-    if all(context.fire.flash.T[context.i, k] < ALWAYS_ABOVE for k in own):
+    light = (context.fire.flash.T[context.i, k] < ALWAYS_ABOVE and not context.unmeasured_flash(k) for k in own)
+    if all(light):
         # Mixtures of such liquids are no different; one that is contaminated by such a liquid is judged.
         return _draft(key, skip=say("skip", "always-above-flash"))
     rows = tuple(_flash_lane(context, k) for k in context.liquids())
@@ -215,8 +216,10 @@ def _flash_lane(context: Context, k: int) -> Lane:
     lanes, f, i = context.lanes, context.fire.flash, context.i
     low, T, high = (float(v) for v in lanes.T_hot[i, k])
     limit, status = float(f.T[i, k]), int(f.status[i, k])
-    unknown, caps = "", context.typical_cap() + flash_caps(context, k)
-    if math.isnan(T) or math.isnan(limit):
+    unknown, caps = context.unmeasured_flash(k), context.typical_cap() + flash_caps(context, k)
+    if unknown:
+        limit, unknown = math.nan, say("unknown", "lane", liquid=context.liquid_name(k), why=unknown)
+    elif math.isnan(T) or math.isnan(limit):
         paths = context.surface_missing() + context.own_missing(k)
         why = say("unknown", "no-flash", why=context._status_words(status))
         if paths:
@@ -256,7 +259,8 @@ def switch_loading(context: Context) -> Draft:
     facts = tuple(f for f in facts if not isinstance(f.value, float) or math.isfinite(f.value))
     classes = old.static, old.static_receipt
     if not set(classes) <= set(STATIC_ORDER):
-        return _draft(key, unknown=say("unknown", "static-class"), facts=facts)
+        why = context.unmeasured_flash(RECEIPT) or say("unknown", "static-class")
+        return _draft(key, unknown=why, facts=facts)
     before, now = map(STATIC_ORDER.index, classes)
     if now >= before:
         return _draft(key, skip=say("skip", "same-class" if now == before else "higher-class"), facts=facts)

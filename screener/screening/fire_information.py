@@ -21,13 +21,14 @@ from screener.ground.constants import ZERO_CELSIUS
 from screener.screening.context import Context
 from screener.screening.finding import Fact, Information
 from screener.screening.health import hatch_information
+from screener.screening.measured import with_doubt
 from screener.screening.wording import say
 from screener.species import find
 from screener.states.fire import INSIDE, LEAN, RICH
 from screener.states.flash import FLASH_SPREAD
 from screener.states.ladder import vapour_ladder
 from screener.states.lanes import BEST, HEEL, LIQUIDS, RECEIPT
-from screener.states.measured import mixed, own
+from screener.states.measured import flash_known, mixed, own
 from screener.states.previous import classed
 from screener.states.scaled import flammable_window, flash_point, headspace, vapour_space
 from screener.volatility import distillation_d86
@@ -86,8 +87,9 @@ def _liquid(context: Context, name: str, blend, k: int) -> Information:
         y = headspace(fluid, T_hot, z, factor, P=P)
         facts.append(Fact("density of the undiluted vapour over that of air", float(vapour_density_ratio(fluid, y)[0]), "-"))
         facts += _oxygen_facts(fluid, y)
-    facts += _class_facts(context, blend, found, float(flash.T[0]))
-    return Information(f"{name}: {say('fire', 'information')}", _known(facts), say("note", "fire-information"))
+    facts += _class_facts(context, blend, found, float(flash.T[0]) if flash_known(blend) else math.nan)
+    note = with_doubt("fire-information", blend)
+    return Information(f"{name}: {say('fire', 'information')}", _known(facts), note)
 
 
 def _oxygen_facts(fluid, y) -> list[Fact]:
@@ -143,7 +145,7 @@ def _contamination(context: Context, name: str, blend, other_name: str, other) -
         for s, T_f, note in zip(share, flash, state)
     ]
     title = say("fire", "contamination", name=name, other=other_name)
-    return Information(title, _known(facts), say("note", "contamination"))
+    return Information(title, _known(facts), with_doubt("contamination", blend, other))
 
 
 def _contaminated_factor(fluid, Z, share, blend, other) -> np.ndarray:
@@ -167,7 +169,8 @@ def _known(facts) -> tuple[Fact, ...]:
 
 
 def ladder(context: Context, findings) -> dict:
-    """The vapour space month by month as plain data, for the liquid that is worst now; {} without months."""
+    """The vapour space month by month as plain data, for the liquid that is worst now; {} without months
+    or where the sheet of that liquid holds no vapour pressure."""
     finding = next((f for f in findings if f.id == "vapour-space.flammable"), None)
     k = RECEIPT
     if finding is None or finding.verdict == "skipped":
@@ -178,6 +181,8 @@ def ladder(context: Context, findings) -> dict:
             (k for k in context.liquids() if context.liquid_name(k) == wanted.liquid
              and LIQUIDS[k][1] in ("", wanted.level)), RECEIPT,
         )  # fmt: skip
+    if context.unmeasured(k):
+        return {}
     rows = vapour_ladder(context.lanes, context.i, k)
     if not rows:
         return {}

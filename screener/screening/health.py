@@ -10,7 +10,7 @@ from screener.screening.context import Context
 from screener.screening.criteria import criterion
 from screener.screening.draft import Draft, Lane
 from screener.screening.finding import Fact, Information
-from screener.screening.measured import pressure_facts
+from screener.screening.measured import pressure_facts, with_doubt
 from screener.screening.vapour import _barometer_missing
 from screener.screening.wording import lines, say
 from screener.species.pseudo import is_cut
@@ -139,7 +139,7 @@ def hatch_information(context: Context) -> tuple[Information, ...]:
         facts = tuple(f for f in facts if math.isfinite(f.value) and f.value > 0.0)
         if facts:
             title = say("health", "information", liquid=context.liquid_name(k))
-            rows.append(Information(title, facts, say("note", "hatch")))
+            rows.append(Information(title, facts, with_doubt("hatch", context.parts(k)[0][1])))
     return tuple(rows)
 
 

@@ -7,6 +7,7 @@ import math
 from screener.blends.measured import measured_sheet, pressure_factor
 from screener.screening.context import Context
 from screener.screening.finding import Fact, Information
+from screener.screening.measured import with_doubt
 from screener.screening.wording import say
 from screener.volatility import class_standards
 
@@ -40,7 +41,7 @@ def _figures(name: str, blend, claimed: str) -> Information:
         Fact("T50", sheet.T50, "K", note("distillation", at=0.5)),
     ]
     facts = [fact for fact in facts if math.isfinite(fact.value)]
-    if GASOLINE_LIKE[0] < sheet.DVPE < GASOLINE_LIKE[1]:
+    if blend.vapour_pressure_known and GASOLINE_LIKE[0] < sheet.DVPE < GASOLINE_LIKE[1]:
         for standard in class_standards():
             met = [match for match in sheet.classes(standard) if match.met]
             if met:
@@ -50,4 +51,4 @@ def _figures(name: str, blend, claimed: str) -> Information:
                 )
     if claimed:
         facts.append(Fact("class claimed in the case", claimed))
-    return Information(f"{name}: {blend.title}", tuple(facts), say("note", "information"))
+    return Information(f"{name}: {blend.title}", tuple(facts), with_doubt("information", blend))

@@ -43,6 +43,12 @@ def pressure_facts(context: Context, k: int) -> tuple[Fact, ...]:
     return (*facts, Fact("factor on computed vapour pressures", factor, "-", note))
 
 
+def with_doubt(note: str, *blends) -> str:
+    """A note beside figures of the blends, with what makes them doubtful where a sheet holds no vapour pressure."""
+    known = all(blend.vapour_pressure_known for blend in blends)
+    return say("note", note) if known else f"{say('note', note)}; {say('unknown', 'unmeasured')}"
+
+
 def flash_facts(context: Context, k: int) -> tuple[Fact, ...]:
     """Measured and computed flash points of the parts of liquid k."""
     facts = []

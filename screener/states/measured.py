@@ -109,6 +109,11 @@ def sour_shares(blends) -> np.ndarray:
     return _figures(blends, "h2s", "value")
 
 
+def flash_known(blend) -> bool:
+    """Whether a flash point of a blend means anything: measured, or of a liquid whose light end is known."""
+    return blend.vapour_pressure_known or blend.figure("flash_point") is not None
+
+
 def measured_of(fluid, Z, receipts, heels, moles, masses) -> Measured:
     """What was measured of every liquid.
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 from functools import lru_cache
 
@@ -11,6 +12,7 @@ from screener.blends import Blend
 from screener.blends.measured import measured_sheet, pressure_factor
 from screener.fire import static_class
 from screener.states.lanes import Lanes
+from screener.states.measured import flash_known
 from screener.states.pressures import psat_errors, relative_spread
 from screener.states.scaled import flash_point, vapour_space
 
@@ -39,7 +41,12 @@ def _stock(name: str) -> Blend:
 
 
 def classed(blend) -> tuple[float, float, str]:
-    """Flash point [K], DVPE [Pa] taken as the Reid vapour pressure, and vapour class; measured where a sheet has them."""
+    """Flash point [K], DVPE [Pa] taken as the Reid vapour pressure, and vapour class; measured where a sheet has them.
+
+    NaN and unknown of a sheet that says nothing of the light end.
+    """
+    if not flash_known(blend):
+        return math.nan, math.nan, str(static_class(math.nan, math.nan)[0])
     flash, reid = blend.figure("flash_point"), None if blend.figure("dvpe") else blend.figure("rvp")
     T = flash.value if flash else float(flash_point(blend.fluid, blend.z, pressure_factor(blend.measured)[0]).T[0])
     P = reid.value if reid else float(measured_sheet(blend).DVPE)
