@@ -31,6 +31,7 @@ COARSE = 16  # steps of the distillation while searching; the answer is computed
 CLOSE = 0.05  # largest misfit in units of R at which the search stops
 ENOUGH = 0.01  # mean square misfit, in R, below which slopes are not worked out again; our choice
 CONTRADICTION = 3.0  # misfit in units of R from which a sheet is refused; common practice, no source
+DIRECT = ("tvp", "vpcr", "dvpe", "rvp", "rvpe")  # the most direct test of a vapour pressure first
 TRIES = np.array([1.0, 0.6, 0.3, 0.1])  # parts of a step that are tried side by side
 
 
@@ -228,7 +229,11 @@ def _notes(sheet, start, numbers, computed):
 
 
 def _pressures(sheet, fitted: Fitted, fluid):
-    """Measured vapour pressures with the ratio of the fuel's own vapour, the most direct first."""
+    """Measured vapour pressures with the ratio of the fuel's own vapour, the most direct first.
+
+    Of VPCR the smallest vapour space is the most direct; among equals the highest ratio, the careful side:
+    the order of the rows of a sheet means nothing.
+    """
     table = columns(fitted.names)
     z = fitted.volume * table.rho_15 / table.MW
     z /= z.sum()
@@ -248,6 +253,7 @@ def _pressures(sheet, fitted: Fitted, fluid):
         else:
             continue
         ratio, doubt = float(1.0 + change / own), float(R / own)
-        found.append(MeasuredPressure(one.name, one.value, one.T, float(computed), ratio, one.R, doubt))
-    rank = ("true", "VPCR", "DVPE", "RVP")
-    return sorted(found, key=lambda m: next(i for i, r in enumerate(rank) if m.what.startswith(r)))
+        space = one.argument[0] if one.key.startswith("vpcr") else 0.0
+        made = MeasuredPressure(one.name, one.value, one.T, float(computed), ratio, one.R, doubt)
+        found.append((DIRECT.index(one.key[:4]), space, -ratio, made))
+    return [row[-1] for row in sorted(found, key=lambda row: row[:3])]

@@ -64,7 +64,11 @@ def told(measured) -> MeasuredPressure | None:
     A test whose reproducibility is above BLIND of the fuel's own vapour pressure (a DVPE of jet
     fuel) cannot tell it from half as much: its ratio would be noise.
     """
-    return next((m for m in measured if 0.0 < m.ratio < math.inf and m.doubt <= BLIND), None)
+    return next((m for m in measured if _tells(m)), None)
+
+
+def _tells(one: MeasuredPressure) -> bool:
+    return 0.0 < one.ratio < math.inf and one.doubt <= BLIND
 
 
 def pressure_factor(measured) -> tuple[float, float]:
@@ -79,8 +83,9 @@ def pressure_factor(measured) -> tuple[float, float]:
     -------
     tuple of float
         Factor: 1 where nothing was measured, or nothing that tells a factor; NaN where the computed
-        value is no number. [-] Doubt: relative reproducibility, below which no range of a vapour pressure
-        may go; of a test that tells no factor it is what keeps its measured value in the range. [-]
+        value is no number. [-] Doubt, below which no range of a vapour pressure may go: the
+        relative reproducibility, or how far another test of the same liquid lies from this one where that is
+        more; of a test that tells no factor it is what keeps its measured value in the range. [-]
 
     Source
     ------
@@ -90,7 +95,8 @@ def pressure_factor(measured) -> tuple[float, float]:
         return 1.0, 0.0
     one = told(measured)
     if one is not None:
-        return one.ratio, one.doubt
+        apart = max(abs(m.ratio / one.ratio - 1.0) for m in measured if _tells(m))
+        return one.ratio, max(one.doubt, apart)
     if not all(math.isfinite(m.ratio) and math.isfinite(m.doubt) for m in measured):
         return math.nan, math.nan
     return 1.0, max(m.doubt for m in measured)
