@@ -3,12 +3,14 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Collection
 from dataclasses import dataclass
 
 from screener.app import edits, fields
 from screener.app.chrome_state import StepState
 from screener.app.engine import Engine, Name, Worked
 from screener.app.fields import Echo, Known
+from screener.app.folding import folded
 from screener.app.glyphs import Glyphs, glyphs
 from screener.app.judged import information
 from screener.app.residuals import residual_note, residual_section
@@ -19,7 +21,8 @@ from screener.ground.errors import InputError
 
 STEPS = ("blend", "tank", "site", "line", "findings", "memo")
 INPUT_STEPS = STEPS[:4]
-_PATH = re.compile(r"\b(?:blend|tank|site|line|screening)\.[a-z_]+(?:\[\d*\])?(?:\.[a-z_]+(?:\[\d+\])?)*")
+_NAME = r"[a-z_][a-z0-9_]*"
+_PATH = re.compile(rf"\b(?:blend|tank|site|line|screening)\.{_NAME}(?:\[\d*\])?(?:\.{_NAME}(?:\[\d+\])?)*")
 
 
 @dataclass(frozen=True)
@@ -125,8 +128,11 @@ class Desk:
                 found |= set(paths_named(finding.reason))
         return found
 
-    def sections(self, step: str, marks: Glyphs | None = None) -> list[fields.Section]:
-        """Sections of an input step; below the inputs of a liquid how it meets its sheet and what it amounts to."""
+    def sections(self, step: str, marks: Glyphs | None = None, here: Collection[str] = ()) -> list[fields.Section]:
+        """Sections of an input step; below the inputs of a liquid how it meets its sheet and what it amounts to.
+
+        `here` names the record and the value under the cursor, which are never folded away.
+        """
         liquid = {"blend": "receipt", "tank": "heel"}.get(step)
         told = self._residuals(liquid, marks or glyphs("ascii")) if liquid else []
         revision, screening = self._told
@@ -134,7 +140,15 @@ class Desk:
         if lines:
             note = say("information", "note" if revision == self.session.revision else "stale")
             told.append(fields.told(say("information", "heading"), note, lines))
-        return fields.sections(step, self.text, self.known, told)
+        return folded(fields.sections(step, self.text, self.known, told), self.session.opened, here)
+
+    def unfold(self, path: str) -> bool:
+        """Open the fold a path belongs to; whether that changes what is shown."""
+        name = fields.fold_of(path)
+        if not name or name in self.session.opened:
+            return False
+        self.session.opened.add(name)
+        return True
 
     def _residuals(self, liquid: str, marks: Glyphs) -> list[fields.Section]:
         """How a liquid of the last screening meets its laboratory sheet."""

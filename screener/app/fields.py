@@ -8,7 +8,7 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from screener.app.rows import Column
 from screener.app.sheet import Cell, Record, Section
@@ -51,13 +51,24 @@ def sections(step: str, text, known: Known, told: Iterable[Section] = ()) -> lis
     """All sections of an input step; those that are only told stand before the long laboratory sheet."""
     if step == "blend":
         made = [part_section("blend", text, known), *_groups("blend", text, known)]
-        return [*made, *told, *_groups(LAB, text, known)]
+        return [*made, *told, *_lab(LAB, text, known)]
     made = _groups(PREFIX[step], text, known)
     if step == "tank":
-        return [*made, *told, *_groups(HEEL_LAB, text, known)]
+        return [*made, *told, *_lab(HEEL_LAB, text, known)]
     if step == "site":
         made += _groups("screening", text, known)
     return [*made, *told]
+
+
+def _lab(base: str, text, known: Known) -> list[Section]:
+    """Sections of a laboratory sheet; its blank rows fold, those of the reproducibilities apart from the others."""
+    return [replace(section, fold=fold_of(section.records[0].key)) for section in _groups(base, text, known)]
+
+
+def fold_of(path: str) -> str:
+    """Name of the fold a path belongs to; '' for a row that never folds."""
+    names = (f"{LAB}.reproducibility", f"{HEEL_LAB}.reproducibility", LAB, HEEL_LAB)
+    return next((name for name in names if path == name or path.startswith((f"{name}.", f"{name}["))), "")
 
 
 def _shared(path: str) -> str:
@@ -154,7 +165,9 @@ def value_record(path: str, key, text, known: Known) -> Record:
         tone = "bad"
     name = label(key)
     cells = (Cell(name), Cell(shown, path, tone), Cell(taken, tone="dim"))
-    return Record(path, cells, note=fault, name=name)
+    # The rows of a row somebody added never fold: its blank values are those to fill in next.
+    folds = not (value or fault or path in known.missing or (echo and echo.default) or "[" in path)
+    return Record(path, cells, note=fault, name=name, folds=folds)
 
 
 def same_text(entered: str, taken: str) -> bool:
@@ -182,7 +195,7 @@ _ONLY_FOR = {
 
 
 def _row_groups(parent: str, text, known: Known) -> list[Section]:
-    """A list of tables such as the vents: one section for each, and a line that adds one."""
+    """A list of tables such as the vents: one section for each, and at the end a line that adds one."""
     base = parent.removesuffix("[]")
     count = text.rows(base)
     group = list(schema.children(parent).values())
@@ -191,12 +204,13 @@ def _row_groups(parent: str, text, known: Known) -> list[Section]:
         title = f"{heading(parent)} {i + 1}"
         made.append(_values(parent, group, text, known, at=f"{base}[{i}]", title=title))
     words = say("sheet", "add_line" if base.startswith((LAB, HEEL_LAB)) else "add_row")
-    made.append(_adder(f"{base}[+]", words, heading(parent) if not count else "", known.faults.get(base)))
-    return made
-
-
-def _adder(key: str, words: str, title: str, fault: str | None = None) -> Section:
-    return Section((Column(title, least=18),), (Record(key, (Cell(words, key, "dim"),), note=fault or "", name=words),))
+    fault = known.faults.get(base, "")
+    key, blank = f"{base}[+]", (Cell(""),) * (len(_VALUE_COLUMNS) - 1 if made else 0)
+    cells = (Cell(words, key, "dim"), *blank)
+    adder = Record(key, cells, note=fault, name=words, folds=not (count or fault), adds=True)
+    if made:
+        return [*made[:-1], replace(made[-1], records=(*made[-1].records, adder))]
+    return [Section((Column(heading(parent), least=18),), (adder,))]
 
 
 def part_section(base: str, text, known: Known) -> Section:
@@ -229,11 +243,14 @@ def part_section(base: str, text, known: Known) -> Section:
 
 def told(title: str, note: str, lines) -> Section:
     """Lines that are only told: label, value and note; the cursor stops at them, so that all come into sight."""
+    first = tuple(table("told_first").values())
+    others = [not name.startswith(first) for name, _, _ in lines]
     records = tuple(
-        Record(f"told:{i}", (Cell(name), Cell(value), Cell(remark, tone="dim")))
+        Record(f"told:{i}", (Cell(name), Cell(value), Cell(remark, tone="dim")), folds=others[i] and not all(others))
         for i, (name, value, remark) in enumerate(lines)
     )
-    return Section((Column(title, least=18), Column("", least=12), Column("", least=14)), records, note)
+    columns = (Column(title, least=18), Column("", least=12), Column("", least=14))
+    return Section(columns, records, note, fold="told", rest="lines")
 
 
 def _faults(known: Known, at: str, *names: str) -> str:

@@ -31,6 +31,7 @@ class InputPane(RowActions, Searching, Container):
         Binding("d", "remove", "Remove", id="inputs.remove"),
         Binding("delete", "clear", "Clear", id="inputs.clear"),
         Binding("s", "scale", "Scale to 100", id="inputs.scale"),
+        Binding("o", "fold", "Open or fold", id="inputs.fold"),
     ]
     DEFAULT_CSS = """
     InputPane { layout: horizontal; }
@@ -82,11 +83,18 @@ class InputPane(RowActions, Searching, Container):
 
     def update_case(self) -> None:
         """Show the case as it now is; a value being typed stays."""
-        sections = self.desk.sections(self.step, self.marks)
+        cell = self.sheet.cell
+        sections = self.desk.sections(self.step, self.marks, (self.sheet.key, cell.path if cell else ""))
         self.sheet.fill(sections, say("intro", self.step), self.desk.refusal(self.step), say("residuals", "refused_short"))
         self._tell_sum()
         if not self.strip.editing:
             self._read()
+
+    def go_to(self, path: str) -> None:
+        """Put the cursor on a value; a fold that hides it opens."""
+        if not self.sheet.go_to(path) and self.desk.unfold(path):
+            self.update_case()
+            self.sheet.go_to(path)
 
     def _tell_sum(self) -> None:
         bases = {"blend": "blend", "tank": "tank.contents"}
@@ -124,12 +132,12 @@ class InputPane(RowActions, Searching, Container):
         record = self.sheet.record
         column = self.sheet.column_name
         name = record.name if record else ""
-        if self._is_adder:
+        if self._acts:
             return name
         return f"{name}, {column}" if column and self._row_at else name
 
     def _value(self, path: str) -> str:
-        return "" if path.endswith("[+]") else self.desk.text.get(path) or say("sheet", "blank")
+        return "" if self._acts else self.desk.text.get(path) or say("sheet", "blank")
 
     @property
     def hint(self) -> str:
@@ -137,6 +145,8 @@ class InputPane(RowActions, Searching, Container):
         cell = self.sheet.cell
         if self.news or cell is None:
             return self.news or (say("hint", "told") if self.sheet.record else "")
+        if self._is_opener:
+            return say("hint", "fold")
         if self._is_adder:
             return say("hint", "parts_add" if cell.path.endswith("parts[+]") else "row_add")
         if fault := self.desk.known.faults.get(cell.path):
@@ -156,7 +166,7 @@ class InputPane(RowActions, Searching, Container):
     def _help(self, width: int):
         cell = self.sheet.cell
         rows: list[Row] = []
-        lines = self.desk.help_of(cell.path) if cell and not self._is_adder else []
+        lines = self.desk.help_of(cell.path) if cell and not self._acts else []
         if lines:
             rows += paragraph(self.marks.plain(self.label), width, "head") + [(Span(""),)]
         for name, text in lines:
@@ -189,7 +199,9 @@ class InputPane(RowActions, Searching, Container):
         cell = self.sheet.cell
         if cell is None:
             return
-        if self._is_adder:
+        if self._is_opener:
+            self.action_fold()
+        elif self._is_adder:
             self.action_add()
         elif schema.key_at(cell.path).kind in (schema.STOCK, schema.SPECIES):
             self._search(cell.path, self.label, self.desk.text.get(cell.path) or "")

@@ -1,8 +1,9 @@
-"""What can be done to the rows of an input step: add, remove, clear, scale."""
+"""What can be done to the rows of an input step: add, remove, clear, scale, open and fold."""
 
 from __future__ import annotations
 
 from screener.app import edits, fields
+from screener.app.folding import FOLD
 from screener.app.words import say
 from screener.ground.errors import InputError
 
@@ -13,6 +14,21 @@ class RowActions:
     @property
     def _is_adder(self) -> bool:
         return self.sheet.key.endswith("[+]")
+
+    @property
+    def _is_opener(self) -> bool:
+        return self.sheet.key.startswith(FOLD)
+
+    @property
+    def _acts(self) -> bool:
+        """Whether the row under the cursor does something instead of holding a value."""
+        return self._is_adder or self._is_opener
+
+    @property
+    def _fold_here(self) -> str:
+        """Name of the fold the cursor stands in; '' where nothing folds."""
+        section = self.sheet.section
+        return section.fold if section and FOLD + section.fold in self.sheet.keys else ""
 
     @property
     def _row_at(self) -> str:
@@ -32,7 +48,7 @@ class RowActions:
 
     def check_action(self, action: str, parameters: tuple) -> bool | None:
         """Keys that would do nothing here are not keys here."""
-        if action in ("add", "remove", "clear", "scale") and self.strip.editing:
+        if action in ("add", "remove", "clear", "scale", "fold") and self.strip.editing:
             return False
         if action == "add":
             return bool(self._list_here) and not (
@@ -42,12 +58,27 @@ class RowActions:
             return bool(self._row_at)
         if action == "clear":
             cell = self.sheet.cell
-            return bool(cell and not self._is_adder and self.desk.text.has(cell.path))
+            return bool(cell and not self._acts and self.desk.text.has(cell.path))
+        if action == "fold":
+            return bool(self._fold_here)
         if action == "scale":
             total = fields.share_total(self._part_base, self.desk.text) if self._part_base else None
             scaled = self.desk.text.get(f"{self._part_base}.scale") if self._part_base else None
             return scaled == "true" or (total is not None and abs(total - 100.0) > 0.05)
         return True
+
+    def action_fold(self) -> None:
+        """Open a fold and go to the first row it held, or fold it and go to the row that opens it."""
+        name, opened, sheet = self._fold_here, self.desk.session.opened, self.sheet
+        if name in opened:
+            opened.remove(name)
+            sheet.move_to(FOLD + name)
+            self.update_case()
+            return
+        opened.add(name)
+        before = set(sheet.keys)
+        self.update_case()
+        sheet.move_to(next((key for key in sheet.keys if key not in before), sheet.key))
 
     def action_add(self) -> None:
         here = self._list_here

@@ -65,6 +65,7 @@ class Session:
         self._back: list[_Step] = []
         self._forward: list[_Step] = []
         self._seen = _stamp(self.path)
+        self.opened: set[str] = set()  # folds of the input steps that stand open; no part of the case
         self.kept_comments = False  # whether the last save put the commented file aside
 
     # opening

@@ -40,6 +40,8 @@ class Record:
     note: str = ""
     note_tone: str = "bad"
     name: str = ""  # what the record is about, for the edit strip
+    folds: bool = False  # whether it stands behind the row that opens its section
+    adds: bool = False  # whether it is the line that adds a row
 
     @property
     def editable(self) -> list[int]:
@@ -55,6 +57,8 @@ class Section:
     records: tuple[Record, ...]
     note: str = ""
     note_tone: str = "dim"
+    fold: str = ""  # name under which it folds, shared by sections that fold together; '' never
+    rest: str = "rows"  # what its folded records are called: 'rows' that are blank, 'lines' that are told
 
 
 def sheet_blocks(sections: Sequence[Section], width: int, marks: Glyphs, at: tuple[str, int]) -> list[Block]:
@@ -67,7 +71,8 @@ def sheet_blocks(sections: Sequence[Section], width: int, marks: Glyphs, at: tup
             Span(marks.plain(column.heading), "head" if i == 0 else "dim") for i, column in enumerate(section.columns)
         ]
         rows: list[Row] = [(Span(""),)] if number else []
-        rows += record_rows(heads, widths, section.columns, GAP)
+        if any(column.heading for column in section.columns):
+            rows += record_rows(heads, widths, section.columns, GAP)
         if section.note:
             rows += paragraph(marks.plain(section.note), width, section.note_tone)
         blocks.append(Block(tuple(rows)))
@@ -134,6 +139,11 @@ class Sheet(Lines):
         """The record under the cursor."""
         found = (record for section in self.sections for record in section.records)
         return next((record for record in found if record.key and record.key == self.key), None)
+
+    @property
+    def section(self) -> Section | None:
+        """The section under the cursor."""
+        return next((s for s in self.sections if any(r.key and r.key == self.key for r in s.records)), None)
 
     @property
     def at(self) -> tuple[str, int]:

@@ -22,7 +22,7 @@ class Talk:
     def help_now(self) -> tuple[str, list[tuple[str, str]]]:
         """Title and lines of the help for the thing in focus."""
         pane = self.query_one(f"#{self.current}")
-        if isinstance(pane, InputPane) and not pane.sheet.key.endswith("[+]") and pane.sheet.cell:
+        if isinstance(pane, InputPane) and pane.sheet.cell and self.desk.help_of(pane.sheet.cell.path):
             return pane.label, self.desk.help_of(pane.sheet.cell.path)
         if isinstance(pane, MemoPane):
             return say("steps", "memo"), [("", pane.hint), ("", say("widgets", "preview"))]

@@ -169,7 +169,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
         self.action_go(STEPS.index(step) + 1)
         if step != "findings":
             pane = self.query_one(f"#{step}")
-            pane.sheet.go_to(path)
+            pane.go_to(path)
             self.query_one(Hint).tell(pane.hint)
 
     def action_view(self) -> None:

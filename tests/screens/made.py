@@ -155,7 +155,10 @@ def screening(diameter: float = 24.0, findings=None, fitted: bool = False) -> Sc
     """One finding of each verdict; the first one's numbers follow the shell diameter. fitted: with a sheet."""
     boiling = replace(ROOM, value=3000.0 * diameter, margin=97800.0 - 3000.0 * diameter, room_used=diameter * 3.0 / 97.8)
     receipt = tuple(9000.0 * 1.035**i * 1.12**i for i in range(15))
-    facts = (Fact("DVPE", 59800.0, "Pa"), Fact("T50", 363.15, "K"))
+    facts = (
+        Fact("DVPE", 59800.0, "Pa"), Fact("evaporated at 70 degC", 0.31, "vol/vol"), Fact("T50", 363.15, "K"),
+        Fact("limiting oxygen in nitrogen", 0.096, "mol/mol", "estimate"),
+    )  # fmt: skip
     return Screening(
         case=SimpleNamespace(
             title="Tarn Hollow, tank 12", blend=FITTED if fitted else None, site=SimpleNamespace(ambient=SimpleNamespace(low=265.15, high=310.15, meaning="design"))

@@ -79,8 +79,9 @@ def test_a_missing_value_says_only_that(desk):
 
 
 def test_paths_in_reasons_are_found():
-    reason = "not given: tank.shell_diameter, line.suction.npsh_required (tank.vents, rated_out_at); e.g. this one"
-    assert paths_named(reason) == ["tank.shell_diameter", "line.suction.npsh_required", "tank.vents"]
+    reason = "not given: tank.shell_diameter, line.suction.npsh_required (tank.vents, rated_out_at), blend.h2s_in_liquid; e.g. this one"
+    named = ["tank.shell_diameter", "line.suction.npsh_required", "tank.vents", "blend.h2s_in_liquid"]
+    assert paths_named(reason) == named
 
 
 @pytest.mark.parametrize(
@@ -113,10 +114,10 @@ def test_choices(desk):
 
 
 def told_of(desk):
-    """What is told of the receipt: behind its parts, before the long laboratory sheet."""
-    made = desk.sections("blend")
-    place = [section.columns[0].heading for section in made].index("Laboratory sheet")
-    return made[place - 1]
+    """What is told of the receipt: behind its parts, before the laboratory sheet."""
+    *_, told, sheet = desk.sections("blend")
+    assert sheet.fold == "blend.lab"
+    return told
 
 
 def test_what_a_liquid_amounts_to_stands_below_its_parts(desk):
@@ -126,7 +127,12 @@ def test_what_a_liquid_amounts_to_stands_below_its_parts(desk):
     assert [tuple(cell.text for cell in record.cells) for record in told.records] == [
         ("DVPE", "59.8 kPa", ""),
         ("T50", "90.0 degC", ""),
+        ("2 more lines", "enter opens", ""),
     ]
+    desk.session.opened.add("told")
+    assert [record.cells[0].text for record in told_of(desk).records] == [
+        "DVPE", "evaporated at 70 degC", "T50", "limiting oxygen in nitrogen", "all shown",
+    ]  # fmt: skip
     assert "earlier" not in told.note
     desk.session.edit("blend.parts[0].share", "80 %")
     assert "of earlier inputs" in told_of(desk).note

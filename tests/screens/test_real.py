@@ -10,7 +10,9 @@ from pathlib import Path
 import pytest
 
 from screener.app.engine import real
+from screener.app.judged import information
 from screener.app.start import examples
+from screener.app.words import table
 from tests.screens.driving import grid, hint, opened, pressed, typed, walk
 
 ROOT = Path(__file__).resolve().parents[2]
@@ -77,6 +79,16 @@ def test_every_default_and_value_of_an_example_is_echoed():
     assert worked.echoes["tank.shell_diameter"].text == "18 m"
     assert worked.echoes["tank.insulated"].default
     assert worked.screening.case.source == str(path)
+
+
+def test_the_lines_that_stand_before_the_fold_are_those_the_program_tells():
+    """Their beginnings are words of another floor; only the measured flash point asks for a sheet that has one."""
+    text = SHIPPED.read_text(encoding="utf-8").replace("\n[tank]\n", '\n[blend.lab]\nflash_point = "-40 degC"\n[tank]\n', 1)
+    *_, worked = real().work(text, "")
+    assert not worked.faults, worked.faults
+    told = [name for name, _, _ in information(worked.screening, "receipt")]
+    for first in table("told_first").values():
+        assert sum(name.startswith(first) for name in told) == 1, first
 
 
 def test_a_broken_case_gives_faults_and_still_echoes_the_rest():

@@ -67,7 +67,7 @@ async def test_every_line_that_is_told_can_be_reached(sheet_file):
     async with opened(sheet_file) as pilot:
         keys = sheet(pilot).keys
         assert [key for key in keys if key.startswith("fit:")] == [f"fit:{i}" for i in range(9)]
-        assert [key for key in keys if key.startswith("told:")] == ["told:0", "told:1"]
+        assert [key for key in keys if key.startswith("told:")] == ["told:0", "told:2"], "the others are folded"
         sheet(pilot).move_to("told:0")
         await settled(pilot)
         assert hint(pilot) == "worked out from the inputs, not entered" and "Edit" not in keys_shown(pilot)
