@@ -39,6 +39,9 @@ BEYOND = 30.0  # [K] past the last measured temperature for which fillers stand 
 # A share may well be off by half of itself and 1 % of the volume [-]; our choice
 LOOSE, LOOSE_AT_ZERO = 0.5, 0.01
 
+LEAST_CUT = 0.001  # [-] of the volume; a smaller rest is within what a sheet says of its species; our choice
+NAMED_NOTE = "composition of the sheet alone: the species it names make up the whole"
+
 
 @dataclass(frozen=True)
 class Start:
@@ -122,6 +125,9 @@ def _hottest(sheet, names):
 
 def _from_curve(sheet):
     """Cuts and known species of a bare sheet, with what was assumed."""
+    known = {name: share for name, share in _asked(sheet) if share > 0.0}
+    if sum(known.values()) >= 1.0 - LEAST_CUT:
+        return tuple(known), np.array(list(known.values())), (NAMED_NOTE,)
     if sheet.density_15 is None or len(sheet.distillation) < 3:
         raise InputError(
             "lab",
@@ -133,7 +139,6 @@ def _from_curve(sheet):
     D86 = curve_at(f, T, np.array(GAP_POINTS))[0]
     D86 = np.maximum.accumulate(np.clip(D86, 240.0, 1050.0) + 1e-3 * np.arange(len(GAP_POINTS)))
     TBP = tbp_from_d86_daubert_1994(D86)[0]
-    known = {name: share for name, share in _asked(sheet) if share > 0.0}
     cuts = pseudo_components(
         np.array(GAP_POINTS),
         np.maximum.accumulate(TBP),
