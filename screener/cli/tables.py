@@ -98,10 +98,11 @@ def _hazards(item, system: str):
 
 def blendstocks(arguments) -> int:
     """All stocks in one table, or everything known about one."""
-    from screener.blends import Blend, stock, stocks, volatility_sheets
+    from screener.blends import Blend, stock, stock_names, volatility_sheets
 
-    chosen = [stock(arguments.name)] if arguments.name else list(stocks())
-    streams.progress(say("progress", "stocks", n=len(chosen)))
+    names = [arguments.name] if arguments.name else stock_names()
+    streams.progress(say("progress", "stocks", n=len(names)))
+    chosen = [stock(name) for name in names]
     sheets = volatility_sheets([Blend.of({f"stock:{item.name}": 1.0}) for item in chosen])
     streams.progress("")
     if arguments.json:
