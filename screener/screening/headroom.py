@@ -110,6 +110,8 @@ def _pressure(context: Context, finding: Finding, family: str):
     name = fluid.names[light]
     moved = _moved(here.P[0], answer.P[:2], name)
     rooms = _other_roof(finding, family)
+    if family == "receipt.flash" and lanes.beta_gas[i] > 0.0:
+        return moved, ()  # dissolved gas comes out whatever the liquid's own vapour pressure is
     limit_T = bubble_temperature(fluid, target, z, factor)
     if limit_T.ok[0] and not limit_T.T[0] < _coldest_useful(context):
         knob = "receipt-temperature" if family == "receipt.flash" else "surface-temperature"
