@@ -13,7 +13,7 @@ import numpy as np
 from screener.blends.parts import Part, assumptions, checked_shares, component, read_basis
 from screener.equilibrium import Fluid
 from screener.ground.constants import T_15C, T_60F
-from screener.ground.errors import InputError
+from screener.ground.errors import CaseErrors, InputError
 from screener.species import columns, find
 from screener.volatility import liquid_expansion
 
@@ -89,7 +89,7 @@ class Blend:
         Raises
         ------
         UnknownName
-            A name in no table, with the nearest names.
+            A name in no table, with the nearest names; CaseErrors with all of them where they are several.
         InputError
             A share that is negative or no number, or a sum off 1 by more than 0.0005.
 
@@ -101,10 +101,14 @@ class Blend:
         basis, T_at = read_basis(basis, at)
         shares = checked_shares(parts)
         total = sum(shares.values())
-        read = [
-            component(key, share / total, basis, at, f"parts[{i}]")
-            for i, (key, share) in enumerate(shares.items())
-        ]
+        read, faults = [], []
+        for i, (key, share) in enumerate(shares.items()):
+            try:
+                read.append(component(key, share / total, basis, at, f"parts[{i}]"))
+            except InputError as fault:
+                faults.append(fault)
+        if faults:
+            raise faults[0] if len(faults) == 1 else CaseErrors(faults)
         moles: dict[str, float] = {}
         volume: dict[str, float] = {}
         for part in read:

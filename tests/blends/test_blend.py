@@ -9,7 +9,7 @@ import pytest
 
 from screener.blends import Blend, density, density_at, mix, stock, union
 from screener.ground.constants import T_60F
-from screener.ground.errors import InputError, ShapeError, UnknownName
+from screener.ground.errors import CaseErrors, InputError, ShapeError, UnknownName
 from screener.species import find
 from screener.volatility import petroleum_expansion
 
@@ -125,6 +125,12 @@ def test_unknown_names_carry_the_nearest_and_the_place():
         Blend.of({"stock:sumer gasoline base": 1.0})
     with pytest.raises(UnknownName, match="'hexan' is not a known species"):
         Blend.of({"species:hexan": 1.0})
+
+
+def test_every_unknown_name_is_told_at_once():
+    with pytest.raises(CaseErrors, match=r"parts\[0\]: 'hexan' is(.|\n)*parts\[2\]: 'etanol' is") as caught:
+        Blend.of({"hexan": 0.3, "toluene": 0.3, "etanol": 0.4})
+    assert [type(fault) for fault in caught.value.faults] == [UnknownName, UnknownName]
 
 
 def test_faulty_basis_and_base_temperature():
