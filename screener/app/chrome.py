@@ -165,6 +165,8 @@ class Hint(Rows):
 class SumRow(Rows):
     """A line under the sheet: the sum of the shares."""
 
+    DEFAULT_CSS = "SumRow.-empty { display: none; }"
+
     def __init__(self, **kwargs):
         super().__init__(**kwargs)
         self.text, self.tone = "", ""
@@ -172,7 +174,8 @@ class SumRow(Rows):
     def tell(self, text: str, tone: str = "") -> None:
         """New words."""
         self.text, self.tone = text, tone
-        self.display = bool(text)
+        self.set_class(not text, "-empty")
+        self.set_class(tone == "dim", "-calm")  # nothing to do about it
         self.refresh(layout=True)
 
     def rows(self, width: int) -> list[Row]:

@@ -232,7 +232,7 @@ class Lines(Toned, can_focus=True):
                 first -= 1  # the heading above the first block of a group comes into sight with it
             self._top = min(self._top, first)
             if rows[-1] >= self._top + self._room:
-                self._top = self._block_start(rows[-1] - self._room + 1)
+                self._top = min(rows[0], self._block_start(rows[-1] - self._room + 1))
         self._top = min(max(0, self._top), max(0, len(self._flat) - self._room))
 
     def _block_start(self, at: int) -> int:

@@ -57,9 +57,9 @@ def residual_section(blend, base: str, note: str, marks: Glyphs, system: str = "
         Column(say("residuals", "heading"), least=14),
         Column(say("residuals", "sheet"), **right),
         Column(say("residuals", "computed"), **right),
-        Column(say("residuals", "apart"), **right),
+        Column(say("residuals", "apart"), **right, spare=2),
         Column(say("residuals", "in_r"), "right", least=4),
-        Column(say("residuals", "bar"), least=2 * HALF + 1),
+        Column(say("residuals", "bar"), least=2 * HALF + 1, spare=1),
     )
     return Section(columns, tuple(records), note)
 

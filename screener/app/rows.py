@@ -52,7 +52,7 @@ def pad(text: str, width: int, align: str = "left") -> str:
 
 
 def _pieces(word: str, width: int) -> list[str]:
-    """A word longer than a line in pieces, broken after . _ / , where possible."""
+    """A word longer than a line in pieces, broken after . _ / , - where possible."""
     pieces = []
     while columns_of(word) > width:
         take, used = 0, 0
@@ -60,7 +60,7 @@ def _pieces(word: str, width: int) -> list[str]:
             used += columns_of(word[take])
             take += 1
         take = max(take, 1)
-        soft = max(word.rfind(mark, 0, take) for mark in "._/,")
+        soft = max(word.rfind(mark, 0, take) for mark in "._/,-")
         if soft > take // 2:
             take = soft + 1
         pieces.append(word[:take])
@@ -133,14 +133,27 @@ class Column:
     heading: str
     align: str = "left"
     least: int = 4  # narrower than this only where the table would not fit otherwise [columns]
+    spare: int = 0  # left out where the table does not fit with it, 1 before 2; 0 never
+
+
+def _wanted(columns: Sequence[Column], records: Sequence[Sequence[Span]]) -> list[int]:
+    """Widths of the widest cells."""
+    cells = [[columns_of(record[i].text) for record in records] for i in range(len(columns))]
+    return [max([columns_of(column.heading), *cells[i]]) for i, column in enumerate(columns)]
+
+
+def columns_kept(columns: Sequence[Column], records: Sequence[Sequence[Span]], width: int, gap: int) -> list[int]:
+    """Places of the columns that a width has room for; spare ones are left out before a cell is squeezed."""
+    wanted, places = _wanted(columns, records), list(range(len(columns)))
+    for spare in sorted((columns[i].spare, i) for i in places if columns[i].spare):
+        if sum(min(wanted[i], columns[i].least) for i in places) + gap * (len(places) - 1) > width:
+            places.remove(spare[1])
+    return places
 
 
 def column_widths(columns: Sequence[Column], records: Sequence[Sequence[Span]], width: int, gap: int) -> list[int]:
     """Widths that hold the widest cell, narrowed from the widest column down to fit."""
-    wanted = [columns_of(column.heading) for column in columns]
-    for record in records:
-        for i, cell in enumerate(record):
-            wanted[i] = max(wanted[i], columns_of(cell.text))
+    wanted = _wanted(columns, records)
     over = sum(wanted) + gap * (len(columns) - 1) - width
     for least in ([column.least for column in columns], [3] * len(columns)):  # the second only where it must be
         while over > 0:

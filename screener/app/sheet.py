@@ -16,7 +16,16 @@ from textual.binding import Binding
 
 from screener.app.glyphs import Glyphs
 from screener.app.lines import Block, Lines
-from screener.app.rows import Column, Row, Span, column_widths, columns_of, paragraph, record_rows
+from screener.app.rows import (
+    Column,
+    Row,
+    Span,
+    column_widths,
+    columns_kept,
+    columns_of,
+    paragraph,
+    record_rows,
+)
 from screener.app.words import say
 
 GAP = 2
@@ -65,28 +74,34 @@ def sheet_blocks(sections: Sequence[Section], width: int, marks: Glyphs, at: tup
     """Blocks of a sheet; `at` is the key of the record and the place of the cell under the cursor."""
     blocks: list[Block] = []
     for number, section in enumerate(sections):
-        cells = [[Span(marks.plain(cell.text)) for cell in record.cells] for record in section.records]
-        widths = column_widths(section.columns, cells, width, GAP)
-        heads = [
-            Span(marks.plain(column.heading), "head" if i == 0 else "dim") for i, column in enumerate(section.columns)
-        ]
+        places, columns, widths = laid_out(section, width, marks)
+        heads = [Span(marks.plain(column.heading), "dim" if i else "head") for i, column in enumerate(columns)]
         rows: list[Row] = [(Span(""),)] if number else []
-        if any(column.heading for column in section.columns):
-            rows += record_rows(heads, widths, section.columns, GAP)
+        if any(column.heading for column in columns):
+            rows += record_rows(heads, widths, columns, GAP)
         if section.note:
             rows += paragraph(marks.plain(section.note), width, section.note_tone)
         blocks.append(Block(tuple(rows)))
         for record in section.records:
-            blocks.append(_record_block(record, section, widths, width, marks, at))
+            blocks.append(_record_block(record, places, columns, widths, width, marks, at))
     return blocks
 
 
-def _record_block(record: Record, section: Section, widths, width: int, marks: Glyphs, at) -> Block:
+def laid_out(section: Section, width: int, marks: Glyphs) -> tuple[list[int], list[Column], list[int]]:
+    """Places of the columns a section shows at a width, the columns, and how wide each is."""
+    cells = [[Span(marks.plain(cell.text)) for cell in record.cells] for record in section.records]
+    places = columns_kept(section.columns, cells, width, GAP)
+    columns = [section.columns[i] for i in places]
+    return places, columns, column_widths(columns, [[row[i] for i in places] for row in cells], width, GAP)
+
+
+def _record_block(record: Record, places, columns, widths, width: int, marks: Glyphs, at) -> Block:
     spans = []
-    for i, cell in enumerate(record.cells):
+    for i in places:
+        cell = record.cells[i]
         tone = f"{cell.tone} cell" if (record.key, i) == at and cell.path else cell.tone
         spans.append(Span(marks.plain(cell.text), tone))
-    rows = record_rows(spans, widths, section.columns, GAP)
+    rows = record_rows(spans, widths, columns, GAP)
     if record.note:
         rows += paragraph(marks.plain(record.note), width, record.note_tone, indent=2)
     return Block(tuple(rows), record.key)
@@ -128,6 +143,8 @@ class Sheet(Lines):
         head = paragraph(self.marks.plain(words), width, tone) if words else []
         if self.warning and self.short and 2 * len(head) > max(1, self.size.height):
             head = paragraph(self.marks.plain(self.short), width, tone)
+        if not self.warning and 4 * len(head) > self.size.height > 0:
+            head = []  # an introduction that takes more than a quarter of a low window is in the way
         return head, sheet_blocks(self.sections, width, self.marks, self.at)
 
     def cursor_changed(self) -> None:
@@ -216,8 +233,6 @@ class Sheet(Lines):
     def _side_at(self, record: Record, x: int) -> int:
         """Which editable cell of a record lies nearest to a column of the screen."""
         section = next(s for s in self.sections if record in s.records)
-        cells = [[Span(self.marks.plain(c.text)) for c in r.cells] for r in section.records]
-        widths = column_widths(section.columns, cells, max(1, self.size.width - 1), GAP)
-        starts = [sum(widths[:i]) + GAP * i for i in range(len(widths))]
-        places = record.editable
-        return max((side for side, place in enumerate(places) if starts[place] <= x), default=0)
+        places, _, widths = laid_out(section, max(1, self.size.width - 1), self.marks)
+        starts = {place: sum(widths[:i]) + GAP * i for i, place in enumerate(places)}
+        return max((side for side, place in enumerate(record.editable) if starts[place] <= x), default=0)

@@ -56,10 +56,17 @@ class Talk:
             for i, step in enumerate(("blend", "tank", "site", "line", "findings", "memo"), 1)
             if step != self.current
         ]
+        pane = self.query_one(f"#{self.current}")
+        if isinstance(pane, InputPane) and pane.check_action("fold", ()):
+            made.append(Command(say("palette", "fold"), "screen.fold"))
         if self.current == "memo" and self.query_one(MemoPane).document is not None:
             made.append(Command(say("palette", "write"), "screen.write_memo"))
         made.append(Command(say("palette", "other"), "app.start"))
         return made + self.app.commands_everywhere
+
+    def action_fold(self) -> None:
+        """Open or fold the rows around the cursor from the palette."""
+        self.query_one(f"#{self.current}").action_fold()
 
     def action_write_memo(self) -> None:
         """Write the memo from the palette."""

@@ -149,3 +149,46 @@ async def test_help_on_the_row_that_opens_tells_of_folding(case_file):
     async with opened(case_file) as pilot:
         await pressed(pilot, "end", "f1")
         assert "Blank rows of a laboratory sheet" in " ".join(grid(pilot.app).replace("│", "").split())
+
+
+async def test_the_palette_opens_and_folds_where_there_is_something_to_fold(case_file):
+    async with opened(case_file) as pilot:
+        sentence = "open or fold the rows around the cursor"
+        assert sentence not in [command.sentence for command in walk(pilot).commands()]
+        await pressed(pilot, "end")
+        command = next(command for command in walk(pilot).commands() if command.sentence == sentence)
+        await walk(pilot).run_action(command.action)
+        await pilot.pause()
+        assert sheet(pilot).key == "blend.lab.title"
+
+
+async def test_a_low_narrow_window_shows_the_row_under_the_cursor_whole(tmp_path):
+    """44 by 14: no introduction, no second copy of the value, no sum that is 100, and four rows of the step."""
+    async with opened(written_case(tmp_path, FITTING), size=(44, 14)) as pilot:
+        assert "Shares come to 100" not in grid(pilot.app) and "receipt: sum" not in grid(pilot.app)
+        for step in ("blend", "tank"):
+            await pressed(pilot, "1" if step == "blend" else "2")
+            for key in sheet(pilot, step).keys:
+                sheet(pilot, step).move_to(key)
+                await pilot.pause()
+                await pilot.pause()  # the hint row has grown by now
+                text = "".join(grid(pilot.app).split())
+                assert "▸" in text.split("6Memo")[1], key
+                words = [word for cell in sheet(pilot, step).record.cells[:2] for word in cell.text.split()]
+                assert all(word in text for word in words if len(word) < 7), (key, words)
+        strip = walk(pilot).query_one("#blend").strip
+        await pressed(pilot, "1", "home", "right")
+        assert not strip.display
+        await pressed(pilot, "enter")
+        assert strip.region.height == 1 and strip.input.value == "90 %"
+
+
+async def test_a_misfit_bar_is_left_out_before_it_is_broken(tmp_path):
+    async with opened(written_case(tmp_path, FITTING), size=(44, 20)) as pilot:
+        sheet(pilot).move_to("fit:2")
+        await pilot.pause()
+        text = grid(pilot.app)
+        assert "┃" not in text and "apart" not in text.replace("Apart", ""), text
+        assert "VPCR4 at" in text and "+0.5" in text
+        await pressed(pilot, "enter")
+        assert walk(pilot).query_one("#blend").strip.input.value == "64 kPa"
