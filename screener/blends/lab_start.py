@@ -15,6 +15,9 @@ import numpy as np
 from screener.blends.lab_sheet import LabSheet
 from screener.ground.errors import InputError
 from screener.species import find
+from screener.species.cut_constants import density_15
+from screener.species.cut_families import aromatics_possible, family_gravity
+from screener.species.pseudo import is_cut
 from screener.volatility import curve_at, pseudo_components, tbp_from_d86_daubert_1994
 from screener.volatility.interconversion import GAP_POINTS
 
@@ -147,12 +150,15 @@ def _from_curve(sheet):
         aromatics=sheet.aromatics,
         olefins=sheet.olefins or 0.0,
     )
-    if abs(cuts.gravity_factor - 1.0) > GRAVITY_SLACK:
+    factor = _beyond_hydrocarbons(cuts) if sheet.aromatics is None else cuts.gravity_factor
+    if abs(factor - 1.0) > GRAVITY_SLACK:
+        what = "the distillation" if sheet.aromatics is None else "distillation and families"
         raise InputError(
             "lab",
             sheet.density_15,
-            f"the density of {sheet.density_15:.5g} kg/m3 contradicts distillation and families of the sheet: with "
-            f"those, the cuts would weigh {100.0 / cuts.gravity_factor:.4g} % of what it asks of them",
+            f"the density of {sheet.density_15:.5g} kg/m3 contradicts {what} of the sheet: with "
+            f"{'that' if sheet.aromatics is None else 'those'}, the cuts would weigh {100.0 / factor:.4g} % "
+            "of what it asks of them",
             f"within {100 * GRAVITY_SLACK:g} %",
         )
     note = (
@@ -160,3 +166,16 @@ def _from_curve(sheet):
         "boiling points) and species that stand ready for light ends and families"
     )
     return cuts.names, cuts.volume, (note,)
+
+
+def _beyond_hydrocarbons(cuts) -> float:
+    """Density of the cuts over the nearest that paraffins, naphthenes and aromatics of their boiling points have
+    together, 1 where these can make it. [-]
+
+    Without families all cuts share one Watson factor, which meets any density, one that no liquid has too.
+    """
+    rows = [(find(name), v) for name, v in zip(cuts.names, cuts.volume, strict=True) if is_cut(name)]
+    Tb, rho, v = np.array([(one.Tb, one.rho_15, v) for one, v in rows]).T
+    ring = np.where(aromatics_possible(Tb) > 0.0, family_gravity("aromatic", Tb), 0.0)
+    heavy = v @ density_15(np.maximum(ring, family_gravity("naphthene", Tb)))
+    return float(v @ rho / np.clip(v @ rho, v @ density_15(family_gravity("paraffin", Tb)), heavy))
