@@ -140,7 +140,9 @@ class Desk:
         if lines:
             note = say("information", "note" if revision == self.session.revision else "stale")
             told.append(fields.told(say("information", "heading"), note, lines))
-        return folded(fields.sections(step, self.text, self.known, told), self.session.opened, here)
+        made = fields.sections(step, self.text, self.known, told)
+        left = {path: fault for path, fault in self.known.faults.items() if self.step_of(path) == step}
+        return folded([*made, *fields.unshown(made, self.text, left)], self.session.opened, here)
 
     def unfold(self, path: str) -> bool:
         """Open the fold a path belongs to; whether that changes what is shown."""

@@ -7,7 +7,7 @@ the table it stands in.
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from screener.app.rows import Column
@@ -168,6 +168,20 @@ def value_record(path: str, key, text, known: Known) -> Record:
     # The rows of a row somebody added never fold: its blank values are those to fill in next.
     folds = not (value or fault or path in known.missing or (echo and echo.default) or "[" in path)
     return Record(path, cells, note=fault, name=name, folds=folds)
+
+
+def unshown(made: Sequence[Section], text, faults: Mapping[str, str]) -> list[Section]:
+    """What is given under a name nobody knows and so has no row: it can be taken away here, with its fault below."""
+    paths = {cell.path for section in made for record in section.records for cell in record.cells}
+    left = [path for path in faults if path not in paths and not schema.key_at(path) and text.has(path)]
+    if not left:
+        return []
+    values = [text.get(path) or say("sheet", "table") for path in left]
+    records = tuple(
+        Record(f"unknown:{i}", (Cell(path), Cell(values[i], path, "bad")), note=faults[path], name=path)
+        for i, path in enumerate(left)
+    )
+    return [Section((Column(say("sheet", "unknown_name"), least=18), _VALUE_COLUMNS[1]), records)]
 
 
 def same_text(entered: str, taken: str) -> bool:

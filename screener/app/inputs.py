@@ -134,7 +134,7 @@ class InputPane(RowActions, Searching, Container):
         name = record.name if record else ""
         if self._acts:
             return name
-        return f"{name}, {column}" if column and self._row_at else name
+        return f"{name}, {column}" if column and record and len(record.editable) > 1 else name
 
     def _value(self, path: str) -> str:
         return "" if self._acts else self.desk.text.get(path) or say("sheet", "blank")
@@ -149,11 +149,11 @@ class InputPane(RowActions, Searching, Container):
             return say("hint", "fold")
         if self._is_adder:
             return say("hint", "parts_add" if cell.path.endswith("parts[+]") else "row_add")
-        if fault := self.desk.known.faults.get(cell.path):
-            return fault
         key = schema.key_at(cell.path)
         if key is None:
-            return ""
+            return say("hint", "unknown_name")
+        if fault := self.desk.known.faults.get(cell.path):
+            return fault
         if key.kind in (schema.STOCK, schema.SPECIES):
             part = "parts[" in cell.path
             return say("hint", "part_name") if part else say("hint", "stock_name", meaning=key.meaning)
@@ -199,7 +199,9 @@ class InputPane(RowActions, Searching, Container):
         cell = self.sheet.cell
         if cell is None:
             return
-        if self._is_opener:
+        if not self._acts and schema.key_at(cell.path) is None:
+            self.point(say("hint", "unknown_name"))
+        elif self._is_opener:
             self.action_fold()
         elif self._is_adder:
             self.action_add()

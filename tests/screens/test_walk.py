@@ -6,7 +6,11 @@ from itertools import pairwise
 
 import pytest
 
+from screener.app.engine import Worked, paths_in
 from screener.app.walk import WalkScreen
+from screener.casefile import CaseText
+from screener.casefile.keys import key_at
+from screener.ground.errors import InputError
 from tests.screens.driving import (
     grid,
     hint,
@@ -19,7 +23,18 @@ from tests.screens.driving import (
     walk,
     written_case,
 )
-from tests.screens.made import Playing
+from tests.screens.made import CASE, Playing
+
+
+class Reading(Playing):
+    """An engine that also refuses names nobody knows, as the reader of cases does."""
+
+    def work(self, text: str, source: str):
+        unknown = [path for path in paths_in(CaseText.parse(text).table) if key_at(path) is None]
+        if unknown:
+            yield Worked(None, tuple(InputError(path, None, f"'{path}' is not a known key") for path in unknown), {})
+        else:
+            yield from super().work(text, source)
 
 
 async def test_the_walk_goes_by_number_and_in_order(case_file):
@@ -338,3 +353,31 @@ async def test_the_frame_is_clickable(case_file):
         await pilot.click("KeyRow", offset=(3, 0))
         await settled(pilot)
         assert walk(pilot).query_one("#site").strip.editing
+
+
+async def test_a_name_nobody_knows_has_a_row_and_can_be_taken_away(tmp_path):
+    text = CASE.replace("[line]\n", '[line]\nlenght = "95 m"\n').replace('share = "90 %",', 'share = "90 %", shade = "red",')
+    async with opened(written_case(tmp_path, text), Reading()) as pilot:
+        await pressed(pilot, "5", "down", "enter")
+        assert walk(pilot).current == "line"
+        line = walk(pilot).query_one("#line")
+        assert line.sheet.cell.path == "line.lenght" and "Names that are not known" in grid(pilot.app)
+        assert hint(pilot) == "nothing reads a value of this name; Del takes it away"
+        await pressed(pilot, "enter")
+        assert not line.strip.editing, "there is nothing to put there"
+        await pressed(pilot, "f1", "escape", "delete")
+        assert not walk(pilot).desk.text.has("line.lenght") and "Names that" not in grid(pilot.app)
+        await pressed(pilot, "5", "enter")
+        assert walk(pilot).query_one("#blend").sheet.cell.path == "blend.parts[0].shade"
+        assert "Remove" not in keys_shown(pilot), "the part itself is another row"
+        await pressed(pilot, "delete")
+        assert walk(pilot).desk.text.rows("blend.parts") == 2 and not walk(pilot).desk.text.has("blend.parts[0].shade")
+        assert "1 beyond" in grid(pilot.app)
+
+
+async def test_the_strip_names_a_column_only_where_there_are_several(tmp_path):
+    async with opened(written_case(tmp_path)) as pilot:
+        walk(pilot).go_to("tank.vents[0].set")
+        assert walk(pilot).query_one("#tank").label == "opens out at"
+        walk(pilot).go_to("blend.parts[0].share")
+        assert walk(pilot).query_one("#blend").label == "summer gasoline base, share"
