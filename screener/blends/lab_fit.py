@@ -7,7 +7,7 @@ the small weight PRIOR. All perturbed recipes of one round run as lanes of one c
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from functools import lru_cache
 
 import numpy as np
@@ -16,6 +16,7 @@ from screener.blends.blend import Blend, Report
 from screener.blends.lab_numbers import Laboratory, Number, numbers_of
 from screener.blends.lab_sheet import LabSheet
 from screener.blends.lab_start import Start, start_of
+from screener.blends.lab_water import NAME, dissolved_only
 from screener.blends.measured import MeasuredFigure, MeasuredPressure
 from screener.equilibrium import Fluid
 from screener.ground.constants import ZERO_CELSIUS
@@ -58,7 +59,12 @@ def fit_sheet(sheet: LabSheet, recipe=None) -> Fitted:
     Raises InputError when numbers of the sheet contradict each other, naming them.
     """
     start = start_of(sheet, recipe)
+    sheet, free_water = dissolved_only(sheet, start)
     numbers = numbers_of(sheet)
+    if free_water:
+        start = start_of(sheet, recipe)
+        start = replace(start, notes=(*start.notes, free_water))
+        numbers = tuple(replace(one, name=NAME) if one.key == "water" else one for one in numbers)
     lab = Laboratory(start.names, Fluid.of(start.names), numbers, sheet.product, COARSE)
     share = _search(lab, start)
     volume = share @ start.groups
