@@ -73,8 +73,8 @@ def _judge_lane(draft: Draft, lane: Lane) -> Judgement:
         )  # fmt: skip
     if judged.verdict == "beyond":
         # Beyond outranks unknown, but what makes the number doubtful is said with it.
-        reason = lane.beyond or judged.reason
-        return replace(judged, reason=f"{reason}; {lane.unknown}" if lane.unknown else reason)
+        split = tuple(cap for cap in lane.caps if cap == say("cap", "splits"))
+        return replace(judged, reason="; ".join((lane.beyond or judged.reason, *filter(None, (lane.unknown,)), *split)))
     if not (lane.unknown or judged.verdict == "unknown"):
         return judged
     return replace(

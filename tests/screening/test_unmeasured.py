@@ -72,3 +72,10 @@ def test_what_is_beyond_on_an_unmeasured_vapour_pressure_says_what_makes_it_doub
     assert beyond
     for finding in beyond:
         assert "wrong side" in finding.reason and "holds no vapour pressure" in finding.reason
+
+
+def test_what_is_beyond_as_one_liquid_that_splits_says_so():
+    """Settled water adds its own vapour pressure and no more: held together with the fuel it counts for far more."""
+    wet = {name: 0.95 * share for name, share in LIGHT.items()} | {"water": 0.05}
+    found = of(screen(case(blend=blend(wet), tank=BARE)))["boiling.surface"]
+    assert found.verdict == "beyond" and "one liquid held together" in found.reason
