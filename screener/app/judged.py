@@ -172,7 +172,9 @@ def information(screening, liquid: str, system: str = "si") -> list[tuple[str, s
     found = []
     for item in screening.information if screening else ():
         if item.title.startswith(liquid):
-            found += [(fact.label, str(numbers.anything(fact.value, fact.unit, system)), fact.note) for fact in item.facts]
+            for fact in item.facts:  # the note of them all stands under the heading
+                note = "" if fact.note == item.note else fact.note
+                found.append((fact.label, str(numbers.anything(fact.value, fact.unit, system)), note))
     return found
 
 

@@ -148,7 +148,7 @@ class WalkScreen(Talk, Saving, Workers, Screen):
             pane.news = ""
             pane.update_case()
         main = pane.query_one("#bars" if self.current == "findings" else ".sheet", Lines)
-        main.focus()
+        self.set_focus(main)  # at once: a key typed ahead belongs to the new step
         self.query_one(Hint).tell(pane.hint)
         if self.current == "memo":
             self.refresh_memo()

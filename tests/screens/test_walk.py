@@ -381,3 +381,12 @@ async def test_the_strip_names_a_column_only_where_there_are_several(tmp_path):
         assert walk(pilot).query_one("#tank").label == "opens out at"
         walk(pilot).go_to("blend.parts[0].share")
         assert walk(pilot).query_one("#blend").label == "summer gasoline base, share"
+
+
+async def test_a_key_typed_ahead_goes_to_the_new_step(case_file):
+    async with opened(case_file) as pilot:
+        walk(pilot).action_go(2)
+        assert pilot.app.focused is walk(pilot).query_one("#tank").sheet
+        await pressed(pilot, "5")
+        walk(pilot).action_go(6)
+        assert pilot.app.focused is walk(pilot).query_one("#memo .sheet")
