@@ -22,7 +22,13 @@ from screener.equilibrium import Fluid
 from screener.ground.constants import ZERO_CELSIUS
 from screener.ground.errors import InputError
 from screener.species import columns
-from screener.volatility import dvpe, dvpe_equation, reid_vapour_pressure
+from screener.volatility import (
+    dvpe,
+    dvpe_equation,
+    reid_equivalent_crude,
+    reid_vapour_pressure,
+    true_vapour_pressure,
+)
 from screener.volatility.distillation import STEPS
 
 PRIOR = 0.1  # weight of the start; at 0.1 it decides only what the sheet leaves open; our choice
@@ -260,6 +266,14 @@ def _pressures(sheet, fitted: Fitted, fluid):
             continue
         ratio, doubt = float(1.0 + change / own), float(R / own)
         space = one.argument[0] if one.key.startswith("vpcr") else 0.0
-        made = MeasuredPressure(one.name, one.value, one.T, float(computed), ratio, one.R, doubt)
+        gap = _gap(fluid, z, one, own)
+        made = MeasuredPressure(one.name, one.value, one.T, float(computed), ratio, one.R, doubt, gap)
         found.append((DIRECT.index(one.key[:4]), space, -ratio, made))
     return [row[-1] for row in sorted(found, key=lambda row: row[:3])]
+
+
+def _gap(fluid, z, one: Number, own: float) -> float:
+    """Bubble point over the fuel's own vapour in a test, less 1: what gases that no number of a sheet tells decide. [-]"""
+    scale = float(reid_equivalent_crude(1.0)[0]) if one.key == "rvpe" else 1.0  # RVPE is a multiple of VPCR4
+    bubble = scale * float(true_vapour_pressure(fluid, one.T, z).P[0])
+    return float(max(bubble / own - 1.0, 0.0)) if np.isfinite(bubble) and own > 0.0 else 0.0

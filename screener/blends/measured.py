@@ -23,7 +23,8 @@ class MeasuredPressure:
     what in words; value, computed and reproducibility [Pa] as the method reports them; T [K]; ratio [-]
     measured over computed pressure of the fuel's own vapour in the test: the factor for a computed
     vapour pressure at another temperature, the equation supplying the slope; doubt [-] the
-    reproducibility over that computed pressure of the fuel's own vapour.
+    reproducibility over that computed pressure of the fuel's own vapour; gap [-] by what the computed bubble
+    point lies above that pressure: what the vapour space of the test takes off is computed, not measured.
     """
 
     what: str
@@ -33,6 +34,7 @@ class MeasuredPressure:
     ratio: float
     reproducibility: float
     doubt: float
+    gap: float = 0.0
 
     @property
     def misfit(self) -> float:
@@ -84,8 +86,8 @@ def pressure_factor(measured) -> tuple[float, float]:
     tuple of float
         Factor: 1 where nothing was measured, or nothing that tells a factor; NaN where the computed
         value is no number. [-] Doubt, below which no range of a vapour pressure may go: the
-        relative reproducibility, or how far another test of the same liquid lies from this one where that is
-        more; of a test that tells no factor it is what keeps its measured value in the range. [-]
+        relative reproducibility, how far another test of the same liquid lies from this one, or how far
+        the bubble point lies above the test, whichever is most; of a test that tells no factor it is what keeps its measured value in the range. [-]
 
     Source
     ------
@@ -96,7 +98,7 @@ def pressure_factor(measured) -> tuple[float, float]:
     one = told(measured)
     if one is not None:
         apart = max(abs(m.ratio / one.ratio - 1.0) for m in measured if _tells(m))
-        return one.ratio, max(one.doubt, apart)
+        return one.ratio, max(one.doubt, apart, one.gap)
     if not all(math.isfinite(m.ratio) and math.isfinite(m.doubt) for m in measured):
         return math.nan, math.nan
     return 1.0, max(m.doubt for m in measured)
