@@ -249,8 +249,8 @@ def part_section(base: str, text, known: Known) -> Section:
     columns = (
         Column(heading(f"{base}.parts[]"), least=16),
         Column("share", "right", least=6),
-        Column("kind", least=5),
-        Column("quality", least=8),
+        Column("kind", least=7, spare=1),
+        Column("quality", least=11),
     )
     return Section(columns, tuple(records))
 

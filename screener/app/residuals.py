@@ -2,10 +2,11 @@
 
 from __future__ import annotations
 
+from screener.app.fields import LAB
 from screener.app.glyphs import Glyphs
 from screener.app.rows import Column
 from screener.app.sheet import Cell, Record, Section
-from screener.app.words import say
+from screener.app.words import say, table
 
 REFUSED = 3.0  # reproducibilities from which a sheet is refused; the ends of the bar
 HALF = 6  # cells of the bar on either side
@@ -44,12 +45,13 @@ def residual_section(blend, base: str, note: str, marks: Glyphs, system: str = "
         apart_unit = numbers.difference_unit(row.unit)
         gap = numbers.converted(row.computed - row.measured, apart_unit, system)
         tone = "near" if abs(row.misfit) > 1.0 else ""
+        what = table("labels").get(f"{LAB}.{row.what}", row.what.replace("_", " "))
         cells = (
-            Cell(row.what), Cell(sheet, f"{base}.{row.place}"), Cell(computed, tone="dim"),
+            Cell(what), Cell(sheet, f"{base}.{row.place}"), Cell(computed, tone="dim"),
             Cell(_signed(gap, places), tone=tone), Cell(_signed(row.misfit, 1), tone=tone),
             Cell(misfit_bar(row.misfit, marks), tone=tone),
         )  # fmt: skip
-        records.append(Record(f"fit:{i}", cells, name=row.what))
+        records.append(Record(f"fit:{i}", cells, name=what))
     if not records:
         return None
     right = {"align": "right", "least": 6}

@@ -41,6 +41,7 @@ VISITS = {
         "letters_140x40": ["ctrl+g"],
         "memo_140x40": ["escape", "6"],
     }),
+    "small open": (SMALL, "braille", {"blend_open_80x24": ["1", "end", "enter"]}),
     "small block": (SMALL, "block", {"findings_curve_block_80x24": ["5", "v"]}),
     "small ascii": (SMALL, "ascii", {"findings_curve_ascii_80x24": ["5", "v"]}),
     "large ascii": (LARGE, "ascii", {"findings_ascii_140x40": ["5"]}),
@@ -53,9 +54,19 @@ SHEETS = {
     "small": (SMALL, "braille", {
         "sheet_fit_80x24": ["1", *["down"] * 14],
         "sheet_80x24": ["1", "pagedown", "pagedown"],
+        "sheet_open_80x24": ["up", "o"],
     }),
     "large": (LARGE, "braille", {"sheet_fit_140x40": ["1", *["down"] * 8]}),
-    "small ascii": (SMALL, "ascii", {"sheet_fit_ascii_80x24": ["1", *["down"] * 14]}),
+    "small ascii": (SMALL, "ascii", {
+        "sheet_fit_ascii_80x24": ["1", *["down"] * 14],
+        "sheet_ascii_80x24": ["2", "end"],
+    }),
+    "low": ((44, 14), "braille", {
+        "blend_44x14": ["1"],
+        "sheet_fit_44x14": [*["down"] * 10],
+        "lines_open_44x14": [*["down"] * 7, "enter"],
+        "sheet_44x14": ["o", "end"],
+    }),
 }  # fmt: skip
 
 
