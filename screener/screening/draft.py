@@ -71,6 +71,9 @@ def _judge_lane(draft: Draft, lane: Lane) -> Judgement:
             kind=c.kind, reference=lane.reference, gap=gap, evidence=lane.evidence or draft.limit_evidence,
             caps=lane.caps,
         )  # fmt: skip
+    if judged.verdict == "beyond" and say("unknown", "unmeasured") in lane.unknown:
+        # The number of a composition nobody measured the light end of is told, but no verdict is taken from it.
+        return replace(judged, verdict="unknown", reason=say("unknown", "unmeasured-beyond", why=lane.unknown))
     if judged.verdict == "beyond":
         # Beyond outranks unknown, but what makes the number doubtful is said with it.
         split = tuple(cap for cap in lane.caps if cap == say("cap", "splits"))

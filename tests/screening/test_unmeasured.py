@@ -66,12 +66,13 @@ def test_figures_of_an_unmeasured_light_end_say_so(heavy):
     assert "ladder" in known.curve and "ladder" not in doubtful.curve
 
 
-def test_what_is_beyond_on_an_unmeasured_vapour_pressure_says_what_makes_it_doubtful():
-    found = of(screen(case(blend=silent(LIGHT), tank=BARE)))
-    beyond = [f for f in found.values() if f.verdict == "beyond" and f.id.startswith("vapour-pressure")]
+def test_what_would_be_beyond_on_an_unmeasured_vapour_pressure_is_unknown_and_says_so():
+    found, known = (of(screen(case(blend=b, tank=BARE))) for b in (silent(LIGHT), blend(LIGHT)))
+    beyond = [f.id for f in known.values() if f.verdict == "beyond" and f.id.startswith("vapour-pressure")]
     assert beyond
-    for finding in beyond:
-        assert "wrong side" in finding.reason and "holds no vapour pressure" in finding.reason
+    for key in beyond:
+        assert found[key].verdict == "unknown" and found[key].value is not None
+        assert "wrong side" in found[key].reason and "holds no vapour pressure" in found[key].reason
 
 
 def test_what_is_beyond_as_one_liquid_that_splits_says_so():
