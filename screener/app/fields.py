@@ -247,9 +247,9 @@ def part_section(base: str, text, known: Known) -> Section:
     fault = known.faults.get(f"{base}.parts", "") or known.faults.get(base, "")
     records.append(Record(f"{base}.parts[+]", (Cell(words, f"{base}.parts[+]", "dim"), *(Cell(""),) * 3), note=fault, name=words))
     columns = (
-        Column(heading(f"{base}.parts[]"), least=16),
+        Column(heading(f"{base}.parts[]"), least=12),
         Column("share", "right", least=6),
-        Column("kind", least=7, spare=1),
+        Column("kind", least=7),
         Column("quality", least=11),
     )
     return Section(columns, tuple(records))

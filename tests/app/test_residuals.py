@@ -49,7 +49,7 @@ def test_numbers_stand_in_the_units_of_the_sheet():
     assert rows["density at 15 degC"] == ["742.0 kg/m3", "742.0", "0.0", "0.0"]
     assert rows["DVPE"] == ["62.0 kPa", "61.1", "-0.9", "-0.5"]
     assert rows["T50"] == ["98.0 degC", "105.5", "+7.5", "+2.9"]
-    assert rows["h2s"] == ["12.0 ppm mass", "12.0", "0.0", "0.0"]
+    assert rows["H2S"] == ["12.0 ppm mass", "12.0", "0.0", "0.0"]
     assert rows["E70"][0] == "32.0 vol %"
     tones = {record.name: record.cells[4].tone for record in section.records}
     assert tones["T50"] == "near" and tones["DVPE"] == ""
