@@ -8,7 +8,7 @@ behind it live in the floors (`screener.equilibrium`, `screener.blends`,
 from __future__ import annotations
 
 __version__ = "0.1.0"
-__all__ = ["screen", "__version__"]
+__all__ = ["__version__", "screen"]
 
 
 def __getattr__(name: str):

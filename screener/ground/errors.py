@@ -38,7 +38,7 @@ class InputError(ScreenerError):
         text = f"{self.path}: {self.problem}" if self.path else self.problem
         return f"{text}; {self.hint}" if self.hint else text
 
-    def at(self, path: str) -> "InputError":
+    def at(self, path: str) -> InputError:
         """The same fault placed at another path."""
         again = self.__class__.__new__(self.__class__)
         again.__dict__.update(self.__dict__)

@@ -49,9 +49,9 @@ def arrival(fluid, z, T, barometer, errors, has_receipt, measured):
     """
     n = len(T)
     factor = measured.factor[:, 0]
-    P, y, status, residual, asked = bubble(fluid, T, z, has_receipt, factor)
+    at_bubble, y, status, residual, asked = bubble(fluid, T, z, has_receipt, factor)
     spread = measured.wider(relative_spread(y, errors), 0)
-    P = P[:, None] * edges(spread[:, None])
+    P = at_bubble[:, None] * edges(spread[:, None])
     go = np.isfinite(T) & np.isfinite(barometer) & has_receipt
     tank = barometer[:, None] / edges(np.where(np.isfinite(spread), spread, 0.0)[:, None])
     isothermal, y_flash = np.full((n, 3), np.nan), np.full((n, fluid.c), np.nan)
@@ -62,6 +62,8 @@ def arrival(fluid, z, T, barometer, errors, has_receipt, measured):
         ok = answer.ok.reshape(-1, 3)
         isothermal[go] = np.where(ok, np.clip(answer.beta.reshape(-1, 3), 0.0, 1.0), np.nan)
         status_flash[go] = answer.status.reshape(-1, 3)
+    # The flash holds settled water in the one liquid, where it boils too soon; the bubble point does not.
+    isothermal = np.where(np.isfinite(isothermal) & (at_bubble[:, None] <= tank), 0.0, isothermal)
     beta, T_after = isothermal.copy(), np.where(isothermal[:, BEST] == 0.0, T, np.nan)
     boils = np.flatnonzero(isothermal[:, BEST] > 0.0)
     if boils.size:

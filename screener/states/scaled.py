@@ -25,9 +25,31 @@ from screener.ground.constants import ATMOSPHERE
 
 
 def bubble_pressure(fluid, T, x, factor):
-    """Bubble point at T (n,) [K] of liquids x whose fugacities carry the factor (n,) [-]; P in Pa."""
-    answer = equilibrium.bubble_pressure(fluid, T, x)
+    """Bubble point at T (n,) [K] of liquids x whose fugacities carry the factor (n,) [-]; P in Pa.
+
+    Water that the liquid does not hold has settled: it adds its own vapour pressure and no more.
+    """
+    answer = _settled(fluid, equilibrium.bubble_pressure(fluid, T, x))
     return replace(answer, P=answer.P * factor)
+
+
+def _settled(fluid, one):
+    """Bubble points with free water apart, where one liquid would hold water at more than its own pressure.
+
+    Where the two liquids are not found the lane keeps the point of the liquid held together, an upper bound.
+    """
+    if "water" not in fluid.names:
+        return one
+    own = equilibrium.bubble_pressure(equilibrium.Fluid.of(["water"]), one.T, [1.0]).P
+    wet = np.flatnonzero(one.ok & (one.y[:, fluid.names.index("water")] * one.P > own))
+    if not wet.size:
+        return one
+    two = equilibrium.first_vapour(fluid, one.T[wet], one.x[wet])
+    found = two.ok & (two.liquids == 2)
+    wet = wet[found]
+    P, y, residual = one.P.copy(), one.y.copy(), one.residual.copy()
+    P[wet], y[wet], residual[wet] = two.P[found], two.y[found], two.residual[found]
+    return replace(one, P=P, y=y, residual=residual)
 
 
 def bubble_temperature(fluid, P, x, factor):

@@ -75,8 +75,13 @@ def test_what_would_be_beyond_on_an_unmeasured_vapour_pressure_is_unknown_and_sa
         assert "wrong side" in found[key].reason and "holds no vapour pressure" in found[key].reason
 
 
-def test_what_is_beyond_as_one_liquid_that_splits_says_so():
+def test_settled_water_is_near_at_best_and_takes_no_receipt_beyond():
     """Settled water adds its own vapour pressure and no more: held together with the fuel it counts for far more."""
     wet = {name: 0.95 * share for name, share in LIGHT.items()} | {"water": 0.05}
-    found = of(screen(case(blend=blend(wet), tank=BARE)))["boiling.surface"]
-    assert found.verdict == "beyond" and "one liquid held together" in found.reason
+    found, dry = (of(screen(case(blend=blend(parts), tank=BARE))) for parts in (wet, LIGHT))
+    for key in ("boiling.surface", "receipt.flash"):
+        assert dry[key].verdict == "room" and found[key].verdict == "near", key
+        assert "splits into two" in found[key].reason, key
+        assert dry[key].value < found[key].value < 1.2 * dry[key].value, key
+    given_off = next(f for f in found["receipt.flash"].facts if f.label.startswith("vapour fraction by moles, isothermal"))
+    assert given_off.value == 0.0

@@ -8,6 +8,7 @@ from pathlib import Path
 import numpy as np
 import pytest
 
+from screener import equilibrium
 from screener.blends import Blend
 from screener.states import scaled
 from tests.screening.sample import LIGHT, ZERO, blend
@@ -145,3 +146,41 @@ def test_a_space_takes_f_times_as_much_from_the_liquid():
     assert rich == pytest.approx(F * scaled.vapour_space(liquid.fluid, T, liquid.z, 1.0).fuel[0], rel=1e-3)
     # All of it gone: n R T / V over the pressure of the space, whatever the factor.
     assert thin == pytest.approx(8.314462618 * T / (1e6 * v) / 101325.0, rel=1e-9)
+
+
+DRY, WET = Blend.of({"stock:summer gasoline base": 1.0}), Blend.of({"stock:summer gasoline base": 0.998, "species:water": 0.002})
+COLD_TO_WARM = np.array([253.15, 273.15, 288.15, 310.93])  # [K]
+
+
+def test_settled_water_adds_its_own_vapour_pressure_and_no_more():
+    """Dry fuel and pure water add up within 0.5 %: each dissolves in the other to less than a thousandth.
+
+    Held together they come to half as much again and more. Ten times the water moves the point by 5e-6: the fuel that
+    dissolves in it, a hundred-thousandth of the whole; asked is 1e-4.
+    """
+    own = equilibrium.bubble_pressure(equilibrium.Fluid.of(["water"]), COLD_TO_WARM, [1.0]).P
+    dry = scaled.bubble_pressure(DRY.fluid, COLD_TO_WARM, DRY.z, 1.0).P
+    wet = scaled.bubble_pressure(WET.fluid, COLD_TO_WARM, WET.z, 1.0)
+    assert wet.P == pytest.approx(dry + own, rel=5e-3)
+    together = equilibrium.bubble_pressure(WET.fluid, COLD_TO_WARM, WET.z).P
+    assert (together > 1.5 * wet.P).all()
+    more = Blend.of({"stock:summer gasoline base": 0.98, "species:water": 0.02})
+    assert scaled.bubble_pressure(more.fluid, COLD_TO_WARM, more.z, 1.0).P == pytest.approx(wet.P, rel=1e-4)
+    assert wet.y.sum(axis=1) == pytest.approx(1.0, abs=1e-9)
+
+
+def test_dissolved_water_changes_no_bubble_point():
+    """100 ppm of water in the warm, and any water that ethanol holds, are one liquid: the plain answer to the bit."""
+    for parts in ({"stock:summer gasoline base": 0.9999, "species:water": 1e-4}, {"species:ethanol": 0.95, "species:water": 0.05}):
+        one = Blend.of(parts)
+        found = scaled.bubble_pressure(one.fluid, np.array([310.93]), one.z, 1.0)
+        plain = equilibrium.bubble_pressure(one.fluid, np.array([310.93]), one.z)
+        assert found.P == plain.P and (found.y == plain.y).all()
+
+
+def test_lanes_with_settled_water_leave_the_others_alone():
+    z = np.stack([WET.z, np.where(np.array(WET.names) == "water", 0.0, WET.z)])
+    z /= z.sum(axis=1, keepdims=True)
+    both = scaled.bubble_pressure(WET.fluid, np.array([288.15, 288.15]), z, np.ones(2)).P
+    assert both[0] == scaled.bubble_pressure(WET.fluid, np.array([288.15]), z[:1], 1.0).P[0]
+    assert both[1] == equilibrium.bubble_pressure(WET.fluid, np.array([288.15]), z[1:]).P[0]
