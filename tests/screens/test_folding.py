@@ -192,3 +192,12 @@ async def test_a_misfit_bar_is_left_out_before_it_is_broken(tmp_path):
         assert "VPCR4 at" in text and "+0.5" in text
         await pressed(pilot, "enter")
         assert walk(pilot).query_one("#blend").strip.input.value == "64 kPa"
+
+
+async def test_what_is_searched_for_stays_in_sight_in_a_low_window(case_file):
+    async with opened(case_file, size=(44, 14)) as pilot:
+        await pressed(pilot, "a")
+        await typed(pilot, "but")
+        lines = grid(pilot.app).splitlines()
+        assert any("stock or species" in line and "but" in line for line in lines), "the strip"
+        assert any("field butane" in line for line in lines)
