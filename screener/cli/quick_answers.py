@@ -147,15 +147,18 @@ def _by(liquid: Liquid, key: str, method: str) -> str:
 
 def main(liquid: Liquid):
     """What is asked most often."""
-    from screener.equilibrium import flash_tp
+    from screener.equilibrium import first_vapour, flash_tp
     from screener.fire import flash_point
 
     blend, sheet = liquid.blend, liquid.sheet
     flash = flash_tp(liquid.fluid, liquid.T, ATMOSPHERE / liquid.factor, liquid.z, check="full")
     measured = blend.figure("flash_point")
-    why = _why(liquid.bubble) or liquid.no_pressure
-    by = _by(liquid, "tvp", "bubble")
-    yield liquid.answer("bubble_pressure", liquid.factor * liquid.bubble.P[0], "Pa", why, by, temperature=liquid.at(liquid.T))
+    P, why, by = liquid.bubble.P[0], _why(liquid.bubble) or liquid.no_pressure, _by(liquid, "tvp", "bubble")
+    if liquid.split and blend.vapour_pressure_known:
+        both = first_vapour(liquid.fluid, liquid.T, liquid.z)
+        P, by = both.P[0], say("by", "settled")
+        why = "" if both.ok[0] and both.liquids[0] == 2 else liquid.split
+    yield liquid.answer("bubble_pressure", liquid.factor * P, "Pa", why, by, temperature=liquid.at(liquid.T))
     yield liquid.answer("DVPE", sheet.DVPE, "Pa", liquid.no_pressure or liquid.no_dvpe(sheet.DVPE),
                         _by(liquid, "dvpe", "d5191"), temperature=liquid.at(T_100F))  # fmt: skip
     yield liquid.answer("density_15_degC", sheet.density_15, "kg/m3", by=_by(liquid, "density_15", "volumes"))
