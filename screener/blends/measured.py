@@ -87,7 +87,8 @@ def pressure_factor(measured) -> tuple[float, float]:
         Factor: 1 where nothing was measured, or nothing that tells a factor; NaN where the computed
         value is no number. [-] Doubt, below which no range of a vapour pressure may go: the
         relative reproducibility, how far another test of the same liquid lies from this one, or how far
-        the bubble point lies above the test, whichever is most; of a test that tells no factor it is what keeps its measured value in the range. [-]
+        the bubble point lies above the test, whichever is most; of a test that tells no factor it is
+        what keeps its measured value in the range. [-]
 
     Source
     ------

@@ -93,9 +93,11 @@ def _lane(context: Context, k: int, found, ratios) -> Lane:
     limit = worst.limit
     low, high = _range(context, k)
     beyond = say("health", "beyond", substance=limit.of, kind=limit.kind, agency=limit.agency, date=limit.date)
+    # One species decides, not the light end: what is beyond stays beyond, with what is doubtful said.
+    doubtful = say("unknown", "unmeasured-hatch") if context.unmeasured(k) else ""
     return Lane(
-        condition, value, value * low, value * high, 1.0, unknown=context.unmeasured(k), evidence=MARKS.get(limit.evidence, "memory"),
-        beyond=beyond, caps=context.typical_cap() + context.misfit_caps(k),
+        condition, value, value * low, value * high, 1.0, unknown=doubtful,
+        evidence=MARKS.get(limit.evidence, "memory"), beyond=beyond, caps=context.typical_cap() + context.misfit_caps(k),
         facts=_facts(context, worst, found, at) + pressure_facts(context, k), tag=k,
     )  # fmt: skip
 

@@ -6,9 +6,9 @@ from functools import lru_cache
 
 import numpy as np
 
-from screener.ground.constants import PSI
+from screener.ground.constants import PSI, T_60F
 from screener.ground.files import read_table
-from screener.volatility.volume_correction import _DEGF, density_60F, petroleum_expansion
+from screener.volatility.volume_correction import DEGF_PER_K, density_60F, petroleum_expansion
 
 STEP = 0.5  # [K] either side for the slope of the volume correction, which is smooth
 
@@ -50,7 +50,7 @@ def petroleum_compressibility(rho_15, T, product: str | None = None) -> np.ndarr
     )
     a0, a1, a2, a3 = _constants()
     rho60 = density_60F(rho_15, product)
-    t = _DEGF * T - 459.67
+    t = 60.0 + DEGF_PER_K * (T - T_60F)  # [degF]
     with np.errstate(over="ignore"):
         F = 1e-5 * np.exp(a0 + a1 * t + (a2 + a3 * t) / rho60**2)
     inside = np.isfinite(petroleum_expansion(rho_15, T, product))

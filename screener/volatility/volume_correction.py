@@ -20,7 +20,7 @@ from screener.ground.errors import DataError, UnknownName
 from screener.ground.files import read_table
 
 REFINED = ("gasoline", "transition", "jet", "fuel-oil")  # chosen among by density
-_DEGF = 1.8  # degF per kelvin
+DEGF_PER_K = 1.8
 T_LOW, T_HIGH = 223.15, 423.15  # -50 to 150 degC, the range of the method (from memory, unverified)
 
 
@@ -71,7 +71,7 @@ def _alpha60(rho60: np.ndarray, product: str | None) -> np.ndarray:
 
 def _to_60F(T: np.ndarray, alpha60: np.ndarray) -> np.ndarray:
     """V(60 degF)/V(T). [-]"""
-    s = alpha60 * (T - T_60F) * _DEGF
+    s = alpha60 * (T - T_60F) * DEGF_PER_K
     return np.exp(-s * (1.0 + 0.8 * s))
 
 

@@ -75,6 +75,16 @@ def test_what_would_be_beyond_on_an_unmeasured_vapour_pressure_is_unknown_and_sa
         assert "wrong side" in found[key].reason and "holds no vapour pressure" in found[key].reason
 
 
+def test_poison_in_an_unmeasured_vapour_is_still_told():
+    """A toxic vapour rests on the share of one species, not on the light end: beyond stays, with what is doubtful."""
+    found, known = (
+        of(screen(case(blend=b, tank=tank(contents=None, open_gauging=True))))["exposure.hatch"]
+        for b in (silent(LIGHT), blend(LIGHT))
+    )
+    assert found.verdict == known.verdict == "beyond"
+    assert "light end" in found.reason and "light end" not in known.reason
+
+
 def test_settled_water_is_near_at_best_and_takes_no_receipt_beyond():
     """Settled water adds its own vapour pressure and no more: held together with the fuel it counts for far more."""
     wet = {name: 0.95 * share for name, share in LIGHT.items()} | {"water": 0.05}
